@@ -1,0 +1,48 @@
+/**
+ * What a file holds, before anything is made of it: the plain record that every reader of a format returns and that
+ * `from-drawing.ts` turns into a plan. Coordinates are as written in the file, in the file's unit, y up, never shifted.
+ */
+import type { Unit } from '../base/length.ts'
+import type { LeftOut, Repair } from '../base/repair.ts'
+
+export interface Drawing {
+  /** Format for people: "OBJ", "DXF". */
+  readonly format: string
+  /** Unit that the file states, null when it states none. */
+  readonly unit: Unit | null
+  /**
+   * Paper size: true where the lengths are sizes on paper (SVG), so that a scale 1:N multiplies them. Never true for
+   * model formats.
+   */
+  readonly onPaper: boolean
+  /** Points x y z x y z ..; z is 0 where the format or entity has none. */
+  readonly points: Float64Array
+  /** 1 where the point's z was stated by the file as a height (not a default 0). Length points / 3. */
+  readonly hasHeight: Uint8Array
+  /** Names of the layers; entities refer to them by index. Formats without layers have one, named "". */
+  readonly layers: readonly string[]
+  /** Closed outlines and mesh faces. */
+  readonly outlines: Loops
+  /** Closed outlines that bound a void (interior rings). */
+  readonly holes: Loops
+  /** Open line work: segment i runs from point segments[2 i] to segments[2 i + 1]. */
+  readonly segments: Int32Array
+  readonly segmentLayer: Int32Array
+  /** 1-based line of the file where the segment's entity starts; 0 when unknown. */
+  readonly segmentLine: Int32Array
+  /** Single points (DXF POINT): indices into `points`, with their layers. Levels may be taken from them. */
+  readonly marks: Int32Array
+  readonly markLayer: Int32Array
+  readonly leftOut: readonly LeftOut[]
+  /** What reading itself had to do: code "chords", "flattened". */
+  readonly repairs: readonly Repair[]
+}
+
+/** Closed polygons as point indices: loop i is point[start[i] .. start[i + 1]), the first point not repeated. */
+export interface Loops {
+  readonly start: Int32Array
+  readonly point: Int32Array
+  readonly layer: Int32Array
+  /** 1-based line of the file where the loop's entity starts; 0 when unknown. */
+  readonly line: Int32Array
+}

@@ -1,0 +1,30 @@
+/** A drawing made into a plan, with everything the reader did and noticed on the way. */
+import type { LeftOut, Question, Repair } from '../base/repair.ts'
+import type { Plan } from './plan.ts'
+
+export interface ReadPlan {
+  readonly plan: Plan
+  /** Heights that the input gave, per node in the plan's unit; NaN where it gave none; null when it gave none at all. */
+  readonly heights: Float64Array | null
+  /** Marks (single points) of the drawing as x y z triples in the plan's unit, with the index of their layer. */
+  readonly marks: { readonly points: Float64Array; readonly layer: Int32Array; readonly layers: readonly string[] }
+  readonly repairs: readonly Repair[]
+  readonly questions: readonly Question[]
+  readonly leftOut: readonly LeftOut[]
+  /** Sentences that belong to no repair. */
+  readonly notices: readonly string[]
+}
+
+/** How a drawing is to be read; lengths in mm as named, points in the drawing's own coordinates and unit. */
+export interface ReadOptions {
+  /** Overrides the unit that the file states. */
+  readonly unit: 'mm' | 'cm' | 'm' | 'in' | 'ft' | null
+  /** N of a scale 1:N for drawings on paper. */
+  readonly scale: number | null
+  /** Line ends nearer than this are one node; null: the default of `from-drawing.ts`. */
+  readonly snap_mm: number | null
+  /** A point inside each bounded face that is a void, not a panel. */
+  readonly voids: readonly (readonly [x: number, y: number])[]
+  /** Proposals that the user takes: repair codes, or "all". */
+  readonly accept: readonly string[]
+}

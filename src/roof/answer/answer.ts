@@ -1,0 +1,120 @@
+/**
+ * The records that a job returns. `Summary` is what `check --json` prints and `summary.json` holds, key for key;
+ * `Answer` adds the arrays behind it, for lists, pictures and the page.
+ */
+import type { LeftOut, Question, Repair } from '../../base/repair.ts'
+import type { Unit } from '../../base/length.ts'
+import type { Plan } from '../../plan/plan.ts'
+
+export type Verdict = 'lifts' | 'lifts in part' | 'lifts within plan tolerance' | 'lifts within tolerance' | 'does not lift'
+
+export interface PlanFacts {
+  readonly panels: number
+  readonly joints: number
+  readonly rimEdges: number
+  readonly nodes: number
+  readonly interiorNodes: number
+  readonly voids: number
+  readonly parts: number
+  readonly unit: Unit
+}
+
+export interface StressFacts {
+  /** Dimension of the equilibrium stresses with a free rim, tilts not counted. */
+  readonly freedom: number
+  /** joints - 2 interior nodes - 3 voids, collinear two-joint nodes merged; may be negative. */
+  readonly count: number
+  /** Dimension of the set of roofs under all hard conditions, tilts included; null when they clash. */
+  readonly freedomLeft: number | null
+  /** Square root of the smallest eigenvalue of the flatness form above tau, span 1; null when there is none. */
+  readonly gap: number | null
+  /** RMS |N^T z| / RMS z of the raised roof; null without a roof. */
+  readonly residual: number | null
+  readonly decided: boolean
+  /** Freedom counted at tau = 1e-13 and 1e-11; only when they differ. */
+  readonly countAt?: readonly [number, number]
+  readonly frozenJoints: number
+  readonly flatGroups: number
+  /** With --full. */
+  readonly frozenJointNames?: readonly string[]
+  readonly flatGroupPanels?: readonly (readonly string[])[]
+}
+
+export interface Clash {
+  readonly conditions: readonly string[]
+  readonly misfit_mm: number
+}
+
+export interface HeldFacts {
+  readonly freedomLeft: number | null
+  readonly frozenJoints: number
+  readonly flatGroups: number
+  readonly clashes: readonly Clash[]
+}
+
+export interface RoofFacts {
+  readonly rise: number
+  readonly riseAsked: number | null
+  readonly rimVariation: number
+  readonly cornerMax_mm: number
+  readonly flatnessMax_mm: number
+  readonly flatnessRms_mm: number
+  readonly exactFlatnessMax_mm: number
+  readonly worstPanels: readonly { readonly name: string; readonly corner_mm: number; readonly flatness_mm: number }[]
+  readonly closingError: number
+  /** RMS distance from the wish (shape or target) where the wish has heights of its own, in the plan's unit. */
+  readonly heightError?: number
+}
+
+export interface Summary {
+  readonly version: string
+  readonly input: { readonly name: string; readonly sha256: string }
+  readonly options: Readonly<Record<string, unknown>>
+  readonly plan: PlanFacts
+  readonly repairs: readonly Repair[]
+  readonly questions: readonly Question[]
+  readonly leftOut: readonly LeftOut[]
+  readonly notices: readonly string[]
+  readonly stress: StressFacts
+  readonly held: HeldFacts
+  readonly verdict: Verdict
+  readonly reason: string | null
+  readonly reasonKind: 'propagation' | 'clash' | 'rank' | null
+  readonly roof: RoofFacts | null
+  /** True when the roof is the near one of a plan that does not lift. */
+  readonly near?: boolean
+  readonly caution: string
+}
+
+/** A raised roof as arrays; heights and lengths in the plan's unit unless named otherwise. */
+export interface Roof {
+  /** Height of each node as solved (length nodeCount). */
+  readonly heights: Float64Array
+  /** The same, rounded as written. */
+  readonly written: Float64Array
+  /** Coordinates as written: equal to plan.x, plan.y unless --decimals was given. */
+  readonly writtenX: Float64Array
+  readonly writtenY: Float64Array
+  /** Gradient of each panel's plane, gx gy gx gy .. (length 2 * panelCount). */
+  readonly gradient: Float64Array
+  /** Force density of each joint, 1 / plan unit; > 0 valley, < 0 ridge. Form only: it carries no load. */
+  readonly stress: Float64Array
+  /** Per panel, of the written coordinates, mm. */
+  readonly corner_mm: Float64Array
+  readonly flatness_mm: Float64Array
+  /** Whether this is the near roof (no exact one exists under the conditions). */
+  readonly isNear: boolean
+}
+
+export interface Answer {
+  readonly summary: Summary
+  readonly plan: Plan
+  /** 1 where the joint is frozen with a free rim, and under the conditions (length jointCount each). */
+  readonly frozenFree: Uint8Array
+  readonly frozenHeld: Uint8Array
+  /** Flat group of each panel under the conditions, 0-based (length panelCount). */
+  readonly flatGroup: Int32Array
+  /** What holds, with names, for lists and pictures. */
+  readonly conditions: readonly { readonly name: string; readonly kind: string; readonly soft: boolean; readonly nodes: Int32Array }[]
+  readonly roof: Roof | null
+}
