@@ -1,0 +1,44 @@
+/** Plans for tests, made in code: every one is invented or follows from its definition. */
+import { planFromFaces } from '../../src/plan/subdivision.ts'
+import type { Plan } from '../../src/plan/plan.ts'
+import type { Unit } from '../../src/base/length.ts'
+import { random } from '../../src/base/random.ts'
+
+export type Points = readonly (readonly [number, number])[]
+
+/** The plan with these points and faces (0-based); throws when it is not one. */
+export function plan(points: Points, faces: readonly (readonly number[])[], unit: Unit = 'm'): Plan {
+  const start = [0]
+  for (const face of faces) start.push(start[start.length - 1]! + face.length)
+  const made = planFromFaces({
+    unit,
+    x: Float64Array.from(points, (p) => p[0]),
+    y: Float64Array.from(points, (p) => p[1]),
+    start: Int32Array.from(start),
+    corner: Int32Array.from(faces.flat()),
+  })
+  if (!made.ok) throw new Error(made.problem.message)
+  return made.value.plan
+}
+
+/**
+ * m x n quads; `loose` moves every node at random by up to that share of a bay; cells in `voids` (column, row) are left
+ * out. Panels row by row from the bottom left.
+ */
+export function grid(m: number, n: number, options: { bay?: number; loose?: number; seed?: number; voids?: Points } = {}): Plan {
+  const { bay = 1, loose = 0, seed = 1, voids = [] } = options
+  const next = random(seed)
+  const points: [number, number][] = []
+  for (let j = 0; j <= n; j += 1) {
+    for (let i = 0; i <= m; i += 1) points.push([(i + loose * (2 * next() - 1)) * bay, (j + loose * (2 * next() - 1)) * bay])
+  }
+  const at = (i: number, j: number): number => j * (m + 1) + i
+  const faces: number[][] = []
+  for (let j = 0; j < n; j += 1) {
+    for (let i = 0; i < m; i += 1) {
+      if (voids.some(([a, b]) => a === i && b === j)) continue
+      faces.push([at(i, j), at(i + 1, j), at(i + 1, j + 1), at(i, j + 1)])
+    }
+  }
+  return plan(points, faces)
+}
