@@ -1,0 +1,233 @@
+/**
+ * The solver against ml-matrix (dense, another's code), against eigenvalues known by construction, and against itself on
+ * another road (refactor and factor, many columns and one).
+ */
+import { EigenvalueDecomposition, Matrix, solve as denseSolve } from 'ml-matrix'
+import { describe, expect, test } from 'vitest'
+import { gaussians, random } from '../../../src/base/random.ts'
+import { analyse } from '../../../src/base/sparse/analyse.ts'
+import { cliquePattern } from '../../../src/base/sparse/cliques.ts'
+import { factor, refactor, type Factor } from '../../../src/base/sparse/factor.ts'
+import { inertia } from '../../../src/base/sparse/inertia.ts'
+import type { SymmetricMatrix } from '../../../src/base/sparse/matrix.ts'
+import { multiply, residual } from '../../../src/base/sparse/multiply.ts'
+import { dissection } from '../../../src/base/sparse/order.ts'
+import { refined, solve } from '../../../src/base/sparse/solve.ts'
+import { finish } from '../../../src/base/steps.ts'
+import { bricks, cliquesOf, dense, flatnessForm, planOf, quads, type TestPlan } from './plans.ts'
+
+/** Residuals at rounding: a modest multiple of the unit roundoff 2^-53, as for a stable factor of moderate growth. */
+const rounding = 1e-14
+
+function factorOf(matrix: SymmetricMatrix, coordinates: Float64Array): Factor {
+  return finish(factor(analyse(matrix.pattern, finish(dissection(matrix.pattern, coordinates))), matrix.values))
+}
+
+/** Random diagonally dominant values with random signs on the diagonal: no pivoting is needed, all inertias occur. */
+function dominant(plan: TestPlan, seed: number): SymmetricMatrix {
+  const { pattern } = cliquesOf(plan)
+  const next = random(seed)
+  const values = Float64Array.from(pattern.row, () => 2 * next() - 1)
+  const sum = new Float64Array(pattern.size)
+  for (let j = 0; j < pattern.size; j++) {
+    for (let p = pattern.start[j]! + 1; p < pattern.start[j + 1]!; p++) {
+      sum[j] = sum[j]! + Math.abs(values[p]!)
+      sum[pattern.row[p]!] = sum[pattern.row[p]!]! + Math.abs(values[p]!)
+    }
+  }
+  for (let j = 0; j < pattern.size; j++) values[pattern.start[j]!] = (next() < 0.4 ? -1 : 1) * (sum[j]! + 0.5 + next())
+  return { pattern, values }
+}
+
+const scattered = (size: number, faces: number[][], seed = 3): TestPlan => {
+  const next = random(seed)
+  return planOf(Array.from({ length: size }, () => [next(), next()] as const), faces)
+}
+
+const shapes: Record<string, TestPlan> = {
+  'nothing at all': planOf([], []),
+  'one unknown': planOf([[0, 0]], [[0]]),
+  'one unknown in no panel': planOf([[0, 0]], []),
+  'unknowns in no panel': planOf([[0, 0], [1, 0], [2, 1]], []),
+  'one triangle': planOf([[0, 0], [1, 0], [0, 1]], [[2, 0, 1]]),
+  'quads 5 x 4': quads(5, 4),
+  'bricks 6 x 5': bricks(6, 5),
+  'two parts and a lone unknown': planOf(
+    [[0, 0], [1, 0], [1, 1], [0, 1], [9, 9], [5, 0], [6, 0], [6, 1], [5, 1]], [[0, 1, 2, 3], [8, 7, 6, 5]]),
+  'a chain on one line': planOf(Array.from({ length: 90 }, (_, i) => [i, 0] as const), Array.from({ length: 89 }, (_, i) => [i, i + 1])),
+  'all at one place': planOf(Array.from({ length: 80 }, () => [2, 3] as const), Array.from({ length: 78 }, (_, i) => [i, i + 1, i + 2])),
+  'an arrow: one unknown meets all': scattered(70, Array.from({ length: 69 }, (_, i) => [0, i + 1])),
+  'one dense clique': scattered(60, [Array.from({ length: 60 }, (_, i) => (i * 7) % 60)]),
+  'panels that ignore the coordinates': scattered(120, Array.from({ length: 100 }, (_, i) => [i, (i * 37 + 11) % 120, (i * 53 + 29) % 120].filter((v, k, all) => all.indexOf(v) === k))),
+  'coordinates that are not numbers': planOf(Array.from({ length: 60 }, () => [NaN, Infinity] as const), Array.from({ length: 58 }, (_, i) => [i, i + 1, i + 2])),
+}
+
+describe('small matrices of all shapes, against ml-matrix', () => {
+  for (const [name, plan] of Object.entries(shapes)) {
+    test(name, () => {
+      const matrix = dominant(plan, 5)
+      const { size } = matrix.pattern
+      const f = factorOf(matrix, plan.coordinates)
+      const b = gaussians(size, 8)
+      const x = solve(f, b)
+      expect(x.length).toBe(size)
+      if (size === 0) {
+        expect(inertia(f)).toEqual({ negative: 0, zero: 0, positive: 0 })
+        return
+      }
+      const full = new Matrix(dense(matrix))
+      const expected = denseSolve(full, Matrix.columnVector(Array.from(b))).to1DArray()
+      const largest = Math.max(...expected.map(Math.abs))
+      for (let i = 0; i < size; i++) expect(Math.abs(x[i]! - expected[i]!)).toBeLessThanOrEqual(1e-12 * largest)
+      expect(residual(matrix, x, b)).toBeLessThan(rounding)
+      const eigenvalues = new EigenvalueDecomposition(full, { assumeSymmetric: true }).realEigenvalues
+      expect(inertia(f)).toEqual({ negative: eigenvalues.filter((v) => v < 0).length, zero: 0, positive: eigenvalues.filter((v) => v > 0).length })
+      const product = full.mmul(Matrix.columnVector(Array.from(b))).to1DArray()
+      multiply(matrix, b).forEach((value, i) => expect(Math.abs(value - product[i]!)).toBeLessThan(1e-12 * full.norm()))
+    })
+  }
+})
+
+describe('cliques', () => {
+  test('positions name the entries of each block, repeated pairs once in the pattern', () => {
+    const plan = bricks(4, 3)
+    const { pattern, position } = cliquesOf(plan)
+    const pairs = new Set<string>()
+    let at = 0
+    for (let c = 0; c + 1 < plan.start.length; c++) {
+      const face = plan.index.subarray(plan.start[c]!, plan.start[c + 1]!)
+      for (let a = 0; a < face.length; a++) {
+        for (let b = a; b < face.length; b++) {
+          const [low, high] = [Math.min(face[a]!, face[b]!), Math.max(face[a]!, face[b]!)]
+          const p = position[at++]!
+          expect(pattern.row[p]).toBe(high)
+          expect(p >= pattern.start[low]! && p < pattern.start[low + 1]!).toBe(true)
+          pairs.add(`${low} ${high}`)
+        }
+      }
+    }
+    expect(at).toBe(position.length)
+    for (let j = 0; j < pattern.size; j++) pairs.add(`${j} ${j}`)
+    expect(pattern.row.length).toBe(pairs.size)
+    for (let j = 0; j < pattern.size; j++) {
+      expect(pattern.row[pattern.start[j]!]).toBe(j)
+      for (let p = pattern.start[j]! + 1; p < pattern.start[j + 1]!; p++) expect(pattern.row[p]).toBeGreaterThan(pattern.row[p - 1]!)
+    }
+  })
+
+  test('a clique of 500', () => {
+    const { pattern, position } = cliquePattern(500, Int32Array.of(0, 500), Int32Array.from({ length: 500 }, (_, i) => (i * 3) % 500))
+    expect(pattern.row.length).toBe(125250)
+    expect(new Set(position).size).toBe(125250)
+  })
+
+  test('a repeated or unknown member is a bug of the caller', () => {
+    expect(() => cliquePattern(3, Int32Array.of(0, 3), Int32Array.of(0, 1, 0))).toThrow(/twice/)
+    expect(() => cliquePattern(3, Int32Array.of(0, 2), Int32Array.of(0, 3))).toThrow(/not there/)
+  })
+})
+
+describe('larger matrices', () => {
+  const plan = quads(140, 140)
+  const matrix = flatnessForm(plan, 1e-3)
+  const { size } = matrix.pattern
+  const analysis = analyse(matrix.pattern, finish(dissection(matrix.pattern, plan.coordinates)))
+  const f = finish(factor(analysis, matrix.values))
+  const b = gaussians(size, 2)
+
+  test('the residual is at rounding with 20,000 unknowns', () => {
+    expect(residual(matrix, solve(f, b), b)).toBeLessThan(rounding)
+    expect(residual(matrix, refined(f, matrix, b), b)).toBeLessThan(rounding)
+  })
+
+  test('several columns give what single ones give', () => {
+    const columns = 7
+    const many = gaussians(size * columns, 4)
+    const together = solve(f, many, columns)
+    for (let c = 0; c < columns; c++) {
+      const alone = solve(f, many.slice(c * size, (c + 1) * size))
+      const scale = alone.reduce((m, v) => Math.max(m, Math.abs(v)), 0)
+      alone.forEach((value, i) => {
+        if (!(Math.abs(value - together[c * size + i]!) <= 1e-12 * scale)) throw new Error(`column ${c}, unknown ${i}`)
+      })
+    }
+  })
+
+  test('refactoring gives the factor of the new values, and of the old ones again', () => {
+    const other = flatnessForm(plan, 0.5)
+    const g = finish(factor(analysis, matrix.values))
+    finish(refactor(g, other.values))
+    expect(solve(g, b)).toEqual(solve(finish(factor(analysis, other.values)), b))
+    finish(refactor(g, matrix.values))
+    expect(solve(g, b)).toEqual(solve(f, b))
+  })
+
+  test('the same input gives the same bytes', () => {
+    expect(finish(dissection(matrix.pattern, plan.coordinates)).rank).toEqual(analysis.ordering.rank)
+    expect(solve(finish(factor(analysis, matrix.values)), b)).toEqual(solve(f, b))
+  })
+})
+
+describe('inertia', () => {
+  /**
+   * A Laplacian of a grid of quads' edges with weights has one zero eigenvalue; D^T A D of a matrix keeps its inertia
+   * (Sylvester 1852), so S^T diag(+-1) S with unit lower triangular sparse S has that of the diagonal.
+   */
+  test('S^T D S has the signs of D', () => {
+    const plan = quads(40, 30, 0.1, 9)
+    const { pattern } = cliquesOf(plan)
+    const next = random(12)
+    // S has a unit diagonal and one entry below it in each column, at a panel neighbour: S^T D S stays in the panels' pattern.
+    const values = new Float64Array(pattern.row.length)
+    let negative = 0
+    const entry = (i: number, j: number): number => {
+      for (let p = pattern.start[j]!; p < pattern.start[j + 1]!; p++) if (pattern.row[p] === i) return p
+      throw new Error('not in the pattern')
+    }
+    for (let j = 0; j < pattern.size; j++) {
+      const sign = next() < 0.3 ? -1 : 1
+      if (sign < 0) negative++
+      const d = sign * (0.5 + next())
+      const last = pattern.start[j + 1]! - 1
+      const i = pattern.row[last]!
+      const s = i === j ? 0 : 2 * next() - 1
+      values[entry(j, j)] = values[entry(j, j)]! + d
+      if (i !== j) {
+        values[entry(i, j)] = values[entry(i, j)]! + d * s
+        values[entry(i, i)] = values[entry(i, i)]! + d * s * s
+      }
+    }
+    expect(inertia(factorOf({ pattern, values }, plan.coordinates))).toEqual({ negative, zero: 0, positive: pattern.size - negative })
+  })
+
+  test('the flatness form of a quad grid has 3 tilts and nx + ny - 1 or more folds below the shift', () => {
+    // A jittered nx x ny grid has joints - 2 inner nodes independent stresses: (nx - 1) ny + nx (ny - 1) - 2 (nx - 1)(ny - 1) = nx + ny - 2.
+    const plan = quads(20, 14, 0.1, 3)
+    const { negative, zero } = inertia(factorOf(flatnessForm(plan, -1e-13), plan.coordinates))
+    expect({ negative, zero }).toEqual({ negative: 3 + 20 + 14 - 2, zero: 0 })
+  })
+
+  test('zero pivots are counted, never silent, and leave no NaN', () => {
+    const { pattern } = cliquePattern(4, Int32Array.of(0, 2, 4), Int32Array.of(0, 1, 2, 3))
+    const line = Float64Array.of(0, 0, 1, 0, 2, 0, 3, 0)
+    const nothing = factorOf({ pattern, values: new Float64Array(pattern.row.length) }, line)
+    expect(inertia(nothing)).toEqual({ negative: 0, zero: 4, positive: 0 })
+    expect(Array.from(solve(nothing, Float64Array.of(0, 0, 0, 0)))).toEqual([0, 0, 0, 0])
+    // Two springs: [1 -1; -1 1] twice. Singular; a load in balance still has an answer.
+    const springs = { pattern, values: Float64Array.from(pattern.row, (_, p) => [1, -1, 1, 1, -1, 1][p]!) }
+    const f = factorOf(springs, line)
+    expect(inertia(f)).toEqual({ negative: 0, zero: 2, positive: 2 })
+    const load = Float64Array.of(1, -1, -2, 2)
+    expect(residual(springs, refined(f, springs, load), load)).toBeLessThan(rounding)
+    // [0 1; 1 0] has no L D L^T without pivoting: one pivot stands in, refinement still solves.
+    const swap = { pattern, values: Float64Array.from(pattern.row, (_, p) => [0, 1, 0, 0, 1, 0][p]!) }
+    const g = factorOf(swap, line)
+    expect(inertia(g).zero).toBe(2)
+    expect(residual(swap, refined(g, swap, load), load)).toBeLessThan(rounding)
+  })
+
+  test('values that are not finite are refused', () => {
+    const { pattern } = cliquePattern(2, Int32Array.of(0, 2), Int32Array.of(0, 1))
+    expect(() => factorOf({ pattern, values: Float64Array.of(1, NaN, 1) }, Float64Array.of(0, 0, 1, 0))).toThrow(/finite/)
+  })
+})
