@@ -20,3 +20,37 @@ export const frozenShare = 1e-7
 
 /** Sine of the angle below which two plan directions count as parallel: far above rounding, far below any drawing's. */
 export const parallelSine = 1e-9
+
+/** Sine below which a node drawn on a straight joint counts as on it: 1 um in a metre, what a drawing's digits give. */
+export const collinearSine = 1e-6
+
+/** Relative change below which the iteration towards the nearest roof stops: past it the change is below the digits written. */
+export const nearestShare = 1e-11
+
+/** If the roof keeps less than this share of the wish, the wish says nothing about the roof. */
+export const keptShare = 1e-3
+
+/** A node belongs to a run drawn through it when it lies within this of the line: what drawings are set out to, in mm .. */
+export const runWithin_mm = 1
+
+/** .. or within this share of the span, the larger of the two: six digits of a coordinate. */
+export const runWithin = 1e-6
+
+/** How far from a node or joint a point may be put that means it, in mm: a hand's breadth on site, far below a panel. */
+export const pointWithin_mm = 50
+
+/**
+ * A reduced condition row without a weight above this is a combination of the rows before it. Rounding leaves 1e-16 times
+ * the growth of a few hundred rows; runs drawn twice with ends 1e-6 apart differ by 1e-12; weights that mean something are
+ * ratios of drawn lengths, 1e-8 and more.
+ */
+export const rankWeight = 1e-10
+
+/** Heights that differ by less than this share of the span agree: 10 nm in 10 m, above rounding, below any set-out. */
+export const clashHeight = 1e-9
+
+/**
+ * Three corners hold a plane when the triangle they make is higher than this share of its longest side: flatter ones
+ * carry the plane no better than sqrt(tau) = 3e-7, so that the count and the propagation of planes might disagree.
+ */
+export const planeSine = 1e-5
