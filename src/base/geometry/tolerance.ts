@@ -54,3 +54,6 @@ export const clashHeight = 1e-9
  * carry the plane no better than sqrt(tau) = 3e-7, so that the count and the propagation of planes might disagree.
  */
 export const planeSine = 1e-5
+
+/** Slopes (rise over run) below this are level, folds below it flush: at 10 m run a hundred-millionth of a metre. */
+export const levelSlope = 1e-9
