@@ -1,0 +1,151 @@
+/**
+ * One roof out of many: the nearest to the wish under the conditions, brought to the asked rise by scale where the
+ * conditions leave the scale free, else by the amplitude of the wish. Working heights: (z - datum) / span.
+ */
+import { keptShare } from '../../base/geometry/tolerance.ts'
+import type { Steps } from '../../base/steps.ts'
+import type { LiftSpace } from '../stress/lift-space.ts'
+import { smoothestLifts } from '../stress/smoothest-lifts.ts'
+import { lessTilt } from '../stress/tilt-part.ts'
+import { nearestLift, roofUnderConditions } from './nearest.ts'
+import { riseOf, springing, type RiseRule } from './rise.ts'
+
+/** What the user wants the roof to be like. */
+export interface Wish {
+  /** Heights to come near to (length nodeCount). */
+  readonly heights: Float64Array
+  /** The rise to reach; null leaves the nearest roof as it is (a target without a rise). */
+  readonly rise: number | null
+  readonly rule: RiseRule
+}
+
+export interface Choice {
+  readonly heights: Float64Array
+  /** A sentence for the user where the wish could not be followed, else null. */
+  readonly notice: string | null
+  /** 2-norm, area-weighted, of the roof less its tilt over that of the wish less its tilt. */
+  readonly kept: number
+}
+
+export interface Ground {
+  readonly space: LiftSpace
+  /** Dimensions of the space that fold nothing. */
+  readonly tilts: number
+  readonly areas: Float64Array
+  readonly rim: Int32Array
+  /** The conditions stay met when all heights are scaled about the datum. */
+  readonly scaleFree: boolean
+  /** The conditions stay met when all heights are moved up or down together. */
+  readonly shiftFree: boolean
+}
+
+/** `start` is a roof that meets the conditions (see `roofUnderConditions`). */
+export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): Steps<Choice> {
+  const { space, areas, rim } = ground
+  if (wish.rise === null) {
+    const heights = yield* nearestLift(space, start, wish.heights, areas)
+    return { heights, notice: null, kept: keptOf(ground, heights, wish.heights) }
+  }
+  if (ground.scaleFree) {
+    const nearest = yield* nearestLift(space, start, wish.heights, areas)
+    const kept = keptOf(ground, nearest, wish.heights)
+    const shape = kept >= keptShare ? nearest : smoothest(ground, wish)
+    const rise = shape === null ? 0 : riseOf(shape, rim, wish.rule)
+    if (shape === null || rise === 0) return { heights: nearest, notice: null, kept }
+    const scaled = shape.map((height) => (height * (wish.rise ?? 0)) / rise)
+    return { heights: sprung(ground, scaled, wish.rule), notice: kept >= keptShare ? null : smoothestSaid, kept }
+  }
+  return yield* byAmplitude(ground, start, wish, wish.rise)
+}
+
+const smoothestSaid = 'no roof under these conditions comes near the starting shape, so the smoothest one was taken'
+
+/** Roofs h(a) = h0 + a h1, h0 nearest to flat, h1 the answer to the wish: the a whose rise is the asked one. */
+function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: number): Steps<Choice> {
+  const { space, areas, rim } = ground
+  const zero = new Float64Array(start.length)
+  const rest = yield* nearestLift(space, start, zero, areas)
+  let direction = yield* nearestLift(space, zero, wish.heights, areas)
+  const kept = keptOf(ground, direction, wish.heights)
+  let notice: string | null = null
+  if (space.dimension > 0 && kept < keptShare) {
+    const way = smoothest(ground, wish)
+    if (way !== null) {
+      direction = way
+      notice = smoothestSaid
+    }
+  }
+  const at = (a: number): Float64Array => rest.map((height, i) => height + a * direction[i])
+  const riseAt = (a: number): number => riseOf(at(a), rim, wish.rule)
+  const scale = riseOf(direction, rim, { ...wish.rule, datum: null }) + spread(direction)
+  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: rest, notice, kept }
+  const unit = asked / scale
+  const a = amplitudeFor(riseAt, asked, unit)
+  return { heights: at(a), notice, kept }
+}
+
+/**
+ * Smallest a >= 0 with rise(a) = asked for a convex rise; where the rise is above the asked one all the way, the a of the
+ * least rise; where it never gets there, as far as the search goes.
+ */
+function amplitudeFor(riseAt: (a: number) => number, asked: number, unit: number): number {
+  let low = 0
+  let high = unit
+  if (riseAt(0) > asked) {
+    // Above already: walk down the convex valley on the side where it falls.
+    let left = -64 * unit, right = 64 * unit
+    for (let k = 0; k < 100; k += 1) {
+      const a = left + (right - left) / 3, b = right - (right - left) / 3
+      if (riseAt(a) < riseAt(b)) right = b
+      else left = a
+    }
+    const bottom = (left + right) / 2
+    if (riseAt(bottom) >= asked) return bottom
+    low = bottom
+    high = 0
+  } else {
+    for (let k = 0; k < 60 && riseAt(high) < asked; k += 1) high *= 2
+    if (riseAt(high) < asked) return high
+  }
+  for (let k = 0; k < 100; k += 1) {
+    const middle = (low + high) / 2
+    if (middle === low || middle === high) break
+    if (riseAt(middle) < asked) low = middle
+    else high = middle
+  }
+  return (low + high) / 2
+}
+
+function spread(values: Float64Array): number {
+  let low = Infinity, high = -Infinity
+  for (const value of values) {
+    low = Math.min(low, value)
+    high = Math.max(high, value)
+  }
+  return high - low
+}
+
+/** The smoothest lift, turned the way the wish goes; null when nothing folds. */
+function smoothest(ground: Ground, wish: Wish): Float64Array | null {
+  const way = smoothestLifts(ground.space, ground.tilts, ground.areas, 1)[0]
+  if (way === undefined) return null
+  const sign = wish.rule.down ? -1 : 1
+  return way.map((height) => sign * height)
+}
+
+/** Moved so that the springing lies on the datum, where the conditions allow it. */
+function sprung(ground: Ground, heights: Float64Array, rule: RiseRule): Float64Array {
+  if (!ground.shiftFree) return heights
+  const level = springing(heights, ground.rim, { ...rule, datum: null })
+  return heights.map((height) => height - level)
+}
+
+function keptOf(ground: Ground, heights: Float64Array, wish: Float64Array): number {
+  const { plan } = ground.space
+  const size = (h: Float64Array): number =>
+    Math.sqrt(lessTilt(plan, h, ground.areas).reduce((sum, height, i) => sum + ground.areas[i] * height * height, 0))
+  const wished = size(wish)
+  return wished > 0 ? size(heights) / wished : 0
+}
+
+export { roofUnderConditions }

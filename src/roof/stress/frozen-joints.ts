@@ -1,0 +1,67 @@
+/**
+ * Frozen joints: joints whose stress is 0 in every roof there is. Two random lifts show them: a joint that folds in some
+ * lift folds in almost every one, so a joint flat in both is frozen but for an event of probability zero.
+ */
+import { frozenShare } from '../../base/geometry/tolerance.ts'
+import { gaussians } from '../../base/random.ts'
+import type { Plan } from '../../plan/plan.ts'
+import { forces, rms, stressOfGradients } from './forces.ts'
+import { projected, type LiftSpace } from './lift-space.ts'
+import { panelPlanes } from './panel-bases.ts'
+
+/**
+ * 1 for each joint that no roof of the space folds (length jointCount). `tilts` is how many dimensions of the space fold
+ * nothing; `roof` is one roof that meets the conditions (null when they are all zero and the flat roof is one).
+ */
+export function frozenJoints(space: LiftSpace, tilts: number, roof: Float64Array | null): Uint8Array {
+  const { plan } = space
+  const frozen = new Uint8Array(plan.jointCount).fill(1)
+  const mark = (heights: Float64Array): void => {
+    const force = forces(plan, stressOfGradients(plan, panelPlanes(plan, space.bases, heights).gradient))
+    // A roof that is flat but for rounding has forces at rounding level: they must not pass for folds.
+    const noise = foldNoise(plan, heights)
+    const least = Math.max(frozenShare * rms(force), noise)
+    for (let j = 0; j < plan.jointCount; j += 1) if (Math.abs(force[j]) > least) frozen[j] = 0
+  }
+  if (space.dimension > tilts) {
+    const probes = projected(space, gaussians(2 * plan.nodeCount, 20), 2)
+    mark(probes.subarray(0, plan.nodeCount))
+    mark(probes.subarray(plan.nodeCount))
+  }
+  if (roof !== null) mark(roof)
+  return frozen
+}
+
+/** Forces that rounding alone can make: 1e-11 of the steepest slope that heights of this size make over the whole plan. */
+function foldNoise(plan: Plan, heights: Float64Array): number {
+  let low = Infinity, high = -Infinity
+  for (let i = 0; i < plan.nodeCount; i += 1) {
+    if (heights[i] < low) low = heights[i]
+    if (heights[i] > high) high = heights[i]
+  }
+  return 1e-11 * (high - low)
+}
+
+/**
+ * Flat groups: panels joined by frozen joints, which lie in one plane in every roof. Group of each panel, numbered from 0
+ * by first panel, and how many there are; single panels included.
+ */
+export function flatGroups(plan: Plan, frozen: Uint8Array): { groupOf: Int32Array; groupCount: number } {
+  const parent = Int32Array.from({ length: plan.panelCount }, (_, p) => p)
+  const root = (p: number): number => {
+    while (parent[p] !== p) {
+      parent[p] = parent[parent[p]]
+      p = parent[p]
+    }
+    return p
+  }
+  for (let j = 0; j < plan.jointCount; j += 1) {
+    if (frozen[j] === 0) continue
+    const a = root(plan.panelOf[2 * j]), b = root(plan.panelOf[2 * j + 1])
+    if (a !== b) parent[Math.max(a, b)] = Math.min(a, b)
+  }
+  const groupOf = new Int32Array(plan.panelCount)
+  let groupCount = 0
+  for (let p = 0; p < plan.panelCount; p += 1) groupOf[p] = root(p) === p ? groupCount++ : groupOf[root(p)]
+  return { groupOf, groupCount }
+}

@@ -1,0 +1,221 @@
+/**
+ * All lifts of a plan that keep the hard conditions, as one sparse factor.
+ *
+ * With N the flatness conditions of all panels, Q = sum N N^T the flatness form and h = h0 + T y the heights that keep the
+ * conditions (T from elimination, the identity when nothing is held), K = T^T (Q - tau I) T is factored once:
+ *   its negative pivots count the lifts (Sylvester's law of inertia: the number does not depend on the basis T);
+ *   -tau T K^-1 T^T projects any heights to the nearest lift, up to tau / lambda on what is not one, so twice is enough;
+ *   the same factor solves for a roof that meets conditions which are not zero.
+ * Tried and dropped: weighting panels by area or its inverse (spoils the decision between lift and near lift on uneven
+ * plans); an augmented Lagrangian on M + mu Q (one factor as well, four solves, 1e3 times less exact on uneven plans).
+ */
+import { analyse, type Analysis } from '../../base/sparse/analyse.ts'
+import { cliquePattern, type CliquePattern } from '../../base/sparse/cliques.ts'
+import { factor, type Factor } from '../../base/sparse/factor.ts'
+import { inertia } from '../../base/sparse/inertia.ts'
+import { dissection } from '../../base/sparse/order.ts'
+import { solve } from '../../base/sparse/solve.ts'
+import { tau } from '../../base/geometry/tolerance.ts'
+import type { Steps } from '../../base/steps.ts'
+import type { Plan } from '../../plan/plan.ts'
+import type { Elimination } from '../conditions/eliminate.ts'
+import type { PanelBases } from './panel-bases.ts'
+
+export interface LiftSpace {
+  readonly plan: Plan
+  readonly bases: PanelBases
+  readonly elimination: Elimination
+  readonly form: ReducedForm
+  readonly analysis: Analysis
+  /** Factor of K = T^T (Q - tau I) T. */
+  readonly factor: Factor
+  /** Lifts that keep the conditions with all their values zero, tilts included. */
+  readonly dimension: number
+}
+
+/** Q and the metric under an elimination: one clique of unknowns a panel, then one a node. */
+export interface ReducedForm {
+  readonly cliques: CliquePattern
+  /** T^T Q T, one value per entry of the pattern. */
+  readonly flatness: Float64Array
+}
+
+/** The elimination of a plan on which nothing is held: T = I. */
+export function nothingHeld(nodeCount: number): Elimination {
+  const free = Int32Array.from({ length: nodeCount }, (_, i) => i)
+  const start = Int32Array.from({ length: nodeCount + 1 }, (_, i) => i)
+  return { free, start, unknown: free, weight: new Float64Array(nodeCount).fill(1), particular: new Float64Array(nodeCount) }
+}
+
+/** Order, analyse and factor for this plan under these conditions; one factor serves every later question. */
+export function* liftSpace(plan: Plan, bases: PanelBases, elimination: Elimination): Steps<LiftSpace> {
+  yield { stage: 'Assembling', done: 0 }
+  const form = reducedForm(plan, bases, elimination)
+  const { pattern } = form.cliques
+  const coordinates = new Float64Array(2 * pattern.size)
+  for (let u = 0; u < pattern.size; u += 1) {
+    coordinates[2 * u] = plan.work[2 * elimination.free[u]]
+    coordinates[2 * u + 1] = plan.work[2 * elimination.free[u] + 1]
+  }
+  const analysis = analyse(pattern, yield* dissection(pattern, coordinates))
+  const shifted = weightedForm(plan, elimination, form, null, -tau, 1)
+  const factored = yield* factor(analysis, shifted)
+  const { negative, zero } = inertia(factored)
+  return { plan, bases, elimination, form, analysis, factor: factored, dimension: negative + zero }
+}
+
+/** T^T Q T by panels: with B = I - 11^T/k - e1 e1^T - e2 e2^T and T_p the panel's rows of T, the block is T_p^T B T_p. */
+export function reducedForm(plan: Plan, bases: PanelBases, elimination: Elimination): ReducedForm {
+  const { panelStart, corner, panelCount, nodeCount } = plan
+  const { start, unknown, free } = elimination
+  const cliqueStart = new Int32Array(panelCount + nodeCount + 1)
+  const slotOf = new Int32Array(free.length).fill(-1)
+
+  let entries = 0
+  for (let c = 0; c < corner.length; c += 1) entries += start[corner[c] + 1] - start[corner[c]]
+  const cliqueIndex = new Int32Array(entries + unknown.length)
+  let filled = 0
+  for (let p = 0; p < panelCount; p += 1) {
+    const first = filled
+    for (let c = panelStart[p]; c < panelStart[p + 1]; c += 1) {
+      for (let t = start[corner[c]]; t < start[corner[c] + 1]; t += 1) {
+        if (slotOf[unknown[t]] >= first) continue
+        slotOf[unknown[t]] = filled
+        cliqueIndex[filled++] = unknown[t]
+      }
+    }
+    for (let s = first; s < filled; s += 1) slotOf[cliqueIndex[s]] = -1
+    cliqueStart[p + 1] = filled
+  }
+  for (let node = 0; node < nodeCount; node += 1) {
+    for (let t = start[node]; t < start[node + 1]; t += 1) cliqueIndex[filled++] = unknown[t]
+    cliqueStart[panelCount + node + 1] = filled
+  }
+  const cliques = cliquePattern(free.length, cliqueStart, cliqueIndex.subarray(0, filled))
+
+  const flatness = new Float64Array(cliques.pattern.row.length)
+  const { position } = cliques
+  let at = 0
+  let rows = new Float64Array(64)
+  for (let p = 0; p < panelCount; p += 1) {
+    const from = panelStart[p], to = panelStart[p + 1]
+    const count = to - from
+    const first = cliqueStart[p]
+    const unknowns = cliqueStart[p + 1] - first
+    if (count > 3 && unknowns > 0) {
+      // rows: T_p with 1/sqrt(k), e1, e2 projected out of its columns; the block is rows^T rows.
+      if (rows.length < count * unknowns) rows = new Float64Array(2 * count * unknowns)
+      projectedRows(rows, plan, bases, elimination, cliqueIndex, p, first, unknowns, slotOf)
+      for (let a = 0; a < unknowns; a += 1) {
+        for (let b = a; b < unknowns; b += 1) {
+          let sum = 0
+          for (let k = 0; k < count; k += 1) sum += rows[a * count + k] * rows[b * count + k]
+          flatness[position[at++]] += sum
+        }
+      }
+    } else {
+      at += (unknowns * (unknowns + 1)) / 2
+    }
+  }
+  return { cliques, flatness }
+}
+
+/** Fills rows[a * k ..] with (I - 11^T/k - e1 e1^T - e2 e2^T) T_p's column a, for the panel's k corners. */
+function projectedRows(
+  rows: Float64Array, plan: Plan, bases: PanelBases, elimination: Elimination,
+  cliqueIndex: Int32Array, panel: number, first: number, unknowns: number, slotOf: Int32Array,
+): void {
+  const { panelStart, corner } = plan
+  const { start, unknown, weight } = elimination
+  const { e } = bases
+  const from = panelStart[panel]
+  const count = panelStart[panel + 1] - from
+  rows.fill(0, 0, count * unknowns)
+  for (let a = 0; a < unknowns; a += 1) slotOf[cliqueIndex[first + a]] = a
+  for (let k = 0; k < count; k += 1) {
+    const node = corner[from + k]
+    for (let t = start[node]; t < start[node + 1]; t += 1) rows[slotOf[unknown[t]] * count + k] += weight[t]
+  }
+  for (let a = 0; a < unknowns; a += 1) {
+    slotOf[cliqueIndex[first + a]] = -1
+    const base = a * count
+    let mean = 0, a1 = 0, a2 = 0
+    for (let k = 0; k < count; k += 1) {
+      mean += rows[base + k]
+      a1 += rows[base + k] * e[2 * (from + k)]
+      a2 += rows[base + k] * e[2 * (from + k) + 1]
+    }
+    mean /= count
+    for (let k = 0; k < count; k += 1) rows[base + k] -= mean + a1 * e[2 * (from + k)] + a2 * e[2 * (from + k) + 1]
+  }
+}
+
+/**
+ * mu T^T Q T + shift T^T M T on the form's pattern; `metric` is the diagonal of M (length nodeCount), null for I.
+ */
+export function weightedForm(
+  plan: Plan, elimination: Elimination, form: ReducedForm, metric: Float64Array | null, shift: number, mu: number,
+): Float64Array {
+  const { start, weight } = elimination
+  const { position } = form.cliques
+  const values = Float64Array.from(form.flatness, (value) => mu * value)
+  let nodeEntries = 0
+  for (let node = 0; node < plan.nodeCount; node += 1) {
+    const k = start[node + 1] - start[node]
+    nodeEntries += (k * (k + 1)) / 2
+  }
+  let at = position.length - nodeEntries
+  for (let node = 0; node < plan.nodeCount; node += 1) {
+    const m = shift * (metric === null ? 1 : metric[node])
+    for (let a = start[node]; a < start[node + 1]; a += 1) {
+      for (let b = a; b < start[node + 1]; b += 1) values[position[at++]] += m * weight[a] * weight[b]
+    }
+  }
+  return values
+}
+
+/** T y per column (length nodeCount * columns). */
+export function expand(elimination: Elimination, y: Float64Array, columns = 1): Float64Array {
+  const { start, unknown, weight, free } = elimination
+  const nodeCount = start.length - 1
+  const out = new Float64Array(nodeCount * columns)
+  for (let column = 0; column < columns; column += 1) {
+    const from = column * free.length, to = column * nodeCount
+    for (let node = 0; node < nodeCount; node += 1) {
+      let sum = 0
+      for (let t = start[node]; t < start[node + 1]; t += 1) sum += weight[t] * y[from + unknown[t]]
+      out[to + node] = sum
+    }
+  }
+  return out
+}
+
+/** T^T h per column (length unknowns * columns). */
+export function reduce(elimination: Elimination, heights: Float64Array, columns = 1): Float64Array {
+  const { start, unknown, weight, free } = elimination
+  const nodeCount = start.length - 1
+  const out = new Float64Array(free.length * columns)
+  for (let column = 0; column < columns; column += 1) {
+    const to = column * free.length, from = column * nodeCount
+    for (let node = 0; node < nodeCount; node += 1) {
+      for (let t = start[node]; t < start[node + 1]; t += 1) out[to + unknown[t]] += weight[t] * heights[from + node]
+    }
+  }
+  return out
+}
+
+/**
+ * The nearest lifts (least squares over the nodes) that keep the conditions with all their values zero, to `columns`
+ * vectors of heights stored one after another (length nodeCount * columns). h <- -tau T K^-1 T^T h, twice.
+ */
+export function projected(space: LiftSpace, heights: Float64Array, columns = 1): Float64Array {
+  const { elimination, factor: factored } = space
+  if (space.dimension === 0) return new Float64Array(heights.length)
+  let h = heights
+  for (let pass = 0; pass < 2; pass += 1) {
+    const y = solve(factored, reduce(elimination, h, columns), columns)
+    for (let i = 0; i < y.length; i += 1) y[i] *= -tau
+    h = expand(elimination, y, columns)
+  }
+  return h
+}
