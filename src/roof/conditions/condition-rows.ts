@@ -1,0 +1,67 @@
+/** All conditions of a plan as rows: the hard ones, and the soft ones with their weights. */
+import { never } from '../../base/assert.ts'
+import { ok, placed, type Result } from '../../base/result.ts'
+import type { Plan } from '../../plan/plan.ts'
+import type { Condition } from '../../plan/project/condition.ts'
+import { coplanarRows } from './coplanar.ts'
+import { equalRows } from './equal.ts'
+import { fallRows } from './fall.ts'
+import { flushRows } from './flush.ts'
+import { levelRows } from './level.ts'
+import { planeRows } from './plane.ts'
+import { profileRows } from './profile.ts'
+import { rowList, type Emit, type Rows, type Site } from './rows.ts'
+import { straightRows } from './straight.ts'
+
+export interface SoftRows extends Rows {
+  /** Weight of each row's condition. */
+  readonly softWeight: Float64Array
+}
+
+/** What a condition touches, for lists and pictures. */
+export interface Held {
+  readonly name: string
+  readonly kind: string
+  readonly soft: boolean
+  readonly nodes: Int32Array
+}
+
+export interface ConditionRows {
+  readonly hard: Rows
+  readonly soft: SoftRows
+  /** One per condition, in the order given: the `condition` of the rows counts in it. */
+  readonly held: readonly Held[]
+}
+
+/**
+ * Rows of the conditions, whose lengths and points are in the plan's unit, as is `datum`. Fails where a place does not
+ * exist on the plan; the problem's place has the condition's name.
+ */
+export function conditionRows(plan: Plan, conditions: readonly Condition[], datum: number): Result<ConditionRows> {
+  const site: Site = { plan, datum }
+  const hard = rowList()
+  const soft = rowList()
+  const held: Held[] = []
+  for (const [index, condition] of conditions.entries()) {
+    const nodes = rowsOf(site, condition, (condition.soft === null ? hard : soft).emit(index))
+    if (!nodes.ok) return { ok: false, problem: placed(nodes.problem, { entity: `condition "${condition.name}"` }) }
+    held.push({ name: condition.name, kind: condition.kind, soft: condition.soft !== null, nodes: nodes.value })
+  }
+  const softRows = soft.rows()
+  const softWeight = Float64Array.from(softRows.condition, (index) => conditions[index].soft ?? 0)
+  return ok({ hard: hard.rows(), soft: { ...softRows, softWeight }, held })
+}
+
+function rowsOf(site: Site, condition: Condition, emit: Emit): Result<Int32Array> {
+  switch (condition.kind) {
+    case 'level': return levelRows(site, condition, emit)
+    case 'fall': return fallRows(site, condition, emit)
+    case 'straight': return straightRows(site, condition, emit)
+    case 'equal': return equalRows(site, condition, emit)
+    case 'coplanar': return coplanarRows(site, condition, emit)
+    case 'plane': return planeRows(site, condition, emit)
+    case 'flush': return flushRows(site, condition, emit)
+    case 'profile': return profileRows(site, condition, emit)
+    default: return never(condition)
+  }
+}

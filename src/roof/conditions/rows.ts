@@ -1,0 +1,60 @@
+/**
+ * Linear rows on the node heights: sum of weight * h over a row's nodes = value. Heights h = (z - datum) / span, so that a
+ * value is a height in spans above the datum; rows are scaled so that their largest weight is about 1.
+ */
+import type { Plan } from '../../plan/plan.ts'
+
+export interface Rows {
+  /** Row i has the entries start[i] .. start[i + 1) of node and weight (length: rows + 1). */
+  readonly start: Int32Array
+  readonly node: Int32Array
+  readonly weight: Float64Array
+  /** Right-hand side of each row. */
+  readonly value: Float64Array
+  /** Index of the condition, in the list that was given, of each row. */
+  readonly condition: Int32Array
+}
+
+export const rowCount = (rows: Rows): number => rows.value.length
+
+/** Takes one row of the condition at hand. */
+export type Emit = (nodes: readonly number[], weights: readonly number[], value: number) => void
+
+/** A list of rows that grows. */
+export function rowList(): { emit(condition: number): Emit; rows(): Rows } {
+  const start = [0]
+  const node: number[] = []
+  const weight: number[] = []
+  const value: number[] = []
+  const condition: number[] = []
+  return {
+    emit: (of) => (nodes, weights, right) => {
+      for (let i = 0; i < nodes.length; i += 1) {
+        node.push(nodes[i])
+        weight.push(weights[i])
+      }
+      start.push(node.length)
+      value.push(right)
+      condition.push(of)
+    },
+    rows: () => ({
+      start: Int32Array.from(start),
+      node: Int32Array.from(node),
+      weight: Float64Array.from(weight),
+      value: Float64Array.from(value),
+      condition: Int32Array.from(condition),
+    }),
+  }
+}
+
+/** What the kinds need: the plan, and heights as the rows have them. */
+export interface Site {
+  readonly plan: Plan
+  /** In the plan's unit. */
+  readonly datum: number
+}
+
+/** (level - datum) / span of a level in the plan's unit; null is the datum itself. */
+export function heightOf(site: Site, level: number | null): number {
+  return level === null ? 0 : (level - site.datum) / site.plan.frame.span
+}
