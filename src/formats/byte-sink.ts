@@ -59,7 +59,7 @@ export class ByteSink {
     const scaled = Math.round(Math.abs(value) * scale)
     if (!(scaled < 9007199254740992)) {
       assert(Number.isFinite(value), 'a number to be written is finite')
-      this.text(fixed(value, decimals).replace('.', String.fromCharCode(point)))
+      this.text((keepZeros ? fixed(value, decimals) : shortest(value)).replace('.', String.fromCharCode(point)))
       return
     }
     this.room(40)
@@ -118,7 +118,7 @@ export class ByteSink {
       count += 1
     }
     for (let i = count - 1; i >= 0; i -= 1) {
-      this.bytes[this.length] = this.digits[i] ?? zero
+      this.bytes[this.length] = this.digits[i]
       this.length += 1
     }
   }

@@ -43,12 +43,12 @@ function cellWriter(column: Column, separator: string, point: number, sink: Byte
       const index = column.index
       return (row) => {
         sink.text(letter)
-        sink.integer((index[row] ?? -1) + 1)
+        sink.integer(index[row] + 1)
       }
     }
     case 'word': {
       const words = column.words.map((word) => textCell(word, separator))
-      return (row) => sink.text(words[column.index[row] ?? -1] ?? '')
+      return (row) => sink.text(words[column.index[row]] ?? '')
     }
     case 'text':
       return (row) => sink.text(textCell(column.values[row] ?? '', separator))
@@ -59,10 +59,10 @@ type Digits = Extract<Column, { kind: 'number' }>['digits']
 
 function numberWriter(values: Float64Array | Int32Array, digits: Digits, point: number, sink: ByteSink): (row: number) => void {
   const sign = String.fromCharCode(point)
-  if (values instanceof Int32Array) return (row) => sink.integer(values[row] ?? 0)
+  if (values instanceof Int32Array) return (row) => sink.integer(values[row])
   /** Puts down what is a number; an empty cell says that there is none. */
   const unlessEmpty = (put: (value: number) => void) => (row: number): void => {
-    const value = values[row] ?? NaN
+    const value = values[row]
     if (!Number.isNaN(value)) put(value)
   }
   if (digits === 'shortest') return unlessEmpty((value) => sink.shortest(value, point))

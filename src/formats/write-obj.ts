@@ -33,13 +33,13 @@ export function* writeObj({ plan, x, y, z, decimals, comments }: ObjRoof): Steps
   const heightDecimals = decimals ?? micrometreDecimals[plan.unit]
   for (let node = 0; node < plan.nodeCount; node += 1) {
     sink.text('v ')
-    if (decimals === null) sink.shortest(x[node] ?? NaN)
-    else sink.decimal(x[node] ?? NaN, decimals, false)
+    if (decimals === null) sink.shortest(x[node])
+    else sink.decimal(x[node], decimals, false)
     sink.code(space)
-    if (decimals === null) sink.shortest(y[node] ?? NaN)
-    else sink.decimal(y[node] ?? NaN, decimals, false)
+    if (decimals === null) sink.shortest(y[node])
+    else sink.decimal(y[node], decimals, false)
     sink.code(space)
-    sink.decimal(z[node] ?? NaN, heightDecimals, false)
+    sink.decimal(z[node], heightDecimals, false)
     sink.code(lineEnd)
     if (node % slice === 0) yield { stage: 'Writing the roof', done: (0.5 * node) / plan.nodeCount }
   }
@@ -48,9 +48,9 @@ export function* writeObj({ plan, x, y, z, decimals, comments }: ObjRoof): Steps
     sink.text('g ')
     sink.text(panelName(panel))
     sink.text('\nf')
-    for (let at = panelStart[panel] ?? 0; at < (panelStart[panel + 1] ?? 0); at += 1) {
+    for (let at = panelStart[panel]; at < panelStart[panel + 1]; at += 1) {
       sink.code(space)
-      sink.integer((corner[at] ?? -1) + 1)
+      sink.integer(corner[at] + 1)
     }
     sink.code(lineEnd)
     if (panel % slice === 0) yield { stage: 'Writing the roof', done: 0.5 + (0.5 * panel) / plan.panelCount }

@@ -27,16 +27,16 @@ export function* jointFolds(plan: Plan, planes: PanelPlanes): Steps<Folds> {
   const fold = new Float64Array(jointCount)
   let squares = 0
   for (let joint = 0; joint < jointCount; joint += 1) {
-    const left = panelOf[2 * joint] ?? 0
-    const right = panelOf[2 * joint + 1] ?? 0
-    const from = origin[2 * joint] ?? 0
-    const to = origin[2 * joint + 1] ?? 0
-    const dx = (x[to] ?? 0) - (x[from] ?? 0)
-    const dy = (y[to] ?? 0) - (y[from] ?? 0)
-    const lx = gradient[2 * left] ?? 0
-    const ly = gradient[2 * left + 1] ?? 0
-    const rx = gradient[2 * right] ?? 0
-    const ry = gradient[2 * right + 1] ?? 0
+    const left = panelOf[2 * joint]
+    const right = panelOf[2 * joint + 1]
+    const from = origin[2 * joint]
+    const to = origin[2 * joint + 1]
+    const dx = x[to] - x[from]
+    const dy = y[to] - y[from]
+    const lx = gradient[2 * left]
+    const ly = gradient[2 * left + 1]
+    const rx = gradient[2 * right]
+    const ry = gradient[2 * right + 1]
     const across = ((lx - rx) * -dy + (ly - ry) * dx) / Math.hypot(dx, dy)
     jump[joint] = across
     squares += across * across
@@ -46,7 +46,7 @@ export function* jointFolds(plan: Plan, planes: PanelPlanes): Steps<Folds> {
   const least = Math.max(levelSlope, frozenShare * Math.sqrt(squares / Math.max(1, jointCount)))
   const word = new Uint8Array(jointCount)
   for (let joint = 0; joint < jointCount; joint += 1) {
-    const across = jump[joint] ?? 0
+    const across = jump[joint]
     word[joint] = Math.abs(across) < least ? 0 : across < 0 ? 1 : 2
     if (word[joint] === 0) fold[joint] = 0
   }

@@ -26,16 +26,16 @@ export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<
   const density = new Float64Array(jointCount)
   const force = new Float64Array(jointCount)
   for (let joint = 0; joint < jointCount; joint += 1) {
-    const a = origin[2 * joint] ?? 0
-    const b = origin[2 * joint + 1] ?? 0
+    const a = origin[2 * joint]
+    const b = origin[2 * joint + 1]
     from[joint] = a
     to[joint] = b
-    const planLength = Math.hypot((x[b] ?? 0) - (x[a] ?? 0), (y[b] ?? 0) - (y[a] ?? 0))
-    length[joint] = Math.hypot(planLength, (roof.heights[b] ?? 0) - (roof.heights[a] ?? 0)) * metre
-    const angle = fold[joint] ?? 0
+    const planLength = Math.hypot(x[b] - x[a], y[b] - y[a])
+    length[joint] = Math.hypot(planLength, roof.heights[b] - roof.heights[a]) * metre
+    const angle = fold[joint]
     dihedral[joint] = word[joint] === 1 ? 180 - angle : 180 + angle
     // What is left at a flush joint is rounding, not a figure.
-    const s = word[joint] === 0 ? 0 : (roof.stress[joint] ?? 0)
+    const s = word[joint] === 0 ? 0 : roof.stress[joint]
     density[joint] = s
     force[joint] = s * planLength
   }

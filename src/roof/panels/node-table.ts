@@ -12,7 +12,7 @@ import { ascending } from './ascending.ts'
 export function* nodeTable(plan: Plan, roof: Roof): Steps<Table> {
   const { nodeCount, origin, rimPasses } = plan
   const valence = new Int32Array(nodeCount)
-  for (const node of origin) valence[node] = (valence[node] ?? 0) + 1
+  for (const node of origin) valence[node] = valence[node] + 1
   yield { stage: 'Listing nodes', done: 1 }
   return {
     rows: nodeCount,

@@ -31,26 +31,26 @@ export function* panelPlanes(plan: Plan, heights: Float64Array): Steps<PanelPlan
   const perimeter = new Float64Array(panelCount)
   const gradient = new Float64Array(2 * panelCount)
   for (let panel = 0; panel < panelCount; panel += 1) {
-    const start = panelStart[panel] ?? 0
-    const end = panelStart[panel + 1] ?? start
+    const start = panelStart[panel]
+    const end = panelStart[panel + 1]
     // From the first corner, so that a survey's large coordinates cancel before they are multiplied.
-    const origin = corner[start] ?? 0
-    const x0 = x[origin] ?? 0
-    const y0 = y[origin] ?? 0
-    const z0 = heights[origin] ?? 0
-    const last = corner[end - 1] ?? 0
-    let fromX = (x[last] ?? 0) - x0
-    let fromY = (y[last] ?? 0) - y0
-    let fromZ = (heights[last] ?? 0) - z0
+    const origin = corner[start]
+    const x0 = x[origin]
+    const y0 = y[origin]
+    const z0 = heights[origin]
+    const last = corner[end - 1]
+    let fromX = x[last] - x0
+    let fromY = y[last] - y0
+    let fromZ = heights[last] - z0
     let ax = 0
     let ay = 0
     let az = 0
     let round = 0
     for (let at = start; at < end; at += 1) {
-      const node = corner[at] ?? 0
-      const toX = (x[node] ?? 0) - x0
-      const toY = (y[node] ?? 0) - y0
-      const toZ = (heights[node] ?? 0) - z0
+      const node = corner[at]
+      const toX = x[node] - x0
+      const toY = y[node] - y0
+      const toZ = heights[node] - z0
       ax += fromY * toZ - fromZ * toY
       ay += fromZ * toX - fromX * toZ
       az += fromX * toY - fromY * toX

@@ -24,12 +24,12 @@ export function* panelTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<
   const slope = new Float64Array(panelCount)
   const fall = new Float64Array(panelCount)
   for (let panel = 0; panel < panelCount; panel += 1) {
-    corners[panel] = (panelStart[panel + 1] ?? 0) - (panelStart[panel] ?? 0)
-    planArea[panel] = (planes.planArea[panel] ?? 0) * metre * metre
-    area[panel] = (planes.area[panel] ?? 0) * metre * metre
-    perimeter[panel] = (planes.perimeter[panel] ?? 0) * metre
-    const gx = planes.gradient[2 * panel] ?? 0
-    const gy = planes.gradient[2 * panel + 1] ?? 0
+    corners[panel] = panelStart[panel + 1] - panelStart[panel]
+    planArea[panel] = planes.planArea[panel] * metre * metre
+    area[panel] = planes.area[panel] * metre * metre
+    perimeter[panel] = planes.perimeter[panel] * metre
+    const gx = planes.gradient[2 * panel]
+    const gy = planes.gradient[2 * panel + 1]
     slope[panel] = slopeDegrees(gx, gy)
     fall[panel] = fallDegrees(gx, gy)
   }
