@@ -26,6 +26,8 @@ export interface Fills {
   readonly points: Float64Array
   /** Panel behind each polygon (length start.length - 1), null where the polygons stand for no panel. */
   readonly panels: Int32Array | null
+  /** 1: covers; less for the light laid over tones. */
+  readonly opacity: number
 }
 
 /** Open lines of one style, as `Fills`; `closed` joins each last point to its first. */
@@ -105,10 +107,10 @@ export class Batch {
     return this.coordinates.length === 0
   }
 
-  fills(tone: Tone): Fills {
+  fills(tone: Tone, opacity = 1): Fills {
     const owned = this.owners.some((panel) => panel >= 0)
     return {
-      kind: 'fills', tone, start: Int32Array.from(this.starts), points: Float64Array.from(this.coordinates),
+      kind: 'fills', tone, opacity, start: Int32Array.from(this.starts), points: Float64Array.from(this.coordinates),
       panels: owned ? Int32Array.from(this.owners) : null,
     }
   }

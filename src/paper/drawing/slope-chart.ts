@@ -1,0 +1,226 @@
+/**
+ * The slope chart: Maxwell's reciprocal figure, a point a panel at the tangent of its slope in the direction its water
+ * goes, joined wherever two panels share a joint. Each edge is perpendicular to its joint and as long as its form force.
+ */
+import { panelName } from '../../plan/names.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import { Batch, dots, label, polyline, type DisplayList, type Item } from './display-list.ts'
+import { fallPoint } from './fall.ts'
+import { figure, slopeFigure, type SlopeUnit } from './figures.ts'
+import type { Joints } from './joint-kinds.ts'
+import type { Selection } from './plan-drawing.ts'
+import type { Reading } from './reading.ts'
+import { slopeReading } from './panel-readings.ts'
+
+export interface ChartWindow {
+  /** px for a slope of 1 (45 degrees). */
+  readonly scale: number
+  readonly middleX: number
+  readonly middleY: number
+}
+
+export interface SlopeChartOptions {
+  readonly width: number
+  readonly height: number
+  readonly joints: Joints
+  readonly leastSlope: number | null
+  readonly unit: SlopeUnit
+  readonly window: ChartWindow | null
+  readonly selection: Selection | null
+  /** Gradients before the edit in hand, gx gy ..: how far each panel has moved is drawn; null: no edit in hand. */
+  readonly before: Float64Array | null
+  readonly tones: Reading | null
+}
+
+/** Rings that may be drawn, degrees; those within the figure and the next one beyond it are. */
+const rings = [1, 2, 5, 10, 15, 20, 25, 30, 45, 60, 75]
+
+/** The window in which the whole figure lies, its middle on the level panel. */
+export function chartFit(answer: Answer, width: number, height: number): ChartWindow {
+  const outer = outerRing(answer)
+  const radius = Math.max(20, Math.min(width - 74, height - 84) / 2)
+  return { scale: radius / Math.tan((outer * Math.PI) / 180), middleX: width / 2, middleY: (height - 16) / 2 }
+}
+
+function outerRing(answer: Answer): number {
+  const steepest = steepestSlope(answer)
+  return rings.find((ring) => ring >= steepest * 1.02) ?? 75
+}
+
+function steepestSlope(answer: Answer): number {
+  let most = 0
+  const gradient = answer.roof?.gradient ?? new Float64Array()
+  for (let i = 0; i < gradient.length; i += 2) most = Math.max(most, Math.hypot(gradient[i], gradient[i + 1]))
+  return (Math.atan(most) * 180) / Math.PI
+}
+
+export function slopeChart(answer: Answer, options: SlopeChartOptions): DisplayList {
+  const { plan, roof } = answer
+  const { width, height } = options
+  const window = options.window ?? chartFit(answer, width, height)
+  const items: Item[] = [...rose(answer, window, options)]
+  const title = 'Slope chart'
+  if (roof === null) return { width, height, title, description: 'No roof yet.', items }
+
+  const points = new Float64Array(2 * plan.panelCount)
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    const [x, y] = fallPoint(roof.gradient, p)
+    points[2 * p] = window.middleX + window.scale * x
+    points[2 * p + 1] = window.middleY - window.scale * y
+  }
+  items.push(...edges(answer, points, options))
+  if (options.before !== null) items.push(...moves(answer, points, options.before, window))
+  items.push(...panelPoints(answer, points, options))
+  items.push(...callouts(answer, points, options, window))
+  const slopes = slopeReading(answer, options.leastSlope)
+  return {
+    width, height, title, items,
+    description: `Slopes from ${slopeFigure(slopes.smallest, options.unit)} to ${slopeFigure(slopes.largest, options.unit)}; a point a panel, where it falls to.`,
+  }
+}
+
+function rose(answer: Answer, window: ChartWindow, { leastSlope, unit }: SlopeChartOptions): Item[] {
+  const outer = outerRing(answer)
+  const radius = (degrees: number): number => window.scale * Math.tan((degrees * Math.PI) / 180)
+  const { middleX: x, middleY: y } = window
+  const most = radius(outer)
+  const items: Item[] = []
+  if (leastSlope !== null && leastSlope > 0) {
+    const r = radius(leastSlope)
+    items.push(dots([x, y], r, 'faultWash', 'fault', 1))
+    const dashes = new Batch()
+    for (let row = -Math.floor(r / 5); row * 5 < r; row += 1) {
+      const half = Math.sqrt(Math.max(0, r * r - 25 * row * row))
+      for (let at = -half + (row % 2 === 0 ? 1 : 5); at + 5 < half; at += 9) dashes.segment(x + at, y + 5 * row, x + at + 5, y + 5 * row)
+    }
+    if (!dashes.empty) items.push(dashes.strokes('water', 0.9))
+  }
+  const shown = rings.filter((ring) => ring <= outer && radius(ring) > 14)
+  const kept = shown.filter((ring, i) => ring === outer || i % Math.max(1, Math.round(shown.length / 4)) === 0)
+  for (const ring of kept) {
+    const r = radius(ring)
+    items.push(dots([x, y], r, null, ring === outer ? 'rule' : 'hair', ring === outer ? 1 : 0.9))
+    items.push(label(x + r * Math.SQRT1_2 + 3, y - r * Math.SQRT1_2 - 2, slopeFigure(ring, unit, unit === 'degrees' ? 0 : 1), { size: 11, plate: true }))
+  }
+  for (let k = 0; k < 8; k += 1) {
+    const c = Math.cos((k * Math.PI) / 4)
+    const s = Math.sin((k * Math.PI) / 4)
+    items.push(polyline('rule', [x + c * (most - 4), y + s * (most - 4), x + c * (most + 4), y + s * (most + 4)]))
+  }
+  items.push(
+    label(x, y - most - 8, 'N', { tone: 'ink', anchor: 'middle' }), label(x, y + most + 16, 'S', { tone: 'ink', anchor: 'middle' }),
+    label(x + most + 8, y + 4, 'E', { tone: 'ink' }), label(x - most - 8, y + 4, 'W', { tone: 'ink', anchor: 'end' }),
+    polyline('rule', [x - 4, y, x + 4, y]), polyline('rule', [x, y - 4, x, y + 4]),
+  )
+  return items
+}
+
+/** Over 2,000 panels only the edges of the selected panel's neighbours: the rest would be a blot. */
+const manyPanels = 2000
+
+function edges(answer: Answer, points: Float64Array, { joints, selection }: SlopeChartOptions): Item[] {
+  const { plan, roof } = answer
+  const ridges = new Batch()
+  const valleys = new Batch()
+  const flush = new Batch()
+  const chosen = new Batch()
+  const many = plan.panelCount > manyPanels
+  for (let j = 0; j < plan.jointCount; j += 1) {
+    const p = plan.panelOf[2 * j]
+    const q = plan.panelOf[2 * j + 1]
+    const isChosen = selection !== null && selection.kind === 'joint' && selection.index === j
+    const near = selection !== null && selection.kind === 'panel' && (selection.index === p || selection.index === q)
+    if (many && !isChosen && !near) continue
+    const batch = isChosen ? chosen : roof?.isNear === true ? flush : joints.kind[j] === 1 ? valleys : ridges
+    batch.segment(points[2 * p], points[2 * p + 1], points[2 * q], points[2 * q + 1])
+  }
+  const items: Item[] = []
+  // A near roof closes only nearly: its figure is drawn broken so that it is not taken for an exact one.
+  if (!flush.empty) items.push(flush.strokes('before'))
+  if (!ridges.empty) items.push(ridges.strokes('thin'))
+  if (!valleys.empty) items.push(valleys.strokes('valley', 1.05))
+  if (!chosen.empty) items.push(chosen.strokes('selected'))
+  return items
+}
+
+function moves(answer: Answer, points: Float64Array, before: Float64Array, window: ChartWindow): Item[] {
+  const batch = new Batch()
+  for (let p = 0; p < answer.plan.panelCount; p += 1) {
+    const [x, y] = fallPoint(before, p)
+    const px = window.middleX + window.scale * x
+    const py = window.middleY - window.scale * y
+    if (Math.hypot(px - points[2 * p], py - points[2 * p + 1]) > 1) batch.segment(px, py, points[2 * p], points[2 * p + 1])
+  }
+  return batch.empty ? [] : [batch.strokes('moved')]
+}
+
+function panelPoints(answer: Answer, points: Float64Array, { leastSlope, tones }: SlopeChartOptions): Item[] {
+  const { plan } = answer
+  const reading = tones !== null && tones.panelClass !== null ? tones : slopeReading(answer, leastSlope)
+  const many = plan.panelCount > manyPanels
+  const byClass = reading.panelClasses.map(() => [] as number[])
+  const paper: number[] = []
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    const k = reading.panelClass === null ? -1 : reading.panelClass[p]
+    const into = k < 0 ? paper : byClass[k]
+    into.push(points[2 * p], points[2 * p + 1])
+  }
+  const items: Item[] = []
+  if (paper.length > 0) items.push(dots(paper, many ? 1.5 : 2.8, 'paper', 'ink', many ? 0 : 1))
+  for (const [k, list] of byClass.entries()) {
+    if (list.length === 0) continue
+    const { tone, flagged } = reading.panelClasses[k]
+    items.push(many ? dots(list, 1.5, flagged ? 'fault' : 'ink', null, 0) : dots(list, 2.8, tone, flagged ? 'fault' : 'ink', 1))
+  }
+  return items
+}
+
+/** The selected panel and the steepest one, named on plates outside the figure. */
+function callouts(answer: Answer, points: Float64Array, { selection, unit }: SlopeChartOptions, window: ChartWindow): Item[] {
+  const { roof } = answer
+  if (roof === null) return []
+  const items: Item[] = []
+  const slopes = slopeReading(answer, null)
+  let steepest = 0
+  for (let p = 1; p < slopes.value.length; p += 1) if (slopes.value[p] > slopes.value[steepest]) steepest = p
+  const chosen = selection !== null && selection.kind === 'panel' ? selection.index : -1
+  if (slopes.value.length > 0 && steepest !== chosen) {
+    const x = points[2 * steepest]
+    const y = points[2 * steepest + 1]
+    const right = x < window.middleX
+    items.push(label(x + (right ? -8 : 8), y + 4, `${panelName(steepest)} ${slopeFigure(slopes.value[steepest], unit)}`, { tone: 'ink', plate: true, anchor: right ? 'end' : 'start' }))
+  }
+  if (chosen >= 0 && chosen < slopes.value.length) {
+    const x = points[2 * chosen]
+    const y = points[2 * chosen + 1]
+    const tx = window.middleX - 0.52 * (window.middleX - 8)
+    const ty = 2 * window.middleY - 34
+    items.push(polyline('held', [x, y, tx, ty - 12]), dots([x, y], 5, null, 'hand', 2))
+    items.push(label(tx, ty, `${panelName(chosen)} ${slopeFigure(slopes.value[chosen], unit)}`, { tone: 'hand', bold: true, anchor: 'middle', plate: true }))
+  }
+  return items
+}
+
+/** The panel whose point is nearest to a sheet pixel within `reach` px, -1 when there is none. */
+export function panelAtChartPoint(answer: Answer, window: ChartWindow, px: number, py: number, reach: number): number {
+  if (answer.roof === null) return -1
+  let best = -1
+  let least = reach * reach
+  for (let p = 0; p < answer.plan.panelCount; p += 1) {
+    const [x, y] = fallPoint(answer.roof.gradient, p)
+    const dx = window.middleX + window.scale * x - px
+    const dy = window.middleY - window.scale * y - py
+    if (dx * dx + dy * dy <= least) {
+      least = dx * dx + dy * dy
+      best = p
+    }
+  }
+  return best
+}
+
+/** One line under the chart: how many panels lie in each ring, for plans whose points merge. */
+export function ringCounts(answer: Answer): string {
+  const reading = slopeReading(answer, null)
+  return reading.panelClasses.filter((entry) => entry.count > 0)
+    .map((entry) => `${Number.isFinite(entry.upTo) ? `to ${entry.upTo}°` : 'above'} ${figure(entry.count)}`).join(', ')
+}
