@@ -4,11 +4,13 @@
  *
  * Tried and dropped: joining lines as strings and encoding once (three times as long, and twice the memory for a moment).
  */
-import { fixed, shortest } from '../base/decimal.ts'
+import { fixed, shortest, significant } from '../base/decimal.ts'
 import { assert } from '../base/assert.ts'
 
 const zero = 48
 const minus = 45
+/** 10^0 .. 10^15, all exact. */
+const powersOfTen = [1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15]
 /** Integers below this are split into digits with 32-bit arithmetic. */
 const smallIntegers = 2 ** 31
 
@@ -52,10 +54,10 @@ export class ByteSink {
 
   /**
    * A number with at most `decimals` decimals, trailing zeros kept or dropped; the decimal sign by its code. The value
-   * is rounded as `rounded` does. Falls back to strings where value 10^d is no exact integer any more.
+   * is rounded as `rounded` does. Falls back to strings where value 10^d is no exact integer any more; d is at most 15.
    */
   decimal(value: number, decimals: number, keepZeros: boolean, point = 46): void {
-    const scale = 10 ** decimals
+    const scale = powersOfTen[decimals] ?? NaN
     const scaled = Math.round(Math.abs(value) * scale)
     if (!(scaled < 9007199254740992)) {
       assert(Number.isFinite(value), 'a number to be written is finite')
@@ -84,6 +86,13 @@ export class ByteSink {
     this.bytes[this.length] = point
     this.length += 1
     this.natural(rest, places)
+  }
+
+  /** At most `digits` significant digits, zeros at the end dropped. */
+  significant(value: number, digits: number, point = 46): void {
+    const decimals = value === 0 ? 0 : digits - 1 - Math.floor(Math.log10(Math.abs(value)))
+    if (decimals >= 0 && decimals < powersOfTen.length) this.decimal(value, decimals, false, point)
+    else this.text(significant(value, digits).replace('.', String.fromCharCode(point)))
   }
 
   /** The shortest digits that read back as exactly this double. */

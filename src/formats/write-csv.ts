@@ -3,7 +3,6 @@
  * is the same with semicolons. A text cell that a spreadsheet would run as a formula gets an apostrophe in front; numbers
  * stay numbers, also negative ones.
  */
-import { significant } from '../base/decimal.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Column, Table } from '../base/table.ts'
 import { ByteSink } from './byte-sink.ts'
@@ -58,7 +57,6 @@ function cellWriter(column: Column, separator: string, point: number, sink: Byte
 type Digits = Extract<Column, { kind: 'number' }>['digits']
 
 function numberWriter(values: Float64Array | Int32Array, digits: Digits, point: number, sink: ByteSink): (row: number) => void {
-  const sign = String.fromCharCode(point)
   if (values instanceof Int32Array) return (row) => sink.integer(values[row])
   /** Puts down what is a number; an empty cell says that there is none. */
   const unlessEmpty = (put: (value: number) => void) => (row: number): void => {
@@ -67,7 +65,7 @@ function numberWriter(values: Float64Array | Int32Array, digits: Digits, point: 
   }
   if (digits === 'shortest') return unlessEmpty((value) => sink.shortest(value, point))
   if ('decimals' in digits) return unlessEmpty((value) => sink.decimal(value, digits.decimals, true, point))
-  return unlessEmpty((value) => sink.text(significant(value, digits.significant).replace('.', sign)))
+  return unlessEmpty((value) => sink.significant(value, digits.significant, point))
 }
 
 /** A text cell, quoted where the format asks for it. */

@@ -4,6 +4,7 @@ import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { foldDegrees } from './bearing.ts'
 import type { PanelPlanes } from './panel-planes.ts'
+import { norm } from './norm.ts'
 
 /** What a joint does in this roof. */
 export const foldWords = ['flush', 'ridge', 'valley'] as const
@@ -37,7 +38,7 @@ export function* jointFolds(plan: Plan, planes: PanelPlanes): Steps<Folds> {
     const ly = gradient[2 * left + 1]
     const rx = gradient[2 * right]
     const ry = gradient[2 * right + 1]
-    const across = ((lx - rx) * -dy + (ly - ry) * dx) / Math.hypot(dx, dy)
+    const across = ((lx - rx) * -dy + (ly - ry) * dx) / norm(dx, dy)
     jump[joint] = across
     squares += across * across
     fold[joint] = foldDegrees(lx, ly, rx, ry)

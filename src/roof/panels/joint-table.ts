@@ -5,6 +5,7 @@ import type { Table } from '../../base/table.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Roof } from '../answer/answer.ts'
 import { ascending } from './ascending.ts'
+import { norm } from './norm.ts'
 import { foldWords, jointFolds } from './joint-folds.ts'
 import type { PanelPlanes } from './panel-planes.ts'
 
@@ -30,8 +31,8 @@ export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<
     const b = origin[2 * joint + 1]
     from[joint] = a
     to[joint] = b
-    const planLength = Math.hypot(x[b] - x[a], y[b] - y[a])
-    length[joint] = Math.hypot(planLength, roof.heights[b] - roof.heights[a]) * metre
+    const planLength = norm(x[b] - x[a], y[b] - y[a])
+    length[joint] = norm(x[b] - x[a], y[b] - y[a], roof.heights[b] - roof.heights[a]) * metre
     const angle = fold[joint]
     dihedral[joint] = word[joint] === 1 ? 180 - angle : 180 + angle
     // What is left at a flush joint is rounding, not a figure.

@@ -9,6 +9,7 @@
  */
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
+import { norm } from './norm.ts'
 
 export interface PanelPlanes {
   /** Areas in the plan's unit squared (length panelCount each). */
@@ -54,13 +55,13 @@ export function* panelPlanes(plan: Plan, heights: Float64Array): Steps<PanelPlan
       ax += fromY * toZ - fromZ * toY
       ay += fromZ * toX - fromX * toZ
       az += fromX * toY - fromY * toX
-      round += Math.hypot(toX - fromX, toY - fromY, toZ - fromZ)
+      round += norm(toX - fromX, toY - fromY, toZ - fromZ)
       fromX = toX
       fromY = toY
       fromZ = toZ
     }
     planArea[panel] = az / 2
-    area[panel] = Math.hypot(ax, ay, az) / 2
+    area[panel] = norm(ax, ay, az) / 2
     perimeter[panel] = round
     gradient[2 * panel] = -ax / az
     gradient[2 * panel + 1] = -ay / az
