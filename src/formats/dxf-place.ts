@@ -1,0 +1,134 @@
+/**
+ * The shapes of a DXF put in place: blocks unfolded, layers judged, curves made chords, all of it into a Sketch.
+ *
+ * Every unfolding is counted against fixed limits, so that a small file of blocks in blocks cannot fill the memory.
+ */
+import { fail, ok, type Problem, type Result } from '../base/result.ts'
+import type { Steps } from '../base/steps.ts'
+import { interiorPoints, mostChords } from './chords.ts'
+import { placedCurve, placedPoints } from './dxf-curves.ts'
+import type { DxfFile } from './dxf-file.ts'
+import { tilted } from './dxf-head.ts'
+import { after, inPlace, placedPoint, shift, type Placing } from './dxf-placing.ts'
+import type { Insert, Mesh, Path, Shape } from './dxf-shapes.ts'
+import { DxfSheet } from './dxf-sheet.ts'
+
+/** Entities that a drawing may come to once its blocks are unfolded. */
+export const mostEntities = 2_000_000
+/** Blocks within blocks. */
+export const deepest = 32
+
+const shapesPerStep = 2_000
+
+/** Where shapes are being put: how, in which block, on which layer. */
+interface Surroundings {
+  readonly placing: Placing
+  /** Layer that "0" means here; null in the model itself. */
+  readonly layer: string | null
+  /** Names (lower case) of the blocks that are open. */
+  readonly open: readonly string[]
+}
+
+/** Puts the whole model into the sheet. */
+export function* placeModel(file: DxfFile, sheet: DxfSheet): Steps<Result<null>> {
+  const problem = yield* new Placer(file, sheet).shapes(file.shapes, { placing: inPlace, layer: null, open: [] })
+  if (problem !== null) return { ok: false, problem }
+  for (const block of file.blocks.values()) {
+    if (!/^[*$]paper_space/i.test(block.name)) continue
+    for (const { kind, layer } of block.shapes) sheet.sketch.leaveOut(`${kind}, paper space`, layer)
+  }
+  return ok(null)
+}
+
+class Placer {
+  private count = 0
+
+  constructor(private readonly file: DxfFile, private readonly sheet: DxfSheet) {}
+
+  *shapes(shapes: readonly Shape[], around: Surroundings): Steps<Problem | null> {
+    for (const shape of shapes) {
+      this.count += 1
+      if (this.count % shapesPerStep === 0) yield { stage: 'Unfolding blocks', done: Math.min(1, this.count / mostEntities) }
+      const layer = shape.layer === '0' && around.layer !== null ? around.layer : shape.layer
+      const problem = this.count > mostEntities ? tooMany(shape) : shape.shape === 'insert' ? yield* this.insert(shape, layer, around) : this.entity(shape, layer, around)
+      if (problem !== null) return problem
+    }
+    return null
+  }
+
+  private entity(shape: Exclude<Shape, Insert>, layer: string, { placing }: Surroundings): Problem | null {
+    const { sheet } = this
+    const reason = shape.onPaper ? 'paper space' : shape.invisible ? 'invisible' : sheet.hides(layer)
+    if (reason !== null || shape.shape === 'other') {
+      sheet.sketch.leaveOut(reason === null ? shape.kind : `${shape.kind}, ${reason}`, layer)
+      return null
+    }
+    switch (shape.shape) {
+      case 'path': return this.path(shape, layer, placing)
+      case 'mesh': return this.mesh(shape, layer, placing)
+      case 'mark': return sheet.mark(placedPoint(placing, ...shape.point), layer, shape)
+    }
+  }
+
+  private path(path: Path, layer: string, placing: Placing): Problem | null {
+    const points = placing === inPlace ? path.points : placedPoints(placing, path.points)
+    const heights = path.heights || tilted([0, 0, placing[8], 0, 0, 0, placing[9]])
+    if (path.curves === null) return this.sheet.path(points, path.closed, heights, layer, path)
+    const along: number[] = []
+    let chords = 0
+    for (let i = 0; 3 * i < points.length; i += 1) {
+      along.push(points[3 * i], points[3 * i + 1], points[3 * i + 2])
+      const curve = path.curves[i] ?? null
+      if (curve === null) continue
+      const inner = interiorPoints(placing === inPlace ? curve : placedCurve(placing, curve), this.sheet.sagitta)
+      if (inner === null || along.length + inner.length > 3 * mostChords) return tooManyChords(path)
+      for (const value of inner) along.push(value)
+      chords += inner.length / 3 + 1
+    }
+    this.sheet.chorded(along, chords)
+    return this.sheet.path(along, path.closed, heights, layer, path)
+  }
+
+  private mesh(mesh: Mesh, layer: string, placing: Placing): Problem | null {
+    return this.sheet.mesh(placing === inPlace ? mesh.points : placedPoints(placing, mesh.points), mesh, layer)
+  }
+
+  private *insert(insert: Insert, layer: string, around: Surroundings): Steps<Problem | null> {
+    const { sheet, file } = this
+    const key = insert.block.toLowerCase()
+    const block = file.blocks.get(key)
+    const reason = insert.onPaper ? 'paper space' : insert.invisible ? 'invisible' : sheet.hides(layer) === 'layer frozen' ? 'layer frozen' : null
+    const absent = block === undefined ? 'its block is not in the file' : block.external ? 'its block is in another file' : null
+    if (block === undefined || absent !== null || reason !== null) {
+      sheet.sketch.leaveOut(`INSERT, ${reason ?? absent}`, layer)
+      return null
+    }
+    const where = { line: insert.line, entity: insert.entity }
+    if (around.open.includes(key)) return fail('block-in-itself', 'its block contains itself', where, 'explode the block or leave it out').problem
+    if (around.open.length >= deepest) return fail('too-deep', `its block is nested more than ${deepest} deep`, where, 'explode the block or leave it out').problem
+    const { columns, rows, columnStep, rowStep } = insert
+    if (columns * rows > mostEntities) return tooMany(insert)
+    const open = [...around.open, key]
+    const [x, y, z] = block.base
+    for (let row = 0; row < rows; row += 1) {
+      for (let column = 0; column < columns; column += 1) {
+        this.count += 1
+        const offset = [0, 1, 2].map((k) => column * columnStep[k] + row * rowStep[k])
+        const placing = after(around.placing, after(shift(offset[0], offset[1], offset[2]), after(insert.placing, shift(-x, -y, -z))))
+        const problem = yield* this.shapes(block.shapes, { placing, layer, open })
+        if (problem !== null) return problem
+        if (this.count > mostEntities) return tooMany(insert)
+      }
+      yield { stage: 'Unfolding blocks', done: Math.min(1, this.count / mostEntities) }
+    }
+    return null
+  }
+}
+
+function tooMany({ line, entity }: Shape): Problem {
+  return fail('too-many', `with its blocks unfolded the drawing has more than ${mostEntities} entities`, { line, entity }, 'export only the panels').problem
+}
+
+function tooManyChords({ line, entity }: Shape): Problem {
+  return fail('too-many', `it would take more than ${mostChords} chords`, { line, entity }, 'allow a larger sagitta (--sagitta) or check the unit').problem
+}
