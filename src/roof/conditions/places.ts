@@ -118,13 +118,13 @@ function nodeAt(plan: Plan, spot: Spot, within_mm: number): Result<number> {
   let best = -1
   let least = Infinity
   for (let n = 0; n < plan.nodeCount; n += 1) {
-    const distance = Math.hypot(plan.work[2 * n] - x, plan.work[2 * n + 1] - y)
-    if (distance < least) {
-      least = distance
+    const [dx, dy] = [plan.work[2 * n] - x, plan.work[2 * n + 1] - y]
+    if (dx * dx + dy * dy < least) {
+      least = dx * dx + dy * dy
       best = n
     }
   }
-  const mm = least * plan.frame.span * conversion(plan.unit, 'mm')
+  const mm = Math.sqrt(least) * plan.frame.span * conversion(plan.unit, 'mm')
   if (mm <= within_mm) return ok(best)
   return fail('no-node-there', `no node lies within ${within_mm} mm of this point; the nearest, ${nodeName(best)}, is ${millimetres(mm)} away`,
     { at: spot })

@@ -1,0 +1,79 @@
+/**
+ * What a user can ask for besides the brief: one record that the command line and the page both fill. null (or false)
+ * stands for what was not asked; options win over the brief.
+ */
+import type { Unit } from '../../base/length.ts'
+import type { Point } from './condition.ts'
+import type { Shape } from './brief.ts'
+
+/** A length in the plan's unit, or as typed, with or without a unit of its own: "1.2m", "-40 mm", "3". */
+export type TypedLength = number | string
+
+/** The bytes of a file and the name it goes by in sentences. */
+export interface NamedFile {
+  readonly name: string
+  readonly bytes: Uint8Array
+}
+
+/** Levels by place, from a list of a surveyor or of points on a layer. */
+export interface LevelRow {
+  /** null: called by its number. */
+  readonly name: string | null
+  readonly at: Point
+  readonly level: number
+}
+
+export interface Levels {
+  /** Name of the file for sentences. */
+  readonly source: string
+  /** Unit of the rows; null: the plan's. */
+  readonly unit: Unit | null
+  readonly rows: readonly LevelRow[]
+}
+
+export interface Options {
+  // How the drawing is read.
+  /** The drawing's unit, whatever the file says. */
+  readonly unit: Unit | null
+  /** N of a scale 1:N. */
+  readonly scale: number | null
+  readonly layers: readonly string[] | null
+  readonly snap_mm: number | null
+  readonly sagitta_mm: number | null
+  /** In the plan's coordinates; null: the brief's. */
+  readonly voids: readonly Point[] | null
+  /** Codes of proposals that the user takes, or "all". */
+  readonly accept: readonly string[]
+
+  // What must hold.
+  /** free: the outer rim floats; level: it is level at the datum, or at this level. null: as the brief has it. */
+  readonly rim: 'free' | 'level' | { readonly level: TypedLength } | null
+  readonly datum: TypedLength | null
+  readonly levels: Levels | null
+  /** How far a level may lie from its node. */
+  readonly levelsWithin: TypedLength | null
+  /** All panels at this pitch, falling towards this bearing (default 180, south). */
+  readonly pitch_deg: number | null
+  readonly bearing_deg: number | null
+
+  // What it should look like.
+  readonly rise: TypedLength | null
+  readonly down: boolean
+  readonly shape: Shape | null
+  /** input: the heights in the drawing; none: not even those; or another file. */
+  readonly target: 'input' | 'none' | NamedFile | null
+
+  // How it is judged and written.
+  readonly flat_mm: number | null
+  readonly decimals: number | null
+  readonly near: boolean
+  readonly csv: 'comma' | 'semicolon'
+  readonly full: boolean
+}
+
+export const noOptions: Options = {
+  unit: null, scale: null, layers: null, snap_mm: null, sagitta_mm: null, voids: null, accept: [],
+  rim: null, datum: null, levels: null, levelsWithin: null, pitch_deg: null, bearing_deg: null,
+  rise: null, down: false, shape: null, target: null,
+  flat_mm: null, decimals: null, near: false, csv: 'comma', full: false,
+}
