@@ -62,7 +62,7 @@ export function planDrawing(answer: Answer, options: PlanDrawingOptions): Displa
     ...(detail.flagDots ? flagDots(plan, px, seen, reading) : []),
     ...(detail.nodes ? nodes(plan, px, width, height) : []),
     ...words(answer, px, seen, reading, detail, joints),
-    ...held(answer, px, detail),
+    ...held(answer, px, detail, width),
     ...selected(plan, px, options.selection),
   ]
   if (options.furniture) items.push(...furniture(answer, options, window))
@@ -321,7 +321,7 @@ function words(answer: Answer, px: Float64Array, seen: Uint8Array, reading: Read
 }
 
 /** Held runs along their edges, held nodes ringed, the condition's name once, on the side away from the middle. */
-function held(answer: Answer, px: Float64Array, detail: Detail): Item[] {
+function held(answer: Answer, px: Float64Array, detail: Detail, width: number): Item[] {
   const { plan, conditions } = answer
   const items: Item[] = []
   for (const condition of conditions) {
@@ -347,7 +347,9 @@ function held(answer: Answer, px: Float64Array, detail: Detail): Item[] {
     }
     const middle = condition.nodes[condition.nodes.length >> 1]
     if (middle !== undefined) {
-      items.push(label(px[2 * middle], px[2 * middle + 1] + 19, condition.soft ? `${condition.name}, soft` : condition.name, { tone: 'hand', anchor: 'middle', plate: true, bold: true }))
+      const x = px[2 * middle]
+      const anchor = x < 70 ? 'start' : x > width - 70 ? 'end' : 'middle'
+      items.push(label(x, px[2 * middle + 1] + 19, condition.soft ? `${condition.name}, soft` : condition.name, { tone: 'hand', anchor, plate: true, bold: true }))
     }
   }
   return items

@@ -85,7 +85,6 @@ function n(value: number): string {
 /** Text for XML: the five characters that mean something to it, and none that it forbids. */
 export function escaped(text: string): string {
   return text
-    // eslint-disable-next-line no-control-regex -- these are what XML 1.0 forbids
     .replace(/[\u0000-\u0008\u000b\u000c\u000e-\u001f\ufffe\uffff]/g, '')
     .replace(/[\ud800-\udbff](?![\udc00-\udfff])|(?<![\ud800-\udbff])[\udc00-\udfff]/g, '')
     .replace(/&/g, '&amp;').replace(/</g, '&lt;').replace(/>/g, '&gt;').replace(/"/g, '&quot;').replace(/'/g, '&#39;')
