@@ -1,4 +1,5 @@
 /** Plans for tests, made in code: every one is invented or follows from its definition. */
+import { Delaunay } from 'd3-delaunay'
 import { planFromFaces } from '../../src/plan/subdivision.ts'
 import type { Plan } from '../../src/plan/plan.ts'
 import type { Unit } from '../../src/base/length.ts'
@@ -42,3 +43,33 @@ export function grid(m: number, n: number, options: { bay?: number; loose?: numb
   }
   return plan(points, faces)
 }
+
+/**
+ * Voronoi cells of jittered sites over a rectangle of width : height = 3 : 2, clipped by mirrored sites, with the sites; by
+ * d3-delaunay. The paraboloid's tangent planes at the sites are a lift, exactly.
+ */
+export function voronoi(count: number, seed: number): { plan: Plan; sites: Points } {
+  const next = random(seed)
+  const columns = Math.round(Math.sqrt(count * 1.5))
+  const rows = Math.round(count / columns)
+  const sites: [number, number][] = []
+  for (let j = 0; j < rows; j += 1) for (let i = 0; i < columns; i += 1) sites.push([i + 0.15 + 0.7 * next(), j + 0.15 + 0.7 * next()])
+  const mirrored: [number, number][] = [...sites]
+  for (const [x, y] of sites) mirrored.push([-x, y], [2 * columns - x, y], [x, -y], [x, 2 * rows - y])
+  const diagram = Delaunay.from(mirrored).voronoi([-columns, -rows, 2 * columns, 2 * rows])
+  const points: [number, number][] = []
+  const known = new Map<string, number>()
+  const faces = sites.map((_, site) => {
+    const polygon = diagram.cellPolygon(site)!.slice(0, -1) as [number, number][]
+    const face = polygon.map(([x, y]) => {
+      const key = `${x.toFixed(9)} ${y.toFixed(9)}`
+      const at = known.get(key) ?? points.push([x, y]) - 1
+      known.set(key, at)
+      return at
+    })
+    return face.filter((node, k) => node !== face[(k + 1) % face.length])
+  })
+  return { plan: plan(points, faces), sites }
+}
+
+export const cells = (count: number, seed: number): Plan => voronoi(count, seed).plan

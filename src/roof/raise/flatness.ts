@@ -35,3 +35,21 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
   }
   return { corner, zone }
 }
+
+/** Whether the minimum zone of every panel at these working heights is at most `tolerance` (in span units). */
+export function everyPanelWithin(plan: Plan, heights: Float64Array, tolerance: number): boolean {
+  let points = new Float64Array(3 * 16)
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    const from = plan.panelStart[p], count = plan.panelStart[p + 1] - from
+    if (count === 3) continue
+    if (points.length < 3 * count) points = new Float64Array(6 * count)
+    for (let k = 0; k < count; k += 1) {
+      const node = plan.corner[from + k]
+      points[3 * k] = plan.work[2 * node]
+      points[3 * k + 1] = plan.work[2 * node + 1]
+      points[3 * k + 2] = heights[node]
+    }
+    if (minimumZone(points, 0, count) > tolerance) return false
+  }
+  return true
+}

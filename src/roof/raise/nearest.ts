@@ -14,6 +14,7 @@ import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { expand, projected, reduce, type LiftSpace } from '../stress/lift-space.ts'
 import { applyForm } from '../stress/panel-bases.ts'
+import type { Metric } from './soft.ts'
 
 /** Plan area that belongs to each node (an equal share of its panels), scaled to mean 1 (length nodeCount). */
 export function nodeAreas(plan: Plan): Float64Array {
@@ -51,32 +52,33 @@ export function* roofUnderConditions(space: LiftSpace, wish: Float64Array): Step
 }
 
 /**
- * From a roof that meets the conditions to the one nearest to the wish. `areas` is the diagonal of M.
- * Returns the roof; with no freedom it is the one given.
+ * From a roof that meets the conditions to the one nearest to the wish and to the soft conditions; `pull` is the right-hand
+ * side M t (see `soft.ts`). With no freedom it is the roof given.
  */
-export function* nearestLift(space: LiftSpace, roof: Float64Array, wish: Float64Array, areas: Float64Array): Steps<Float64Array> {
+export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metric, pull: Float64Array): Steps<Float64Array> {
   if (space.dimension === 0) return roof
   const n = roof.length
   const h = roof.slice()
-  const residual = h.map((value, i) => areas[i] * (wish[i] - value))
+  const residual = metric.apply(h).map((value, i) => pull[i] - value)
   let g = projected(space, residual)
   const direction = g.slice()
   let size = dot(residual, g)
-  const first = size
+  const first = dot(pull, projected(space, pull))
   const most = Math.min(space.dimension + 3, mostSteps)
-  for (let step = 0; step < most && size > nearestShare ** 2 * first && size > 0; step += 1) {
+  for (let step = 0; step < most && size > nearestShare ** 2 * first; step += 1) {
     yield { stage: 'Raising', done: 0.5 + (0.5 * step) / most }
-    let curvature = 0
-    for (let i = 0; i < n; i += 1) curvature += areas[i] * direction[i] * direction[i]
+    const turned = metric.apply(direction)
+    const curvature = dot(direction, turned)
     if (!(curvature > 0)) break
-    const step_ = dot(residual, direction) / curvature
+    const length = dot(residual, direction) / curvature
     for (let i = 0; i < n; i += 1) {
-      h[i] += step_ * direction[i]
-      residual[i] -= step_ * areas[i] * direction[i]
+      h[i] += length * direction[i]
+      residual[i] -= length * turned[i]
     }
     g = projected(space, residual)
     const sizeNow = dot(residual, g)
-    for (let i = 0; i < n; i += 1) direction[i] = g[i] + (sizeNow / size) * direction[i]
+    const share = sizeNow / size
+    for (let i = 0; i < n; i += 1) direction[i] = g[i] + share * direction[i]
     size = sizeNow
   }
   return h

@@ -7,8 +7,9 @@ import type { Steps } from '../../base/steps.ts'
 import type { LiftSpace } from '../stress/lift-space.ts'
 import { smoothestLifts } from '../stress/smoothest-lifts.ts'
 import { lessTilt } from '../stress/tilt-part.ts'
-import { nearestLift, roofUnderConditions } from './nearest.ts'
+import { nearestLift } from './nearest.ts'
 import { riseOf, springing, type RiseRule } from './rise.ts'
+import type { Metric } from './soft.ts'
 
 /** What the user wants the roof to be like. */
 export interface Wish {
@@ -17,6 +18,8 @@ export interface Wish {
   /** The rise to reach; null leaves the nearest roof as it is (a target without a rise). */
   readonly rise: number | null
   readonly rule: RiseRule
+  /** Move the roof so that its springing lies on the datum, where the conditions leave that open. */
+  readonly settle: boolean
 }
 
 export interface Choice {
@@ -32,8 +35,10 @@ export interface Ground {
   /** Dimensions of the space that fold nothing. */
   readonly tilts: number
   readonly areas: Float64Array
+  /** Node areas and soft conditions: what the nearest roof is nearest in. */
+  readonly metric: Metric
   readonly rim: Int32Array
-  /** The conditions stay met when all heights are scaled about the datum. */
+  /** The conditions, soft ones too, stay as they are met when all heights are scaled about the datum. */
   readonly scaleFree: boolean
   /** The conditions stay met when all heights are moved up or down together. */
   readonly shiftFree: boolean
@@ -41,19 +46,20 @@ export interface Ground {
 
 /** `start` is a roof that meets the conditions (see `roofUnderConditions`). */
 export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): Steps<Choice> {
-  const { space, areas, rim } = ground
+  const { space, metric, rim } = ground
   if (wish.rise === null) {
-    const heights = yield* nearestLift(space, start, wish.heights, areas)
+    const nearest = yield* nearestLift(space, start, metric, metric.pull(wish.heights, false))
+    const heights = settled(ground, nearest, wish)
     return { heights, notice: null, kept: keptOf(ground, heights, wish.heights) }
   }
   if (ground.scaleFree) {
-    const nearest = yield* nearestLift(space, start, wish.heights, areas)
+    const nearest = yield* nearestLift(space, start, metric, metric.pull(wish.heights, false))
     const kept = keptOf(ground, nearest, wish.heights)
     const shape = kept >= keptShare ? nearest : smoothest(ground, wish)
     const rise = shape === null ? 0 : riseOf(shape, rim, wish.rule)
     if (shape === null || rise === 0) return { heights: nearest, notice: null, kept }
     const scaled = shape.map((height) => (height * (wish.rise ?? 0)) / rise)
-    return { heights: sprung(ground, scaled, wish.rule), notice: kept >= keptShare ? null : smoothestSaid, kept }
+    return { heights: settled(ground, scaled, wish), notice: kept >= keptShare ? null : smoothestSaid, kept }
   }
   return yield* byAmplitude(ground, start, wish, wish.rise)
 }
@@ -62,10 +68,10 @@ const smoothestSaid = 'no roof under these conditions comes near the starting sh
 
 /** Roofs h(a) = h0 + a h1, h0 nearest to flat, h1 the answer to the wish: the a whose rise is the asked one. */
 function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: number): Steps<Choice> {
-  const { space, areas, rim } = ground
+  const { space, metric, rim } = ground
   const zero = new Float64Array(start.length)
-  const rest = yield* nearestLift(space, start, zero, areas)
-  let direction = yield* nearestLift(space, zero, wish.heights, areas)
+  const rest = yield* nearestLift(space, start, metric, metric.pull(zero, false))
+  let direction = yield* nearestLift(space, zero, metric, metric.pull(wish.heights, true))
   const kept = keptOf(ground, direction, wish.heights)
   let notice: string | null = null
   if (space.dimension > 0 && kept < keptShare) {
@@ -78,10 +84,10 @@ function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: nu
   const at = (a: number): Float64Array => rest.map((height, i) => height + a * direction[i])
   const riseAt = (a: number): number => riseOf(at(a), rim, wish.rule)
   const scale = riseOf(direction, rim, { ...wish.rule, datum: null }) + spread(direction)
-  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: rest, notice, kept }
+  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: settled(ground, rest, wish), notice, kept }
   const unit = asked / scale
   const a = amplitudeFor(riseAt, asked, unit)
-  return { heights: at(a), notice, kept }
+  return { heights: settled(ground, at(a), wish), notice, kept }
 }
 
 /**
@@ -133,10 +139,10 @@ function smoothest(ground: Ground, wish: Wish): Float64Array | null {
   return way.map((height) => sign * height)
 }
 
-/** Moved so that the springing lies on the datum, where the conditions allow it. */
-function sprung(ground: Ground, heights: Float64Array, rule: RiseRule): Float64Array {
-  if (!ground.shiftFree) return heights
-  const level = springing(heights, ground.rim, { ...rule, datum: null })
+/** Moved so that the springing lies on the datum, where that is wished and the conditions allow it. */
+function settled(ground: Ground, heights: Float64Array, wish: Wish): Float64Array {
+  if (!ground.shiftFree || !wish.settle) return heights
+  const level = springing(heights, ground.rim, { ...wish.rule, datum: null })
   return heights.map((height) => height - level)
 }
 
@@ -147,5 +153,3 @@ function keptOf(ground: Ground, heights: Float64Array, wish: Float64Array): numb
   const wished = size(wish)
   return wished > 0 ? size(heights) / wished : 0
 }
-
-export { roofUnderConditions }

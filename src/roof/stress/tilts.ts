@@ -1,66 +1,75 @@
 /**
  * Tilts: lifts with no stress, one affine function per part. A node that parts share ties their tilts, for it has one
- * height: one condition a shared node and further part, of which only the independent ones count.
+ * height; conditions tie them further. What is left is 3 per part less the rank of all these rows.
  */
-import { Matrix, SVD } from 'ml-matrix'
+import { rankWeight } from '../../base/geometry/tolerance.ts'
 import type { Plan } from '../../plan/plan.ts'
+import type { Rows } from '../conditions/rows.ts'
 
-/** Dimension of the tilts: 3 per part, less the rank of the ties between parts. */
-export function tiltDimension(plan: Plan): number {
-  const ties = tiesBetweenParts(plan)
-  if (ties.length === 0) return 3 * plan.partCount
-  // Parts that share nodes form clusters; most are small, so the rank is taken cluster by cluster.
-  let rank = 0
-  for (const cluster of clusters(plan.partCount, ties)) {
-    const column = new Map(cluster.parts.map((part, i) => [part, 3 * i]))
-    const rows = cluster.ties.map(({ node, first, second }) => {
-      const row = new Array<number>(3 * cluster.parts.length).fill(0)
-      const affine = [1, plan.work[2 * node], plan.work[2 * node + 1]]
-      affine.forEach((value, k) => {
-        row[(column.get(first) ?? 0) + k] = value
-        row[(column.get(second) ?? 0) + k] = -value
-      })
-      return row
-    })
-    rank += new SVD(new Matrix(rows), { autoTranspose: true }).rank
+/** Dimension of the tilts that keep the rows with all values zero; `rows` null: nothing is held. */
+export function tiltDimension(plan: Plan, rows: Rows | null): number {
+  const full = 3 * plan.partCount
+  const basis: Float64Array[] = []
+  for (const tie of tiesBetweenParts(plan)) addIndependent(basis, tie)
+  if (rows !== null) {
+    const partOfNode = nodeParts(plan)
+    for (let r = 0; r + 1 < rows.start.length && basis.length < full; r += 1) {
+      const row = new Float64Array(full)
+      for (let k = rows.start[r]; k < rows.start[r + 1]; k += 1) addAffine(row, plan, rows.node[k], partOfNode[rows.node[k]], rows.weight[k])
+      addIndependent(basis, row)
+    }
   }
-  return 3 * plan.partCount - rank
+  return full - basis.length
 }
 
-interface Tie {
-  readonly node: number
-  readonly first: number
-  readonly second: number
+/** Adds weight times the affine coordinates (1, x, y) of a node, seen from its part. */
+function addAffine(row: Float64Array, plan: Plan, node: number, part: number, weight: number): void {
+  row[3 * part] += weight
+  row[3 * part + 1] += weight * plan.work[2 * node]
+  row[3 * part + 2] += weight * plan.work[2 * node + 1]
 }
 
-/** For each node that k parts share, k - 1 ties from its first part to the others. */
-function tiesBetweenParts(plan: Plan): Tie[] {
-  const firstPart = new Int32Array(plan.nodeCount).fill(-1)
-  const ties = new Map<string, Tie>()
+/** Gram-Schmidt, twice: the row joins the orthonormal basis when something of it is left. */
+function addIndependent(basis: Float64Array[], row: Float64Array): void {
+  const before = length(row)
+  for (let pass = 0; pass < 2; pass += 1) {
+    for (const other of basis) {
+      let share = 0
+      for (let i = 0; i < row.length; i += 1) share += other[i] * row[i]
+      for (let i = 0; i < row.length; i += 1) row[i] -= share * other[i]
+    }
+  }
+  const after = length(row)
+  // A row that was small to begin with (a straight run's, on a tilt) is judged against heights of size 1.
+  if (after > rankWeight * Math.max(before, 1)) basis.push(row.map((value) => value / after))
+}
+
+const length = (row: Float64Array): number => Math.sqrt(row.reduce((sum, value) => sum + value * value, 0))
+
+/** Part of the first panel at each node. */
+function nodeParts(plan: Plan): Int32Array {
+  const partOf = new Int32Array(plan.nodeCount)
+  for (let p = plan.panelCount - 1; p >= 0; p -= 1) {
+    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) partOf[plan.corner[c]] = plan.partOf[p]
+  }
+  return partOf
+}
+
+/** For each node that k parts share, k - 1 rows: the first part's height there less another's. */
+function tiesBetweenParts(plan: Plan): Float64Array[] {
   if (plan.partCount === 1) return []
+  const first = nodeParts(plan)
+  const ties = new Map<string, Float64Array>()
   for (let p = 0; p < plan.panelCount; p += 1) {
-    const part = plan.partOf[p]
     for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) {
-      const node = plan.corner[c]
-      if (firstPart[node] < 0) firstPart[node] = part
-      else if (firstPart[node] !== part) ties.set(`${node} ${part}`, { node, first: firstPart[node], second: part })
+      const node = plan.corner[c], part = plan.partOf[p]
+      const key = `${node} ${part}`
+      if (first[node] === part || ties.has(key)) continue
+      const row = new Float64Array(3 * plan.partCount)
+      addAffine(row, plan, node, first[node], 1)
+      addAffine(row, plan, node, part, -1)
+      ties.set(key, row)
     }
   }
   return [...ties.values()]
-}
-
-/** Groups of parts that ties connect, each with its ties. */
-function clusters(partCount: number, ties: readonly Tie[]): { parts: number[]; ties: Tie[] }[] {
-  const group = Int32Array.from({ length: partCount }, (_, i) => i)
-  const root = (i: number): number => (group[i] === i ? i : (group[i] = root(group[i])))
-  for (const { first, second } of ties) group[root(first)] = root(second)
-  const found = new Map<number, { parts: number[]; ties: Tie[] }>()
-  for (const tie of ties) {
-    const key = root(tie.first)
-    const cluster = found.get(key) ?? { parts: [], ties: [] }
-    cluster.ties.push(tie)
-    for (const part of [tie.first, tie.second]) if (!cluster.parts.includes(part)) cluster.parts.push(part)
-    found.set(key, cluster)
-  }
-  return [...found.values()]
 }

@@ -1,0 +1,154 @@
+/**
+ * The main job: from a plan, its conditions and a wish to the verdict and the roof. Working heights h = (z - datum) / span
+ * throughout; whoever asks turns them into the plan's unit.
+ */
+import type { Steps } from '../../base/steps.ts'
+import type { Plan } from '../../plan/plan.ts'
+import type { ConditionRows } from '../conditions/condition-rows.ts'
+import { rowCount } from '../conditions/rows.ts'
+import { dualWalk } from '../stress/dual-walk.ts'
+import type { FreeRim } from '../stress/free-rim.ts'
+import { stressOfGradients } from '../stress/forces.ts'
+import { panelPlanes, squaredResidual } from '../stress/panel-bases.ts'
+import { clashOf, type FoundClash } from './clash.ts'
+import { integrate } from './integrate.ts'
+import { nearRoof } from './near-roof.ts'
+import { outerRimNodes, type RiseRule } from './rise.ts'
+import { roofOfChoice } from './roof-of-choice.ts'
+import { shapeHeights, type Shape } from './shapes.ts'
+import { metricOf } from './soft.ts'
+import { underConditions, type UnderConditions } from './under-conditions.ts'
+
+export interface RaiseQuestion {
+  readonly rows: ConditionRows
+  readonly names: readonly string[]
+  readonly shape: Shape
+  /** Heights to come near to (length nodeCount, no gaps); null: the shape is the wish. */
+  readonly target: Float64Array | null
+  /** Asked rise; null: the default (a tenth of the shorter side, or the target's own). */
+  readonly rise: number | null
+  readonly rule: RiseRule
+  /** A pitch for the whole roof was asked: one plane is then the answer, and no joint need fold. */
+  readonly pitched: boolean
+  /** Says whether all panels of these heights are flat within the tolerance. */
+  readonly within: (heights: Float64Array) => boolean
+}
+
+export interface RaisedRoof {
+  readonly heights: Float64Array
+  readonly gradient: Float64Array
+  readonly stress: Float64Array
+  readonly closingError: number
+  /** RMS |N^T h| over the flatness conditions, over RMS (h - mean). */
+  readonly residual: number
+  /** False: the near roof of a plan that has no exact one under the conditions. */
+  readonly exact: boolean
+  /** RMS distance, area-weighted, from the wish. */
+  readonly heightError: number
+}
+
+export interface Raised {
+  readonly under: UnderConditions
+  readonly clashes: readonly FoundClash[]
+  readonly verdict: 'lifts' | 'lifts in part' | 'lifts within tolerance' | 'does not lift'
+  /** Rise that was gone for, null: none. */
+  readonly riseAsked: number | null
+  readonly roof: RaisedRoof | null
+  readonly notices: readonly string[]
+}
+
+export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion): Steps<Raised> {
+  const { rows, names, rule } = question
+  const { wish, rise } = wishOf(plan, question)
+  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas)
+  const clashes = yield* clashesOf(plan, free, areas, question, under)
+
+  const folding = plan.jointCount - under.frozen.reduce((sum, value) => sum + value, 0)
+  const lifts = under.start !== null && (folding === plan.jointCount || question.pitched)
+  if (under.start !== null && (lifts || folding > 0)) {
+    const ground = {
+      space: under.space, tilts: under.tilts, areas, metric: metricOf(areas, rows.soft), rim: outerRimNodes(plan),
+      scaleFree: under.scaleFree && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
+    }
+    const choice = yield* roofOfChoice(ground, under.start, { heights: wish, rise, rule, settle: question.target === null })
+    return {
+      under, clashes, verdict: lifts ? 'lifts' : 'lifts in part', riseAsked: rise,
+      roof: exactRoof(plan, free, under, choice.heights, wish, areas), notices: choice.notice === null ? [] : [choice.notice],
+    }
+  }
+  // Rows that contradict each other leave nothing to come near to.
+  if (under.rowClashes.length > 0) return { under, clashes, verdict: 'does not lift', riseAsked: rise, roof: null, notices: [] }
+  const near = yield* nearRoof(under.space, wish, areas, question.within)
+  return {
+    under, clashes, verdict: near.within ? 'lifts within tolerance' : 'does not lift', riseAsked: rise,
+    roof: roofOf(plan, free, near.heights, wish, areas, false), notices: [],
+  }
+}
+
+/** Heights to come near to, and the rise to reach. */
+function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; rise: number | null } {
+  if (question.pitched) return { wish: new Float64Array(plan.nodeCount), rise: null }
+  if (question.target !== null) return { wish: question.target, rise: question.rise }
+  const { heights, shorterSide } = shapeHeights(plan, question.shape)
+  const rise = question.rise ?? shorterSide / 10
+  const amplitude = question.rule.down ? -rise : rise
+  return { wish: heights.map((height) => amplitude * height), rise }
+}
+
+function* clashesOf(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, under: UnderConditions): Steps<readonly FoundClash[]> {
+  if (under.rowClashes.length > 0) return under.rowClashes
+  if (under.start !== null || rowCount(question.rows.hard) === 0) return []
+  return [yield* clashOf(plan, free, question.rows.hard, question.names, areas)]
+}
+
+/** The chosen heights' stresses, integrated across the dual edges: the roof that is handed over. */
+function exactRoof(plan: Plan, free: FreeRim, under: UnderConditions, heights: Float64Array, wish: Float64Array, areas: Float64Array): RaisedRoof {
+  const { gradient, level } = panelPlanes(plan, free.bases, heights)
+  const stress = stressOfGradients(plan, gradient)
+  const walk = dualWalk(plan)
+  const rootPlane = new Float64Array(3 * plan.partCount)
+  walk.root.forEach((panel, part) => {
+    rootPlane[3 * part] = gradient[2 * panel]
+    rootPlane[3 * part + 1] = gradient[2 * panel + 1]
+    rootPlane[3 * part + 2] = level[panel] - gradient[2 * panel] * free.bases.middle[2 * panel] - gradient[2 * panel + 1] * free.bases.middle[2 * panel + 1]
+  })
+  const integrated = integrate(plan, stress, walk, rootPlane)
+  // A held node is held to the last digit; what integration adds there is within the closing error.
+  const { start, particular } = under.space.elimination
+  for (let node = 0; node < plan.nodeCount; node += 1) if (start[node] === start[node + 1]) integrated.heights[node] = particular[node]
+  return { ...roofOf(plan, free, integrated.heights, wish, areas, true), gradient: integrated.gradient, stress, closingError: integrated.closingError }
+}
+
+/** Figures of heights that are taken as they are; planes are the panels' least-squares planes. */
+function roofOf(plan: Plan, free: FreeRim, heights: Float64Array, wish: Float64Array, areas: Float64Array, exact: boolean): RaisedRoof {
+  const { gradient, level } = panelPlanes(plan, free.bases, heights)
+  const low = new Float64Array(plan.nodeCount).fill(Infinity)
+  const high = new Float64Array(plan.nodeCount).fill(-Infinity)
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) {
+      const node = plan.corner[c]
+      const z = level[p] + gradient[2 * p] * (plan.work[2 * node] - free.bases.middle[2 * p]) + gradient[2 * p + 1] * (plan.work[2 * node + 1] - free.bases.middle[2 * p + 1])
+      low[node] = Math.min(low[node], z)
+      high[node] = Math.max(high[node], z)
+    }
+  }
+  let closingError = 0
+  for (let i = 0; i < plan.nodeCount; i += 1) closingError = Math.max(closingError, high[i] - low[i])
+  let weight = 0, distance = 0
+  for (let i = 0; i < plan.nodeCount; i += 1) {
+    weight += areas[i]
+    distance += areas[i] * (heights[i] - wish[i]) ** 2
+  }
+  return {
+    heights, gradient, stress: stressOfGradients(plan, gradient), closingError,
+    residual: residualShare(plan, free, heights), exact, heightError: Math.sqrt(distance / weight),
+  }
+}
+
+function residualShare(plan: Plan, free: FreeRim, heights: Float64Array): number {
+  const conditions = plan.corner.length - 3 * plan.panelCount
+  const mean = heights.reduce((sum, height) => sum + height, 0) / heights.length
+  const spread = heights.reduce((sum, height) => sum + (height - mean) ** 2, 0)
+  if (conditions === 0 || spread === 0) return 0
+  return Math.sqrt(squaredResidual(plan, free.bases, heights) / conditions / (spread / heights.length))
+}

@@ -1,0 +1,84 @@
+/**
+ * What is left under the conditions: the set R of roofs that meet all hard ones, whether it is empty, how free it is, what
+ * is frozen in it. Rows that contradict each other are found on the way; conditions that contradict the flatness of the
+ * panels show as a roof that cannot be brought flat.
+ */
+import { clashHeight, tau } from '../../base/geometry/tolerance.ts'
+import type { Steps } from '../../base/steps.ts'
+import type { Plan } from '../../plan/plan.ts'
+import { eliminate, type RowClash } from '../conditions/eliminate.ts'
+import { homogeneous } from '../conditions/homogeneous.ts'
+import { rowCount, type Rows } from '../conditions/rows.ts'
+import type { FreeRim } from '../stress/free-rim.ts'
+import { flatGroups, frozenJoints } from '../stress/frozen-joints.ts'
+import { liftSpace, type LiftSpace } from '../stress/lift-space.ts'
+import { squaredResidual } from '../stress/panel-bases.ts'
+import { lessTilt } from '../stress/tilt-part.ts'
+import { tiltDimension } from '../stress/tilts.ts'
+import { roofUnderConditions } from './nearest.ts'
+
+export interface UnderConditions {
+  readonly space: LiftSpace
+  /** Contradictions among the rows themselves. */
+  readonly rowClashes: readonly RowClash[]
+  /** A roof that meets the conditions, the one near to the wish; null when R is empty. */
+  readonly start: Float64Array | null
+  /** Dimension of R, tilts included; null when R is empty. */
+  readonly freedomLeft: number | null
+  readonly tilts: number
+  readonly scaleFree: boolean
+  readonly shiftFree: boolean
+  readonly frozen: Uint8Array
+  readonly groupOf: Int32Array
+  readonly groupCount: number
+}
+
+/** The roofs left by the hard rows; `names` are the conditions', `wish` heights in working measure (length nodeCount). */
+export function* underConditions(
+  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array,
+): Steps<UnderConditions> {
+  const { start, space, rowClashes } = yield* feasibleRoof(plan, free, hard, names, wish, areas)
+  if (rowCount(hard) === 0) {
+    const { tilts, frozen, groupOf, groupCount } = free
+    return { space, rowClashes, start, freedomLeft: space.dimension, tilts, scaleFree: true, shiftFree: true, frozen, groupOf, groupCount }
+  }
+  const tilts = tiltDimension(plan, hard)
+  const scaleFree = homogeneous(hard)
+  const frozen = start === null ? new Uint8Array(plan.jointCount).fill(1) : frozenJoints(space, tilts, scaleFree ? null : start)
+  return {
+    space, rowClashes, start, freedomLeft: start === null ? null : space.dimension, tilts, scaleFree,
+    shiftFree: sumsToZero(hard), frozen, ...flatGroups(plan, frozen),
+  }
+}
+
+/** The lift space of the rows and a roof in it that meets them, null when there is none. */
+export function* feasibleRoof(
+  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array,
+): Steps<{ space: LiftSpace; start: Float64Array | null; rowClashes: readonly RowClash[] }> {
+  if (rowCount(hard) === 0) return { space: free.space, start: yield* roofUnderConditions(free.space, wish), rowClashes: [] }
+  const { elimination, clashes } = eliminate(hard, plan.nodeCount, names)
+  const space = yield* liftSpace(plan, free.bases, elimination)
+  if (clashes.length > 0) return { space, start: null, rowClashes: clashes }
+  const roof = yield* roofUnderConditions(space, wish)
+  return { space, start: isLift(space, roof, areas) ? roof : null, rowClashes: [] }
+}
+
+/**
+ * Whether heights are a lift: out-of-flatness squared below tau times the height squared (the measure of the count), or
+ * below what heights that agree may differ by.
+ */
+function isLift(space: LiftSpace, heights: Float64Array, areas: Float64Array): boolean {
+  const { plan, bases } = space
+  const size = lessTilt(plan, heights, areas).reduce((sum, height) => sum + height * height, 0)
+  return squaredResidual(plan, bases, heights) <= tau * size + plan.nodeCount * clashHeight ** 2
+}
+
+/** Whether all rows hold for a constant: then a roof may be moved up and down as a whole. */
+function sumsToZero(rows: Rows): boolean {
+  for (let r = 0; r < rowCount(rows); r += 1) {
+    let sum = 0
+    for (let k = rows.start[r]; k < rows.start[r + 1]; k += 1) sum += rows.weight[k]
+    if (Math.abs(sum) > clashHeight) return false
+  }
+  return true
+}
