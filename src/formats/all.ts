@@ -4,11 +4,13 @@ import type { Steps } from '../base/steps.ts'
 import type { Drawing } from '../plan/drawing.ts'
 import { dxf } from './dxf.ts'
 import type { Format, FormatOptions, Source } from './format.ts'
+import { geojson } from './geojson.ts'
 import { obj } from './obj.ts'
 import { refused } from './recognise-refused.ts'
+import { svg } from './svg.ts'
 import { decodedText } from './text-encoding.ts'
 
-export const formats: readonly Format[] = [dxf, obj]
+export const formats: readonly Format[] = [dxf, obj, svg, geojson]
 
 /** Characters of the head by which a format is recognised: long enough for a licence in comments before the first line. */
 const headLength = 1 << 16

@@ -57,3 +57,42 @@ export const planeSine = 1e-5
 
 /** Slopes (rise over run) below this are level, folds below it flush: at 10 m run a hundred-millionth of a metre. */
 export const levelSlope = 1e-9
+
+/**
+ * A drawn path that ends within this share of its own size from its start is closed: relative commands with three
+ * decimals drift this far, and 0.2 mm in 2 m is no gap that anybody draws.
+ */
+export const closesWithin = 1e-4
+
+/** A rectangle whose sides lie within this share of the page from the page's own covers the page. */
+export const coversWithin = 1e-3
+
+/** Areas, lengths and direction sines of rectangles that differ by less than this share are equal: rounding of a hull in survey coordinates. */
+export const areaTie = 1e-9
+
+/** The plan tolerance of a drawing, in mm: line ends nearer than this are one node. Our own choice, below any joint's width. */
+export const snap_mm = 1
+
+/** The snap distance is never more than this share of the drawing's short edges (the 5 % quantile), whatever the unit. */
+export const snapShare = 1 / 20
+
+/** What moves by less than this share of the snap distance is rounding of the file's digits and no repair: 1 um of 1 mm. */
+export const silentShare = 1e-3
+
+/** Spacings of doubles, at the largest coordinate, that count as one point: transformed blocks differ by a few. */
+export const roundingSteps = 8
+
+/** Coordinates beyond this many metres are no building plan: survey coordinates in mm, taken for metres, reach 1e10. */
+export const farthest_m = 1e12
+
+/** A drawing smaller than this, in metres, is a point. */
+export const smallest_m = 1e-6
+
+/** Heights of one node that differ by more than this, in mm, contradict each other. */
+export const heightsAgree_mm = 10
+
+/** Crossings of lines that are taken at most: 100,000 panels of crossing lines have as many; more is a hatch or a text. */
+export const mostCrossings = 400_000
+
+/** Pairs of lines compared at most: about five seconds. */
+export const mostPairs = 1_000_000_000

@@ -1,0 +1,183 @@
+/**
+ * The pen that draws shapes into the plane of the paper: mm, y up. Points go through the map of the element, curves
+ * become chords there. Holds the subpaths of one element at a time.
+ */
+import { closesWithin } from '../base/geometry/tolerance.ts'
+import { interiorPoints, mostChords, type Curve } from './chords.ts'
+import { Doubles } from './growing.ts'
+import { ellipticArc, isStraight, mappedArc } from './svg-curves.ts'
+import type { Pen } from './svg-path.ts'
+import { identity, type Affine } from './svg-transform.ts'
+import { farthest } from './text-number.ts'
+
+/** One connected piece of a path, without points repeated in a row; of a ring the first point is not repeated. */
+export interface Subpath {
+  readonly xy: Float64Array
+  /** Whether it comes back to its start: by the command Z, or by a last point on the first. */
+  readonly ring: boolean
+}
+
+/** More points than a plan of a hundred thousand panels has, at about 60 bytes each. */
+export const mostPoints = 3_000_000
+
+export class Tracer implements Pen {
+  /** Why the element cannot be taken, null while it can. */
+  fault: string | null = null
+  /** Curves and chords of all elements so far. */
+  curveCount = 0
+  chordCount = 0
+  /** Where the curves start, x y x y .. */
+  readonly curveStart = new Doubles()
+  private readonly sagitta: number
+  private map: Affine = identity
+  private subpaths: Subpath[] = []
+  private readonly chain = new Doubles()
+  private readonly control = new Float64Array(8)
+  // The pen's place in the user's plane, and the point that Z goes back to.
+  private x = 0
+  private y = 0
+  private startX = 0
+  private startY = 0
+
+  private pointCount = 0
+
+  /** `sagitta` in mm of paper. */
+  constructor(sagitta: number) {
+    this.sagitta = sagitta
+  }
+
+  /** A new element with this map from its user units to the paper. */
+  begin(map: Affine): void {
+    this.map = map
+    this.subpaths = []
+    this.chain.length = 0
+    this.fault = null
+    this.x = this.y = this.startX = this.startY = 0
+  }
+
+  /** The subpaths of the element. Those of a single point draw nothing and are not among them. */
+  end(): readonly Subpath[] {
+    this.finishChain(false)
+    return this.subpaths
+  }
+
+  move(x: number, y: number): void {
+    this.finishChain(false)
+    this.x = this.startX = x
+    this.y = this.startY = y
+  }
+
+  line(x: number, y: number): void {
+    this.openChain()
+    this.put(this.mapX(x, y), this.mapY(x, y))
+    this.x = x
+    this.y = y
+  }
+
+  quadratic(x1: number, y1: number, x: number, y: number): void {
+    // The same curve as a cubic: its control points lie two thirds of the way to the quadratic's.
+    this.cubic(this.x + (2 / 3) * (x1 - this.x), this.y + (2 / 3) * (y1 - this.y), x + (2 / 3) * (x1 - x), y + (2 / 3) * (y1 - y), x, y)
+  }
+
+  cubic(x1: number, y1: number, x2: number, y2: number, x: number, y: number): void {
+    const p = this.control
+    this.setControl(0, this.x, this.y)
+    this.setControl(2, x1, y1)
+    this.setControl(4, x2, y2)
+    this.setControl(6, x, y)
+    if (!isStraight(p)) this.chorded({ kind: 'bezier', points: [p[0], p[1], 0, p[2], p[3], 0, p[4], p[5], 0, p[6], p[7], 0], weights: null })
+    this.line(x, y)
+  }
+
+  arc(rx: number, ry: number, turn: number, large: boolean, sweep: boolean, x: number, y: number): void {
+    const arc = ellipticArc(this.x, this.y, rx, ry, turn, large, sweep, x, y)
+    if (arc !== null) this.chorded(mappedArc(arc, this.map))
+    this.line(x, y)
+  }
+
+  /** A whole ellipse with axes along x and y, as a subpath of its own. */
+  ellipse(cx: number, cy: number, rx: number, ry: number): void {
+    this.move(cx + rx, cy)
+    this.chorded(mappedArc({ kind: 'arc', centre: [cx, cy, 0], a: [rx, 0, 0], b: [0, ry, 0], from: 0, to: 2 * Math.PI }, this.map))
+    this.close()
+  }
+
+  close(): void {
+    this.finishChain(true)
+    this.x = this.startX
+    this.y = this.startY
+  }
+
+  /** The points between the ends of a curve on the paper, from the pen's place. */
+  private chorded(curve: Curve): void {
+    if (this.fault !== null) return
+    const points = interiorPoints(curve, this.sagitta)
+    if (points === null) {
+      this.fault = `a curve would take more than ${mostChords} chords: allow a larger sagitta (--sagitta)`
+      return
+    }
+    this.openChain()
+    this.curveCount += 1
+    this.chordCount += points.length / 3 + 1
+    this.curveStart.push(this.mapX(this.x, this.y))
+    this.curveStart.push(this.mapY(this.x, this.y))
+    for (let i = 0; i < points.length; i += 3) this.put(points[i], points[i + 1])
+  }
+
+  private mapX(x: number, y: number): number {
+    return this.map[0] * x + this.map[2] * y + this.map[4] + 0
+  }
+
+  private mapY(x: number, y: number): number {
+    return this.map[1] * x + this.map[3] * y + this.map[5] + 0
+  }
+
+  private setControl(at: number, x: number, y: number): void {
+    this.control[at] = this.mapX(x, y)
+    this.control[at + 1] = this.mapY(x, y)
+  }
+
+  /** Starts a subpath at the pen's place, unless one is under way. After Z that place is the last start. */
+  private openChain(): void {
+    if (this.chain.length === 0) this.put(this.mapX(this.x, this.y), this.mapY(this.x, this.y))
+  }
+
+  private put(x: number, y: number): void {
+    if (!(Math.abs(x) <= farthest && Math.abs(y) <= farthest)) {
+      this.fault ??= 'a coordinate is beyond 1e12 mm on the paper'
+      return
+    }
+    if (this.pointCount >= mostPoints) {
+      this.fault ??= `the drawing has more than ${mostPoints} points`
+      return
+    }
+    const { chain } = this
+    const last = chain.length - 2
+    if (last >= 0 && chain.at(last) === x && chain.at(last + 1) === y) return
+    chain.push(x)
+    chain.push(y)
+    this.pointCount += 1
+  }
+
+  private finishChain(closed: boolean): void {
+    const { chain } = this
+    const back = returns(chain)
+    if (back && chain.length > 4) chain.length -= 2
+    if (chain.length >= 4) this.subpaths.push({ xy: chain.array(), ring: closed || back })
+    chain.length = 0
+  }
+}
+
+/** Whether a chain ends where it starts, to within `closesWithin` of its size. */
+function returns(chain: Doubles): boolean {
+  const end = chain.length - 2
+  if (end < 4) return false
+  let [left, right, low, high] = [Infinity, -Infinity, Infinity, -Infinity]
+  for (let i = 0; i <= end; i += 2) {
+    left = Math.min(left, chain.at(i))
+    right = Math.max(right, chain.at(i))
+    low = Math.min(low, chain.at(i + 1))
+    high = Math.max(high, chain.at(i + 1))
+  }
+  return Math.hypot(chain.at(end) - chain.at(0), chain.at(end + 1) - chain.at(1)) <= closesWithin * Math.hypot(right - left, high - low)
+}
