@@ -1,0 +1,64 @@
+/**
+ * A drawing made into a plan: units, nodes from points, edges that meet only at nodes, then panels, either the closed
+ * outlines themselves or every region that the lines bound.
+ *
+ * Coordinates are used less a centre (see `centreOf`), so that survey coordinates lose no digits, and nodes that were
+ * drawn are written back exactly as they were drawn.
+ */
+import type { Repair } from '../base/repair.ts'
+import { ok, placed, type Result } from '../base/result.ts'
+import type { Steps } from '../base/steps.ts'
+import type { Drawing } from './drawing.ts'
+import { heightsOfNodes } from './height-of-nodes.ts'
+import { lineFrame } from './line-work-frame.ts'
+import { panelFaces } from './line-work-panels.ts'
+import type { ReadOptions, ReadPlan } from './read-plan.ts'
+import { planFromFaces } from './subdivision.ts'
+import { millimetresPer, unitOfDrawing } from './unit-of-drawing.ts'
+
+/**
+ * The plan of a drawing, in the drawing's unit and coordinates (drawings on paper: in metres). Void points are given in
+ * the plan's coordinates. Fails with the place when the drawing is no plan; see the codes in `line-work-frame.ts`,
+ * `outlines-faces.ts`, `line-work-panels.ts` and `subdivision.ts`.
+ */
+export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<Result<ReadPlan>> {
+  const read = unitOfDrawing(drawing, options)
+  if (!read.ok) return read
+  const { unit, factor } = read.value
+  const mmPerUnit = millimetresPer(unit)
+  const frame = lineFrame(drawing, factor, mmPerUnit, options.snap_mm)
+  if (!frame.ok) return frame
+
+  const faces = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
+  if (!faces.ok) return faces
+  const { start, corner, x, y, nodeOfPoint, lineOfPanel } = faces.value
+  yield { stage: 'Building the plan', done: 0 }
+  const made = planFromFaces({ unit, x, y, start, corner })
+  if (!made.ok) {
+    const name = /^P(\d+)$/.exec(made.problem.where?.names?.[0] ?? '')
+    const line = name === null ? 0 : (lineOfPanel[Number(name[1]) - 1] ?? 0)
+    return line > 0 ? { ok: false, problem: placed(made.problem, { line }) } : made
+  }
+  const { plan, pointOfNode } = made.value
+
+  const planNode = new Int32Array(x.length).fill(-1)
+  pointOfNode.forEach((node, index) => { planNode[node] = index })
+  const { points } = drawing
+  const { heights, notices } = heightsOfNodes(
+    plan.nodeCount, nodeOfPoint.map((node) => (node < 0 ? -1 : planNode[node])), (point) => points[3 * point + 2] * factor, drawing.hasHeight, mmPerUnit,
+  )
+  const marks = new Float64Array(3 * drawing.marks.length)
+  drawing.marks.forEach((point, k) => {
+    for (let axis = 0; axis < 3; axis += 1) marks[3 * k + axis] = points[3 * point + axis] * factor
+  })
+  const repairs: Repair[] = [...drawing.repairs, ...read.value.repairs, ...faces.value.repairs]
+  return ok({
+    plan,
+    heights,
+    marks: { points: marks, layer: drawing.markLayer, layers: drawing.layers },
+    repairs,
+    questions: [],
+    leftOut: drawing.leftOut,
+    notices: [...read.value.notices, ...faces.value.notices, ...notices],
+  })
+}

@@ -1,0 +1,48 @@
+/** In which unit the plan is, and how the drawing's numbers become the plan's. */
+import { conversion, metres, type Unit } from '../base/length.ts'
+import type { Repair } from '../base/repair.ts'
+import { fail, ok, type Result } from '../base/result.ts'
+import type { Drawing } from './drawing.ts'
+import type { ReadOptions } from './read-plan.ts'
+
+export interface DrawingUnit {
+  /** The plan's unit: the file's for models, metres for drawings on paper. */
+  readonly unit: Unit
+  /** Plan coordinates = drawing coordinates * factor; 1 for models, so that their numbers stay as they are. */
+  readonly factor: number
+  readonly repairs: readonly Repair[]
+  readonly notices: readonly string[]
+}
+
+/**
+ * The user's unit beats the file's; with neither, a model is taken to be in metres. Lengths on paper are in mm (or the
+ * unit stated) and are multiplied by N of the scale 1:N. Fails when a scale is not positive or is given for a model.
+ */
+export function unitOfDrawing(drawing: Drawing, options: ReadOptions): Result<DrawingUnit> {
+  const { scale } = options
+  if (scale !== null && !(scale > 0 && Number.isFinite(scale))) {
+    return fail('bad-scale', `a scale of 1:${scale} cannot be`, null, 'write it like --scale 1:100')
+  }
+  if (drawing.onPaper) {
+    const from = options.unit ?? drawing.unit ?? 'mm'
+    const factor = conversion(from, 'm') * (scale ?? 1)
+    // A unit that the user states is the unit of the thing drawn, so no scale is missing then.
+    const notices = scale === null && options.unit === null ? ['No scale is given, so the sizes on paper are taken as they are (1:1).'] : []
+    return ok({ unit: 'm', factor: from === 'mm' && scale !== null && scale % 1000 === 0 ? scale / 1000 : factor, repairs: [], notices })
+  }
+  if (scale !== null && scale !== 1) {
+    return fail('scale-of-model', `a ${drawing.format} file holds true sizes, so a scale of 1:${scale} has no meaning`, null, 'leave --scale out, or state its unit with --unit')
+  }
+  const unit = options.unit ?? drawing.unit
+  if (unit !== null) return ok({ unit, factor: 1, repairs: [], notices: [] })
+  const assumed: Repair = {
+    code: 'unit-assumed', state: 'applied', count: 1, where: [],
+    message: 'The file states no unit: metres are assumed (--unit says otherwise).',
+  }
+  return ok({ unit: 'm', factor: 1, repairs: [assumed], notices: [] })
+}
+
+/** Millimetres in one unit of the plan. */
+export function millimetresPer(unit: Unit): number {
+  return metres[unit] * 1000
+}
