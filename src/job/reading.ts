@@ -1,0 +1,48 @@
+/** From bytes to a plan and a brief: the first half of every job. */
+import { conversion, metres } from '../base/length.ts'
+import { ok, placed, type Result } from '../base/result.ts'
+import type { Steps } from '../base/steps.ts'
+import { readDrawing } from '../formats/all.ts'
+import type { FormatOptions } from '../formats/format.ts'
+import type { Drawing } from '../plan/drawing.ts'
+import { planFromDrawing } from '../plan/from-drawing.ts'
+import { emptyBrief, readBrief, type Brief } from '../plan/project/brief.ts'
+import type { Options } from '../plan/project/options.ts'
+import { readOptionsOf } from '../plan/project/wishes.ts'
+import type { ReadPlan } from '../plan/read-plan.ts'
+import type { Request } from './request.ts'
+
+/** Largest distance of a curve from its chords where nobody says otherwise: 5 mm, our own choice. */
+export const defaultSagitta_mm = 5
+
+export interface Reading {
+  readonly brief: Brief
+  readonly read: ReadPlan
+}
+
+/** The plan and the brief of a request; a problem names the file it sits in. */
+export function* reading(request: Request): Steps<Result<Reading>> {
+  yield { stage: 'Reading', done: 0 }
+  const brief = request.brief === null ? ok(emptyBrief) : readBrief(request.brief.text, request.brief.name)
+  if (!brief.ok) return brief
+  const drawing = yield* readDrawing(request.source, formatOptions(request.options))
+  if (!drawing.ok) return drawing
+  const read = yield* planFromDrawing(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
+  if (!read.ok) return { ok: false, problem: placed(read.problem, { file: request.source.name }) }
+  return ok({ brief: brief.value, read: read.value })
+}
+
+/** What readers of formats need to know of the options. */
+export function formatOptions(options: Options): FormatOptions {
+  const { unit, scale, layers, sagitta_mm } = options
+  return {
+    layers,
+    sagitta: (sagitta_mm ?? defaultSagitta_mm) * conversion('mm', 'm'),
+    metresPerUnit: unit === null && scale === null ? null : metres[unit ?? 'mm'] * (scale ?? 1),
+  }
+}
+
+/** Lengths of a drawing on paper come out in metres whatever its page says. */
+function statedUnit(drawing: Drawing): Drawing['unit'] {
+  return drawing.onPaper ? 'm' : drawing.unit
+}

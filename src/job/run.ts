@@ -1,0 +1,62 @@
+/**
+ * The only road from the outside to an answer. The work itself is steppable (see `check.ts`); here it is driven, so that
+ * progress shows and an abort signal stops it between two steps.
+ */
+import { fail, ok, type Result } from '../base/result.ts'
+import { cancelled, drive, type DriveOptions, type Steps } from '../base/steps.ts'
+import type { Repair, LeftOut, Question } from '../base/repair.ts'
+import type { PlanFacts } from '../roof/answer/answer.ts'
+import type { ReadPlan } from '../plan/read-plan.ts'
+import { check, planFacts, type Checked } from './check.ts'
+import { reading } from './reading.ts'
+import type { Request } from './request.ts'
+
+declare const __VERSION__: string
+
+/** Version of the program, put in by the build. */
+export const version = typeof __VERSION__ === 'string' ? __VERSION__ : '0.0.0'
+
+/** What `panewise read --json` prints; `readPlan` holds the arrays behind it. */
+export interface ReadAnswer {
+  readonly summary: {
+    readonly version: string
+    readonly input: { readonly name: string; readonly sha256: string }
+    readonly plan: PlanFacts
+    readonly repairs: readonly Repair[]
+    readonly questions: readonly Question[]
+    readonly leftOut: readonly LeftOut[]
+    readonly notices: readonly string[]
+  }
+  readonly readPlan: ReadPlan
+}
+
+/** Reads, checks and raises; nothing is written. Code "cancelled" when the signal was aborted. */
+export async function run(request: Request, options: DriveOptions = {}): Promise<Result<Checked>> {
+  const sha256 = await sha256Of(request.source.bytes)
+  return driven(check(request, version, sha256), options)
+}
+
+/** Reads the plan only. */
+export async function read(request: Request, options: DriveOptions = {}): Promise<Result<ReadAnswer>> {
+  const sha256 = await sha256Of(request.source.bytes)
+  const made = await driven(reading(request), options)
+  if (!made.ok) return made
+  const { read: readPlan } = made.value
+  const { repairs, questions, leftOut, notices, plan } = readPlan
+  return ok({
+    summary: { version, input: { name: request.source.name, sha256 }, plan: planFacts(plan), repairs, questions, leftOut, notices },
+    readPlan,
+  })
+}
+
+async function driven<T>(steps: Steps<Result<T>>, options: DriveOptions): Promise<Result<T>> {
+  const value = await drive(steps, options)
+  return value === cancelled ? fail('cancelled', 'stopped before the end', null, null) : value
+}
+
+/** Hexadecimal SHA-256 of the bytes; empty where the platform offers none (a page that is not served securely). */
+async function sha256Of(bytes: Uint8Array): Promise<string> {
+  if (globalThis.crypto?.subtle === undefined) return ''
+  const digest = await globalThis.crypto.subtle.digest('SHA-256', bytes as Uint8Array<ArrayBuffer>)
+  return Array.from(new Uint8Array(digest), (byte) => byte.toString(16).padStart(2, '0')).join('')
+}

@@ -1,0 +1,62 @@
+/** The coordinates that leave the tool, rounded as they are written, and how flat the panels are there. */
+import { conversion, type Unit } from '../base/length.ts'
+import type { Steps } from '../base/steps.ts'
+import type { Plan } from '../plan/plan.ts'
+import type { RoofFacts } from '../roof/answer/answer.ts'
+import { flatness, type Flatness } from '../roof/raise/flatness.ts'
+import { panelName } from '../plan/names.ts'
+
+export interface Written {
+  readonly x: Float64Array
+  readonly y: Float64Array
+  readonly z: Float64Array
+  /** In mm, of the written coordinates. */
+  readonly flat: Flatness
+  /** In mm, of the heights as solved: the largest minimum zone. */
+  readonly exactMax: number
+}
+
+/** Decimals of z that make at most 1 um, by unit. */
+const micrometreDecimals: Readonly<Record<Unit, number>> = { mm: 3, cm: 4, m: 6, in: 5, ft: 6 }
+
+/** `heights` in the plan's unit; `decimals` null: x and y as read, z to 1 um; else all three to so many. */
+export function* writtenCoordinates(plan: Plan, heights: Float64Array, decimals: number | null): Steps<Written> {
+  const z = rounded(heights, decimals ?? micrometreDecimals[plan.unit])
+  const x = decimals === null ? plan.x : rounded(plan.x, decimals)
+  const y = decimals === null ? plan.y : rounded(plan.y, decimals)
+  const mm = conversion(plan.unit, 'mm')
+  const flat = yield* flatness(plan, x, y, z)
+  const exact = yield* flatness(plan, plan.x, plan.y, heights)
+  return {
+    x, y, z, flat: { corner: flat.corner.map((value) => value * mm), zone: flat.zone.map((value) => value * mm) },
+    exactMax: exact.zone.reduce((most, value) => Math.max(most, value), 0) * mm,
+  }
+}
+
+/** The nearest number with so many decimals, as its shortest text reads back; never -0. */
+function rounded(values: Float64Array, decimals: number): Float64Array {
+  const scale = 10 ** decimals
+  return values.map((value) => {
+    const scaled = Math.round(value * scale)
+    // Beyond 2^53 the scaled value has no digits to round; the quotient of an integer by 10^d is the number of its text.
+    return Math.abs(scaled) < 2 ** 53 ? scaled / scale + 0 : value
+  })
+}
+
+/** The flatness figures of a summary; at most ten panels that are over the tolerance, worst first. */
+export function flatnessFacts(written: Written, flat_mm: number): Pick<RoofFacts, 'cornerMax_mm' | 'flatnessMax_mm' | 'flatnessRms_mm' | 'exactFlatnessMax_mm' | 'worstPanels'> {
+  const { corner, zone } = written.flat
+  let cornerMax = 0, zoneMax = 0, squares = 0
+  const over: number[] = []
+  for (let p = 0; p < zone.length; p += 1) {
+    cornerMax = Math.max(cornerMax, corner[p])
+    zoneMax = Math.max(zoneMax, zone[p])
+    squares += zone[p] * zone[p]
+    if (zone[p] > flat_mm) over.push(p)
+  }
+  over.sort((a, b) => zone[b] - zone[a] || a - b)
+  return {
+    cornerMax_mm: cornerMax, flatnessMax_mm: zoneMax, flatnessRms_mm: Math.sqrt(squares / zone.length), exactFlatnessMax_mm: written.exactMax,
+    worstPanels: over.slice(0, 10).map((p) => ({ name: panelName(p), corner_mm: corner[p], flatness_mm: zone[p] })),
+  }
+}
