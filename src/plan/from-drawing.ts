@@ -5,16 +5,18 @@
  * Coordinates are used less a centre (see `centreOf`), so that survey coordinates lose no digits, and nodes that were
  * drawn are written back exactly as they were drawn.
  */
-import type { Repair } from '../base/repair.ts'
+import type { Question, Repair } from '../base/repair.ts'
 import { ok, placed, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
 import { heightsOfNodes } from './height-of-nodes.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { panelFaces } from './line-work-panels.ts'
+import type { Plan } from './plan.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
 import { planFromFaces } from './subdivision.ts'
 import { millimetresPer, unitOfDrawing } from './unit-of-drawing.ts'
+import { scaleQuestion, unitQuestion } from './unit-question.ts'
 
 /**
  * The plan of a drawing, in the drawing's unit and coordinates (drawings on paper: in metres). Void points are given in
@@ -26,7 +28,7 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   if (!read.ok) return read
   const { unit, factor } = read.value
   const mmPerUnit = millimetresPer(unit)
-  const frame = lineFrame(drawing, factor, mmPerUnit, options.snap_mm)
+  const frame = lineFrame(drawing, read.value, options.snap_mm)
   if (!frame.ok) return frame
 
   const faces = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
@@ -57,8 +59,21 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
     heights,
     marks: { points: marks, layer: drawing.markLayer, layers: drawing.layers },
     repairs,
-    questions: [],
+    questions: openQuestions(plan, drawing, options),
     leftOut: drawing.leftOut,
     notices: [...read.value.notices, ...faces.value.notices, ...notices],
   })
+}
+
+/** What only the user can answer: so far the unit or scale, where the lengths make the one taken unlikely. */
+function openQuestions(plan: Plan, drawing: Drawing, options: ReadOptions): Question[] {
+  if (options.unit !== null || options.scale !== null) return []
+  const lengths = new Float64Array(plan.edgeCount)
+  for (let e = 0; e < plan.edgeCount; e += 1) {
+    const a = plan.origin[2 * e], b = plan.origin[2 * e + 1]
+    lengths[e] = Math.hypot(plan.x[b] - plan.x[a], plan.y[b] - plan.y[a])
+  }
+  lengths.sort()
+  const question = drawing.onPaper ? scaleQuestion(lengths) : unitQuestion(lengths, plan.unit)
+  return question === null ? [] : [question]
 }

@@ -1,7 +1,10 @@
 /** The points of a drawing in working position, and the distance within which they are joined. */
 import { epsilon, farthest_m, roundingSteps, silentShare, smallest_m, snap_mm as defaultSnap_mm, snapShare } from '../base/geometry/tolerance.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
+import type { Unit } from '../base/length.ts'
 import type { Drawing, Loops } from './drawing.ts'
+import { millimetresPer, type DrawingUnit } from './unit-of-drawing.ts'
+import { likelyUnit } from './unit-question.ts'
 
 export interface LineFrame {
   /** Per point of the drawing: plan coordinates .. */
@@ -24,8 +27,9 @@ export interface LineFrame {
  * Fails with "not-a-number", "too-far", "no-extent", "bad-snap", or "no-panels" when there are no lines at all. Only
  * points that lines use are judged.
  */
-export function lineFrame(drawing: Drawing, factor: number, mmPerUnit: number, snap_mm: number | null): Result<LineFrame> {
+export function lineFrame(drawing: Drawing, { unit, factor, isAssumed }: DrawingUnit, snap_mm: number | null): Result<LineFrame> {
   const { points, outlines, holes, segments } = drawing
+  const mmPerUnit = millimetresPer(unit)
   if (snap_mm !== null && !(snap_mm >= 0 && Number.isFinite(snap_mm))) {
     return fail('bad-snap', `a snap distance of ${snap_mm} mm cannot be`, null, 'give a length of 0 or more')
   }
@@ -63,8 +67,7 @@ export function lineFrame(drawing: Drawing, factor: number, mmPerUnit: number, s
   const x = planX.map((value) => value - centreX)
   const y = planY.map((value) => value - centreY)
   const rounding = roundingSteps * epsilon * Math.max(Math.abs(left), Math.abs(right), Math.abs(low), Math.abs(high))
-  const wished = (snap_mm ?? defaultSnap_mm) / mmPerUnit
-  const snap = Math.max(rounding, snap_mm === null ? Math.min(wished, snapShare * shortEdge(drawing, x, y)) : wished)
+  const snap = Math.max(rounding, snap_mm === null ? defaultSnap(edgeLengths(drawing, x, y), unit, isAssumed) : snap_mm / mmPerUnit)
   return ok({ planX, planY, x, y, centreX, centreY, snap, silent: Math.max(rounding, silentShare * snap), rounding })
 }
 
@@ -77,21 +80,36 @@ function centreOf(low: number, high: number): number {
   return Math.abs(middle) > 2 * (high - low) ? middle : 0
 }
 
-/** The length that one drawn edge in twenty is shorter than. */
-function shortEdge({ outlines, holes, segments }: Drawing, x: Float64Array, y: Float64Array): number {
+/**
+ * The plan tolerance, but at most a share of the short edges. Where the file states no unit the tolerance is that of the
+ * unit which its lengths suggest: ends that miss by 0.3 are 0.3 mm where edges are 1500 long.
+ */
+function defaultSnap(lengths: Float64Array, unit: Unit, isAssumed: boolean): number {
+  const likely = isAssumed ? (likelyUnit(lengths, unit) ?? unit) : unit
+  const short = lengths.length === 0 ? Infinity : lengths[Math.floor(lengths.length / 20)]
+  return Math.min(defaultSnap_mm / millimetresPer(likely), snapShare * short)
+}
+
+/** Lengths looked at, evenly through the file: enough for quantiles. */
+const sampleSize = 20_000
+
+/** Lengths of drawn edges, sorted; of large drawings a sample. */
+function edgeLengths({ outlines, holes, segments }: Drawing, x: Float64Array, y: Float64Array): Float64Array {
+  const stride = Math.ceil((segments.length / 2 + outlines.point.length + holes.point.length) / sampleSize)
   const lengths: number[] = []
   const note = (p: number, q: number): void => {
     const length = Math.hypot(x[q] - x[p], y[q] - y[p])
     if (length > 0) lengths.push(length)
   }
-  for (let i = 0; i < segments.length; i += 2) note(segments[i], segments[i + 1])
+  for (let i = 0; i < segments.length; i += 2 * stride) note(segments[i], segments[i + 1])
   for (const { start, point } of [outlines, holes]) {
-    for (let i = 0; i + 1 < start.length; i += 1) {
-      for (let k = start[i], before = start[i + 1] - 1; k < start[i + 1]; before = k, k += 1) note(point[before], point[k])
+    let loop = 0
+    for (let k = 0; k < point.length; k += stride) {
+      while (start[loop + 1] <= k) loop += 1
+      note(point[k], point[k + 1 < start[loop + 1] ? k + 1 : start[loop]])
     }
   }
-  const sorted = Float64Array.from(lengths).sort()
-  return sorted.length === 0 ? Infinity : sorted[Math.floor(sorted.length / 20)]
+  return Float64Array.from(lengths).sort()
 }
 
 function placeOfPoint({ outlines, holes, segments, segmentLine }: Drawing, point: number): Place | null {

@@ -5,8 +5,9 @@ import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
 import { arrangement, type Arrangement } from './line-work-arrangement.ts'
 import type { LineFrame } from './line-work-frame.ts'
-import { joinedPoints, type JoinedPoints } from './line-work-joined.ts'
+import { joinedPoints } from './line-work-joined.ts'
 import { faceRepairs, lineRepairs } from './line-work-repairs.ts'
+import type { Traced } from './line-work-traced.ts'
 import { closedOutlines, type ClosedOutlines } from './outlines-closed.ts'
 import { outlineFaces } from './outlines-faces.ts'
 import { cyclesOf, type Cycles } from './trace-cycles.ts'
@@ -30,19 +31,6 @@ export interface PanelFaces {
   readonly lineOfPanel: Int32Array
   readonly repairs: readonly Repair[]
   readonly notices: readonly string[]
-}
-
-/** What both ways of making panels start from. */
-export interface Traced {
-  readonly drawing: Drawing
-  readonly frame: LineFrame
-  readonly mmPerUnit: number
-  readonly points: JoinedPoints
-  readonly lines: Arrangement
-  /** First line of the arrangement that is a side of an interior ring, and the first that is an open segment. */
-  readonly firstHole: number
-  readonly firstSegment: number
-  readonly at: (node: number) => [number, number]
 }
 
 type Points = readonly (readonly [x: number, y: number])[]

@@ -1,6 +1,6 @@
 /** What was done to a drawing's lines, in sentences with figures and places. */
 import type { Repair } from '../base/repair.ts'
-import type { Traced } from './line-work-panels.ts'
+import type { Traced } from './line-work-traced.ts'
 import { counted, inMillimetres, Places } from './line-work-words.ts'
 import type { ClosedOutlines } from './outlines-closed.ts'
 import type { OutlineFaces } from './outlines-faces.ts'

@@ -5,9 +5,10 @@ import type { Repair, RepairCode } from '../base/repair.ts'
 /** How many places a repair names at most; its count is complete. */
 export const mostPlaces = 200
 
-/** A length for a sentence: two digits, never a bare zero. */
+/** A length for a sentence: two or three digits, metres from one metre up, never a bare zero. */
 export function inMillimetres(mm: number): string {
-  return mm < 0.01 ? 'less than 0.01 mm' : `${significant(mm, mm >= 100 ? 3 : 2)} mm`
+  if (mm < 0.01) return 'less than 0.01 mm'
+  return mm < 999.5 ? `${significant(mm, mm >= 100 ? 3 : 2)} mm` : `${significant(mm / 1000, 3)} m`
 }
 
 /** "1 line", "12 lines". */

@@ -10,6 +10,8 @@ export interface DrawingUnit {
   readonly unit: Unit
   /** Plan coordinates = drawing coordinates * factor; 1 for models, so that their numbers stay as they are. */
   readonly factor: number
+  /** Whether neither the file nor the user states a unit. */
+  readonly isAssumed: boolean
   readonly repairs: readonly Repair[]
   readonly notices: readonly string[]
 }
@@ -28,18 +30,18 @@ export function unitOfDrawing(drawing: Drawing, options: ReadOptions): Result<Dr
     const factor = conversion(from, 'm') * (scale ?? 1)
     // A unit that the user states is the unit of the thing drawn, so no scale is missing then.
     const notices = scale === null && options.unit === null ? ['No scale is given, so the sizes on paper are taken as they are (1:1).'] : []
-    return ok({ unit: 'm', factor: from === 'mm' && scale !== null && scale % 1000 === 0 ? scale / 1000 : factor, repairs: [], notices })
+    return ok({ unit: 'm', factor: from === 'mm' && scale !== null && scale % 1000 === 0 ? scale / 1000 : factor, isAssumed: false, repairs: [], notices })
   }
   if (scale !== null && scale !== 1) {
     return fail('scale-of-model', `a ${drawing.format} file holds true sizes, so a scale of 1:${scale} has no meaning`, null, 'leave --scale out, or state its unit with --unit')
   }
   const unit = options.unit ?? drawing.unit
-  if (unit !== null) return ok({ unit, factor: 1, repairs: [], notices: [] })
+  if (unit !== null) return ok({ unit, factor: 1, isAssumed: false, repairs: [], notices: [] })
   const assumed: Repair = {
     code: 'unit-assumed', state: 'applied', count: 1, where: [],
     message: 'The file states no unit: metres are assumed (--unit says otherwise).',
   }
-  return ok({ unit: 'm', factor: 1, repairs: [assumed], notices: [] })
+  return ok({ unit: 'm', factor: 1, isAssumed: true, repairs: [assumed], notices: [] })
 }
 
 /** Millimetres in one unit of the plan. */
