@@ -94,7 +94,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
   const mm = conversion(plan.unit, 'mm')
   const heights = result.roof === null ? null : result.roof.heights.map((h) => h * span + (wishes.datum ?? 0))
   const written = heights === null ? null : yield* writtenCoordinates(plan, heights, wishes.decimals)
-  const { reason, reasonKind } = reasonFor(plan, free, result, rows.hard, wishes)
+  const { reason, reasonKind } = reasonFor(plan, result, rows, wishes.datum ?? 0)
   const isNear = result.roof !== null && !result.roof.exact
   const summary: Summary = {
     version: pieces.version,

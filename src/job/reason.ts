@@ -1,39 +1,50 @@
 /** Why the verdict is what it is: by propagation where it reaches, else by the clash, else by the count. */
-import type { Plan } from '../plan/plan.ts'
+import { conversion } from '../base/length.ts'
 import { jointName, panelName } from '../plan/names.ts'
-import type { Wishes } from '../plan/project/wishes.ts'
+import type { Plan } from '../plan/plan.ts'
 import type { Summary } from '../roof/answer/answer.ts'
+import type { ConditionRows } from '../roof/conditions/condition-rows.ts'
 import { propagation } from '../roof/conditions/propagation.ts'
-import { rowCount, type Rows } from '../roof/conditions/rows.ts'
+import { contradictionReason, forcedReason, words, worstContradiction } from '../roof/conditions/reason.ts'
+import { rowCount } from '../roof/conditions/rows.ts'
 import type { Raised } from '../roof/raise/raise.ts'
-import type { FreeRim } from '../roof/stress/free-rim.ts'
 
 type Reason = Pick<Summary, 'reason' | 'reasonKind'>
 
-export function reasonFor(plan: Plan, free: FreeRim, result: Raised, hard: Rows, wishes: Wishes): Reason {
+/** The reason as a clause without a full stop; null for a plan that lifts. `datum` in the plan's unit. */
+export function reasonFor(plan: Plan, result: Raised, rows: ConditionRows, datum: number): Reason {
   if (result.verdict === 'lifts') return { reason: null, reasonKind: null }
-  if (rowCount(hard) > 0) {
-    void propagation
-    void wishes
+  if (rowCount(rows.hard) > 0) {
+    const found = propagation(plan, rows.hard)
+    const worst = worstContradiction(found)
+    if (worst !== null) return { reason: contradictionReason(plan, rows.held, found, worst, datum), reasonKind: 'clash' }
+    if (result.clashes.length > 0) return { reason: clashWords(plan, result), reasonKind: 'clash' }
+    const forced = forcedReason(plan, rows.held, found)
+    if (forced !== null) return { reason: forced, reasonKind: 'propagation' }
   }
-  if (result.clashes.length > 0) return { reason: clashWords(plan, result), reasonKind: 'clash' }
-  return { reason: countWords(plan, free, result), reasonKind: 'rank' }
+  return { reason: countWords(plan, result), reasonKind: 'rank' }
 }
 
 function clashWords(plan: Plan, result: Raised): string {
   const { conditions, misfit } = result.clashes[0]
+  const mm = misfit * plan.frame.span * conversion(plan.unit, 'mm')
+  const figure = mm < 0.01 ? 'less than 0.01 mm' : mm < 10 ? `${mm.toFixed(2)} mm` : `${mm.toFixed(0)} mm`
   const quoted = conditions.map((name) => `"${name}"`)
-  return `${quoted.length === 1 ? quoted[0] : `${quoted.slice(0, -1).join(', ')} and ${quoted[quoted.length - 1]}`} cannot all be met: they miss by ${misfit * plan.frame.span}`
+  if (quoted.length === 1) return `${quoted[0]} cannot be met by any roof of flat panels: the nearest misses it by ${figure}`
+  return `${words(quoted)} cannot all be met by flat panels: the nearest roof misses them by ${figure}`
 }
 
-function countWords(plan: Plan, free: FreeRim, result: Raised): string {
-  const frozen = [...result.under.frozen.keys()].filter((j) => result.under.frozen[j] === 1)
-  void free
-  return `${frozen.length} of ${plan.jointCount} joints cannot fold (${frozen.slice(0, 4).map(jointName).join(', ')}); the largest flat group has ${largestGroup(result).length} panels (${largestGroup(result).slice(0, 4).map(panelName).join(', ')})`
+function countWords(plan: Plan, result: Raised): string {
+  const { frozen, groupOf, groupCount } = result.under
+  const stuck = [...frozen.keys()].filter((joint) => frozen[joint] === 1)
+  const under = result.under.freedomLeft === null ? '' : rowsHeld(result)
+  if (groupCount === 1) return `no stress balances at every node${under}, so all ${plan.jointCount} joints stay unfolded and all ${plan.panelCount} panels share one plane`
+  const size = new Int32Array(groupCount)
+  for (const group of groupOf) size[group] += 1
+  const largest = size.indexOf(Math.max(...size))
+  const members = [...groupOf.keys()].filter((panel) => groupOf[panel] === largest).map(panelName)
+  const joints = stuck.length === 1 ? `${jointName(stuck[0])} cannot fold` : `${stuck.length} of ${plan.jointCount} joints cannot fold (${words(stuck.map(jointName))})`
+  return `${joints}${under}; the largest flat group has ${members.length} panels (${words(members)})`
 }
 
-function largestGroup(result: Raised): number[] {
-  const members: number[][] = Array.from({ length: result.under.groupCount }, () => [])
-  result.under.groupOf.forEach((group, panel) => members[group].push(panel))
-  return members.sort((a, b) => b.length - a.length)[0]
-}
+const rowsHeld = (result: Raised): string => (result.under.space.elimination.free.length < result.under.space.plan.nodeCount ? ' under these conditions' : '')
