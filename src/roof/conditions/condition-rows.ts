@@ -10,7 +10,8 @@ import { flushRows } from './flush.ts'
 import { levelRows } from './level.ts'
 import { planeRows } from './plane.ts'
 import { profileRows } from './profile.ts'
-import { rowList, type Emit, type Rows, type Site } from './rows.ts'
+import { rowList, type Emit, type Rows } from './rows.ts'
+import { siteOf, type Site } from './site.ts'
 import { straightRows } from './straight.ts'
 
 export interface SoftRows extends Rows {
@@ -38,7 +39,7 @@ export interface ConditionRows {
  * exist on the plan; the problem's place has the condition's name.
  */
 export function conditionRows(plan: Plan, conditions: readonly Condition[], datum: number): Result<ConditionRows> {
-  const site: Site = { plan, datum }
+  const site = siteOf(plan, datum)
   const hard = rowList()
   const soft = rowList()
   const held: Held[] = []

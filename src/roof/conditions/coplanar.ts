@@ -3,7 +3,8 @@ import { ok, type Result } from '../../base/result.ts'
 import type { CoplanarCondition } from '../../plan/project/condition.ts'
 import { onePlane } from './anchors.ts'
 import { nodesOfPanels, panelsAt } from './places.ts'
-import type { Emit, Site } from './rows.ts'
+import type { Emit } from './rows.ts'
+import type { Site } from './site.ts'
 
 export function coplanarRows(site: Site, condition: CoplanarCondition, emit: Emit): Result<Int32Array> {
   const panels = panelsAt(site.plan, condition.at)

@@ -5,7 +5,8 @@ import type { FlushCondition } from '../../plan/project/condition.ts'
 import { onePlane } from './anchors.ts'
 import { gathered, groups } from './groups.ts'
 import { jointsAt, nodesOfPanels } from './places.ts'
-import type { Emit, Site } from './rows.ts'
+import type { Emit } from './rows.ts'
+import type { Site } from './site.ts'
 
 /** Rows as for coplanar, per group of panels; returns the nodes of all of them. */
 export function flushRows(site: Site, condition: FlushCondition, emit: Emit): Result<Int32Array> {

@@ -2,30 +2,34 @@
  * Places of conditions, found on a plan: nodes, panels and joints by name or point, runs, rims. What is not there is a
  * Problem that names it.
  */
+import { pointInPolygon } from '../../base/geometry/point-in-polygon.ts'
 import { pointWithin_mm } from '../../base/geometry/tolerance.ts'
 import { conversion } from '../../base/length.ts'
 import { fail, ok, type Problem, type Result } from '../../base/result.ts'
 import { indexOfName, jointName, nodeName, panelName } from '../../plan/names.ts'
 import type { Plan } from '../../plan/plan.ts'
-import type { At, AtJoints, AtNodes, AtPanels, AtRim, AtRun, Point, Spot } from '../../plan/project/condition.ts'
+import type { AtJoints, AtNodes, AtPanels, AtRim, AtRun, Point, Spot } from '../../plan/project/condition.ts'
 import { nodesAlong, type Run } from './run.ts'
+import type { Site } from './site.ts'
 
 /** Nodes of the place, each once: named ones in the order given, runs along the run, rims loop by loop, panels ascending. */
-export function nodesAt(plan: Plan, at: AtNodes | AtRun | AtRim | AtPanels): Result<Int32Array> {
-  if ('nodes' in at) return spots(at.nodes, (spot) => nodeAt(plan, spot, at.within_mm ?? pointWithin_mm))
+export function nodesAt(site: Site, at: AtNodes | AtRun | AtRim | AtPanels): Result<Int32Array> {
+  const { plan } = site
+  if ('nodes' in at) return spots(at.nodes, (spot) => nodeAt(site, spot, at.within_mm ?? pointWithin_mm))
   if ('rim' in at) return rimNodes(plan, at.rim)
   if ('panels' in at) {
     const panels = panelsAt(plan, at)
     return panels.ok ? ok(nodesOfPanels(plan, panels.value)) : panels
   }
-  const run = runAt(plan, at)
+  const run = runAt(site, at)
   return run.ok ? ok(run.value.nodes) : run
 }
 
 /** Nodes in order with their distance along: those of a run, or named ones with the length of the line through them. */
-export function runAt(plan: Plan, at: AtRun | AtNodes): Result<Run> {
+export function runAt(site: Site, at: AtRun | AtNodes): Result<Run> {
+  const { plan } = site
   if ('nodes' in at) {
-    const nodes = nodesAt(plan, at)
+    const nodes = nodesAt(site, at)
     return nodes.ok ? ok(lineThrough(plan, nodes.value)) : nodes
   }
   if (at.run.length < 2) return fail('short-run', 'a run needs two or more points')
@@ -78,16 +82,6 @@ export function nodesOfPanels(plan: Plan, panels: Iterable<number>): Int32Array 
   return nodes
 }
 
-/** Where a problem's place sits in the words of the place itself, for the sentence. */
-export function placeWords(at: At): string {
-  const words = (list: readonly Spot[]): string => list.slice(0, 4).map((s) => (typeof s === 'string' ? s : `${s[0]}, ${s[1]}`)).join(' - ')
-  if ('nodes' in at) return `nodes ${words(at.nodes)}`
-  if ('run' in at) return `run ${words(at.run)}`
-  if ('rim' in at) return at.rim === 'outer' ? 'outer rim' : `rim of the void at ${at.rim[0]}, ${at.rim[1]}`
-  if ('panels' in at) return at.panels === 'all' ? 'all panels' : `panels ${words(at.panels)}`
-  return `joints ${words(at.joints)}`
-}
-
 function spots(list: readonly Spot[], find: (spot: Spot) => Result<number>): Result<Int32Array> {
   const found = new Set<number>()
   for (const spot of list) {
@@ -112,22 +106,28 @@ function namedNode(plan: Plan, name: string): Result<number> {
   return node >= 0 && node < plan.nodeCount ? ok(node) : unknown('node', name, plan.nodeCount, nodeName)
 }
 
-function nodeAt(plan: Plan, spot: Spot, within_mm: number): Result<number> {
+function nodeAt({ plan, near }: Site, spot: Spot, within_mm: number): Result<number> {
   if (typeof spot === 'string') return namedNode(plan, spot)
   const [x, y] = toWork(plan, spot)
+  const node = near(x, y, within_mm * conversion('mm', plan.unit) / plan.frame.span)
+  if (node >= 0) return ok(node)
+  const [nearest, distance] = nearestNode(plan, x, y)
+  const mm = distance * plan.frame.span * conversion(plan.unit, 'mm')
+  return fail('no-node-there', `no node lies within ${within_mm} mm of this point; the nearest, ${nodeName(nearest)}, is ${millimetres(mm)} away`,
+    { at: spot })
+}
+
+function nearestNode(plan: Plan, x: number, y: number): readonly [node: number, distance: number] {
   let best = -1
   let least = Infinity
   for (let n = 0; n < plan.nodeCount; n += 1) {
-    const [dx, dy] = [plan.work[2 * n] - x, plan.work[2 * n + 1] - y]
-    if (dx * dx + dy * dy < least) {
-      least = dx * dx + dy * dy
+    const distance = Math.hypot(plan.work[2 * n] - x, plan.work[2 * n + 1] - y)
+    if (distance < least) {
+      least = distance
       best = n
     }
   }
-  const mm = Math.sqrt(least) * plan.frame.span * conversion(plan.unit, 'mm')
-  if (mm <= within_mm) return ok(best)
-  return fail('no-node-there', `no node lies within ${within_mm} mm of this point; the nearest, ${nodeName(best)}, is ${millimetres(mm)} away`,
-    { at: spot })
+  return [best, least]
 }
 
 function millimetres(mm: number): string {
@@ -139,9 +139,9 @@ function panelAt(plan: Plan, spot: Spot): Result<number> {
     const panel = indexOfName(spot, 'P')
     return panel >= 0 && panel < plan.panelCount ? ok(panel) : unknown('panel', spot, plan.panelCount, panelName)
   }
-  const point = toWork(plan, spot)
+  const [x, y] = spot
   for (let p = 0; p < plan.panelCount; p += 1) {
-    if (winding(plan, plan.corner, plan.panelStart[p], plan.panelStart[p + 1], point) !== 0) return ok(p)
+    if (pointInPolygon(x, y, plan.x, plan.y, plan.corner, plan.panelStart[p], plan.panelStart[p + 1]) >= 0) return ok(p)
   }
   return fail('no-panel-there', 'no panel contains this point', { at: spot })
 }
@@ -176,10 +176,10 @@ function rimNodes(plan: Plan, rim: 'outer' | Point): Result<Int32Array> {
   if (rim === 'outer') {
     for (let l = 0; l < ends; l += 1) if (plan.rimIsVoid[l] === 0) loops.push(l)
   } else {
-    const point = toWork(plan, rim)
+    const [x, y] = rim
     const round = Int32Array.from(plan.rimHalf, (half) => plan.origin[half])
     for (let l = 0; l < ends && loops.length === 0; l += 1) {
-      if (plan.rimIsVoid[l] === 1 && winding(plan, round, plan.rimStart[l], plan.rimStart[l + 1], point) !== 0) loops.push(l)
+      if (plan.rimIsVoid[l] === 1 && pointInPolygon(x, y, plan.x, plan.y, round, plan.rimStart[l], plan.rimStart[l + 1]) >= 0) loops.push(l)
     }
     if (loops.length === 0) return fail('no-void-there', 'no void contains this point', { at: rim })
   }
@@ -188,17 +188,4 @@ function rimNodes(plan: Plan, rim: 'outer' | Point): Result<Int32Array> {
     for (let i = plan.rimStart[l]; i < plan.rimStart[l + 1]; i += 1) found.add(plan.origin[plan.rimHalf[i]])
   }
   return ok(Int32Array.from(found))
-}
-
-/** How often the polygon nodes[from .. to) goes round the point (Sunday 2001); points on its edges may count either way. */
-function winding(plan: Plan, nodes: Int32Array, from: number, to: number, [x, y]: Point): number {
-  let turns = 0
-  for (let i = from, before = to - 1; i < to; before = i, i += 1) {
-    const [a, b] = [2 * nodes[before], 2 * nodes[i]]
-    const [ax, ay, bx, by] = [plan.work[a], plan.work[a + 1], plan.work[b], plan.work[b + 1]]
-    const side = (bx - ax) * (y - ay) - (by - ay) * (x - ax)
-    if (ay <= y && by > y && side > 0) turns += 1
-    else if (ay > y && by <= y && side < 0) turns -= 1
-  }
-  return turns
 }

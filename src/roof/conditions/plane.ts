@@ -4,7 +4,8 @@ import type { Plan } from '../../plan/plan.ts'
 import type { PlaneCondition } from '../../plan/project/condition.ts'
 import { gathered, groups } from './groups.ts'
 import { nodesOfPanels, panelsAt } from './places.ts'
-import type { Emit, Site } from './rows.ts'
+import type { Emit } from './rows.ts'
+import type { Site } from './site.ts'
 
 /**
  * The gradient g of a plane that falls by `pitch_deg` towards `bearing_deg` (clockwise from +y):

@@ -6,11 +6,12 @@ import type { ProfileCondition } from '../../plan/project/condition.ts'
 import { runAt } from './places.ts'
 import type { Run } from './run.ts'
 import { tooFew } from './too-few.ts'
-import { heightOf, type Emit, type Site } from './rows.ts'
+import type { Emit } from './rows.ts'
+import { heightOf, type Site } from './site.ts'
 
 /** A row h_n = section(s_n) per node, s_n the distance from the run's first point. */
 export function profileRows(site: Site, condition: ProfileCondition, emit: Emit): Result<Int32Array> {
-  const run = runAt(site.plan, condition.at)
+  const run = runAt(site, condition.at)
   if (!run.ok) return run
   const { nodes } = run.value
   if (nodes.length < 2) return tooFew(site.plan, nodes, 2)

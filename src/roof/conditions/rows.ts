@@ -1,8 +1,10 @@
 /**
  * Linear rows on the node heights: sum of weight * h over a row's nodes = value. Heights h = (z - datum) / span, so that a
  * value is a height in spans above the datum; rows are scaled so that their largest weight is about 1.
+ *
+ * A row with several entries reads "this node by its anchors": the node first, then the anchors, which are the same for
+ * all rows that tie one set of nodes together (`bodies.ts` relies on it).
  */
-import type { Plan } from '../../plan/plan.ts'
 
 export interface Rows {
   /** Row i has the entries start[i] .. start[i + 1) of node and weight (length: rows + 1). */
@@ -45,16 +47,4 @@ export function rowList(): { emit(condition: number): Emit; rows(): Rows } {
       condition: Int32Array.from(condition),
     }),
   }
-}
-
-/** What the kinds need: the plan, and heights as the rows have them. */
-export interface Site {
-  readonly plan: Plan
-  /** In the plan's unit. */
-  readonly datum: number
-}
-
-/** (level - datum) / span of a level in the plan's unit; null is the datum itself. */
-export function heightOf(site: Site, level: number | null): number {
-  return level === null ? 0 : (level - site.datum) / site.plan.frame.span
 }
