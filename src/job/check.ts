@@ -4,6 +4,7 @@ import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { interiorNodeCount, voidCount, type Plan } from '../plan/plan.ts'
 import { jointName, panelName } from '../plan/names.ts'
+import type { Brief } from '../plan/project/brief.ts'
 import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import type { Answer, PlanFacts, Roof, RoofFacts, StressFacts, Summary } from '../roof/answer/answer.ts'
@@ -25,6 +26,8 @@ import { flatnessFacts, writtenCoordinates, type Written } from './written.ts'
 export interface Checked {
   readonly answer: Answer
   readonly wishes: Wishes
+  /** For the next question about the same plan. */
+  readonly free: FreeRim
 }
 
 /** A question of the reader that the answer depends on: it ends the job, and the questions go with it. */
@@ -40,18 +43,33 @@ export function* check(request: Request, version: string, sha256: string): Steps
   if (!made.ok) return made
   const { read, brief } = made.value
   if (read.questions.length > 0) return openQuestion(request, read.questions)
+  return yield* answerTo({ request: { ...request, options: options.value }, version, sha256, read, brief, free: null })
+}
+
+/** A plan that has been read and what is asked of it; `free`: of the same plan, from an earlier answer (null: not known). */
+export interface PlanQuestion {
+  readonly request: Request
+  readonly version: string
+  readonly sha256: string
+  readonly read: ReadPlan
+  readonly brief: Brief
+  readonly free: FreeRim | null
+}
+
+/** The second half of the job, which every edit of the brief repeats; the factor of the plan is found once and kept. */
+export function* answerTo({ request, version, sha256, read, brief, free: known }: PlanQuestion): Steps<Result<Checked>> {
   const { plan } = read
-  const wishes = wishesOf(brief, options.value, plan.unit)
+  const wishes = wishesOf(brief, request.options, plan.unit)
   if (!wishes.ok) return wishes
   const target = yield* targetOf(request, wishes.value, read)
   if (!target.ok) return target
   const rows = conditionRows(plan, wishes.value.conditions, wishes.value.datum ?? 0)
   if (!rows.ok) return rows
 
-  const free = yield* freeRim(plan)
+  const free = known ?? (yield* freeRim(plan))
   const result = yield* raised(plan, free, nodeAreas(plan), questionOf(plan, wishes.value, rows.value, target.value.heights))
   const answer = yield* answerOf({ request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, notices: target.value.notices })
-  return ok({ answer, wishes: wishes.value })
+  return ok({ answer, wishes: wishes.value, free })
 }
 
 function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {
