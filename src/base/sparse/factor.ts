@@ -1,109 +1,165 @@
 /**
- * L D L^T without pivoting, row by row (up-looking; T. A. Davis, "Direct Methods for Sparse Linear Systems", SIAM 2006,
- * chapter 4): P A P^T = L D L^T with unit lower triangular L.
+ * L D L^T without pivoting, P A P^T = L D L^T with unit lower triangular L, by the multifrontal method (I. Duff, J. Reid, ACM
+ * Trans. Math. Softw. 9, 1983; J. Liu, SIAM Review 34, 1992): dense elimination front by front, children before parents.
  *
  * A pivot that is zero, or lost in the rounding of its own diagonal (|d| <= 2^-52 |a_jj|), is counted as `zero` and
  * replaced by 2^-26 times the largest |a_ij| (static pivoting: X. Li, J. Demmel 1998; O. Schenk, K. Gaertner 2006), so that
  * the factor is finite and refinement still solves systems that have a solution.
  */
 import { assert } from '../assert.ts'
-import { finish, type Steps } from '../steps.ts'
-import type { Analysis } from './analyse.ts'
+import type { Steps } from '../steps.ts'
+import { four, triangle, type Analysis } from './analyse.ts'
+import { addBoundary, addPivotal } from './assemble.ts'
+import { eliminateFour, scaleBelow, type PivotRules } from './pivots.ts'
+import { newStore, type Store } from './store.ts'
 
 export interface Factor {
   readonly analysis: Analysis
-  /** Row indices and values of L by columns, places as in analysis.columnStart. */
-  readonly row: Int32Array
-  readonly lower: Float64Array
+  readonly store: Store
+  /** D by place; where a front's pivots are filled up to a multiple of four, see `pivotAt`. */
   readonly pivot: Float64Array
+  /** Where front t's pivots begin in `pivot`, which holds four(p) of them. */
+  readonly pivotAt: Int32Array
+  /** |a_ii| of the pivots, beside them. */
+  readonly scale: Float64Array
   /** Pivots that were replaced. */
   zeros: number
-  /** Room for refactoring. */
-  readonly work: { readonly x: Float64Array; readonly next: Int32Array; readonly seen: Int32Array; readonly stack: Int32Array; readonly lost: Uint8Array }
+  /** False while a refactorisation is under way or was given up. */
+  ready: boolean
 }
+
+/** Columns eliminated before the rest of the front is updated, and rows updated together, in slivers: a block of both stays in cache. */
+const blockColumns = 16
+const blockRows = 64
+
+/** Numbers of scratch room behind the store: one block of four columns, scaled. */
+export const scratch = 4 * 4 * blockColumns
+
+/** Operations between two looks at the clock: below a millisecond. */
+const operationsPerLook = 2e6
+const sliceMs = 40
 
 /** Factors the values (one per entry of the analysed pattern). Values must be finite. */
 export function* factor(analysis: Analysis, values: Float64Array): Steps<Factor> {
-  const { size } = analysis.pattern
-  const entries = analysis.columnStart[size] as number
+  const { fronts, first } = analysis
+  const pivotAt = new Int32Array(fronts + 1)
+  for (let t = 0; t < fronts; t++) pivotAt[t + 1] = (pivotAt[t] as number) + four((first[t + 1] as number) - (first[t] as number))
   const into: Factor = {
-    analysis,
-    row: new Int32Array(entries),
-    lower: new Float64Array(entries),
-    pivot: new Float64Array(size),
-    zeros: 0,
-    work: {
-      x: new Float64Array(size), next: new Int32Array(size), seen: new Int32Array(size), stack: new Int32Array(size), lost: new Uint8Array(size),
-    },
+    analysis, pivotAt, zeros: 0, ready: true,
+    store: newStore(analysis.storeSize + scratch, analysis.operations),
+    pivot: new Float64Array(pivotAt[fronts] as number),
+    scale: new Float64Array(pivotAt[fronts] as number),
   }
-  yield* refactor(into, values)
+  yield* numeric(into, values)
   return into
 }
 
 /** Factors other values of the same pattern into the same room. Until the last step the factor is not usable. */
 export function* refactor(into: Factor, values: Float64Array): Steps<void> {
-  const { analysis: { pattern: { size }, upStart, up, source, parent, columnStart }, row, lower, pivot } = into
-  const { x, next, seen, stack, lost } = into.work
-  assert(values.length === source.length, 'one value per entry of the pattern')
-  let largest = 0
-  for (const a of values) {
-    assert(Number.isFinite(a), 'a matrix to factor has finite values')
-    largest = Math.max(largest, Math.abs(a))
-  }
-  const stand = largest > 0 ? largest * 2 ** -26 : 1
-  x.fill(0)
-  seen.fill(-1)
-  next.set(columnStart.subarray(0, size))
-  into.zeros = 0
-  let turn = performance.now()
-  for (let k = 0; k < size; k++) {
-    let top = size
-    let diagonal = 0
-    seen[k] = k
-    for (let p = upStart[k] as number; p < (upStart[k + 1] as number); p++) {
-      let i = up[p] as number
-      const a = values[source[p] as number] as number
-      if (i === k) diagonal = a
-      else x[i] = (x[i] as number) + a
-      let depth = 0
-      for (; seen[i] !== k; i = parent[i] as number) {
-        stack[depth++] = i
-        seen[i] = k
-      }
-      while (depth > 0) stack[--top] = stack[--depth] as number
-    }
-    let d = diagonal
-    for (; top < size; top++) {
-      const j = stack[top] as number
-      const y = x[j] as number
-      x[j] = 0
-      const to = next[j] as number
-      for (let p = columnStart[j] as number; p < to; p++) {
-        const i = row[p] as number
-        x[i] = (x[i] as number) - (lower[p] as number) * y
-      }
-      const l = y / (pivot[j] as number)
-      d -= l * y
-      row[to] = k
-      lower[to] = l
-      next[j] = to + 1
-    }
-    const isLost = !(Math.abs(d) > Number.EPSILON * Math.abs(diagonal))
-    assert(Number.isFinite(d), 'the factor grew beyond the largest number')
-    lost[k] = isLost ? 1 : 0
-    if (isLost) {
-      into.zeros++
-      d = stand
-    }
-    pivot[k] = d
-    if ((k & 63) === 0 && performance.now() - turn > 40) {
-      yield { stage: 'Factoring', done: k / size }
-      turn = performance.now()
-    }
-  }
+  into.store.data.fill(0, 0, into.analysis.panel[into.analysis.fronts])
+  yield* numeric(into, values)
 }
 
-/** Both at once, without a break. */
-export function factored(analysis: Analysis, values: Float64Array): Factor {
-  return finish(factor(analysis, values))
+/** The factorisation proper; the panels of the store are zero. */
+function* numeric(into: Factor, values: Float64Array): Steps<void> {
+  const { analysis, store: { data, update }, pivot, pivotAt, scale } = into
+  const { target, fronts, first, panel, boundaryStart, schur, childStart, children } = analysis
+  assert(values.length === target.length, 'one value per entry of the pattern')
+  into.ready = false
+  const largest = scatter(into, values)
+  const rules: PivotRules = { stand: largest > 0 ? largest * 2 ** -26 : 1, zeros: 0, finite: true }
+  const b = analysis.storeSize
+  let turn = performance.now()
+  let work = 0
+  let total = 0
+  for (let t = 0; t < fronts; t++) {
+    const pivots = (first[t + 1] as number) - (first[t] as number)
+    const S = four(pivots) >> 2
+    const R = four((boundaryStart[t + 1] as number) - (boundaryStart[t] as number)) >> 2
+    const base = panel[t] as number
+    const below = base + triangle(S)
+    const at = pivotAt[t] as number
+    const complement = schur[t] as number
+    for (let q = childStart[t] as number; q < (childStart[t + 1] as number); q++) addPivotal(data, analysis, children[q] as number)
+    for (let from = 0; from < S; from += blockColumns) {
+      const to = Math.min(S, from + blockColumns)
+      for (let s = from; s < to; s++) {
+        const corner = base + triangle(s)
+        const depth = 4 * (s - from)
+        if (depth > 0) {
+          scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
+          update(corner + 16 * from, 16 * (s + 1), 16, b, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
+          update(below + 16 * from, 16 * S, 0, b, below + 16 * s, 16 * S, 0, R, depth, 1)
+        }
+        eliminateFour(data, corner + 16 * s, pivot, at + 4 * s, scale, pivots - 4 * s, rules)
+        scaleBelow(data, corner + 16 * s, pivot, at + 4 * s, base + triangle(s + 1) + 16 * s, 16 * (s + 2), 16, S - s - 1)
+        scaleBelow(data, corner + 16 * s, pivot, at + 4 * s, below + 16 * s, 16 * S, 0, R)
+      }
+      const depth = 4 * (to - from)
+      work += depth * depth * (S + R) * 4
+      for (let s = to; s < S; s++) {
+        const corner = base + triangle(s)
+        scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
+        update(corner + 16 * from, 16 * (s + 1), 16, b, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
+        update(below + 16 * from, 16 * S, 0, b, below + 16 * s, 16 * S, 0, R, depth, 1)
+        work += 32 * depth * (S - s + R)
+      }
+      for (let low = 0; low < R; low += blockRows) {
+        const high = Math.min(R, low + blockRows)
+        for (let j = 0; j < high; j++) {
+          const s = Math.max(j, low)
+          scaled(data, below + 16 * S * j + 16 * from, pivot, at + 4 * from, b, depth)
+          update(below + 16 * S * s + 16 * from, 16 * S, 0, b, complement + triangle(s) + 16 * j, 16 * (s + 1), 16, high - s, depth, from)
+          work += 32 * depth * (high - s)
+        }
+        if (work > operationsPerLook) {
+          total += work
+          work = 0
+          if (performance.now() - turn > sliceMs) {
+            yield { stage: 'Factoring', done: Math.min(1, total / analysis.operations) }
+            turn = performance.now()
+          }
+        }
+      }
+    }
+    for (let q = childStart[t] as number; q < (childStart[t + 1] as number); q++) addBoundary(data, analysis, children[q] as number)
+    work += 1000
+  }
+  assert(rules.finite, 'the factor grew beyond the largest number')
+  into.zeros = rules.zeros
+  into.ready = true
+}
+
+/** Puts the values into the panels and |a_ii| beside the pivots; returns the largest magnitude. */
+function scatter({ analysis, store: { data }, pivotAt, scale }: Factor, values: Float64Array): number {
+  const { target, pattern, fronts, first, unknown } = analysis
+  let largest = 0
+  for (let q = 0; q < values.length; q++) {
+    const a = values[q] as number
+    data[target[q] as number] = a
+    // Not a comparison with the largest so far: that would let NaN pass.
+    const size = Math.abs(a)
+    if (!(size <= largest)) {
+      assert(size < Infinity, 'a matrix to factor has finite values')
+      largest = size
+    }
+  }
+  for (let t = 0; t < fronts; t++) {
+    const shift = (pivotAt[t] as number) - (first[t] as number)
+    for (let v = first[t] as number; v < (first[t + 1] as number); v++) {
+      scale[v + shift] = Math.abs(values[pattern.start[unknown[v] as number] as number] as number)
+    }
+  }
+  return largest
+}
+
+/** b[4 k + j] = a[4 k + j] d_k: four rows of L, ready to be multiplied from the right. */
+function scaled(data: Float64Array, a: number, pivot: Float64Array, at: number, b: number, depth: number): void {
+  for (let k = 0; k < depth; k++) {
+    const d = pivot[at + k] as number
+    data[b + 4 * k] = (data[a + 4 * k] as number) * d
+    data[b + 4 * k + 1] = (data[a + 4 * k + 1] as number) * d
+    data[b + 4 * k + 2] = (data[a + 4 * k + 2] as number) * d
+    data[b + 4 * k + 3] = (data[a + 4 * k + 3] as number) * d
+  }
 }

@@ -2,6 +2,7 @@
  * Sylvester's law of inertia: the signs of the pivots of L D L^T are the signs of the eigenvalues, so the negative pivots of
  * A - t I count the eigenvalues of A below t.
  */
+import { assert } from '../assert.ts'
 import type { Factor } from './factor.ts'
 
 export interface Inertia {
@@ -12,8 +13,10 @@ export interface Inertia {
 }
 
 export function inertia(factor: Factor): Inertia {
+  const size = factor.analysis.pattern.size
+  assert(factor.ready, 'the factor is complete')
   let negative = 0
+  // Replaced pivots and those that fill up a front are positive.
   for (const d of factor.pivot) if (d < 0) negative++
-  // A replaced pivot is positive.
-  return { negative, zero: factor.zeros, positive: factor.pivot.length - negative - factor.zeros }
+  return { negative, zero: factor.zeros, positive: size - negative - factor.zeros }
 }

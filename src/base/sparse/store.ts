@@ -1,0 +1,47 @@
+/**
+ * Room for the numbers of a factor, with the update kernel that works on it: the binary kernel on WebAssembly memory where
+ * that is allowed and worth it, else the plain one. Both give the same numbers.
+ */
+import { kernelBinary } from './kernel-binary.ts'
+import { plainUpdate, type Update } from './kernel.ts'
+
+export interface Store {
+  readonly data: Float64Array
+  readonly update: Update
+}
+
+/** Below this much work the plain kernel is done before a module is set up. */
+const worthwhileOperations = 3e6
+const pageBytes = 65536
+const mostPages = 65535
+
+let compiled: WebAssembly.Module | null | undefined
+
+/** The module, or null where the engine or the page's security policy does not allow it. */
+function kernelModule(): WebAssembly.Module | null {
+  if (compiled === undefined) {
+    try {
+      compiled = new WebAssembly.Module(kernelBinary())
+    } catch {
+      compiled = null
+    }
+  }
+  return compiled
+}
+
+/** Room for `numbers` zeros; `binary` forces or forbids the binary kernel, for tests and timing. */
+export function newStore(numbers: number, operations: number, binary = operations >= worthwhileOperations): Store {
+  const pages = Math.ceil((8 * numbers) / pageBytes)
+  const code = binary && pages <= mostPages ? kernelModule() : null
+  if (code !== null) {
+    try {
+      const memory = new WebAssembly.Memory({ initial: pages })
+      const instance = new WebAssembly.Instance(code, { room: { memory } })
+      return { data: new Float64Array(memory.buffer, 0, numbers), update: instance.exports['update'] as Update }
+    } catch {
+      // Engines limit how many memories live at once; ordinary memory serves as well.
+    }
+  }
+  const data = new Float64Array(numbers)
+  return { data, update: plainUpdate(data) }
+}
