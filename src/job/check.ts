@@ -14,6 +14,7 @@ import { everyPanelWithin } from '../roof/raise/flatness.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { raised, type Raised } from '../roof/raise/raise.ts'
 import { outerRimNodes, rimVariation, riseOf, type RiseRule } from '../roof/raise/rise.ts'
+import type { UnderConditions } from '../roof/raise/under-conditions.ts'
 import { freeRim, type FreeRim } from '../roof/stress/free-rim.ts'
 import { conversion } from '../base/length.ts'
 import { withLevels } from './levels.ts'
@@ -28,6 +29,7 @@ export interface Checked {
   readonly wishes: Wishes
   /** For the next question about the same plan. */
   readonly free: FreeRim
+  readonly under: UnderConditions
 }
 
 /** A question of the reader that the answer depends on: it ends the job, and the questions go with it. */
@@ -69,7 +71,7 @@ export function* answerTo({ request, version, sha256, read, brief, free: known }
   const free = known ?? (yield* freeRim(plan))
   const result = yield* raised(plan, free, nodeAreas(plan), questionOf(plan, wishes.value, rows.value, target.value.heights))
   const answer = yield* answerOf({ request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, notices: target.value.notices })
-  return ok({ answer, wishes: wishes.value, free })
+  return ok({ answer, wishes: wishes.value, free, under: result.under })
 }
 
 function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {

@@ -18,6 +18,8 @@ export const defaultSagitta_mm = 5
 export interface Reading {
   readonly brief: Brief
   readonly read: ReadPlan
+  /** Layers of the drawing that were read from, by name. */
+  readonly layers: readonly string[]
 }
 
 /** The plan and the brief of a request; a problem names the file it sits in. */
@@ -29,7 +31,7 @@ export function* reading(request: Request): Steps<Result<Reading>> {
   if (!drawing.ok) return drawing
   const read = yield* planFromDrawing(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
   if (!read.ok) return { ok: false, problem: placed(read.problem, { file: request.source.name }) }
-  return ok({ brief: brief.value, read: read.value })
+  return ok({ brief: brief.value, read: read.value, layers: drawing.value.layers })
 }
 
 /** What readers of formats need to know of the options. */

@@ -28,6 +28,7 @@ export interface ReadAnswer {
     readonly notices: readonly string[]
   }
   readonly readPlan: ReadPlan
+  readonly layers: readonly string[]
 }
 
 /** Reads, checks and raises; nothing is written. Code "cancelled" when the signal was aborted. */
@@ -41,11 +42,12 @@ export async function read(request: Request, options: DriveOptions = {}): Promis
   const sha256 = await sha256Of(request.source.bytes)
   const made = await driven(reading(request), options)
   if (!made.ok) return made
-  const { read: readPlan } = made.value
+  const { read: readPlan, layers } = made.value
   const { repairs, questions, leftOut, notices, plan } = readPlan
   return ok({
     summary: { version, input: { name: request.source.name, sha256 }, plan: planFacts(plan), repairs, questions, leftOut, notices },
     readPlan,
+    layers,
   })
 }
 

@@ -2,17 +2,26 @@
  * One plan and many questions about it: what the page's worker holds between edits. The plan is read once and its factor
  * found once; every further answer costs what the conditions and the wish cost.
  */
-import { fail, type Result } from '../base/result.ts'
+import { fail, ok, type Result } from '../base/result.ts'
 import { cancelled, drive, type DriveOptions } from '../base/steps.ts'
 import type { Brief } from '../plan/project/brief.ts'
 import type { Options } from '../plan/project/options.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
+import { nodeAreas } from '../roof/raise/nearest.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
+import { smoothestLifts } from '../roof/stress/smoothest-lifts.ts'
 import { answerTo, type Checked } from './check.ts'
+import { filesOf, type OutputFile } from './files.ts'
 import { version } from './run.ts'
+
+/** One independent way in which the roof can still move: heights per node, 1 at its peak over its mean plane. */
+export interface Way {
+  readonly heights: Float64Array
+}
 
 export class Session {
   private free: FreeRim | null = null
+  private last: Checked | null = null
   private readonly read: ReadPlan
   private readonly name: string
 
@@ -22,12 +31,34 @@ export class Session {
     this.name = name
   }
 
-  /** The answer under a brief and options; code "cancelled" when the signal was aborted. */
-  async answer(brief: Brief, options: Options, given: Readonly<Record<string, unknown>>, drive_: DriveOptions = {}): Promise<Result<Checked>> {
-    const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options, brief: null, levels: null, given } as const
-    const made = await drive(answerTo({ request, version, sha256: '', read: this.read, brief, free: this.free }), drive_)
+  /**
+   * The answer under a brief and options; code "cancelled" when the signal was aborted. `target`: heights per node that
+   * take the place of the drawing's own, null: as drawn.
+   */
+  async answer(brief: Brief, options: Options, target: Float64Array | null, driven: DriveOptions = {}): Promise<Result<Checked>> {
+    const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options, brief: null, levels: null, given: {} } as const
+    const read = target === null ? this.read : { ...this.read, heights: target }
+    const made = await drive(answerTo({ request, version, sha256: '', read, brief, free: this.free }), driven)
     if (made === cancelled) return fail('cancelled', 'stopped before the end')
-    if (made.ok) this.free = made.value.free
+    if (made.ok) {
+      this.free = made.value.free
+      this.last = made.value
+    }
     return made
+  }
+
+  /** The ways left under the conditions of the last answer, smoothest first, at most `count`. */
+  ways(count: number): Result<readonly Way[]> {
+    if (this.last === null) return fail('no-answer', 'there is no answer yet')
+    const { under, answer } = this.last
+    if (under.freedomLeft === null) return ok([])
+    return ok(smoothestLifts(under.space, under.tilts, nodeAreas(answer.plan), count).map((heights) => ({ heights })))
+  }
+
+  /** The files of the last answer. A near roof is among them and says so. */
+  async files(csv: 'comma' | 'semicolon', driven: DriveOptions = {}): Promise<Result<readonly OutputFile[]>> {
+    if (this.last === null) return fail('no-answer', 'there is no answer yet')
+    const made = await drive(filesOf({ ...this.last, wishes: { ...this.last.wishes, csv, near: true } }), driven)
+    return made === cancelled ? fail('cancelled', 'stopped before the end') : ok(made)
   }
 }

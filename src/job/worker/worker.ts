@@ -1,0 +1,66 @@
+/** The worker's end: runs one question at a time, in order, and hears cancels in between. */
+import { fail, ok } from '../../base/result.ts'
+import type { DriveOptions } from '../../base/steps.ts'
+import { read } from '../run.ts'
+import { Session } from '../session.ts'
+import type { FromWorker, ToWorker } from './protocol.ts'
+
+interface Scope {
+  onmessage: ((event: { data: ToWorker }) => void) | null
+  postMessage(message: FromWorker): void
+}
+
+const scope = globalThis as unknown as Scope
+const stops = new Map<number, AbortController>()
+let session: { plan: number; session: Session } | null = null
+let queue: Promise<void> = Promise.resolve()
+
+scope.onmessage = ({ data }) => {
+  if (data.kind === 'cancel') {
+    stops.get(data.id)?.abort()
+    return
+  }
+  const stop = new AbortController()
+  stops.set(data.id, stop)
+  queue = queue.then(async () => {
+    try {
+      const tell = stop.signal.aborted ? fail('cancelled', 'stopped before it began') : await told(data, stop.signal)
+      scope.postMessage({ kind: 'told', id: data.id, tell })
+    } catch (error) {
+      scope.postMessage({ kind: 'bug', id: data.id, message: error instanceof Error ? `${error.message}` : String(error) })
+    } finally {
+      stops.delete(data.id)
+    }
+  })
+}
+
+/** Progress at most ten times a second: each message costs the page a turn. */
+const progressEvery = 100
+
+async function told(question: Exclude<ToWorker, { kind: 'cancel' }>, signal: AbortSignal): Promise<unknown> {
+  let last = performance.now()
+  const drive: DriveOptions = {
+    signal,
+    sliceMs: 20,
+    onProgress: (progress) => {
+      if (performance.now() - last < progressEvery) return
+      last = performance.now()
+      scope.postMessage({ kind: 'progress', id: question.id, progress })
+    },
+  }
+  switch (question.kind) {
+    case 'read': return read(question.ask, drive)
+    case 'base':
+      session = { plan: question.ask.plan, session: new Session(question.ask.read, question.ask.name) }
+      return ok(null)
+    default: {
+      if (session === null || session.plan !== question.ask.plan) return fail('no-plan', 'the worker has no such plan')
+      const { session: held } = session
+      if (question.kind === 'ways') return held.ways(question.ask.count)
+      if (question.kind === 'files') return held.files(question.ask.csv, drive)
+      const { brief, options, target } = question.ask
+      const made = await held.answer(brief, options, target, drive)
+      return made.ok ? ok(made.value.answer) : made
+    }
+  }
+}
