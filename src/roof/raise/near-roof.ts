@@ -1,6 +1,6 @@
 /**
- * The near roof, where no exact one exists: minimise sum m (z - t)^2 + mu z^T Q z under the conditions with t'.z = t'.t
- * (t' = the wish less its tilt, which holds the rise); of mu = 1, 10, .. 1e8 the least that brings every panel within the
+ * The near roof, where no exact one exists: minimise sum m (z - t)^2 + mu z^T Q z under the conditions with t'.z = t'.t,
+ * the product weighted by the node areas m as well (t' = the wish less its tilt, so no tilt helps: this holds the rise); of mu = 1, 10, .. 1e8 the least that brings every panel within the
  * tolerance, else 1e8. Pattern and ordering are those of the exact question, so each mu costs one factor.
  */
 import { factor, refactor, type Factor } from '../../base/sparse/factor.ts'
@@ -22,7 +22,8 @@ const greatestPower = 8
 /** `within` says whether every panel of these heights is flat enough; flatness improves with mu, so the powers are bisected. */
 export function* nearRoof(space: LiftSpace, wish: Float64Array, areas: Float64Array, within: (heights: Float64Array) => boolean): Steps<NearRoof> {
   const { plan, elimination, form, analysis } = space
-  const shape = lessTilt(plan, wish, areas)
+  // M t': orthogonal to every tilt, as t' is in the areas' own product.
+  const shape = lessTilt(plan, wish, areas).map((height, i) => areas[i] * height)
   let factored: Factor | null = null
   function* at(power: number): Steps<Float64Array> {
     const mu = 10 ** power
@@ -47,7 +48,7 @@ export function* nearRoof(space: LiftSpace, wish: Float64Array, areas: Float64Ar
   return { heights: found, mu: 10 ** high, within: true }
 }
 
-/** Minimiser of the sum for one mu: z0 without the rise condition, plus the multiple of its answer to t' that meets it. */
+/** Minimiser of the sum for one mu: z0 without the rise condition, plus the multiple of its answer to M t' that meets it. */
 function heldRise(space: LiftSpace, factored: Factor, wish: Float64Array, shape: Float64Array, areas: Float64Array, mu: number): Float64Array {
   const { elimination, plan, bases } = space
   const h0 = elimination.particular
