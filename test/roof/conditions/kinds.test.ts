@@ -227,6 +227,34 @@ describe('soft conditions', () => {
   })
 })
 
+describe('conditions that contradict each other are named, with the misfit', () => {
+  const clashes = (...conditions: Condition[]): unknown => {
+    const made = conditionRows(hall, conditions, 0)
+    if (!made.ok) throw new Error(made.problem.message)
+    return eliminate(made.value.hard, hall.nodeCount, conditions.map((c) => c.name)).clashes
+  }
+  const rim: Condition = { ...common, name: 'rim level', kind: 'level', at: { rim: 'outer' }, level: 0 }
+  const bystander: Condition = { ...common, name: 'post', kind: 'level', at: { nodes: [[9, 6]] }, level: 2 }
+
+  test('a wall above a level rim', () => {
+    // Exact: the two share the rim nodes of the north side, 0.6 m apart on a span of 18 m.
+    expect(clashes(bystander, rim, { ...common, name: 'wall', kind: 'level', at: { run: [[0, 12], [18, 12]] }, level: 0.6 }))
+      .toEqual([{ conditions: ['rim level', 'wall'], misfit: expect.closeTo(0.6 / 18, 12) as number }])
+  })
+  test('a fall without a level on a level rim: the far end is missed by the whole fall', () => {
+    expect(clashes(bystander, rim, { ...common, name: 'gutter', kind: 'fall', at: { run: [[0, 0], [18, 0]] }, per_mille: 5, level: null }))
+      .toEqual([{ conditions: ['rim level', 'gutter'], misfit: expect.closeTo(0.09 / 18, 12) as number }])
+  })
+  test('a straight run between two posts, past two more: a clash for each', () => {
+    const post = (name: string, x: number, z: number): Condition => ({ ...common, name, kind: 'level', at: { nodes: [[x, 6]] }, level: z })
+    expect(clashes(post('west', 0, 1), post('middle', 9, 1.5), post('east', 18, 1.2), post('apart', 3, 7), { ...common, name: 'ridge', kind: 'straight', at: { run: [[0, 6], [1.5, 6], [18, 6]] } }))
+      .toMatchObject([{ conditions: ['west', 'east', 'apart', 'ridge'] }, { conditions: ['west', 'middle', 'east', 'ridge'] }])
+  })
+  test('nothing where all agree', () => {
+    expect(clashes(rim, bystander, { ...common, name: 'again', kind: 'equal', at: { rim: 'outer' } }, { ...common, name: 'once more', kind: 'straight', at: { run: [[0, 0], [18, 0]] } })).toEqual([])
+  })
+})
+
 describe('size', () => {
   test('100,000 nodes, 2,000 of them held: solved in milliseconds', () => {
     const big = grid(316, 316)
