@@ -14,7 +14,7 @@ import type { Insert, Mesh, Path, Shape } from './dxf-shapes.ts'
 import { DxfSheet } from './dxf-sheet.ts'
 
 /** Entities that a drawing may come to once its blocks are unfolded. */
-export const mostEntities = 2_000_000
+export const mostEntities = 1_000_000
 /** Blocks within blocks. */
 export const deepest = 32
 

@@ -10,7 +10,8 @@
  */
 import { fail, type Problem } from '../base/result.ts'
 import { dxfText } from './dxf-text.ts'
-import { decimalIn, farthest, integerIn, quoted } from './text-number.ts'
+import { decimalIn, farthest, integerIn } from './text-number.ts'
+import { printable, quoted } from './text-quote.ts'
 
 /** Group code of data that belongs to an embedded object, not to the entity; it ends what is of use here. */
 const embeddedObject = 101
@@ -45,7 +46,7 @@ export class DxfRecords {
   /** Goes to the next record; false at EOF or when there is a problem. */
   advance(): boolean {
     if (this.problem !== null) return false
-    this.kind = this.text.slice(this.start, this.stop).toUpperCase()
+    this.kind = printable(this.text.slice(this.start, this.stop).toUpperCase(), 32)
     this.line = this.lines - 1
     this.count = 0
     if (this.kind === 'EOF') return false
@@ -113,7 +114,7 @@ export class DxfRecords {
   /** "LINE 2F": kind and handle of the current record. */
   get name(): string {
     const handle = this.find(5)
-    return handle < 0 || this.kind === '' ? this.kind : `${this.kind} ${this.value(handle).slice(0, 20)}`
+    return handle < 0 || this.kind === '' ? this.kind : `${this.kind} ${printable(this.value(handle), 20)}`
   }
 
   private entity(): { entity?: string } {

@@ -7,11 +7,13 @@ import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import { epsilon } from '../base/geometry/tolerance.ts'
 import type { Drawing } from '../plan/drawing.ts'
 import type { Layer } from './dxf-file.ts'
+import { joinedFaces } from './dxf-merge.ts'
 import type { Common, Mesh } from './dxf-shapes.ts'
 import { Integers } from './growing.ts'
 import type { LayerChoice } from './layer-choice.ts'
 import { Sketch } from './sketch.ts'
 import { farthest } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 
 /** Points that one drawing may have: about ten times the largest roofs. */
 export const mostPoints = 5_000_000
@@ -32,6 +34,8 @@ export class DxfSheet {
   private chords = 0
   private readonly curvesAt: [number, number][] = []
   private readonly levels: Level[] = []
+  /** Loops with edges marked invisible; see dxf-merge.ts. */
+  private readonly hidden = new Map<number, number[]>()
   /** Points of LINEs that lie at z = 0, and how many LINEs have heights and how many have none. */
   private readonly groundPoints = new Integers()
   private linesWithHeights = 0
@@ -79,7 +83,7 @@ export class DxfSheet {
     return this.full(entity)
   }
 
-  mesh(points: readonly number[], { start, corner, ...entity }: Mesh, layer: string): Problem | null {
+  mesh(points: readonly number[], { start, corner, hidden, ...entity }: Mesh, layer: string): Problem | null {
     const index = this.sketch.layer(layer)
     const first = this.sketch.pointCount
     for (let i = 0; i < points.length; i += 3) {
@@ -89,10 +93,23 @@ export class DxfSheet {
     const same = (a: number, b: number): boolean => points[3 * a] === points[3 * b] && points[3 * a + 1] === points[3 * b + 1]
     for (let f = 0; f + 1 < start.length; f += 1) {
       const face: number[] = []
-      for (let i = start[f]; i < start[f + 1]; i += 1) if (face.length === 0 || !same(face[face.length - 1], corner[i])) face.push(corner[i])
-      while (face.length > 1 && same(face[0], face[face.length - 1])) face.pop()
-      if (face.length < 3) this.sketch.leaveOut(`${entity.kind} face, upright or without area`, layer)
-      else this.sketch.outlines.add(face.map((point) => first + point), index, entity.line)
+      const marks: number[] = []
+      for (let i = start[f]; i < start[f + 1]; i += 1) {
+        const repeated = face.length > 0 && same(face[face.length - 1], corner[i])
+        if (repeated) marks.pop()
+        else face.push(corner[i])
+        marks.push(hidden === null ? 0 : hidden[i])
+      }
+      while (face.length > 1 && same(face[0], face[face.length - 1])) {
+        face.pop()
+        marks.pop()
+      }
+      if (face.length < 3) {
+        this.sketch.leaveOut(`${entity.kind} face, upright or without area`, layer)
+        continue
+      }
+      if (marks.includes(1)) this.hidden.set(this.sketch.outlines.length, marks)
+      this.sketch.outlines.add(face.map((point) => first + point), index, entity.line)
     }
     return this.full(entity)
   }
@@ -113,7 +130,19 @@ export class DxfSheet {
     this.settleLines()
     this.noteChords()
     this.noteLevels()
-    return ok(sketch.drawing('DXF', unit, false))
+    if (this.hidden.size === 0) return ok(sketch.drawing('DXF', unit, false))
+    return ok(sketch.drawing('DXF', unit, false, joinedFaces(sketch.outlines.loops(), this.hidden, this.places())))
+  }
+
+  /** Numbers for points, the same for the same coordinates. */
+  private places(): (point: number) => number {
+    const known = new Map<string, number>()
+    return (point) => {
+      const key = `${this.sketch.x(point)} ${this.sketch.y(point)} ${this.sketch.z(point)}`
+      const number = known.get(key) ?? known.size
+      known.set(key, number)
+      return number
+    }
   }
 
   private lineMet(first: number, heights: boolean): void {
@@ -162,7 +191,7 @@ export class DxfSheet {
   }
 
   private nothing(): Result<never> {
-    const other = this.sketch.leftOut.map(({ kind, layer, count }) => `${count} x ${kind} on layer "${layer}"`)
+    const other = this.sketch.leftOut.map(({ kind, layer, count }) => `${count} x ${kind} on layer ${quoted(layer, 40)}`)
     const only = other.length === 0 ? '' : `, only ${other.slice(0, 6).join(', ')}${other.length > 6 ? ` and ${other.length - 6} other kinds` : ''}`
     return fail('nothing-drawn', `the file has no faces, outlines or lines to read${only}`, null, 'export the edges of the panels as lines or closed polylines')
   }

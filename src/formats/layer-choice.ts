@@ -1,5 +1,6 @@
 /** Which layers the user wants; names are compared without case. */
 import { fail, type Problem } from '../base/result.ts'
+import { quoted } from './text-quote.ts'
 
 export class LayerChoice {
   private readonly wanted: ReadonlyMap<string, string> | null
@@ -26,9 +27,9 @@ export class LayerChoice {
     for (const [key, name] of this.wanted) {
       if (there.has(key)) continue
       const names = [...there.values()].filter((layer) => layer !== '').sort()
-      const shown = names.slice(0, 12).map((layer) => `"${layer}"`).join(', ')
+      const shown = names.slice(0, 12).map((layer) => quoted(layer, 40)).join(', ')
       const cure = names.length === 0 ? 'the file has no named layers' : `the file has ${shown}${names.length > 12 ? ` and ${names.length - 12} more` : ''}`
-      return fail('no-such-layer', `there is no layer "${name}"`, null, cure).problem
+      return fail('no-such-layer', `there is no layer ${quoted(name, 40)}`, null, cure).problem
     }
     return null
   }

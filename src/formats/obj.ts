@@ -14,7 +14,8 @@ import type { Format, FormatOptions, Source } from './format.ts'
 import { LayerChoice } from './layer-choice.ts'
 import { ObjLine } from './obj-line.ts'
 import { Sketch } from './sketch.ts'
-import { decimalIn, farthest, quoted } from './text-number.ts'
+import { decimalIn, farthest } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 
 export const obj: Format = { title: 'OBJ', extensions: ['obj'], recognises, read }
 

@@ -22,7 +22,7 @@ class LoopList {
     return this.layer.length
   }
 
-  /** Adds points[from, to) of a list of point indices as one loop. */
+  /** Adds a list of point indices as one loop. */
   add(points: readonly number[] | Int32Array, layer: number, line: number): void {
     for (let i = 0; i < points.length; i += 1) this.point.push(points[i])
     this.start.push(this.point.length)
@@ -128,7 +128,8 @@ export class Sketch {
     return [...this.leftOutCounts.values()]
   }
 
-  drawing(format: string, unit: Unit | null, onPaper: boolean): Drawing {
+  /** `outlines` in the place of those collected, when the reader has made others of them. */
+  drawing(format: string, unit: Unit | null, onPaper: boolean, outlines: Loops = this.outlines.loops()): Drawing {
     return {
       format,
       unit,
@@ -136,7 +137,7 @@ export class Sketch {
       points: this.coordinates.array(),
       hasHeight: Uint8Array.from(this.heights.array()),
       layers: this.layerNames.length > 0 ? this.layerNames : [''],
-      outlines: this.outlines.loops(),
+      outlines,
       holes: this.holes.loops(),
       segments: this.segmentEnds.array(),
       segmentLayer: this.segmentLayer.array(),

@@ -81,8 +81,4 @@ export function integerIn(text: string, start: number, end: number): number {
   return sign === 45 ? -value : value
 }
 
-/** What stands there, for a sentence: in quotes, without control characters, cut after 24 characters. */
-export function quoted(text: string): string {
-  const plain = text.trim().replace(/[\u0000-\u001f\u007f-\u009f\u2028\u2029]/g, '\ufffd')
-  return `"${plain.length > 24 ? `${plain.slice(0, 24)}...` : plain}"`
-}
+export { quoted } from './text-quote.ts'
