@@ -19,10 +19,8 @@ import { osCode, osReason } from './os-reason.ts'
 export interface OutputOptions {
   /** Whether files of ours that are there already are replaced. */
   readonly overwrite: boolean
-  /** Names that this program writes into a folder; with `overwrite` those that a run does not write are removed. */
-  readonly ours: readonly string[]
-  /** Folders inside the output folder that the run fills, one a plan; [''] when the files go into the folder itself. */
-  readonly subfolders: readonly string[]
+  /** All paths that a run like this may write; with `overwrite` those that this one does not write are removed. */
+  readonly owned: readonly string[]
   readonly fs?: FileSystem
   readonly pid?: number
   /** Whether another process with this number is alive; tests answer for the dead. */
@@ -45,9 +43,8 @@ const marker = '.panewise-'
  * "cannot-write".
  */
 export function openOutput(folder: string, options: OutputOptions): Result<Output> {
-  const { overwrite, ours, subfolders, fs = diskFiles, pid = process.pid, isAlive = otherIsAlive } = options
+  const { overwrite, owned, fs = diskFiles, pid = process.pid, isAlive = otherIsAlive } = options
   const target = resolve(folder)
-  const owned = subfolders.flatMap((subfolder) => ours.map((name) => join(subfolder, name)))
   try {
     removeLeftovers(fs, target, isAlive)
     const exists = fs.existsSync(target)
@@ -81,7 +78,6 @@ interface Open {
   /** The first folder above the target that had to be made. */
   readonly made: string | null
   readonly overwrite: boolean
-  /** All paths of ours that this run may replace. */
   readonly owned: readonly string[]
 }
 

@@ -29,11 +29,11 @@ function tree(folder: string): Record<string, string> {
   return found
 }
 
-type Where = { fs?: FileSystem; overwrite?: boolean; subfolders?: readonly string[]; files?: readonly string[]; text?: string }
+type Where = { fs?: FileSystem; overwrite?: boolean; owned?: readonly string[]; files?: readonly string[]; text?: string }
 
 /** One run of the program as far as writing goes. */
 function run(folder: string, where: Where = {}): Result<null> {
-  const options: OutputOptions = { overwrite: where.overwrite ?? false, ours, subfolders: where.subfolders ?? [''], pid: 99, isAlive: () => false, ...(where.fs && { fs: where.fs }) }
+  const options: OutputOptions = { overwrite: where.overwrite ?? false, owned: where.owned ?? ours, pid: 99, isAlive: () => false, ...(where.fs && { fs: where.fs }) }
   const opened = openOutput(folder, options)
   if (!opened.ok) return opened
   for (const name of where.files ?? ours) {
@@ -73,7 +73,7 @@ describe('a folder of one run', () => {
   })
 
   test('a discarded run leaves no trace, not even the folders above', () => {
-    const opened = openOutput(join(room, 'a/b/out'), { overwrite: false, ours, subfolders: [''] })
+    const opened = openOutput(join(room, 'a/b/out'), { overwrite: false, owned: ours })
     if (!opened.ok) throw new Error('not opened')
     expect(opened.value.put('roof.obj', bytes('x')).ok).toBe(true)
     opened.value.discard()
@@ -81,7 +81,7 @@ describe('a folder of one run', () => {
   })
 
   test('two runs into a new folder at once: the second to finish says so and leaves the first alone', () => {
-    const options = { overwrite: false, ours, subfolders: [''] as const, isAlive: () => true }
+    const options = { overwrite: false, owned: ours, isAlive: () => true }
     const [one, two] = [openOutput(join(room, 'out'), { ...options, pid: 1 }), openOutput(join(room, 'out'), { ...options, pid: 2 })]
     if (!one.ok || !two.ok) throw new Error('not opened')
     one.value.put('roof.obj', bytes('one'))
@@ -114,6 +114,8 @@ function failing(n: number, dies: boolean, code = 'EIO'): { fs: FileSystem; coun
   return { fs: wrapped as FileSystem, count: () => count }
 }
 
+const several = [...['north', 'south'].flatMap((folder) => ours.map((name) => join(folder, name))), 'summary.csv']
+
 const scenes: { name: string; below?: string; prepare: (out: string) => void; where: Where }[] = [
   { name: 'a new folder', prepare: () => {}, where: {} },
   { name: 'a new folder below new ones', below: 'a/b', prepare: () => {}, where: {} },
@@ -129,10 +131,10 @@ const scenes: { name: string; below?: string; prepare: (out: string) => void; wh
   {
     name: 'several plans',
     prepare: (out) => {
-      run(out, { text: 'old', subfolders: ['', 'north'], files: ['north/roof.obj', 'north/summary.json', 'summary.csv'] })
+      run(out, { text: 'old', owned: several, files: ['north/roof.obj', 'north/summary.json', 'summary.csv'] })
       fs.writeFileSync(join(out, 'north/notes.txt'), 'mine')
     },
-    where: { overwrite: true, subfolders: ['', 'north', 'south'], files: ['north/roof.obj', 'north/summary.json', 'south/roof.obj', 'south/summary.json', 'summary.csv'] },
+    where: { overwrite: true, owned: several, files: ['north/roof.obj', 'north/summary.json', 'south/roof.obj', 'south/summary.json', 'summary.csv'] },
   },
 ]
 
@@ -158,7 +160,7 @@ describe.each(scenes)('$name', ({ prepare, where, below = '' }) => {
       prepare(join(place, below, 'out'))
       const result = run(join(place, below, 'out'), { ...where, fs: failing(n, false, 'ENOSPC').fs })
       // What cannot be cleaned away at once goes with the next run.
-      const left = openOutput(join(place, below, 'out'), { overwrite: true, ours, subfolders: [''], pid: 100, isAlive: () => false })
+      const left = openOutput(join(place, below, 'out'), { overwrite: true, owned: ours, pid: 100, isAlive: () => false })
       if (left.ok) left.value.discard()
       expect(tree(place), `call ${n}`).toEqual(result.ok ? after : before)
       if (!result.ok) expect(result.problem).toMatchObject({ code: 'cannot-write', message: 'nothing was written, since the disk is full' })
@@ -175,8 +177,8 @@ describe.each(scenes)('$name', ({ prepare, where, below = '' }) => {
       prepare(join(place, below, 'out'))
       run(join(place, below, 'out'), { ...where, fs: failing(n, true).fs })
       // The next run dies while it clears up, at any call; the one after it must still cope.
-      for (let m = 1; m <= 6; m += 1) openOutput(join(place, below, 'out'), { overwrite: true, ours, subfolders: [''], pid: 101, isAlive: () => false, fs: failing(m, true).fs })
-      const next = openOutput(join(place, below, 'out'), { overwrite: true, ours, subfolders: [''], pid: 102, isAlive: () => false })
+      for (let m = 1; m <= 6; m += 1) openOutput(join(place, below, 'out'), { overwrite: true, owned: ours, pid: 101, isAlive: () => false, fs: failing(m, true).fs })
+      const next = openOutput(join(place, below, 'out'), { overwrite: true, owned: ours, pid: 102, isAlive: () => false })
       if (!next.ok) throw new Error(next.problem.message)
       next.value.discard()
       // Empty folders above the output may stay: they are not known to be ours any more.
@@ -197,7 +199,7 @@ test('a run that is still alive is not cleared away', () => {
   fs.mkdirSync(join(room, 'out/.panewise-4321/new'), { recursive: true })
   fs.mkdirSync(join(room, '.out.panewise-77'))
   fs.writeFileSync(join(room, 'out/.panewise-notes'), 'foreign')
-  const opened = openOutput(join(room, 'out'), { overwrite: false, ours, subfolders: [''], pid: 5, isAlive: (pid) => pid === 4321 })
+  const opened = openOutput(join(room, 'out'), { overwrite: false, owned: ours, pid: 5, isAlive: (pid) => pid === 4321 })
   if (!opened.ok) throw new Error('not opened')
   opened.value.discard()
   expect(fs.readdirSync(join(room, 'out')).sort()).toEqual(['.panewise-4321', '.panewise-notes'])

@@ -2,11 +2,25 @@
 import { printable } from './printable.ts'
 import type { Report } from './report.ts'
 
-/** `strong` marks the first sentence where something can be marked. */
-export function reportText({ headline, verdict, sentences, facts, caution }: Report, strong: (text: string) => string = (text) => text): string {
+/** Puts a mark on text where the terminal has one. */
+export type Mark = (text: string) => string
+
+const unmarked: Mark = (text) => text
+
+/** `strong` marks the first sentence. */
+export function reportText(report: Report, strong: Mark = unmarked): string {
+  const { facts, caution } = report
   const width = Math.max(...facts.map(([label]) => label.length))
-  const lines = [...(verdict === null ? [] : [`Verdict: ${verdict}.`]), ...sentences].map(printable)
   const table = facts.map(([label, value]) => `  ${label.padEnd(width)}  ${printable(value)}`)
-  const blocks = [[strong(printable(headline)), ...lines].join('\n'), table.join('\n'), ...(caution === null ? [] : [caution])]
+  const blocks = [sentences(report, strong).join('\n'), table.join('\n'), ...(caution === null ? [] : [caution])]
   return `${blocks.join('\n\n')}\n`
+}
+
+/** The sentences alone, under a name: for a plan among several. */
+export function reportUnder(name: string, report: Report, strong: Mark = unmarked): string {
+  return `${[printable(name), ...sentences(report, strong).map((line) => `  ${line}`)].join('\n')}\n`
+}
+
+function sentences({ headline, verdict, sentences: others }: Report, strong: Mark): string[] {
+  return [strong(printable(headline)), ...(verdict === null ? [] : [`Verdict: ${verdict}.`]), ...others.map(printable)]
 }

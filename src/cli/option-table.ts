@@ -1,0 +1,54 @@
+/** Every option of the command line: what it takes, which commands know it, and what `--help` says of it. */
+
+export type Command = 'read' | 'check' | 'raise'
+
+export const commands: readonly Command[] = ['read', 'check', 'raise']
+
+export interface OptionEntry {
+  readonly name: string
+  /** What its value is called in the help; null for a switch. */
+  readonly value: string | null
+  readonly repeatable?: true
+  /** The heading it stands under. */
+  readonly group: 'Reading the plan' | 'What must hold' | 'What it should look like' | 'Judging and writing' | 'This run'
+  readonly help: string
+}
+
+/** In the order in which the help shows them. */
+export const optionTable: readonly OptionEntry[] = [
+  { name: 'unit', value: 'UNIT', group: 'Reading the plan', help: "the drawing's unit, whatever its file says: mm, cm, m, in, ft" },
+  { name: 'scale', value: '1:N', group: 'Reading the plan', help: 'how a drawing on paper was drawn; without it 1:1' },
+  { name: 'layer', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'take this layer only (repeatable; capitals do not matter)' },
+  { name: 'snap', value: 'LENGTH', group: 'Reading the plan', help: 'line ends nearer than this are one node (bare: mm)' },
+  { name: 'sagitta', value: 'LENGTH', group: 'Reading the plan', help: 'largest distance of a curve from its chords (bare: mm; default 5)' },
+  { name: 'void', value: 'X,Y', repeatable: true, group: 'Reading the plan', help: 'the bounded face round this point is a void, no panel (repeatable)' },
+  { name: 'accept', value: 'CODE', repeatable: true, group: 'Reading the plan', help: 'take a proposal of the reader, or "all" (repeatable)' },
+  { name: 'brief', value: 'FILE', group: 'What must hold', help: 'conditions and wishes as JSON (panewise help brief)' },
+  { name: 'rim', value: 'free|level|level=H', group: 'What must hold', help: 'the outer rim floats, is level at the datum, or at H' },
+  { name: 'datum', value: 'LEVEL', group: 'What must hold', help: 'the level from which rise and levels count' },
+  { name: 'levels', value: 'FILE[#LAYER]', group: 'What must hold', help: 'hold nodes at levels: CSV (name,x,y,level or x,y,level) or DXF points' },
+  { name: 'levels-within', value: 'LENGTH', group: 'What must hold', help: 'how far a level may lie from its node (default 50mm)' },
+  { name: 'pitch', value: 'DEGREES', group: 'What must hold', help: 'all panels in one plane of this pitch' },
+  { name: 'bearing', value: 'DEGREES', group: 'What must hold', help: 'with --pitch: the way down, clockwise from +y (default 180)' },
+  { name: 'rise', value: 'LENGTH', group: 'What it should look like', help: 'highest node above the springing (default: a tenth of the shorter side)' },
+  { name: 'down', value: null, group: 'What it should look like', help: 'the roof hangs from its rim' },
+  { name: 'shape', value: 'SHAPE', group: 'What it should look like', help: 'dome (default), barrel, pitched or hipped' },
+  { name: 'target', value: 'FILE|input|none', group: 'What it should look like', help: 'come near to the heights of a file, of the plan itself, or of neither' },
+  { name: 'flat', value: 'LENGTH', group: 'Judging and writing', help: 'out of flat that a panel may be (bare: mm; default 1)' },
+  { name: 'full', value: null, group: 'Judging and writing', help: 'name frozen joints and flat groups in the summary' },
+  { name: 'out', value: 'DIR', group: 'Judging and writing', help: 'where raise writes: one plan into DIR, several into DIR/NAME' },
+  { name: 'overwrite', value: null, group: 'Judging and writing', help: 'replace files of an earlier run; foreign files always stay' },
+  { name: 'near', value: null, group: 'Judging and writing', help: 'write the nearest roof even when its panels are not flat' },
+  { name: 'decimals', value: 'N', group: 'Judging and writing', help: 'round x, y and z to N decimals (default: x, y exact, z to 1 um)' },
+  { name: 'csv', value: 'comma|semicolon', group: 'Judging and writing', help: 'lists with commas, or with semicolons and decimal commas' },
+  { name: 'json', value: null, group: 'This run', help: 'print one JSON object and nothing else' },
+  { name: 'quiet', value: null, group: 'This run', help: 'print nothing but errors; the exit code has the verdict' },
+  { name: 'help', value: null, group: 'This run', help: 'show this' },
+]
+
+const forReading: readonly string[] = ['unit', 'scale', 'layer', 'snap', 'sagitta', 'void', 'accept', 'brief', 'json', 'quiet', 'help']
+
+/** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
+export function optionsOf(command: Command): readonly OptionEntry[] {
+  return command === 'read' ? optionTable.filter(({ name }) => forReading.includes(name)) : optionTable
+}

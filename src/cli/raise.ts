@@ -1,0 +1,88 @@
+/** `panewise raise`: the roof and its lists into a folder, all files together at the end. */
+import { join } from 'node:path'
+import { fail, ok, type Result } from '../base/result.ts'
+import { finish } from '../base/steps.ts'
+import { writeCsv, type CsvStyle } from '../formats/write-csv.ts'
+import { fileNames, files, summaryWithFiles, type OutputFile } from '../job/files.ts'
+import { run as job } from '../job/run.ts'
+import { answerReport, type Report } from '../paper/report/report.ts'
+import { eachPlan, gaveUp, type Run } from './each-plan.ts'
+import { badUse, exitCodeOf, type ExitCode } from './exit-code.ts'
+import { overview, type OverviewRow } from './overview.ts'
+import { overviewName, planFolders } from './plan-folders.ts'
+import { openOutput, type Output } from './write-safely.ts'
+
+/** One plan: into DIR. Several: into DIR/NAME, with an overview in DIR, going on after a plan that cannot be read. */
+export async function raisePlans(run: Run): Promise<ExitCode> {
+  const { args, screen } = run
+  const folder = args.values.get('out')?.[0]
+  if (folder === undefined) return gaveUp(screen, fail('no-out', 'raise needs a folder to write into', null, 'add --out DIR').problem)
+  const isOne = args.plans.length <= 1
+  const folders = isOne ? [''] : planFolders(args.plans)
+  const owned = [...folders.flatMap((each) => fileNames.map((name) => join(each, name))), ...(isOne ? [] : [overviewName])]
+  const output = openOutput(folder, { overwrite: args.values.has('overwrite'), owned })
+  if (!output.ok) return gaveUp(screen, output.problem)
+  try {
+    return await (isOne ? raiseOne(run, folder, output.value) : raiseSeveral(run, folders, output.value))
+  } finally {
+    output.value.discard()
+  }
+}
+
+function raiseOne(run: Run, folder: string, output: Output): Promise<ExitCode> {
+  return eachPlan(run, async (request, _at, drive) => {
+    const checked = await job(request, drive)
+    if (!checked.ok) return checked
+    const made = await files(checked.value, drive)
+    if (!made.ok) return made
+    const put = putAll(output, '', made.value)
+    const written = put.ok ? output.commit() : put
+    if (!written.ok) return written
+    const { answer } = checked.value
+    const names = made.value.map(({ name }) => name).join(', ')
+    return ok({
+      record: summaryWithFiles(checked.value),
+      report: withSentence(answerReport(answer), `Written to ${folder}: ${names}.`),
+      exit: exitCodeOf(answer.summary.verdict),
+    })
+  })
+}
+
+function raiseSeveral(run: Run, folders: readonly string[], output: Output): Promise<ExitCode> {
+  const { plans } = run.args
+  const rows: OverviewRow[] = []
+  let csv: CsvStyle = 'comma'
+  return eachPlan(
+    run,
+    async (request, at, drive) => {
+      csv = request.options.csv
+      const checked = await job(request, drive)
+      if (!checked.ok) return checked
+      const made = await files(checked.value, drive)
+      if (!made.ok) return made
+      const put = putAll(output, folders[at], made.value)
+      if (!put.ok) return put
+      const { answer } = checked.value
+      const exit = exitCodeOf(answer.summary.verdict)
+      rows.push({ plan: plans[at], folder: folders[at], exit, summary: answer.summary, problem: null })
+      return ok({ record: { folder: folders[at], ...summaryWithFiles(checked.value) }, report: answerReport(answer), exit })
+    },
+    {
+      failed: (at, problem) => rows.push({ plan: plans[at], folder: '', exit: badUse, summary: null, problem }),
+      conclude: () => {
+        const put = output.put(overviewName, finish(writeCsv(overview(rows), csv)))
+        return put.ok ? output.commit() : put
+      },
+    },
+  )
+}
+
+function putAll(output: Output, folder: string, made: readonly OutputFile[]): Result<null> {
+  for (const { name, bytes } of made) {
+    const put = output.put(join(folder, name), bytes)
+    if (!put.ok) return put
+  }
+  return ok(null)
+}
+
+const withSentence = (report: Report, sentence: string): Report => ({ ...report, sentences: [...report.sentences, sentence] })
