@@ -8,7 +8,8 @@
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { Integers } from './growing.ts'
-import { decimalIn, quoted } from './text-number.ts'
+import { decimalIn } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 
 /** Deeper nesting than any drawing has. */
 const deepest = 128

@@ -5,7 +5,7 @@
 import { millimetresPerPixel, numberList, paperLength, svgLength } from './svg-numbers.ts'
 import type { Viewport } from './svg-shapes.ts'
 import { composed, translation, type Affine } from './svg-transform.ts'
-import { quoted } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 import { attribute, type XmlElement } from './xml.ts'
 
 export interface Page {

@@ -7,6 +7,8 @@ import { NumberScanner } from './svg-numbers.ts'
 
 /** What draws: every point absolute, in user units. */
 export interface Pen {
+  /** Why drawing on is of no use, null while it is. */
+  readonly fault: string | null
   move(x: number, y: number): void
   line(x: number, y: number): void
   quadratic(x1: number, y1: number, x: number, y: number): void
@@ -30,7 +32,10 @@ const arity: Readonly<Record<string, number>> = { M: 2, L: 2, H: 1, V: 1, C: 6, 
 /** Commands between two turns: about a millisecond. */
 const slice = 4096
 
-/** Draws the path data with the pen; null when all of it was read. What comes before a fault has been drawn. */
+/**
+ * Draws the path data with the pen; null when all of it was read, or the pen wants no more. What comes before a fault has
+ * been drawn.
+ */
 export function* drawnPath(data: string, pen: Pen): Steps<PathFault | null> {
   const scanner = new NumberScanner(data)
   const v = new Float64Array(7)
@@ -138,7 +143,10 @@ export function* drawnPath(data: string, pen: Pen): Steps<PathFault | null> {
       return fault('a number is expected after the comma')
     }
     count += 1
-    if (count % slice === 0) yield { stage: 'Reading', done: scanner.at / data.length }
+    if (count % slice === 0) {
+      if (pen.fault !== null) return null
+      yield { stage: 'Reading', done: scanner.at / data.length }
+    }
   }
   return null
 }

@@ -3,7 +3,7 @@ import type { Steps } from '../base/steps.ts'
 import { svgLength, userUnits, NumberScanner } from './svg-numbers.ts'
 import { drawnPath } from './svg-path.ts'
 import type { Tracer } from './svg-tracer.ts'
-import { quoted } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 import { attribute, type XmlElement } from './xml.ts'
 
 /** Size in user units of what percentages are shares of; null where the file does not say. */

@@ -1,21 +1,15 @@
 /**
  * The pen that draws shapes into the plane of the paper: mm, y up. Points go through the map of the element, curves
- * become chords there. Holds the subpaths of one element at a time.
+ * become chords there. Holds the subpaths of one element at a time: connected pieces without points repeated in a row; of
+ * a ring the first point is not repeated.
  */
 import { closesWithin } from '../base/geometry/tolerance.ts'
 import { interiorPoints, mostChords, type Curve } from './chords.ts'
-import { Doubles } from './growing.ts'
+import { Doubles, Integers } from './growing.ts'
 import { ellipticArc, isStraight, mappedArc } from './svg-curves.ts'
 import type { Pen } from './svg-path.ts'
 import { identity, type Affine } from './svg-transform.ts'
 import { farthest } from './text-number.ts'
-
-/** One connected piece of a path, without points repeated in a row; of a ring the first point is not repeated. */
-export interface Subpath {
-  readonly xy: Float64Array
-  /** Whether it comes back to its start: by the command Z, or by a last point on the first. */
-  readonly ring: boolean
-}
 
 /** More points than a plan of a hundred thousand panels has, at about 60 bytes each. */
 export const mostPoints = 3_000_000
@@ -30,8 +24,12 @@ export class Tracer implements Pen {
   readonly curveStart = new Doubles()
   private readonly sagitta: number
   private map: Affine = identity
-  private subpaths: Subpath[] = []
-  private readonly chain = new Doubles()
+  /** Points of all subpaths of the element, x y x y .. */
+  readonly xy = new Doubles()
+  /** Where each subpath starts in `xy`, and where the one under way does. */
+  private readonly starts = new Integers()
+  private readonly rings = new Integers()
+  private chainStart = 0
   private readonly control = new Float64Array(8)
   // The pen's place in the user's plane, and the point that Z goes back to.
   private x = 0
@@ -49,16 +47,25 @@ export class Tracer implements Pen {
   /** A new element with this map from its user units to the paper. */
   begin(map: Affine): void {
     this.map = map
-    this.subpaths = []
-    this.chain.length = 0
+    this.xy.length = this.starts.length = this.rings.length = this.chainStart = 0
     this.fault = null
     this.x = this.y = this.startX = this.startY = 0
   }
 
-  /** The subpaths of the element. Those of a single point draw nothing and are not among them. */
-  end(): readonly Subpath[] {
+  /** Ends the element; how many subpaths it has. Those of a single point draw nothing and are not among them. */
+  end(): number {
     this.finishChain(false)
-    return this.subpaths
+    return this.starts.length
+  }
+
+  /** Where a subpath starts in `xy`. */
+  start(subpath: number): number {
+    return subpath < this.starts.length ? this.starts.at(subpath) : this.chainStart
+  }
+
+  /** Whether a subpath comes back to its start: by the command Z, or by a last point on the first. */
+  isRing(subpath: number): boolean {
+    return this.rings.at(subpath) === 1
   }
 
   move(x: number, y: number): void {
@@ -139,7 +146,7 @@ export class Tracer implements Pen {
 
   /** Starts a subpath at the pen's place, unless one is under way. After Z that place is the last start. */
   private openChain(): void {
-    if (this.chain.length === 0) this.put(this.mapX(this.x, this.y), this.mapY(this.x, this.y))
+    if (this.xy.length === this.chainStart) this.put(this.mapX(this.x, this.y), this.mapY(this.x, this.y))
   }
 
   private put(x: number, y: number): void {
@@ -151,33 +158,38 @@ export class Tracer implements Pen {
       this.fault ??= `the drawing has more than ${mostPoints} points`
       return
     }
-    const { chain } = this
-    const last = chain.length - 2
-    if (last >= 0 && chain.at(last) === x && chain.at(last + 1) === y) return
-    chain.push(x)
-    chain.push(y)
+    const { xy } = this
+    const last = xy.length - 2
+    if (last >= this.chainStart && xy.at(last) === x && xy.at(last + 1) === y) return
+    xy.push(x)
+    xy.push(y)
     this.pointCount += 1
   }
 
   private finishChain(closed: boolean): void {
-    const { chain } = this
-    const back = returns(chain)
-    if (back && chain.length > 4) chain.length -= 2
-    if (chain.length >= 4) this.subpaths.push({ xy: chain.array(), ring: closed || back })
-    chain.length = 0
+    const { xy, chainStart } = this
+    const back = this.returns()
+    if (back && xy.length - chainStart > 4) xy.length -= 2
+    if (xy.length - chainStart >= 4) {
+      this.starts.push(chainStart)
+      this.rings.push(closed || back ? 1 : 0)
+    } else xy.length = chainStart
+    this.chainStart = xy.length
   }
-}
 
-/** Whether a chain ends where it starts, to within `closesWithin` of its size. */
-function returns(chain: Doubles): boolean {
-  const end = chain.length - 2
-  if (end < 4) return false
-  let [left, right, low, high] = [Infinity, -Infinity, Infinity, -Infinity]
-  for (let i = 0; i <= end; i += 2) {
-    left = Math.min(left, chain.at(i))
-    right = Math.max(right, chain.at(i))
-    low = Math.min(low, chain.at(i + 1))
-    high = Math.max(high, chain.at(i + 1))
+  /** Whether the chain under way ends where it starts, to within `closesWithin` of its size. */
+  private returns(): boolean {
+    const { xy, chainStart } = this
+    const end = xy.length - 2
+    if (end - chainStart < 4) return false
+    let [left, right, low, high] = [Infinity, -Infinity, Infinity, -Infinity]
+    for (let i = chainStart; i <= end; i += 2) {
+      left = Math.min(left, xy.at(i))
+      right = Math.max(right, xy.at(i))
+      low = Math.min(low, xy.at(i + 1))
+      high = Math.max(high, xy.at(i + 1))
+    }
+    const gap = Math.hypot(xy.at(end) - xy.at(chainStart), xy.at(end + 1) - xy.at(chainStart + 1))
+    return gap <= closesWithin * Math.hypot(right - left, high - low)
   }
-  return Math.hypot(chain.at(end) - chain.at(0), chain.at(end + 1) - chain.at(1)) <= closesWithin * Math.hypot(right - left, high - low)
 }

@@ -10,9 +10,9 @@ import { page, placedBox, type Page } from './svg-page.ts'
 import { deepestRings, holes } from './svg-rings.ts'
 import { drawnShape, Lengths, shapeNames, type Viewport } from './svg-shapes.ts'
 import { declared, type StyleSheet } from './svg-style.ts'
-import { Tracer, type Subpath } from './svg-tracer.ts'
+import { Tracer } from './svg-tracer.ts'
 import { composed, transformList, translation, type Affine } from './svg-transform.ts'
-import { quoted } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 import { attribute, type XmlElement } from './xml.ts'
 
 export const svgSpace = 'http://www.w3.org/2000/svg'
@@ -30,9 +30,9 @@ const silent = new Set([
 const mostDrawn = 1_000_000
 /** Elements inside one another, uses counted. */
 const deepest = 600
-/** Elements, or points of one element, between two turns. */
+/** Elements, or subpaths of one element, between two turns: about a millisecond. */
 const slice = 512
-const pointSlice = 1 << 16
+const reading = { stage: 'Reading', done: 0.5 }
 
 /** What an element inherits from what it stands in. */
 interface Inside {
@@ -95,8 +95,10 @@ export class SvgWalk {
     // A page that holds nothing else but its background is a plan of one panel.
     const alone = sketch.outlines.length + sketch.segmentCount === 0
     for (const { xy, layer, line } of this.backgrounds) {
-      if (alone) sketch.outlines.add(this.points(xy), sketch.layer(layer), line)
-      else sketch.leaveOut('page background', layer)
+      if (alone) {
+        const points = [0, 2, 4, 6].map((i) => sketch.point(xy[i], xy[i + 1], 0, false))
+        sketch.outlines.add(points, sketch.layer(layer), line)
+      } else sketch.leaveOut('page background', layer)
     }
     if (this.sheet.unread > 0) sketch.leaveOut('style rule', '', this.sheet.unread)
     this.noteRepairs(sheetOfPaper)
@@ -124,13 +126,17 @@ export class SvgWalk {
     const look = lookOf(style, outer.look)
     const map = mapOf(style, outer.map)
     if (typeof map === 'string') return unreadable(element, map)
-    const inner: Inside = { ...outer, map, look, style, depth: outer.depth + 1 }
-    if (inner.depth > deepest) return fail('too-deep', `elements are used more than ${deepest} deep`, place(element), 'ungroup the drawing').problem
-    const id = element.name === 'g' && outer.used.length === 0 ? attribute(element, 'id') : null
-    if (id === null || id === '') return inner
-    this.layers.add(id)
-    // A layer that is chosen brings the groups inside it.
-    return { ...inner, layer: id, chosen: outer.chosen || this.choice.takes(id) }
+    const depth = outer.depth + 1
+    if (depth > deepest) return fail('too-deep', `elements are used more than ${deepest} deep`, place(element), 'ungroup the drawing').problem
+    let { layer, chosen } = outer
+    const id = element.name === 'g' && outer.used.length === 0 ? (attribute(element, 'id') ?? '') : ''
+    if (id !== '') {
+      this.layers.add(id)
+      layer = id
+      // A layer that is chosen brings the groups inside it.
+      chosen ||= this.choice.takes(id)
+    }
+    return { map, look, layer, chosen, viewport: outer.viewport, depth, used: outer.used, style }
   }
 
   /** A document that declares no namespace is taken as if it declared SVG's. */
@@ -150,7 +156,7 @@ export class SvgWalk {
     if (!this.isSvg(element)) return null
     this.drawn += 1
     if (this.drawn > mostDrawn) return fail('too-large', `more than ${mostDrawn} elements are drawn`, place(element), 'split the drawing').problem
-    if (this.drawn % slice === 0) yield { stage: 'Reading', done: 0.5 }
+    if (this.drawn % slice === 0) yield reading
     const { name } = element
     if (silent.has(name)) return null
     if (!shapeNames.has(name) && !containers.has(name)) {
@@ -228,57 +234,63 @@ export class SvgWalk {
     }
     tracer.begin(inside.map)
     const fault = yield* drawnShape(element, new Lengths(element, inside.style, inside.viewport), tracer)
-    const subpaths = tracer.end()
+    const count = tracer.end()
     if (fault !== null || tracer.fault !== null) return unreadable(element, fault ?? tracer.fault ?? '')
-    return yield* this.taken(element, subpaths, inside)
+    return yield* this.taken(element, count, inside)
   }
 
   /** Puts the subpaths of an element into the sketch, as what they are by their paint. */
-  private *taken(element: XmlElement, subpaths: readonly Subpath[], { look, layer }: Inside): Steps<Problem | null> {
-    const { sketch } = this
+  private *taken(element: XmlElement, count: number, { look, layer }: Inside): Steps<Problem | null> {
+    const { sketch, tracer } = this
     const filled = fills(look)
     const stroked = strokes(look)
     const { line } = element
-    if (filled && !stroked && subpaths.length === 1 && this.coversPage(subpaths[0])) {
-      this.backgrounds.push({ xy: subpaths[0].xy, layer, line })
+    if (filled && !stroked && count === 1 && this.coversPage()) {
+      this.backgrounds.push({ xy: tracer.xy.array(), layer, line })
       return null
     }
-    const rings: Float64Array[] = []
-    let taken = 0
-    let points = 0
-    for (const { xy, ring } of subpaths) {
-      points += xy.length
-      if (points > pointSlice) {
-        points = 0
-        yield { stage: 'Reading', done: 0.5 }
-      }
-      if (xy.length >= 6 && (ring || !stroked)) rings.push(xy)
-      else if (stroked) {
-        const at = this.points(xy)
-        const index = sketch.layer(layer)
-        for (let i = 1; i < at.length; i += 1) sketch.segment(at[i - 1], at[i], index, line)
-        taken += 1
+    const index = sketch.layer(layer)
+    const from: number[] = []
+    const to: number[] = []
+    let lines = 0
+    for (let i = 0; i < count; i += 1) {
+      const start = tracer.start(i)
+      const end = tracer.start(i + 1)
+      if (i % slice === slice - 1) yield reading
+      if (end - start >= 6 && (tracer.isRing(i) || !stroked)) {
+        from.push(start)
+        to.push(end)
+      } else if (stroked) {
+        const points = this.points(start, end)
+        for (let k = 1; k < points.length; k += 1) sketch.segment(points[k - 1], points[k], index, line)
+        lines += 1
       }
     }
+    if (lines + from.length === 0) sketch.leaveOut(`${element.name}, of no size`, layer)
     // Without a fill, rings inside one another are lines inside lines: what is a panel is for the plan to say.
-    const hole = filled ? yield* holes(rings, look.evenOdd) : new Uint8Array(rings.length)
+    const hole = filled && from.length > 1 ? yield* holes({ xy: tracer.xy.array(), from, to }, look.evenOdd) : new Uint8Array(from.length)
     if (hole === null) return unreadable(element, `rings lie inside one another more than ${deepestRings} deep`)
-    for (let i = 0; i < rings.length; i += 1) {
+    for (let i = 0; i < from.length; i += 1) {
       const list = hole[i] === 1 ? sketch.holes : sketch.outlines
-      list.add(this.points(rings[i]), sketch.layer(layer), line)
+      list.add(this.points(from[i], to[i]), index, line)
+      if (i % slice === slice - 1) yield reading
     }
-    if (taken + rings.length === 0) sketch.leaveOut(`${element.name}, of no size`, layer)
     return null
   }
 
-  private points(xy: Float64Array): Int32Array {
-    return Int32Array.from({ length: xy.length / 2 }, (_, i) => this.sketch.point(xy[2 * i], xy[2 * i + 1], 0, false))
+  /** New points of the sketch for xy[start, end) of the tracer. */
+  private points(start: number, end: number): number[] {
+    const { xy } = this.tracer
+    const out: number[] = []
+    for (let i = start; i < end; i += 2) out.push(this.sketch.point(xy.at(i), xy.at(i + 1), 0, false))
+    return out
   }
 
-  /** Whether it is a rectangle along the page's edges that covers all that is seen of the page. */
-  private coversPage({ xy, ring }: Subpath): boolean {
+  /** Whether the element is a rectangle along the page's edges that covers all that is seen of the page. */
+  private coversPage(): boolean {
     const seen = this.page?.seen ?? null
-    if (seen === null || !ring || xy.length !== 8) return false
+    if (seen === null || this.tracer.xy.length !== 8 || !this.tracer.isRing(0)) return false
+    const xy = this.tracer.xy.array()
     const [left, low, right, high] = seen
     const slack = coversWithin * Math.max(right - left, high - low)
     const x = [xy[0], xy[2], xy[4], xy[6]]

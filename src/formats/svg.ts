@@ -12,7 +12,7 @@ import type { Drawing } from '../plan/drawing.ts'
 import type { Format, FormatOptions, Source } from './format.ts'
 import { mostRules, styleSheet } from './svg-style.ts'
 import { svgSpace, SvgWalk } from './svg-walk.ts'
-import { quoted } from './text-number.ts'
+import { quoted } from './text-quote.ts'
 import { xmlTree, type XmlElement } from './xml.ts'
 
 export const svg: Format = { title: 'SVG', extensions: ['svg'], recognises, read }

@@ -1,0 +1,75 @@
+/**
+ * Drawings in test/corpus/svg, written by a plotting library and a text template. What must come out is what was put in:
+ * 18 x 12 m in 24 panels at 1:100, as stated with the drawings.
+ */
+import { readFileSync } from 'node:fs'
+import { join } from 'node:path'
+import { expect, test } from 'vitest'
+import { svg } from '../../src/formats/svg.ts'
+import { area, drawingOf, outlines, segments, type Point } from './svg-reading.ts'
+
+const corpus = join(import.meta.dirname, '..', 'corpus', 'svg')
+const text = (name: string): string => readFileSync(join(corpus, name), 'utf8')
+
+/** Points within a thousandth of a mm of one another are one place. */
+function places(points: readonly Point[]): { count: number; of: (point: Point) => number } {
+  const known: Point[] = []
+  const of = ([x, y]: Point): number => known.findIndex(([u, v]) => Math.hypot(u - x, v - y) < 1e-3)
+  for (const point of points) if (of(point) === -1) known.push(point)
+  return { count: known.length, of }
+}
+
+test('cells.svg: 24 outlines with the areas that their relative coordinates give, in all the whole sheet', () => {
+  const markup = text('cells.svg')
+  const drawing = drawingOf(svg, markup)
+  const loops = outlines(drawing)
+  expect(loops).toHaveLength(24)
+  expect([drawing.segmentLayer.length, drawing.holes.layer.length, drawing.leftOut, drawing.repairs]).toEqual([0, 0, [], []])
+  // A second route to each area: the sums of the relative steps, without any of the reader's code; 10 mm a unit.
+  const steps = [...markup.matchAll(/d="m([^"]*) z"/g)].map(([, d]) => d!.split('l').map((pair) => pair.trim().split(' ').map(Number) as Point))
+  expect(steps).toHaveLength(24)
+  steps.forEach(([, ...moves], i) => {
+    let [x, y, twice] = [0, 0, 0]
+    for (const [dx, dy] of moves) {
+      twice += x * (y + dy) - (x + dx) * y
+      x += dx
+      y += dy
+    }
+    expect(Math.abs(area(loops[i]!) - 50 * twice)).toBeLessThan(1e-9 * 100 * Math.abs(twice))
+  })
+  // The mirror in the file and the y axis of the paper cancel: counter-clockwise stays so, and the sheet is 180 x 120 mm.
+  for (const loop of loops) expect(area(loop)).toBeGreaterThan(0)
+  expect(loops.reduce((sum, loop) => sum + area(loop), 0)).toBeCloseTo(180 * 120, 4)
+  const all = loops.flat()
+  expect(Math.min(...all.map(([x]) => x))).toBeCloseTo(0, 6)
+  expect(Math.min(...all.map(([, y]) => y))).toBeCloseTo(0, 6)
+  expect(Math.max(...all.map(([x]) => x))).toBeCloseTo(180, 6)
+})
+
+test('cells-plot.svg: 73 lines that bound 24 faces of the same shapes, and a background left out', () => {
+  const drawing = drawingOf(svg, text('cells-plot.svg'))
+  const lines = segments(drawing)
+  expect(lines).toHaveLength(73)
+  expect(drawing.outlines.layer.length).toBe(0)
+  expect(drawing.leftOut).toEqual([{ kind: 'page background', layer: 'patch_1', count: 1 }])
+  expect(drawing.repairs).toEqual([])
+  // Euler: faces = lines - nodes + parts, for one connected net.
+  expect(lines.length - places(lines.flat()).count + 1).toBe(24)
+  // The same net as cells.svg: its 73 sides have the same lengths, in the plot's own scale.
+  const sides = new Map<string, number>()
+  const loops = outlines(drawingOf(svg, text('cells.svg')))
+  const { of } = places(loops.flat())
+  for (const loop of loops) {
+    loop.forEach((from, i) => {
+      const to = loop[(i + 1) % loop.length]!
+      sides.set([of(from), of(to)].sort((a, b) => a - b).join(' '), Math.hypot(to[0] - from[0], to[1] - from[1]))
+    })
+  }
+  expect(sides.size).toBe(73)
+  const sorted = (values: Iterable<number>): number[] => [...values].sort((a, b) => a - b)
+  const plotted = sorted(lines.map(([[x, y], [u, v]]) => Math.hypot(u - x, v - y)))
+  const drawn = sorted(sides.values())
+  // 11.545... mm a metre: the axes are 589.09 pt wide for 18 m.
+  const scale = (618.545455 - 29.454545) / 72 * 25.4 / 180
+  plotted.forEach((length, i) => expect(Math.abs(length - scale * drawn[i]!)).toBeLessThan(2e-4))
+})
