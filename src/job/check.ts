@@ -10,7 +10,7 @@ import type { ReadPlan } from '../plan/read-plan.ts'
 import type { Answer, PlanFacts, Roof, RoofFacts, StressFacts, Summary } from '../roof/answer/answer.ts'
 import { caution } from '../roof/answer/caution.ts'
 import { conditionRows, type ConditionRows } from '../roof/conditions/condition-rows.ts'
-import { everyPanelWithin } from '../roof/raise/flatness.ts'
+import { largestZone } from '../roof/raise/flatness.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { raised, type Raised } from '../roof/raise/raise.ts'
 import { outerRimNodes, rimVariation, riseOf, type RiseRule } from '../roof/raise/rise.ts'
@@ -84,14 +84,14 @@ function openQuestion(request: Request, questions: readonly Question[]): { ok: f
 function questionOf(plan: Plan, wishes: Wishes, rows: ConditionRows, target: Float64Array | null): Parameters<typeof raised>[3] {
   const { span } = plan.frame
   const datum = wishes.datum ?? 0
-  const tolerance = (wishes.flat_mm * conversion('mm', plan.unit)) / span
+  const tolerance = wishes.flat_mm * conversion('mm', plan.unit)
   return {
     rows, names: wishes.conditions.map(({ name }) => name), shape: wishes.shape ?? 'dome',
     target: target === null ? null : target.map((z) => (z - datum) / span),
     rise: wishes.rise === null ? null : wishes.rise / span,
     rule: { down: wishes.down, datum: wishes.datum === null ? null : 0 },
     pitched: wishes.pitch !== null,
-    within: (heights) => everyPanelWithin(plan, heights, tolerance),
+    within: (heights) => largestZone(plan, plan.x, plan.y, heights.map((h) => h * span), tolerance) <= tolerance,
   }
 }
 

@@ -3,7 +3,7 @@ import { conversion, type Unit } from '../base/length.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Plan } from '../plan/plan.ts'
 import type { RoofFacts } from '../roof/answer/answer.ts'
-import { flatness, type Flatness } from '../roof/raise/flatness.ts'
+import { flatness, largestZone, type Flatness } from '../roof/raise/flatness.ts'
 import { panelName } from '../plan/names.ts'
 
 export interface Written {
@@ -26,10 +26,9 @@ export function* writtenCoordinates(plan: Plan, heights: Float64Array, decimals:
   const y = decimals === null ? plan.y : rounded(plan.y, decimals)
   const mm = conversion(plan.unit, 'mm')
   const flat = yield* flatness(plan, x, y, z)
-  const exact = yield* flatness(plan, plan.x, plan.y, heights)
   return {
     x, y, z, flat: { corner: flat.corner.map((value) => value * mm), zone: flat.zone.map((value) => value * mm) },
-    exactMax: exact.zone.reduce((most, value) => Math.max(most, value), 0) * mm,
+    exactMax: largestZone(plan, plan.x, plan.y, heights) * mm,
   }
 }
 

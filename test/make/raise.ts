@@ -3,7 +3,7 @@ import { finish } from '../../src/base/steps.ts'
 import type { Plan } from '../../src/plan/plan.ts'
 import type { Condition } from '../../src/plan/project/condition.ts'
 import { conditionRows } from '../../src/roof/conditions/condition-rows.ts'
-import { everyPanelWithin } from '../../src/roof/raise/flatness.ts'
+import { largestZone } from '../../src/roof/raise/flatness.ts'
 import { nodeAreas } from '../../src/roof/raise/nearest.ts'
 import { raised, type Raised, type RaiseQuestion } from '../../src/roof/raise/raise.ts'
 import { freeRim, type FreeRim } from '../../src/roof/stress/free-rim.ts'
@@ -22,7 +22,7 @@ export function raise(plan: Plan, asked: Asked = {}): Raised & { free: FreeRim; 
   const answer = finish(
     raised(plan, free, nodeAreas(plan), {
       rows: rows.value, names: conditions.map((c) => c.name), shape: 'dome', target: null, rise: null, rule: { down: false, datum: null }, pitched: false,
-      within: (heights) => everyPanelWithin(plan, heights, flat / plan.frame.span), ...question,
+      within: (heights) => largestZone(plan, plan.x, plan.y, heights.map((h) => h * plan.frame.span), flat) <= flat, ...question,
     }),
   )
   return { ...answer, free, z: answer.roof === null ? new Float64Array(0) : answer.roof.heights.map((h) => h * plan.frame.span) }

@@ -6,6 +6,8 @@
 import { collinearSine } from './tolerance.ts'
 import { leastSquaresPlane } from './least-squares-plane.ts'
 
+const plane = new Float64Array(6)
+
 /** Largest such distance for `count` corners x y z .. from `offset`, in their own unit; 0 for triangles. */
 export function cornerDeviation(points: Float64Array, offset: number, count: number): number {
   if (count <= 3) return 0
@@ -13,9 +15,9 @@ export function cornerDeviation(points: Float64Array, offset: number, count: num
   let most = 0
   for (let skip = 0; skip < count; skip += 1) {
     if (inLine(points, offset, count, skip)) continue
-    const { middle, normal } = leastSquaresPlane(points, offset, count, skip)
+    leastSquaresPlane(points, offset, count, skip, plane)
     const at = offset + 3 * skip
-    const off = (points[at] - middle[0]) * normal[0] + (points[at + 1] - middle[1]) * normal[1] + (points[at + 2] - middle[2]) * normal[2]
+    const off = (points[at] - plane[0]) * plane[3] + (points[at + 1] - plane[1]) * plane[4] + (points[at + 2] - plane[2]) * plane[5]
     most = Math.max(most, Math.abs(off))
   }
   return most

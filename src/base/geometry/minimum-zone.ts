@@ -6,7 +6,7 @@
  * best plane is solved by exchange (Chebyshev fit, one corner in, one out: Stiefel 1959), re-framed until it rests.
  */
 import { chebyshevPlane } from './chebyshev-plane.ts'
-import { leastSquaresPlane, noCorner } from './least-squares-plane.ts'
+import { leastSquaresPlane, leastSquaresZone, noCorner } from './least-squares-plane.ts'
 
 /** Up to here the candidates are enumerated: 12 corners make 220 + 1485 of them. */
 const enumerated = 12
@@ -29,47 +29,52 @@ function zoneAlong(points: Float64Array, offset: number, count: number, nx: numb
   return (high - low) / Math.sqrt(nx * nx + ny * ny + nz * nz)
 }
 
+const plane = new Float64Array(6)
+
+/** Every candidate normal in turn; one is given up at the first corner that makes it wider than the best so far. */
 function zoneByEnumeration(p: Float64Array, offset: number, count: number): number {
-  let best = Infinity
+  // The least-squares plane's zone is an upper bound and sends most candidates away early.
+  let best = leastSquaresZone(p, offset, count, plane)
   let reach = 0
   for (let k = 1; k < count; k += 1) {
     const at = offset + 3 * k
-    reach = Math.max(reach, Math.hypot(p[at] - p[offset], p[at + 1] - p[offset + 1], p[at + 2] - p[offset + 2]))
+    const dx = p[at] - p[offset], dy = p[at + 1] - p[offset + 1], dz = p[at + 2] - p[offset + 2]
+    reach = Math.max(reach, dx * dx + dy * dy + dz * dz)
   }
   // A cross product below rounding of the size squared has no direction.
-  const least = reach * reach * 2 ** -44
-  const attempt = (ax: number, ay: number, az: number, bx: number, by: number, bz: number): void => {
-    const nx = ay * bz - az * by, ny = az * bx - ax * bz, nz = ax * by - ay * bx
-    if (!(Math.max(Math.abs(nx), Math.abs(ny), Math.abs(nz)) > least)) return
-    const zone = zoneAlong(p, offset, count, nx, ny, nz)
-    if (zone < best) best = zone
-  }
-  for (let i = 0; i < count; i += 1) {
-    const a = offset + 3 * i
-    for (let j = i + 1; j < count; j += 1) {
-      const b = offset + 3 * j
+  const least = reach * 2 ** -44
+  const end = offset + 3 * count
+  for (let a = offset; a < end; a += 3) {
+    for (let b = a + 3; b < end; b += 3) {
       const ux = p[b] - p[a], uy = p[b + 1] - p[a + 1], uz = p[b + 2] - p[a + 2]
-      for (let k = j + 1; k < count; k += 1) {
-        const c = offset + 3 * k
-        attempt(ux, uy, uz, p[c] - p[a], p[c + 1] - p[a + 1], p[c + 2] - p[a + 2])
-      }
-      // The pair (i, j) against every pair (k, l) with k > i that shares no corner with it.
-      for (let k = i + 1; k < count; k += 1) {
-        if (k === j) continue
-        for (let l = k + 1; l < count; l += 1) {
-          if (l === j) continue
-          const c = offset + 3 * k, d = offset + 3 * l
-          attempt(ux, uy, uz, p[d] - p[c], p[d + 1] - p[c + 1], p[d + 2] - p[c + 2])
+      // Three corners a, b, d with d after b (c = a), then the pair (a, b) against every pair (c, d) with c after a.
+      for (let c = a; c < end; c += 3) {
+        if (c === b) continue
+        for (let d = c === a ? b + 3 : c + 3; d < end; d += 3) {
+          if (d === b) continue
+          const vx = p[d] - p[c], vy = p[d + 1] - p[c + 1], vz = p[d + 2] - p[c + 2]
+          const nx = uy * vz - uz * vy, ny = uz * vx - ux * vz, nz = ux * vy - uy * vx
+          if (!(Math.abs(nx) > least || Math.abs(ny) > least || Math.abs(nz) > least)) continue
+          const length = Math.sqrt(nx * nx + ny * ny + nz * nz)
+          const bound = best * length
+          let low = 0, high = 0
+          for (let k = offset; k < end && high - low < bound; k += 3) {
+            const t = nx * (p[k] - p[a]) + ny * (p[k + 1] - p[a + 1]) + nz * (p[k + 2] - p[a + 2])
+            if (t < low) low = t
+            else if (t > high) high = t
+          }
+          if (high - low < bound) best = (high - low) / length
         }
       }
     }
   }
-  return best === Infinity ? 0 : best
+  return best
 }
 
 /** Exchange in a frame whose third axis is the current normal; the frame turns to each solution until it stays. */
 function zoneByExchange(points: Float64Array, offset: number, count: number): number {
-  let normal: readonly [number, number, number] = leastSquaresPlane(points, offset, count, noCorner).normal
+  leastSquaresPlane(points, offset, count, noCorner, plane)
+  let normal: readonly [number, number, number] = [plane[3], plane[4], plane[5]]
   let best = zoneAlong(points, offset, count, normal[0], normal[1], normal[2])
   for (let turn = 0; turn < 20; turn += 1) {
     const [u, v] = axesAcross(normal)

@@ -1,5 +1,6 @@
 /** Flatness of every panel of a raised roof, measured on the coordinates given (solved, or as written). */
 import { cornerDeviation } from '../../base/geometry/corner-deviation.ts'
+import { leastSquaresZone } from '../../base/geometry/least-squares-plane.ts'
 import { minimumZone } from '../../base/geometry/minimum-zone.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
@@ -23,33 +24,39 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
     const from = plan.panelStart[p], count = plan.panelStart[p + 1] - from
     if (count === 3) continue
     if (points.length < 3 * count) points = new Float64Array(6 * count)
-    const first = plan.corner[from]
-    for (let k = 0; k < count; k += 1) {
-      const node = plan.corner[from + k]
-      points[3 * k] = x[node] - x[first]
-      points[3 * k + 1] = y[node] - y[first]
-      points[3 * k + 2] = z[node] - z[first]
-    }
+    cornersAbout(plan, p, x, y, z, points)
     corner[p] = cornerDeviation(points, 0, count)
     zone[p] = minimumZone(points, 0, count)
   }
   return { corner, zone }
 }
 
-/** Whether the minimum zone of every panel at these working heights is at most `tolerance` (in span units). */
-export function everyPanelWithin(plan: Plan, heights: Float64Array, tolerance: number): boolean {
+/** The corners of a panel as x y z .., measured from its first. */
+function cornersAbout(plan: Plan, panel: number, x: Float64Array, y: Float64Array, z: Float64Array, points: Float64Array): void {
+  const from = plan.panelStart[panel]
+  const first = plan.corner[from]
+  for (let k = 0; k < plan.panelStart[panel + 1] - from; k += 1) {
+    const node = plan.corner[from + k]
+    points[3 * k] = x[node] - x[first]
+    points[3 * k + 1] = y[node] - y[first]
+    points[3 * k + 2] = z[node] - z[first]
+  }
+}
+
+/**
+ * The largest minimum zone of all panels; once it is over `enough` the search may stop and return what it has. A panel's
+ * least-squares zone is an upper bound, so only panels that could exceed the largest so far are measured in full.
+ */
+export function largestZone(plan: Plan, x: Float64Array, y: Float64Array, z: Float64Array, enough = Infinity): number {
   let points = new Float64Array(3 * 16)
-  for (let p = 0; p < plan.panelCount; p += 1) {
+  const plane = new Float64Array(6)
+  let most = 0
+  for (let p = 0; p < plan.panelCount && most <= enough; p += 1) {
     const from = plan.panelStart[p], count = plan.panelStart[p + 1] - from
     if (count === 3) continue
     if (points.length < 3 * count) points = new Float64Array(6 * count)
-    for (let k = 0; k < count; k += 1) {
-      const node = plan.corner[from + k]
-      points[3 * k] = plan.work[2 * node]
-      points[3 * k + 1] = plan.work[2 * node + 1]
-      points[3 * k + 2] = heights[node]
-    }
-    if (minimumZone(points, 0, count) > tolerance) return false
+    cornersAbout(plan, p, x, y, z, points)
+    if (leastSquaresZone(points, 0, count, plane) > most) most = Math.max(most, minimumZone(points, 0, count))
   }
-  return true
+  return most
 }
