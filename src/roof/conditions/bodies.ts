@@ -28,46 +28,45 @@ export interface Bodies {
  * then one, two or three anchors; rows of one condition with the same anchors make one body.
  */
 export function bodiesOf(plan: Plan, rows: Rows): Bodies {
-  const dim: number[] = []
-  const condition: number[] = []
-  const start = [0]
-  const node: number[] = []
-  const offset: number[] = []
-  const t: number[] = []
-  const put = (n: number, off: number, along: number): void => {
-    node.push(n)
-    offset.push(off)
-    t.push(along)
-  }
-  for (let p = 0; p < plan.panelCount; p += 1) {
-    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) put(plan.corner[c], 0, 0)
-    dim.push(3)
-    condition.push(-1)
-    start.push(node.length)
-  }
+  const most = plan.panelCount + rowCount(rows)
+  const entries = plan.corner.length + rows.node.length
+  const dim = new Uint8Array(most)
+  const condition = new Int32Array(most).fill(-1)
+  const start = new Int32Array(most + 1)
+  const node = new Int32Array(entries)
+  const offset = new Float64Array(entries)
+  const t = new Float64Array(entries)
+
+  node.set(plan.corner)
+  start.set(plan.panelStart)
+  dim.fill(3, 0, plan.panelCount)
+  let count = plan.panelCount
+  let at = plan.corner.length
   let anchorRow = -1
   for (let r = 0; r < rowCount(rows); r += 1) {
     const [from, to] = [rows.start[r], rows.start[r + 1]]
     if (to - from < 2) continue
     if (anchorRow < 0 || !sameAnchors(rows, anchorRow, r)) {
-      if (anchorRow >= 0) start.push(node.length)
       anchorRow = r
-      dim.push(to - from - 1)
-      condition.push(rows.condition[r])
-      for (let i = from + 1; i < to; i += 1) put(rows.node[i], 0, i - from - 1)
+      dim[count] = to - from - 1
+      condition[count] = rows.condition[r]
+      count += 1
+      for (let i = from + 1; i < to; i += 1) {
+        node[at] = rows.node[i]
+        t[at] = i - from - 1
+        at += 1
+      }
     }
     const scale = rows.weight[from]
-    put(rows.node[from], rows.value[r] / scale, to - from === 3 ? -rows.weight[from + 2] / scale : 0)
+    node[at] = rows.node[from]
+    offset[at] = rows.value[r] / scale
+    t[at] = to - from === 3 ? -rows.weight[from + 2] / scale : 0
+    at += 1
+    start[count] = at
   }
-  if (anchorRow >= 0) start.push(node.length)
   return {
-    count: dim.length,
-    dim: Uint8Array.from(dim),
-    condition: Int32Array.from(condition),
-    start: Int32Array.from(start),
-    node: Int32Array.from(node),
-    offset: Float64Array.from(offset),
-    t: Float64Array.from(t),
+    count, dim: dim.subarray(0, count), condition: condition.subarray(0, count), start: start.subarray(0, count + 1),
+    node: node.subarray(0, at), offset: offset.subarray(0, at), t: t.subarray(0, at),
   }
 }
 

@@ -77,6 +77,7 @@ export function propagation(plan: Plan, rows: Rows): Propagation {
   }
 
   const contradictions: Contradiction[] = []
+  const on = { value: 0, error: 0 }
   for (let step = 1; frontier.length > 0; step += 1) {
     const ready: number[] = []
     frontier.sort((a, b) => a - b)
@@ -95,7 +96,8 @@ export function propagation(plan: Plan, rows: Rows): Propagation {
       const basis = basisOf(plan, bodies, b, known, support)
       for (let i = bodies.start[b]; i < bodies.start[b + 1]; i += 1) {
         const n = bodies.node[i]
-        const { value, error } = heightOn(plan, bodies, i, basis, height, rounding)
+        heightOn(plan, bodies, i, basis, height, rounding, on)
+        const { value, error } = on
         if (nodeStep[n] < 0) know(n, value, error, step, b)
         else if (first && Math.abs(value - height[n]) > Math.max(clashHeight, 100 * (error + rounding[n]))) {
           contradictions.push({
@@ -179,16 +181,16 @@ function settles(plan: Plan, bodies: Bodies, b: number, n: number, support: Int3
     support[3 * b + 1] = n
     return false
   }
-  const reach = distance(plan, first, n)
-  const apart = distance(plan, first, second)
-  const longest = Math.max(reach, apart, distance(plan, second, n))
-  if (Math.abs(doubleArea(plan, first, second, n)) > planeSine * longest * longest) return true
+  const reach = squaredDistance(plan, first, n)
+  const apart = squaredDistance(plan, first, second)
+  const longest = Math.max(reach, apart, squaredDistance(plan, second, n))
+  if (Math.abs(doubleArea(plan, first, second, n)) > planeSine * longest) return true
   if (reach > apart) support[3 * b + 1] = n
   return false
 }
 
-function distance({ work }: Plan, a: number, b: number): number {
-  return Math.hypot(work[2 * a] - work[2 * b], work[2 * a + 1] - work[2 * b + 1])
+function squaredDistance({ work }: Plan, a: number, b: number): number {
+  return (work[2 * a] - work[2 * b]) ** 2 + (work[2 * a + 1] - work[2 * b + 1]) ** 2
 }
 
 function alongOf(bodies: Bodies, b: number, n: number): number {
@@ -207,9 +209,10 @@ function nodesKnown(bodies: Bodies, b: number, nodeStep: Int32Array, step: numbe
 }
 
 /** The known entries, one per dim, that lie best apart; their nodes are written to `support`. */
-function basisOf(plan: Plan, bodies: Bodies, b: number, known: readonly number[], support: Int32Array): number[] {
-  let basis: number[]
-  if (bodies.dim[b] === 1) basis = [known[0]]
+function basisOf(plan: Plan, bodies: Bodies, b: number, known: readonly number[], support: Int32Array): readonly number[] {
+  let basis: readonly number[]
+  if (known.length === bodies.dim[b]) basis = known
+  else if (bodies.dim[b] === 1) basis = [known[0]]
   else if (bodies.dim[b] === 2) {
     const sorted = [...known].sort((i, j) => bodies.t[i] - bodies.t[j])
     basis = [sorted[0], sorted[sorted.length - 1]]
@@ -221,34 +224,36 @@ function basisOf(plan: Plan, bodies: Bodies, b: number, known: readonly number[]
   return basis
 }
 
-/** The height of entry i's node by the basis, with a bound of its rounding. */
+/** The height of entry i's node by the basis, and a bound of its rounding, into `out`. */
 function heightOn(
-  plan: Plan, bodies: Bodies, i: number, basis: readonly number[], height: Float64Array, rounding: Float64Array,
-): { value: number; error: number } {
+  plan: Plan, bodies: Bodies, i: number, basis: readonly number[], height: Float64Array, rounding: Float64Array, out: { value: number; error: number },
+): void {
   const [a, b, c] = basis
-  let shares: number[]
-  let value = 0
-  let sharpness = 1
+  out.value = 0
+  out.error = 0
   if (b === undefined) {
-    shares = [1]
-    value = bodies.offset[i] - bodies.offset[a]
+    const step = bodies.offset[i] - bodies.offset[a]
+    out.value = step
+    out.error = epsilon * Math.abs(step)
+    take(out, 1, 1, height[bodies.node[a]], rounding[bodies.node[a]])
   } else if (c === undefined) {
     const t = (bodies.t[i] - bodies.t[a]) / (bodies.t[b] - bodies.t[a])
-    shares = [1 - t, t]
+    take(out, 1 - t, 1, height[bodies.node[a]], rounding[bodies.node[a]])
+    take(out, t, 1, height[bodies.node[b]], rounding[bodies.node[b]])
   } else {
     const [p, q, r, n] = [bodies.node[a], bodies.node[b], bodies.node[c], bodies.node[i]]
     const whole = doubleArea(plan, p, q, r)
-    sharpness = Math.max(1, distance(plan, p, q) ** 2 / Math.abs(whole))
+    const sharpness = Math.max(1, squaredDistance(plan, p, q) / Math.abs(whole))
     const u = doubleArea(plan, q, r, n) / whole
     const v = doubleArea(plan, r, p, n) / whole
-    shares = [u, v, 1 - u - v]
+    take(out, u, sharpness, height[p], rounding[p])
+    take(out, v, sharpness, height[q], rounding[q])
+    take(out, 1 - u - v, sharpness, height[r], rounding[r])
   }
-  let error = epsilon * Math.abs(value)
-  for (let k = 0; k < shares.length; k += 1) {
-    const n = bodies.node[basis[k]]
-    value += shares[k] * height[n]
-    // A few roundings in each share, the more the flatter the triangle, then the product.
-    error += Math.abs(shares[k]) * rounding[n] + 8 * epsilon * Math.max(Math.abs(shares[k]), sharpness) * Math.abs(height[n])
-  }
-  return { value, error }
+}
+
+/** Adds a share of a height: its own bound, and a few roundings in the share, the more the flatter the triangle. */
+function take(out: { value: number; error: number }, share: number, sharpness: number, height: number, rounding: number): void {
+  out.value += share * height
+  out.error += Math.abs(share) * rounding + 8 * epsilon * Math.max(Math.abs(share), sharpness) * Math.abs(height)
 }
