@@ -1,7 +1,8 @@
 /**
  * Faces joined across edges that the file marks as invisible. DXF faces have at most four corners, so programs write a
  * panel of five or more as several faces and hide the edges between them; the panel is the union, and a hidden edge is
- * no joint. An edge that only one of its two faces hides is drawn by the other and stays.
+ * no joint. An edge that only one of its two faces hides is drawn by the other and stays. Where hidden edges remain on the
+ * outside of a group, they were not meant so (some programs hide every edge of a surface), and the faces stay as they are.
  */
 import type { Loops } from '../plan/drawing.ts'
 import { Integers } from './growing.ts'
@@ -105,7 +106,7 @@ function union(group: readonly Face[]): number[] | null {
   const mate = (face: Face, i: number): { face: Face; i: number } | undefined =>
     face.hidden[i] === 1 ? ahead.get(`${face.places[(i + 1) % face.places.length]} ${face.places[i]}`) : undefined
   const open = group.flatMap((face) => face.places.map((_, i) => ({ face, i }))).filter(({ face, i }) => mate(face, i) === undefined)
-  if (open.length < 3) return null
+  if (open.length < 3 || open.some(({ face, i }) => face.hidden[i] === 1)) return null
   const outline: number[] = []
   const met = new Set<number>()
   let { face, i } = open[0]

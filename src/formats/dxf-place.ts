@@ -18,7 +18,9 @@ export const mostEntities = 1_000_000
 /** Blocks within blocks. */
 export const deepest = 32
 
+/** Entities, and points made of their curves, between two yields; each about 10 ms. */
 const shapesPerStep = 2_000
+const pointsPerStep = 50_000
 
 /** Where shapes are being put: how, in which block, on which layer. */
 interface Surroundings {
@@ -31,8 +33,12 @@ interface Surroundings {
 
 /** Puts the whole model into the sheet. */
 export function* placeModel(file: DxfFile, sheet: DxfSheet): Steps<Result<null>> {
-  const problem = yield* new Placer(file, sheet).shapes(file.shapes, { placing: inPlace, layer: null, open: [] })
+  // By the reference the entities of the model stand in ENTITIES; a few programs write them as its block instead.
+  const model = file.blocks.get('*model_space')?.shapes ?? []
+  const shapes = file.shapes.length > 0 ? file.shapes : model
+  const problem = yield* new Placer(file, sheet).shapes(shapes, { placing: inPlace, layer: null, open: [] })
   if (problem !== null) return { ok: false, problem }
+  if (shapes !== model) for (const { kind, layer } of model) sheet.sketch.leaveOut(`${kind}, in the block *Model_Space`, layer)
   for (const block of file.blocks.values()) {
     if (!/^[*$]paper_space/i.test(block.name)) continue
     for (const { kind, layer } of block.shapes) sheet.sketch.leaveOut(`${kind}, paper space`, layer)
@@ -42,13 +48,17 @@ export function* placeModel(file: DxfFile, sheet: DxfSheet): Steps<Result<null>>
 
 class Placer {
   private count = 0
+  private pointsAtYield = 0
 
   constructor(private readonly file: DxfFile, private readonly sheet: DxfSheet) {}
 
   *shapes(shapes: readonly Shape[], around: Surroundings): Steps<Problem | null> {
     for (const shape of shapes) {
       this.count += 1
-      if (this.count % shapesPerStep === 0) yield { stage: 'Unfolding blocks', done: Math.min(1, this.count / mostEntities) }
+      if (this.count % shapesPerStep === 0 || this.sheet.sketch.pointCount - this.pointsAtYield > pointsPerStep) {
+        this.pointsAtYield = this.sheet.sketch.pointCount
+        yield { stage: 'Unfolding blocks', done: Math.min(1, this.count / mostEntities) }
+      }
       const layer = shape.layer === '0' && around.layer !== null ? around.layer : shape.layer
       const problem = this.count > mostEntities ? tooMany(shape) : shape.shape === 'insert' ? yield* this.insert(shape, layer, around) : this.entity(shape, layer, around)
       if (problem !== null) return problem

@@ -144,6 +144,11 @@ describe('invisible edges', () => {
     expect(outlinesOf(drawn(faces))).toHaveLength(4)
   })
 
+  test('every edge of a surface hidden: the faces stay as drawn', () => {
+    const faces = [0, 1, 2].map((i) => face([[i, 0, 0], [i + 1, 0, 0], [i + 1, 1, 0], [i, 1, 0]], 15))
+    expect(outlinesOf(drawn(faces))).toHaveLength(3)
+  })
+
   test('the order of the file is kept', () => {
     const first = face([[10, 0, 0], [11, 0, 0], [11, 1, 0]])
     const last = face([[20, 0, 0], [21, 0, 0], [21, 1, 0]])
@@ -216,6 +221,12 @@ describe('blocks', () => {
     const text = dxfText({ blocks: unit, entities: [insert('ARROW', 0, 0)] })
     const blocks = /0\nSECTION\n2\nBLOCKS\n[\s\S]*?0\nENDSEC\n/.exec(text)![0]
     expect(segmentsOf(drawingOf(text.replace(blocks, '').replace('0\nEOF', `${blocks}0\nEOF`)))).toHaveLength(2)
+  })
+
+  test('a model that stands in its block instead of ENTITIES', () => {
+    expect(segmentsOf(drawn([], { blocks: { '*Model_Space': unit.ARROW } }))).toHaveLength(2)
+    const both = drawn([line([0, 0], [1, 0])], { blocks: { '*Model_Space': unit.ARROW } })
+    expect(both.leftOut.map(({ kind, count }) => [kind, count])).toEqual([['LINE, in the block *Model_Space', 1], ['LINE, in the block *Model_Space', 1]])
   })
 
   test('an insert on a frozen layer hides all of its block, one on a layer that is off only what is on layer 0', () => {

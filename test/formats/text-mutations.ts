@@ -6,26 +6,37 @@ import { usual } from './text-read.ts'
 
 const spice = ['-1', '0', '1e308', 'nan', '-', '\n', '\r\n', '\0', '999999999999', '\ufeff', '\\U+0000', '2147483647', '1e-320', ' ', '70\n1\n', '0\nINSERT\n2\nA\n', 'f 1 2 3\n', '\\\n']
 
-/** A damaged copy: up to eight bytes, words, cuts, repeats or swaps. */
+/** A damaged copy: one to eight bytes, words, cuts, repeats, or lines in the place of others. */
 export function damaged(bytes: Uint8Array, next: () => number): Uint8Array {
   let out = bytes
-  const rounds = 1 + Math.floor(8 * next())
+  const rounds = next() < 0.5 ? 1 : 1 + Math.floor(8 * next())
   for (let i = 0; i < rounds; i += 1) {
     const at = Math.floor(out.length * next())
     const length = Math.min(out.length - at, 1 + Math.floor(2 ** (10 * next())))
     const piece = out.slice(at, at + length)
-    switch (Math.floor(7 * next())) {
+    switch (Math.floor(10 * next())) {
       case 0: out = Uint8Array.from(out); out[at] = Math.floor(256 * next()); break
       case 1: out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(at)); break
       case 2: out = joined(out.slice(0, at), out.slice(at + length)); break
       case 3: out = joined(out.slice(0, at), piece, piece, out.slice(at + length)); break
       case 4: if (next() < 0.2) out = out.slice(0, at); break
       case 5: { const to = Math.floor((out.length - length) * next()); out = Uint8Array.from(out); out.set(piece, to); break }
-      case 6: { const end = out.indexOf(10, at); out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(end < 0 ? out.length : end)) }
+      case 6: { const end = out.indexOf(10, at); out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(end < 0 ? out.length : end)); break }
+      default: {
+        // A line in the place of another keeps codes and values apart, so that the damage reaches the entities.
+        const [from, to] = [lineAt(out, at), lineAt(out, Math.floor(out.length * next()))]
+        out = joined(out.slice(0, to[0]), out.slice(from[0], from[1]), out.slice(to[1]))
+      }
     }
     if (out.length === 0) break
   }
   return out
+}
+
+/** Where the line about a byte begins and ends. */
+function lineAt(bytes: Uint8Array, at: number): [start: number, end: number] {
+  const end = bytes.indexOf(10, at)
+  return [at === 0 ? 0 : bytes.lastIndexOf(10, at - 1) + 1, end < 0 ? bytes.length : end]
 }
 
 function joined(...parts: Uint8Array[]): Uint8Array {
