@@ -5,6 +5,7 @@
  * Coordinates are used less a centre (see `centreOf`), so that survey coordinates lose no digits, and nodes that were
  * drawn are written back exactly as they were drawn.
  */
+import { gap_mm } from '../base/geometry/tolerance.ts'
 import type { Question, Repair } from '../base/repair.ts'
 import { ok, placed, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
@@ -12,6 +13,7 @@ import type { Drawing } from './drawing.ts'
 import { heightsOfNodes } from './height-of-nodes.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { panelFaces } from './line-work-panels.ts'
+import { counted, inMillimetres } from './line-work-words.ts'
 import type { Plan } from './plan.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
 import { planFromFaces } from './subdivision.ts'
@@ -44,10 +46,12 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   const { plan, pointOfNode } = made.value
 
   const planNode = new Int32Array(x.length).fill(-1)
-  pointOfNode.forEach((node, index) => { planNode[node] = index })
+  for (let index = 0; index < pointOfNode.length; index += 1) planNode[pointOfNode[index]] = index
+  const planNodes = new Int32Array(nodeOfPoint.length)
+  for (let i = 0; i < planNodes.length; i += 1) planNodes[i] = nodeOfPoint[i] < 0 ? -1 : planNode[nodeOfPoint[i]]
   const { points } = drawing
   const { heights, notices } = heightsOfNodes(
-    plan.nodeCount, nodeOfPoint.map((node) => (node < 0 ? -1 : planNode[node])), (point) => points[3 * point + 2] * factor, drawing.hasHeight, mmPerUnit,
+    plan.nodeCount, planNodes, (point) => points[3 * point + 2] * factor, drawing.hasHeight, mmPerUnit,
   )
   const marks = new Float64Array(3 * drawing.marks.length)
   drawing.marks.forEach((point, k) => {
@@ -61,17 +65,43 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
     repairs,
     questions: openQuestions(plan, drawing, options),
     leftOut: drawing.leftOut,
-    notices: [...read.value.notices, ...faces.value.notices, ...notices],
+    notices: [...read.value.notices, ...faces.value.notices, ...notices, ...openGaps(plan, mmPerUnit)],
   })
+}
+
+/** Says when voids are so narrow that they can only be gaps between outlines. */
+function openGaps({ work, frame, origin, rimStart, rimHalf, rimIsVoid }: Plan, mmPerUnit: number): string[] {
+  let count = 0
+  let widest = 0
+  for (let l = 0; l < rimIsVoid.length; l += 1) {
+    if (rimIsVoid[l] === 0) continue
+    let twice = 0, perimeter = 0
+    const first = origin[rimHalf[rimStart[l]]]
+    for (let k = rimStart[l]; k < rimStart[l + 1]; k += 1) {
+      const a = origin[rimHalf[k]], b = origin[rimHalf[k] ^ 1]
+      const ax = work[2 * a] - work[2 * first], ay = work[2 * a + 1] - work[2 * first + 1]
+      const bx = work[2 * b] - work[2 * first], by = work[2 * b + 1] - work[2 * first + 1]
+      twice += ax * by - ay * bx
+      perimeter += Math.hypot(bx - ax, by - ay)
+    }
+    const width = (twice / perimeter) * frame.span * mmPerUnit
+    if (width >= gap_mm) continue
+    count += 1
+    widest = Math.max(widest, width)
+  }
+  if (count === 0) return []
+  return [`${counted(count, 'gap', 'gaps')} between panels, up to ${inMillimetres(widest)} wide, ${count === 1 ? 'counts as a void' : 'count as voids'}; --snap closes gaps up to the distance it states.`]
 }
 
 /** What only the user can answer: so far the unit or scale, where the lengths make the one taken unlikely. */
 function openQuestions(plan: Plan, drawing: Drawing, options: ReadOptions): Question[] {
   if (options.unit !== null || options.scale !== null) return []
-  const lengths = new Float64Array(plan.edgeCount)
-  for (let e = 0; e < plan.edgeCount; e += 1) {
-    const a = plan.origin[2 * e], b = plan.origin[2 * e + 1]
-    lengths[e] = Math.hypot(plan.x[b] - plan.x[a], plan.y[b] - plan.y[a])
+  // Quantiles are wanted: of a large plan every so many edges will do.
+  const stride = Math.ceil(plan.edgeCount / 10_000)
+  const lengths = new Float64Array(Math.ceil(plan.edgeCount / stride))
+  for (let k = 0; k < lengths.length; k += 1) {
+    const a = plan.origin[2 * k * stride], b = plan.origin[2 * k * stride + 1]
+    lengths[k] = Math.hypot(plan.x[b] - plan.x[a], plan.y[b] - plan.y[a])
   }
   lengths.sort()
   const question = drawing.onPaper ? scaleQuestion(lengths) : unitQuestion(lengths, plan.unit)

@@ -50,9 +50,12 @@ export function* arrangement(x: Float64Array, y: Float64Array, a: Int32Array, b:
   const moved = new Uint8Array(given)
   const gapOf = new Map<number, number>()
   let reach = options.snap
+  yield { stage: 'Joining lines', done: 0.05 }
   for (let round = 0; round < mostRounds; round += 1) {
-    const index = lineIndex(lines, reach)
-    const touches = yield* touchingNodes(lines, index, reach)
+    const index = yield* lineIndex(lines, reach + 4 * rounding)
+    const touched = yield* touchingNodes(lines, index, reach)
+    if (!touched.ok) return touched
+    const touches = touched.value
     noteTouches(touches, gapOf, given)
     if (round === 0) moveLooseEnds(lines, touches, moved, options)
     const crossed = yield* crossings(lines, index, reach)
@@ -64,7 +67,9 @@ export function* arrangement(x: Float64Array, y: Float64Array, a: Int32Array, b:
       const touchGap = Float64Array.from(touchNode, (node) => gapOf.get(node) ?? 0)
       return ok({ x: lines.x, y: lines.y, moved, a: lines.a, b: lines.b, ...chains, touchNode, touchGap, index })
     }
+    yield { stage: 'Joining lines', done: 1 }
     chains = cutEdges(lines, [touches, cuts], chains)
+    yield { stage: 'Joining lines', done: 0 }
     reach = Math.max(rounding, reach / 4)
   }
   return fail('tangled', 'lines lie so close together that they cannot be told apart', null, 'clean the drawing, or give a smaller --snap')
@@ -77,9 +82,13 @@ interface Chains {
 
 function firstChains(half: Int32Array): Chains {
   const chainStart = new Int32Array(half.length + 1)
-  const chain = half.filter((h) => h >= 0)
-  for (let i = 0; i < half.length; i += 1) chainStart[i + 1] = chainStart[i] + (half[i] >= 0 ? 1 : 0)
-  return { chainStart, chain }
+  const chain = new Int32Array(half.length)
+  let filled = 0
+  for (let i = 0; i < half.length; i += 1) {
+    if (half[i] >= 0) chain[filled++] = half[i]
+    chainStart[i + 1] = filled
+  }
+  return { chainStart, chain: chain.subarray(0, filled) }
 }
 
 function noteTouches(cuts: Cuts, gapOf: Map<number, number>, given: number): void {

@@ -6,7 +6,7 @@ import { cellsSpanned, bin, densityGrid, pointsByCell, segmentsByCell, type Cell
 import { GrowingFloats, GrowingInts } from '../base/geometry/growing.ts'
 import { NearPoints } from '../base/geometry/near-points.ts'
 import { crossProperly, crossingPoint } from '../base/geometry/segment-crossing.ts'
-import { mostCrossings, mostPairs } from '../base/geometry/tolerance.ts'
+import { mostCrossings, mostPairs, mostTouches } from '../base/geometry/tolerance.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 
@@ -37,11 +37,11 @@ export interface LineIndex {
   readonly edges: Cells
 }
 
-/** Comparisons between two yields: some 10 ms. */
-const comparisonsPerStep = 500_000
+/** Comparisons between two yields: some milliseconds. */
+const comparisonsPerStep = 200_000
 
 /** The grid and which edges come within `pad` of each cell. */
-export function lineIndex({ x, y, a, b }: LineWork, pad: number): LineIndex {
+export function* lineIndex({ x, y, a, b }: LineWork, pad: number): Steps<LineIndex> {
   // About two cells an edge; fewer when long edges would fill too many of them.
   let lines = Math.max(1, Math.ceil(Math.sqrt(2 * a.length)))
   let grid = densityGrid(x, y, x.length, lines)
@@ -51,22 +51,28 @@ export function lineIndex({ x, y, a, b }: LineWork, pad: number): LineIndex {
     lines = Math.max(1, Math.floor((lines * room) / filled))
     grid = densityGrid(x, y, x.length, lines)
   }
-  return { grid, edges: segmentsByCell(grid, x, y, a, b, pad) }
+  yield { stage: 'Joining lines', done: 0.1 }
+  const edges = segmentsByCell(grid, x, y, a, b, pad)
+  yield { stage: 'Joining lines', done: 0.2 }
+  return { grid, edges }
 }
 
 /** Every node that lies within `reach` of the inside of an edge that does not end there. */
-export function* touchingNodes({ x, y, a, b }: LineWork, { grid, edges }: LineIndex, reach: number): Steps<Cuts> {
+export function* touchingNodes({ x, y, a, b }: LineWork, { grid, edges }: LineIndex, reach: number): Steps<Result<Cuts>> {
   const nodes = pointsByCell(grid, x, y, x.length)
   const cuts = new Cuts()
   let compared = 0
+  let pairs = 0
   for (let cell = 0; cell + 1 < edges.start.length; cell += 1) {
     const nodesFrom = nodes.start[cell]
     const nodesTo = nodes.start[cell + 1]
     if (nodesFrom === nodesTo) continue
     compared += (edges.start[cell + 1] - edges.start[cell]) * (nodesTo - nodesFrom)
     if (compared > comparisonsPerStep) {
+      pairs += compared
       compared = 0
-      yield { stage: 'Joining lines', done: (0.5 * cell) / edges.start.length }
+      if (pairs > mostPairs || cuts.edge.length > mostTouches) return tooManyLines(x[nodes.item[nodesFrom]], y[nodes.item[nodesFrom]])
+      yield { stage: 'Joining lines', done: 0.2 + (0.3 * cell) / edges.start.length }
     }
     for (let k = edges.start[cell]; k < edges.start[cell + 1]; k += 1) {
       const edge = edges.item[k]
@@ -85,7 +91,7 @@ export function* touchingNodes({ x, y, a, b }: LineWork, { grid, edges }: LineIn
       }
     }
   }
-  return cuts
+  return ok(cuts)
 }
 
 /**
@@ -150,7 +156,7 @@ export function* crossings(lines: LineWork, { grid, edges }: LineIndex, reach: n
       if (compared > comparisonsPerStep) {
         compared = 0
         if (pairs > mostPairs) {
-          return fail('too-many-lines', 'too many long lines run side by side to be a plan', { at: [ax, ay] }, 'choose the layers of its joints with --layer')
+          return tooManyLines(ax, ay)
         }
         yield { stage: 'Joining lines', done: 0.5 + (0.5 * cell) / edges.start.length }
       }
@@ -162,6 +168,10 @@ export function* crossings(lines: LineWork, { grid, edges }: LineIndex, reach: n
     lines.y = grown.y.slice()
   }
   return ok({ cuts, newNodes: lines.x.length - oldCount })
+}
+
+function tooManyLines(x: number, y: number): Result<never> {
+  return fail('too-many-lines', 'too many lines run side by side or over each other to be a plan', { at: [x, y] }, 'choose the layers of its joints with --layer')
 }
 
 /** The nearest of four nodes within `reach` of the point, -1 when none is. */

@@ -64,8 +64,12 @@ export function lineFrame(drawing: Drawing, { unit, factor, isAssumed }: Drawing
 
   const centreX = centreOf(left, right)
   const centreY = centreOf(low, high)
-  const x = planX.map((value) => value - centreX)
-  const y = planY.map((value) => value - centreY)
+  const x = new Float64Array(count)
+  const y = new Float64Array(count)
+  for (let i = 0; i < count; i += 1) {
+    x[i] = planX[i] - centreX
+    y[i] = planY[i] - centreY
+  }
   const rounding = roundingSteps * epsilon * Math.max(Math.abs(left), Math.abs(right), Math.abs(low), Math.abs(high))
   const snap = Math.max(rounding, snap_mm === null ? defaultSnap(edgeLengths(drawing, x, y), unit, isAssumed) : snap_mm / mmPerUnit)
   return ok({ planX, planY, x, y, centreX, centreY, snap, silent: Math.max(rounding, silentShare * snap), rounding })

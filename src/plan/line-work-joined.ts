@@ -3,6 +3,7 @@
  * file order and never chained, so a row of points closer than the snap distance keeps its length.
  */
 import { NearPoints } from '../base/geometry/near-points.ts'
+import type { Steps } from '../base/steps.ts'
 import { Places } from './line-work-words.ts'
 
 export interface JoinedPoints {
@@ -14,32 +15,35 @@ export interface JoinedPoints {
   readonly joined: Places
 }
 
+/** Points between two yields. */
+const pointsPerStep = 20_000
+
 /**
  * `x`, `y` per point; `used` names points in any order, repeats allowed. Of a node's points those coordinates win that
  * occur most often, then those nearest to the mean. Moves of at most `silent` are not noted.
  */
-export function joinedPoints(x: Float64Array, y: Float64Array, used: readonly Int32Array[], snap: number, silent: number): JoinedPoints {
+export function* joinedPoints(x: Float64Array, y: Float64Array, used: readonly Int32Array[], snap: number, silent: number): Steps<JoinedPoints> {
   const inUse = new Uint8Array(x.length)
   for (const list of used) for (const point of list) inUse[point] = 1
   const near = new NearPoints(snap, x.length)
   const nodeOf = new Int32Array(x.length).fill(-1)
   const first = new Int32Array(x.length)
-  const spread = new Float64Array(x.length)
+  const isSpread = new Uint8Array(x.length)
   for (let i = 0; i < x.length; i += 1) {
+    if (i % pointsPerStep === 0) yield { stage: 'Joining points', done: i / x.length }
     if (inUse[i] === 0) continue
     let node = near.nearest(x[i], y[i])
     if (node < 0) {
       node = near.add(x[i], y[i])
       first[node] = i
     } else {
-      const distance = Math.hypot(x[i] - x[first[node]], y[i] - y[first[node]])
-      if (distance > spread[node]) spread[node] = distance
+      if (x[i] !== x[first[node]] || y[i] !== y[first[node]]) isSpread[node] = 1
     }
     nodeOf[i] = node
   }
   const pointOf = first.slice(0, near.count)
   const joined = new Places()
-  const spreadNodes = membersOfSpread(nodeOf, spread, near.count)
+  const spreadNodes = membersOfSpread(nodeOf, isSpread, near.count)
   for (const [node, members] of spreadNodes) {
     const chosen = middlePoint(x, y, members)
     pointOf[node] = chosen
@@ -51,9 +55,9 @@ export function joinedPoints(x: Float64Array, y: Float64Array, used: readonly In
 }
 
 /** The points of every node whose points are not identical. */
-function membersOfSpread(nodeOf: Int32Array, spread: Float64Array, count: number): Map<number, number[]> {
+function membersOfSpread(nodeOf: Int32Array, isSpread: Uint8Array, count: number): Map<number, number[]> {
   const members = new Map<number, number[]>()
-  for (let node = 0; node < count; node += 1) if (spread[node] > 0) members.set(node, [])
+  for (let node = 0; node < count; node += 1) if (isSpread[node] === 1) members.set(node, [])
   if (members.size > 0) for (let i = 0; i < nodeOf.length; i += 1) members.get(nodeOf[i])?.push(i)
   return members
 }

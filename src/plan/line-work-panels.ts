@@ -12,7 +12,7 @@ import { closedOutlines, type ClosedOutlines } from './outlines-closed.ts'
 import { outlineFaces } from './outlines-faces.ts'
 import { cyclesOf, type Cycles } from './trace-cycles.ts'
 import { Graph } from './trace-graph.ts'
-import { nestedComponents, type Nested } from './trace-nesting.ts'
+import { isOneFigure, nestedComponents, type Nested } from './trace-nesting.ts'
 import { inRows } from './trace-order.ts'
 import { regionsInside, regionsOf, type Regions } from './trace-regions.ts'
 import { trim } from './trace-trim.ts'
@@ -41,12 +41,15 @@ type Points = readonly (readonly [x: number, y: number])[]
  */
 export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: number, voids: Points): Steps<Result<PanelFaces>> {
   const { outlines: loops, holes, segments } = drawing
-  const points = joinedPoints(frame.x, frame.y, [loops.point, holes.point, segments], frame.snap, frame.silent)
-  yield { stage: 'Joining lines', done: 0 }
+  const points = yield* joinedPoints(frame.x, frame.y, [loops.point, holes.point, segments], frame.snap, frame.silent)
   const { nodeOf, pointOf } = points
   const ends = lineEnds(drawing, nodeOf)
-  const nodeX = Float64Array.from(pointOf, (point) => frame.x[point])
-  const nodeY = Float64Array.from(pointOf, (point) => frame.y[point])
+  const nodeX = new Float64Array(pointOf.length)
+  const nodeY = new Float64Array(pointOf.length)
+  for (let node = 0; node < pointOf.length; node += 1) {
+    nodeX[node] = frame.x[pointOf[node]]
+    nodeY[node] = frame.y[pointOf[node]]
+  }
   const arranged = yield* arrangement(nodeX, nodeY, ends.a, ends.b, frame)
   if (!arranged.ok) {
     const { problem } = arranged
@@ -54,9 +57,13 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
     return at === undefined ? arranged : { ok: false, problem: { ...problem, where: { at: [at[0] + frame.centreX, at[1] + frame.centreY] } } }
   }
   const lines = arranged.value
-  const drawn = (node: number): boolean => node < pointOf.length && lines.moved[node] === 0
-  const x = lines.x.map((value, node) => (drawn(node) ? frame.planX[pointOf[node]] : value + frame.centreX))
-  const y = lines.y.map((value, node) => (drawn(node) ? frame.planY[pointOf[node]] : value + frame.centreY))
+  const x = new Float64Array(lines.x.length)
+  const y = new Float64Array(lines.x.length)
+  for (let node = 0; node < x.length; node += 1) {
+    const isDrawn = node < pointOf.length && lines.moved[node] === 0
+    x[node] = isDrawn ? frame.planX[pointOf[node]] : lines.x[node] + frame.centreX
+    y[node] = isDrawn ? frame.planY[pointOf[node]] : lines.y[node] + frame.centreY
+  }
   const traced: Traced = {
     drawing, frame, mmPerUnit, points, lines,
     firstHole: loops.point.length, firstSegment: loops.point.length + holes.point.length,
@@ -70,16 +77,17 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   let notices: string[] = []
   if (loops.line.length > 0) {
     const outlines = closedOutlines(lines, loops, 0)
-    const whole = wholeFigures(graph, lines)
+    let whole: Figures | null = null
+    const figures = (): Figures => (whole ??= figuresOf(graph, lines))
     const onHole = new Uint8Array(graph.edgeCount)
     for (let k = lines.chainStart[traced.firstHole]; k < lines.chainStart[traced.firstSegment]; k += 1) onHole[lines.chain[k] >> 1] = 1
     const judged = outlineFaces({
-      drawing, lines, graph, outlines, onHole, floating: whole, snap: frame.snap, rounding: frame.rounding,
+      drawing, lines, graph, outlines, onHole, isOne: isOneFigure(graph), figures, snap: frame.snap, rounding: frame.rounding,
       at: traced.at, pointAt: (point) => [frame.planX[point], frame.planY[point]],
     })
     if (!judged.ok) return judged
     if (judged.value.areFaces) {
-      const voided = voidPanels(traced, whole, outlines, judged.value.panels, voids)
+      const voided = voidPanels(traced, figures, outlines, judged.value.panels, voids)
       if (!voided.ok) return voided
       const panels = judged.value.panels.filter((panel) => !voided.value.has(panel))
       if (panels.length === 0) return nothingClosed()
@@ -97,6 +105,7 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   const { cycles } = trimmed
   const nested = nestedComponents(graph, cycles, lines.index)
   const regions = regionsOf(cycles, nested)
+  yield { stage: 'Tracing panels', done: 0.8 }
   if (regions.cycle.length === 0) return nothingClosed()
   const isVoid = holeRegions(traced, regions)
   for (const point of voids) {
@@ -144,7 +153,12 @@ function lineEnds({ outlines, holes, segments }: Drawing, nodeOf: Int32Array): {
   return { a, b }
 }
 
-function wholeFigures(graph: Graph, lines: Arrangement): { cycles: Cycles; nested: Nested } {
+interface Figures {
+  readonly cycles: Cycles
+  readonly nested: Nested
+}
+
+function figuresOf(graph: Graph, lines: Arrangement): Figures {
   const cycles = cyclesOf(graph)
   return { cycles, nested: nestedComponents(graph, cycles, lines.index) }
 }
@@ -161,10 +175,11 @@ function facesOf(graph: Graph, outlines: ClosedOutlines, panels: Int32Array): { 
 
 /** Outlines that a void point lies in: they are no panels. */
 function voidPanels(
-  { lines, frame }: Traced, { cycles, nested }: { cycles: Cycles; nested: Nested }, outlines: ClosedOutlines, panels: Int32Array, voids: Points,
+  { lines, frame }: Traced, figures: () => Figures, outlines: ClosedOutlines, panels: Int32Array, voids: Points,
 ): Result<Set<number>> {
   const dropped = new Set<number>()
   if (voids.length === 0) return ok(dropped)
+  const { cycles, nested } = figures()
   const regions = regionsOf(cycles, nested)
   const panelOfRegion = new Map<number, number>()
   for (const panel of panels) panelOfRegion.set(regions.of[outlines.half[outlines.start[panel]]], panel)

@@ -31,8 +31,10 @@ export interface OutlineInput {
   readonly outlines: ClosedOutlines
   /** Edges that sides of interior rings run along. */
   readonly onHole: Uint8Array
-  /** Whole figures and where they float, when there is more than one; else null. */
-  readonly floating: { readonly cycles: Cycles; readonly nested: Nested } | null
+  /** Whether lines connect everything, so that nothing can float inside an outline. */
+  readonly isOne: boolean
+  /** The graph's cycles, and what floats in which; made when first asked for. */
+  readonly figures: () => { readonly cycles: Cycles; readonly nested: Nested }
   /** Outlines whose mean width is below this have collapsed. */
   readonly snap: number
   readonly rounding: number
@@ -49,7 +51,7 @@ interface Findings {
 }
 
 export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
-  const { drawing, graph, outlines, onHole, floating, at } = input
+  const { drawing, graph, outlines, onHole, at } = input
   const { outlines: loops } = drawing
   const repeats = new Places()
   const collapsed = new Places()
@@ -106,8 +108,8 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
       }
     }
   }
-  if (floating !== null) {
-    const { cycles, nested } = floating
+  if (!input.isOne) {
+    const { cycles, nested } = input.figures()
     for (let f = 0; f < nested.within.length; f += 1) {
       const holder = nested.within[f] < 0 ? -1 : outlineOf[cycles.half[cycles.start[nested.within[f]]]]
       if (holder < 0) continue
@@ -136,7 +138,8 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
   }
   if (findings.overlap !== null) {
     const { place: where, three: isThree } = findings.overlap
-    const crossed = drawing.format === 'OBJ' || floating === null ? null : outlinesCross(graph, floating.cycles, floating.nested, outlines, panels)
+    const { cycles, nested } = input.figures()
+    const crossed = drawing.format === 'OBJ' ? null : outlinesCross(graph, cycles, nested, outlines, panels)
     if (drawing.format !== 'OBJ' && crossed === null) return asLines('One closed outline lies inside another', where.at ?? [0, 0])
     if (isThree) return fail('three-panels', 'three panels share one joint', where, 'a roof has two panels at a joint: delete or redraw one')
     const [one, other] = crossed ?? findings.overlap.panels

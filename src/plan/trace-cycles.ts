@@ -1,4 +1,5 @@
 /** The boundary cycles of a planar graph: counter-clockwise ones bound a region from outside, clockwise ones go round a component. */
+import { GrowingInts } from '../base/geometry/growing.ts'
 import { signedArea } from '../base/geometry/polygon-area.ts'
 import type { Graph } from './trace-graph.ts'
 
@@ -18,7 +19,8 @@ export function cyclesOf(graph: Graph): Cycles {
   const { next, origin, alive } = graph
   const of = new Int32Array(next.length).fill(-1)
   const half = new Int32Array(next.length)
-  const start: number[] = [0]
+  const start = new GrowingInts(1 + (next.length >> 3))
+  start.push(0)
   let filled = 0
   for (let h = 0; h < next.length; h += 1) {
     if (of[h] >= 0 || alive[h >> 1] === 0) continue
@@ -31,8 +33,10 @@ export function cyclesOf(graph: Graph): Cycles {
     } while (at !== h)
     start.push(filled)
   }
-  const node = Int32Array.from(half.subarray(0, filled), (h) => origin[h])
-  const area = new Float64Array(start.length - 1)
-  for (let c = 0; c < area.length; c += 1) area[c] = signedArea(graph.x, graph.y, node, start[c], start[c + 1])
-  return { of, start: Int32Array.from(start), half: half.slice(0, filled), node, area }
+  const starts = start.values()
+  const node = new Int32Array(filled)
+  for (let k = 0; k < filled; k += 1) node[k] = origin[half[k]]
+  const area = new Float64Array(starts.length - 1)
+  for (let c = 0; c < area.length; c += 1) area[c] = signedArea(graph.x, graph.y, node, starts[c], starts[c + 1])
+  return { of, start: starts, half: half.subarray(0, filled), node, area }
 }

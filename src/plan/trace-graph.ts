@@ -51,7 +51,8 @@ export class Graph {
 
   length(edge: number): number {
     const a = this.origin[2 * edge], b = this.origin[2 * edge + 1]
-    return Math.hypot(this.x[b] - this.x[a], this.y[b] - this.y[a])
+    const dx = this.x[b] - this.x[a], dy = this.y[b] - this.y[a]
+    return Math.sqrt(dx * dx + dy * dy)
   }
 
   private link(from: number, to: number): void {

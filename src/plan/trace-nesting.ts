@@ -19,18 +19,20 @@ export interface Nested {
 
 export function nestedComponents(graph: Graph, cycles: Cycles, index: LineIndex): Nested {
   const component = components(graph)
-  const leftmost = new Map<number, number>()
   const { x, y, origin } = graph
+  const leftmostOf = new Int32Array(x.length).fill(-1)
   for (let node = 0; node < x.length; node += 1) {
     if (graph.degree[node] === 0) continue
-    const known = leftmost.get(component[node])
-    if (known === undefined || x[node] < x[known] || (x[node] === x[known] && y[node] < y[known])) leftmost.set(component[node], node)
+    const known = leftmostOf[component[node]]
+    if (known < 0 || x[node] < x[known] || (x[node] === x[known] && y[node] < y[known])) leftmostOf[component[node]] = node
   }
+  const leftmost: [component: number, node: number][] = []
+  leftmostOf.forEach((node, id) => { if (node >= 0) leftmost.push([id, node]) })
   const outerOf = new Map<number, number>()
   for (let c = 0; c < cycles.area.length; c += 1) if (!(cycles.area[c] > 0)) outerOf.set(component[cycles.node[cycles.start[c]]], c)
 
   // From left to right: whatever is hit has been placed before.
-  const list = [...leftmost].sort(([, m], [, n]) => x[m] - x[n] || y[m] - y[n])
+  const list = leftmost.sort(([, m], [, n]) => x[m] - x[n] || y[m] - y[n])
   const placed = new Map<number, number>()
   if (list.length > 1) {
     for (const [id, node] of list) {
@@ -46,9 +48,22 @@ export function nestedComponents(graph: Graph, cycles: Cycles, index: LineIndex)
   }
 }
 
+/** Whether lines connect everything. */
+export function isOneFigure(graph: Graph): boolean {
+  const component = components(graph)
+  let first = -1
+  for (let node = 0; node < component.length; node += 1) {
+    if (graph.degree[node] === 0) continue
+    if (first >= 0 && component[node] !== first) return false
+    first = component[node]
+  }
+  return true
+}
+
 /** A number per node, equal where lines connect them (union-find with path halving, Tarjan 1975). */
 function components({ x, origin, alive, edgeCount }: Graph): Int32Array {
-  const parent = Int32Array.from(x, (_, node) => node)
+  const parent = new Int32Array(x.length)
+  for (let node = 0; node < parent.length; node += 1) parent[node] = node
   const root = (node: number): number => {
     while (parent[node] !== node) {
       parent[node] = parent[parent[node]]
@@ -61,7 +76,8 @@ function components({ x, origin, alive, edgeCount }: Graph): Int32Array {
     const a = root(origin[2 * e]), b = root(origin[2 * e + 1])
     if (a !== b) parent[Math.max(a, b)] = Math.min(a, b)
   }
-  return parent.map((_, node) => root(node))
+  for (let node = 0; node < parent.length; node += 1) parent[node] = root(node)
+  return parent
 }
 
 /** The half-edge, with the node on its left, that a ray from the node to the left meets first; -1 when it meets none. */

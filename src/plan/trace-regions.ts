@@ -22,7 +22,8 @@ export function regionsOf(cycles: Cycles, nested: Nested): Regions {
   for (let k = 0; k < nested.outer.length; k += 1) {
     if (nested.outer[k] >= 0 && nested.within[k] >= 0) regionOfCycle[nested.outer[k]] = regionOfCycle[nested.within[k]]
   }
-  const of = cycles.of.map((c) => (c < 0 ? -1 : regionOfCycle[c]))
+  const of = new Int32Array(cycles.of.length)
+  for (let h = 0; h < of.length; h += 1) of[h] = cycles.of[h] < 0 ? -1 : regionOfCycle[cycles.of[h]]
   const start = new Int32Array(cycle.length + 1)
   for (const region of of) if (region >= 0) start[region + 1] += 1
   for (let r = 0; r < cycle.length; r += 1) start[r + 1] += start[r]

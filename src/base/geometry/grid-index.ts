@@ -68,34 +68,37 @@ export function pointsByCell(grid: Grid, x: Float64Array, y: Float64Array, count
 /** Every cell that the segments a[i] - b[i] come within `pad` of (a few more at corners). */
 export function segmentsByCell(grid: Grid, x: Float64Array, y: Float64Array, a: Int32Array, b: Int32Array, pad: number): Cells {
   const { columnBorder, rowBorder, columns } = grid
+  const column = bins(columnBorder, x)
+  const row = bins(rowBorder, y)
   const cell = new GrowingInts(4 * a.length)
   const item = new GrowingInts(4 * a.length)
   for (let i = 0; i < a.length; i += 1) {
     const forward = x[a[i]] <= x[b[i]]
     const p = forward ? a[i] : b[i]
     const q = forward ? b[i] : a[i]
-    const firstColumn = bin(columnBorder, x[p] - pad)
-    const lastColumn = bin(columnBorder, x[q] + pad)
-    const low = Math.min(y[p], y[q])
-    const high = Math.max(y[p], y[q])
-    const firstRow = bin(rowBorder, low - pad)
-    const lastRow = bin(rowBorder, high + pad)
-    const oneRow = firstRow === lastRow
-    const slope = x[q] > x[p] ? (y[q] - y[p]) / (x[q] - x[p]) : 0
-    // Within a pad of a column the segment rises by at most the pad times its slope; steep ones stay inside low .. high.
-    for (let column = firstColumn; column <= lastColumn; column += 1) {
+    const upward = y[p] <= y[q]
+    const low = upward ? p : q
+    const high = upward ? q : p
+    const firstColumn = binBefore(columnBorder, column[p], x[p] - pad)
+    const lastColumn = binAfter(columnBorder, column[q], x[q] + pad)
+    const firstRow = binBefore(rowBorder, row[low], y[low] - pad)
+    const lastRow = binAfter(rowBorder, row[high], y[high] + pad)
+    const isShort = firstColumn === lastColumn || firstRow === lastRow || (lastColumn - firstColumn < 2 && lastRow - firstRow < 2)
+    const slope = isShort ? 0 : (y[q] - y[p]) / (x[q] - x[p])
+    for (let c = firstColumn; c <= lastColumn; c += 1) {
       let from = firstRow
       let to = lastRow
-      if (!oneRow && firstColumn !== lastColumn) {
-        const left = column === 0 ? -Infinity : columnBorder[column - 1] - pad
-        const right = column === columns - 1 ? Infinity : columnBorder[column] + pad
-        const atLeft = left <= x[p] ? y[p] : y[p] + slope * (left - x[p])
-        const atRight = right >= x[q] ? y[q] : y[p] + slope * (right - x[p])
-        from = bin(rowBorder, Math.max(low, Math.min(atLeft, atRight)) - pad)
-        to = bin(rowBorder, Math.min(high, Math.max(atLeft, atRight)) + pad)
+      // A pad wider than the column on both sides covers what the slope makes of the pad.
+      if (!isShort && x[q] > x[p]) {
+        const left = c === 0 ? -Infinity : columnBorder[c - 1] - pad
+        const right = c === columns - 1 ? Infinity : columnBorder[c] + pad
+        const atLeft = left <= x[p] ? y[p] : left >= x[q] ? y[q] : y[p] + slope * (left - x[p])
+        const atRight = right >= x[q] ? y[q] : right <= x[p] ? y[p] : y[p] + slope * (right - x[p])
+        from = Math.max(firstRow, bin(rowBorder, Math.min(atLeft, atRight) - pad))
+        to = Math.min(lastRow, bin(rowBorder, Math.max(atLeft, atRight) + pad))
       }
-      for (let row = from; row <= to; row += 1) {
-        cell.push(row * columns + column)
+      for (let r = from; r <= to; r += 1) {
+        cell.push(r * columns + c)
         item.push(i)
       }
     }
@@ -103,14 +106,41 @@ export function segmentsByCell(grid: Grid, x: Float64Array, y: Float64Array, a: 
   return byCell(cell.values(), item.values(), columns * grid.rows)
 }
 
-/** Cells that `segmentsByCell` would fill, roughly: columns plus rows that each segment spans. */
+function bins(border: Float64Array, values: Float64Array): Int32Array {
+  const out = new Int32Array(values.length)
+  for (let i = 0; i < out.length; i += 1) out[i] = bin(border, values[i])
+  return out
+}
+
+/** The bin of a value that lies a little below one in bin `from`. */
+function binBefore(border: Float64Array, from: number, value: number): number {
+  let at = from
+  while (at > 0 && border[at - 1] > value) at -= 1
+  return at
+}
+
+/** The bin of a value that lies a little above one in bin `from`. */
+function binAfter(border: Float64Array, from: number, value: number): number {
+  let at = from
+  while (at < border.length && border[at] <= value) at += 1
+  return at
+}
+
+/** Segments looked at for an estimate. */
+const sampleSize = 5000
+
+/** Cells that `segmentsByCell` would fill, estimated from a sample: columns plus rows that each segment spans. */
 export function cellsSpanned(grid: Grid, x: Float64Array, y: Float64Array, a: Int32Array, b: Int32Array): number {
-  let sum = a.length
-  for (let i = 0; i < a.length; i += 1) {
+  const stride = Math.ceil(a.length / sampleSize)
+  let sum = 0
+  let looked = 0
+  for (let i = 0; i < a.length; i += stride) {
+    sum += 1
     sum += Math.abs(bin(grid.columnBorder, x[a[i]]) - bin(grid.columnBorder, x[b[i]]))
     sum += Math.abs(bin(grid.rowBorder, y[a[i]]) - bin(grid.rowBorder, y[b[i]]))
+    looked += 1
   }
-  return sum
+  return looked === 0 ? 0 : (sum / looked) * a.length
 }
 
 /** Counting sort of (cell, item) pairs. */

@@ -2,54 +2,49 @@
  * Points that are found again when something comes near them: a hash of square cells four reaches wide, so that a search
  * mostly looks into one cell. Holds any extent, since cells are hashed and not stored.
  */
-import { GrowingFloats, GrowingInts } from './growing.ts'
-
 export class NearPoints {
-  private readonly px: GrowingFloats
-  private readonly py: GrowingFloats
-  private readonly following: GrowingInts
+  count = 0
+  private px: Float64Array
+  private py: Float64Array
+  /** Next point in the same slot, -1 at the end. */
+  private following: Int32Array
+  /** First point of each slot. */
   private first: Int32Array
   private readonly cell: number
 
   /** `reach`: how far `nearest` looks; positive, in the unit of the coordinates. */
   constructor(readonly reach: number, capacity = 64) {
     this.cell = 4 * reach
-    this.px = new GrowingFloats(capacity)
-    this.py = new GrowingFloats(capacity)
-    this.following = new GrowingInts(capacity)
-    this.first = new Int32Array(2 ** Math.ceil(Math.log2(2 * Math.max(32, capacity)))).fill(-1)
-  }
-
-  get count(): number {
-    return this.px.length
+    const room = 2 ** Math.ceil(Math.log2(Math.max(32, capacity)))
+    this.px = new Float64Array(room)
+    this.py = new Float64Array(room)
+    this.following = new Int32Array(room)
+    this.first = new Int32Array(2 * room).fill(-1)
   }
 
   /** Coordinates so far, without copying: valid until the next `add`. */
   get x(): Float64Array {
-    return this.px.values()
+    return this.px.subarray(0, this.count)
   }
 
   get y(): Float64Array {
-    return this.py.values()
+    return this.py.subarray(0, this.count)
   }
 
   /** Adds a point, whatever is near, and returns its index. */
   add(x: number, y: number): number {
-    const index = this.px.length
-    this.px.push(x)
-    this.py.push(y)
-    this.following.push(-1)
-    if (2 * (index + 1) > this.first.length) this.widen()
-    else this.link(index)
+    const index = this.count
+    if (index === this.px.length) this.widen()
+    this.px[index] = x
+    this.py[index] = y
+    this.count += 1
+    this.link(index)
     return index
   }
 
   /** Index of the nearest point within `within` (at most the reach), the lowest of equally near ones; -1 when there is none. */
   nearest(x: number, y: number, within: number = this.reach): number {
-    const { cell, first } = this
-    const px = this.px.values()
-    const py = this.py.values()
-    const following = this.following.values()
+    const { cell, first, px, py, following } = this
     const left = Math.floor((x - within) / cell)
     const right = Math.floor((x + within) / cell)
     const top = Math.floor((y + within) / cell)
@@ -73,14 +68,21 @@ export class NearPoints {
   }
 
   private link(index: number): void {
-    const at = slot(Math.floor(this.px.values()[index] / this.cell), Math.floor(this.py.values()[index] / this.cell), this.first.length)
-    this.following.values()[index] = this.first[at]
+    const at = slot(Math.floor(this.px[index] / this.cell), Math.floor(this.py[index] / this.cell), this.first.length)
+    this.following[index] = this.first[at]
     this.first[at] = index
   }
 
   private widen(): void {
-    this.first = new Int32Array(4 * this.first.length).fill(-1)
-    for (let i = 0; i < this.px.length; i += 1) this.link(i)
+    const room = 2 * this.px.length
+    const { px, py } = this
+    this.px = new Float64Array(room)
+    this.px.set(px)
+    this.py = new Float64Array(room)
+    this.py.set(py)
+    this.following = new Int32Array(room)
+    this.first = new Int32Array(2 * room).fill(-1)
+    for (let i = 0; i < this.count; i += 1) this.link(i)
   }
 }
 

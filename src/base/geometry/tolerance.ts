@@ -94,5 +94,11 @@ export const heightsAgree_mm = 10
 /** Crossings of lines that are taken at most: 100,000 panels of crossing lines have as many; more is a hatch or a text. */
 export const mostCrossings = 400_000
 
-/** Pairs of lines compared at most: about five seconds. */
+/** Pairs of lines, or of a line and a node, compared at most: about five seconds. */
 export const mostPairs = 1_000_000_000
+
+/** Nodes on the inside of lines at most: thousands of lines drawn over each other. */
+export const mostTouches = 5_000_000
+
+/** A void whose mean width is below this, in mm, is a gap between outlines rather than an opening. */
+export const gap_mm = 20
