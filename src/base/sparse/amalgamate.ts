@@ -20,7 +20,7 @@ export interface Fronts {
 /** Nanoseconds, fitted on fronts of 20 to 60 rows; only their ratios matter. */
 const perFront = 1500
 const perOperation = 0.15
-const perEntryOfL = 0.5
+const perEntryOfL = 6
 const perEntryOfSchur = 1.5
 
 function modelTime(pivots: number, boundary: number): number {

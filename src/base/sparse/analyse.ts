@@ -45,6 +45,8 @@ export interface Analysis {
   readonly storeSize: number
   /** target[q]: where value q of the pattern goes in the store. */
   readonly target: Int32Array
+  /** The most rows of any front, in slivers. */
+  readonly widest: number
   /** Multiplications and additions of the factorisation. */
   readonly operations: number
 }
@@ -65,11 +67,13 @@ export function analyse(pattern: Pattern, ordering: Ordering): Analysis {
   const panel = new Int32Array(fronts + 1)
   let operations = 0
   let numbers = 0
+  let widest = 0
   for (let t = 0; t < fronts; t++) {
     const p = four((first[t + 1] as number) - (first[t] as number))
     const b = four((boundaryStart[t + 1] as number) - (boundaryStart[t] as number))
     numbers += triangle(p >> 2) + p * b
     panel[t + 1] = numbers
+    widest = Math.max(widest, (p + b) >> 2)
     operations += (p * (p + 1) * (2 * p + 1)) / 6 + p * p * b + p * b * b
   }
   const stacks = schurPlaces(fronts, parent, boundaryStart, numbers)
@@ -129,7 +133,7 @@ export function analyse(pattern: Pattern, ordering: Ordering): Analysis {
   }
   return {
     pattern, ordering, place, unknown, fronts, first, parent, ...childLists(fronts, parent), boundaryStart, boundary, inParent,
-    panel, schur: stacks.schur, storeSize: stacks.end, target, operations,
+    panel, schur: stacks.schur, storeSize: stacks.end, target, widest, operations,
   }
 }
 

@@ -15,6 +15,7 @@ import { newStore, type Store } from './store.ts'
 
 export interface Factor {
   readonly analysis: Analysis
+  /** L and the Schur complements as analysed, and behind them (from analysis.storeSize on) scratch room for four columns of one front. */
   readonly store: Store
   /** D by place; where a front's pivots are filled up to a multiple of four, see `pivotAt`. */
   readonly pivot: Float64Array
@@ -32,8 +33,6 @@ export interface Factor {
 const blockColumns = 16
 const blockRows = 64
 
-/** Numbers of scratch room behind the store: one block of four columns, scaled. */
-export const scratch = 4 * 4 * blockColumns
 
 /** Operations between two looks at the clock: below a millisecond. */
 const operationsPerLook = 2e6
@@ -46,7 +45,7 @@ export function* factor(analysis: Analysis, values: Float64Array): Steps<Factor>
   for (let t = 0; t < fronts; t++) pivotAt[t + 1] = (pivotAt[t] as number) + four((first[t + 1] as number) - (first[t] as number))
   const into: Factor = {
     analysis, pivotAt, zeros: 0, ready: true,
-    store: newStore(analysis.storeSize + scratch, analysis.operations),
+    store: newStore(analysis.storeSize + Math.max(16 * blockColumns, 16 * analysis.widest), analysis.operations),
     pivot: new Float64Array(pivotAt[fronts] as number),
     scale: new Float64Array(pivotAt[fronts] as number),
   }
@@ -88,8 +87,8 @@ function* numeric(into: Factor, values: Float64Array): Steps<void> {
         const depth = 4 * (s - from)
         if (depth > 0) {
           scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
-          update(corner + 16 * from, 16 * (s + 1), 16, b, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
-          update(below + 16 * from, 16 * S, 0, b, below + 16 * s, 16 * S, 0, R, depth, 1)
+          update(corner + 16 * from, 16 * (s + 1), 16, b, 0, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
+          update(below + 16 * from, 16 * S, 0, b, 0, below + 16 * s, 16 * S, 0, R, depth, 1)
         }
         eliminateFour(data, corner + 16 * s, pivot, at + 4 * s, scale, pivots - 4 * s, rules)
         scaleBelow(data, corner + 16 * s, pivot, at + 4 * s, base + triangle(s + 1) + 16 * s, 16 * (s + 2), 16, S - s - 1)
@@ -100,8 +99,8 @@ function* numeric(into: Factor, values: Float64Array): Steps<void> {
       for (let s = to; s < S; s++) {
         const corner = base + triangle(s)
         scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
-        update(corner + 16 * from, 16 * (s + 1), 16, b, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
-        update(below + 16 * from, 16 * S, 0, b, below + 16 * s, 16 * S, 0, R, depth, 1)
+        update(corner + 16 * from, 16 * (s + 1), 16, b, 0, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
+        update(below + 16 * from, 16 * S, 0, b, 0, below + 16 * s, 16 * S, 0, R, depth, 1)
         work += 32 * depth * (S - s + R)
       }
       for (let low = 0; low < R; low += blockRows) {
@@ -109,7 +108,7 @@ function* numeric(into: Factor, values: Float64Array): Steps<void> {
         for (let j = 0; j < high; j++) {
           const s = Math.max(j, low)
           scaled(data, below + 16 * S * j + 16 * from, pivot, at + 4 * from, b, depth)
-          update(below + 16 * S * s + 16 * from, 16 * S, 0, b, complement + triangle(s) + 16 * j, 16 * (s + 1), 16, high - s, depth, from)
+          update(below + 16 * S * s + 16 * from, 16 * S, 0, b, 0, complement + triangle(s) + 16 * j, 16 * (s + 1), 16, high - s, depth, from)
           work += 32 * depth * (high - s)
         }
         if (work > operationsPerLook) {

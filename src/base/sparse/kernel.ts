@@ -1,31 +1,62 @@
 /**
- * The one operation that takes nearly all the time of a factorisation: C <- C - A B on slivers of four rows.
+ * The operations that take nearly all the time: C <- C - A B on slivers of four rows, and its mirror image for the backward
+ * sweep of several right-hand sides.
  *
  * In plain JavaScript: four rows by two columns in eight local sums, which with four numbers of A and two of B is what sixteen
- * vector registers hold. `kernel-binary.ts` holds the same operation with two rows in one instruction; both do the same
+ * vector registers hold. `kernel-binary.ts` holds the same operations with two rows in one instruction; both do the same
  * roundings in the same order, so that results do not depend on which of them ran.
  */
 
 /**
- * For n = 0 .. count - 1: the 4 x 4 block C_n (store[c + 4 j + i]) becomes C_n - A_n B, or -A_n B when `keep` is 0, where
- * A_n is 4 x depth (store[a + 4 k + i]) and B is depth x 4 (store[b + 4 k + j]). After each block a and c advance by aStep
- * and cStep, and these by aGrow and cGrow (rows of a triangle of slivers get longer). depth is a positive multiple of four.
+ * For n = 0 .. count - 1: the 4 x 4 block C_n (store[c + 4 j + i]) becomes C_n - A_n B_n, or -A_n B_n when `keep` is 0, where
+ * A_n is 4 x depth (store[a + 4 k + i]) and B_n is depth x 4 (store[b + 4 k + j]). After each block a, b and c advance by
+ * their steps, and aStep and cStep by their growths (rows of a triangle of slivers get longer). depth is a positive multiple
+ * of four.
  */
 export type Update = (
-  a: number, aStep: number, aGrow: number, b: number, c: number, cStep: number, cGrow: number, count: number, depth: number, keep: number,
+  a: number, aStep: number, aGrow: number, b: number, bStep: number, c: number, cStep: number, cGrow: number,
+  count: number, depth: number, keep: number,
 ) => void
 
-/** The operation on a given store. */
-export function plainUpdate(store: Float64Array): Update {
-  return (a, aStep, aGrow, b, c, cStep, cGrow, count, depth, keep) => {
-    for (let n = 0; n < count; n++) {
-      twoColumns(store, a, b, c, depth, keep)
-      twoColumns(store, a, b + 2, c + 8, depth, keep)
-      a += aStep
-      aStep += aGrow
-      c += cStep
-      cStep += cGrow
-    }
+/**
+ * For n = 0 .. count - 1: C_n <- C_n - A B_n^T with all three 4 x 4: C_n at c + 16 n (4 j + i), A at a (4 k + i), B_n at
+ * b + 16 n, where (j, k) is at 4 j + k.
+ */
+export type Mirror = (a: number, b: number, c: number, count: number) => void
+
+export interface Kernels {
+  readonly update: Update
+  readonly mirror: Mirror
+}
+
+/** The operations on a given store. */
+export function plainKernels(store: Float64Array): Kernels {
+  return {
+    update: (a, aStep, aGrow, b, bStep, c, cStep, cGrow, count, depth, keep) => {
+      for (let n = 0; n < count; n++) {
+        twoColumns(store, a, b, c, depth, keep)
+        twoColumns(store, a, b + 2, c + 8, depth, keep)
+        a += aStep
+        aStep += aGrow
+        b += bStep
+        c += cStep
+        cStep += cGrow
+      }
+    },
+    mirror: (a, b, c, count) => {
+      const end = c + 16 * count
+      // One column of C_n at a time; b runs through B_n's rows.
+      for (; c < end; c += 4, b += 4) {
+        const b0 = store[b] as number
+        const b1 = store[b + 1] as number
+        const b2 = store[b + 2] as number
+        const b3 = store[b + 3] as number
+        for (let i = 0; i < 4; i++) {
+          store[c + i] = (store[c + i] as number) - (store[a + i] as number) * b0 - (store[a + 4 + i] as number) * b1
+            - (store[a + 8 + i] as number) * b2 - (store[a + 12 + i] as number) * b3
+        }
+      }
+    },
   }
 }
 

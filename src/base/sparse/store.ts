@@ -1,13 +1,12 @@
 /**
- * Room for the numbers of a factor, with the update kernel that works on it: the binary kernel on WebAssembly memory where
- * that is allowed and worth it, else the plain one. Both give the same numbers.
+ * Room for the numbers of a factor, with the kernels that work on it: the binary ones on WebAssembly memory where
+ * that is allowed and worth it, else the plain ones. Both give the same numbers.
  */
 import { kernelBinary } from './kernel-binary.ts'
-import { plainUpdate, type Update } from './kernel.ts'
+import { plainKernels, type Kernels } from './kernel.ts'
 
-export interface Store {
+export interface Store extends Kernels {
   readonly data: Float64Array
-  readonly update: Update
 }
 
 /** Below this much work the plain kernel is done before a module is set up. */
@@ -37,11 +36,12 @@ export function newStore(numbers: number, operations: number, binary = operation
     try {
       const memory = new WebAssembly.Memory({ initial: pages })
       const instance = new WebAssembly.Instance(code, { room: { memory } })
-      return { data: new Float64Array(memory.buffer, 0, numbers), update: instance.exports['update'] as Update }
+      const { update, mirror } = instance.exports as unknown as Kernels
+      return { data: new Float64Array(memory.buffer, 0, numbers), update, mirror }
     } catch {
       // Engines limit how many memories live at once; ordinary memory serves as well.
     }
   }
   const data = new Float64Array(numbers)
-  return { data, update: plainUpdate(data) }
+  return { data, ...plainKernels(data) }
 }
