@@ -34,7 +34,9 @@ export function recognise(source: Source): Result<Recognised> {
   if (!decoded.ok) return decoded
   const text = decoded.value
   const head = text.slice(0, headLength)
-  if (head.trim() === '' && text.trim() === '') return fail('empty-file', 'the file holds nothing but blank space', { file: name }, 'export it again')
+  if (head.trim() === '' && text.trim() === '') {
+    return fail('empty-file', 'the file holds nothing but blank space', { file: name }, 'export it again')
+  }
   const named = (format: Format): boolean => format.extensions.some((extension) => name.toLowerCase().endsWith(`.${extension}`))
   const fitting = formats.filter((format) => format.recognises(head))
   const format = fitting.find(named) ?? fitting[0] ?? formats.find(named)

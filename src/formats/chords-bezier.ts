@@ -16,7 +16,9 @@
 const evenUpTo = 4
 
 /** Points between the ends, x y z ..; null when they are more than `most`. `points` x y z .., `weights` null: all 1. */
-export function bezierInterior(points: readonly number[], weights: readonly number[] | null, sagitta: number, most: number): number[] | null {
+export function bezierInterior(
+  points: readonly number[], weights: readonly number[] | null, sagitta: number, most: number,
+): number[] | null {
   const origin = [points[0], points[1], points[2]]
   const controls: number[] = []
   for (let i = 0; 3 * i < points.length; i += 1) {

@@ -14,7 +14,9 @@ export const highestDegree = 25
  *
  * Source: L. Ramshaw, Blossoms are polar forms, 1989; C. de Boor, A practical guide to splines, 1978.
  */
-export function bezierPieces(degree: number, knots: readonly number[], points: readonly number[], weights: readonly number[] | null): Bezier[] {
+export function bezierPieces(
+  degree: number, knots: readonly number[], points: readonly number[], weights: readonly number[] | null,
+): Bezier[] {
   const count = points.length / 3
   const pieces: Bezier[] = []
   const polar = new Float64Array(4 * (degree + 1))

@@ -88,7 +88,8 @@ function lightPolyline(record: DxfRecords): Path {
 
 /** A path through corners (in the plane m, x y z ..) with a bulge each. */
 export function polyline(
-  record: DxfRecords, m: Placing, corners: readonly number[], bulges: readonly number[], closed: boolean, heights: boolean, described = head(record),
+  record: DxfRecords, m: Placing, corners: readonly number[], bulges: readonly number[], closed: boolean, heights: boolean,
+  described = head(record),
 ): Path {
   const count = bulges.length
   if (count < 2) record.refuse('incomplete', 'it has fewer than two vertices', 'leave it out or export the file again', described.line)
@@ -118,16 +119,17 @@ function circularArc(record: DxfRecords): Path {
   const full = roundArc(record, m)
   const sweep = positive(to - from, 360)
   const arc: Arc = { ...full, from: (from * Math.PI) / 180, to: ((from + sweep) * Math.PI) / 180 }
-  if (sweep === 360) return { shape: 'path', ...head(record), points: pointAtDegrees(full, from), curves: [turned(arc)], closed: true, heights: tilted(m) }
-  const points = [...pointAtDegrees(full, from), ...pointAtDegrees(full, to)]
-  return { shape: 'path', ...head(record), points, curves: [arc], closed: false, heights: tilted(m) }
+  const start = pointAtDegrees(full, from)
+  if (sweep === 360) return wholeTurn(record, start, arc, tilted(m))
+  return partTurn(record, [...start, ...pointAtDegrees(full, to)], arc, tilted(m))
 }
 
 function roundArc(record: DxfRecords, m: Placing): Arc {
   const centre = record.needed(10)
   const radius = record.number(40, 0)
   if (!(radius > 0) && record.problem === null) record.refuse('no-radius', 'its radius (code 40) is not a positive number', 'leave it out')
-  return { kind: 'arc', centre: placedPoint(m, ...centre), a: placedVector(m, [radius, 0, 0]), b: placedVector(m, [0, radius, 0]), from: 0, to: 2 * Math.PI }
+  const [a, b] = [placedVector(m, [radius, 0, 0]), placedVector(m, [0, radius, 0])]
+  return { kind: 'arc', centre: placedPoint(m, ...centre), a, b, from: 0, to: 2 * Math.PI }
 }
 
 /** Centre 10, end of the major axis 11 from it (both in space), ratio 40, from 41 to 42 in radians of the parameter. */
@@ -137,14 +139,26 @@ function ellipse(record: DxfRecords): Path {
   const ratio = record.number(40, 1)
   const axes = plane(record)
   const b = cross([axes[2], axes[6], axes[10]], a)
-  if (!(Math.hypot(...b) > 0 && ratio !== 0) && record.problem === null) record.refuse('no-radius', 'it has an axis of no length', 'leave it out')
+  if (!(Math.hypot(...b) > 0) || ratio === 0) record.refuse('no-radius', 'it has an axis of no length', 'leave it out')
   const from = record.number(41, 0)
   const to = record.number(42, 2 * Math.PI)
   const sweep = positive(to - from, 2 * Math.PI)
   const arc: Arc = { kind: 'arc', centre, a, b: [ratio * b[0], ratio * b[1], ratio * b[2]], from, to: from + sweep }
-  const heights = tilted(axes)
-  if (sweep > 2 * Math.PI - 1e-9) return { shape: 'path', ...head(record), points: pointAtAngle(arc, from), curves: [turned(arc)], closed: true, heights }
-  return { shape: 'path', ...head(record), points: [...pointAtAngle(arc, from), ...pointAtAngle(arc, arc.to)], curves: [arc], closed: false, heights }
+  const start = pointAtAngle(arc, from)
+  return sweep > 2 * Math.PI - wholeTurnSlack
+    ? wholeTurn(record, start, arc, tilted(axes))
+    : partTurn(record, [...start, ...pointAtAngle(arc, arc.to)], arc, tilted(axes))
+}
+
+/** Radians by which a written whole turn may fall short of 2 pi: files have some ten digits of it. */
+const wholeTurnSlack = 1e-9
+
+function wholeTurn(record: DxfRecords, start: readonly number[], arc: Arc, heights: boolean): Path {
+  return { shape: 'path', ...head(record), points: start, curves: [turned(arc)], closed: true, heights }
+}
+
+function partTurn(record: DxfRecords, ends: readonly number[], arc: Arc, heights: boolean): Path {
+  return { shape: 'path', ...head(record), points: ends, curves: [arc], closed: false, heights }
 }
 
 /** A full turn that starts anywhere, as one that starts at angle 0: its axes turned along. */
@@ -171,7 +185,10 @@ function insert(record: DxfRecords): Insert {
   const scale: Vector = [record.number(41, 1), record.number(42, 1), record.number(43, 1)]
   const columns = record.integer(70, 1)
   const rows = record.integer(71, 1)
-  if (columns > mostCopies || rows > mostCopies) record.refuse('too-many', `it asks for ${columns} x ${rows} copies, more than ${mostCopies} a side`, 'explode the block or leave it out')
+  if (columns > mostCopies || rows > mostCopies) {
+    const message = `it asks for ${columns} x ${rows} copies, more than ${mostCopies} a side`
+    record.refuse('too-many', message, 'explode the block or leave it out')
+  }
   const placing = after(m, insertion(record.needed(10), turn, scale))
   const along = insertion([0, 0, 0], turn, [1, 1, 1])
   const step = (x: number, y: number): Vector => placedVector(m, placedVector(along, [x, y, 0]))

@@ -8,7 +8,7 @@ import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { shapeOf } from './dxf-entities.ts'
 import { polylineShapes } from './dxf-polyline.ts'
-import { DxfRecords } from './dxf-records.ts'
+import { damaged, DxfRecords } from './dxf-records.ts'
 import type { Block, Shape } from './dxf-shapes.ts'
 
 export interface DxfFile {
@@ -51,7 +51,7 @@ export function* dxfFile(text: string): Steps<Result<DxfFile>> {
         section = ''
         continue
     }
-    if (section === '') record.refuse('outside-section', 'it stands in no section', 'the file is damaged; export it again')
+    if (section === '') record.refuse('outside-section', 'it stands in no section', damaged)
     else if (section === 'TABLES' && record.kind === 'LAYER') addLayer(record, layers)
     else if (section === 'BLOCKS' && record.kind === 'BLOCK') {
       block = newBlock(record)
@@ -73,8 +73,9 @@ export function* dxfFile(text: string): Steps<Result<DxfFile>> {
 
 /** $INSUNITS, by its number. US survey feet differ from feet by 2 in a million, which is millimetres at survey coordinates. */
 const unitsByNumber: Readonly<Record<number, Unit | string>> = {
-  1: 'in', 2: 'ft', 3: 'miles', 4: 'mm', 5: 'cm', 6: 'm', 7: 'kilometres', 8: 'microinches', 9: 'mils', 10: 'yards', 11: 'angstroms', 12: 'nanometres',
-  13: 'microns', 14: 'decimetres', 15: 'decametres', 16: 'hectometres', 17: 'gigametres', 18: 'astronomical units', 19: 'light years', 20: 'parsecs',
+  1: 'in', 2: 'ft', 3: 'miles', 4: 'mm', 5: 'cm', 6: 'm', 7: 'kilometres', 8: 'microinches', 9: 'mils', 10: 'yards',
+  11: 'angstroms', 12: 'nanometres', 13: 'microns', 14: 'decimetres', 15: 'decametres', 16: 'hectometres', 17: 'gigametres',
+  18: 'astronomical units', 19: 'light years', 20: 'parsecs',
   21: 'US survey feet', 22: 'US survey inches', 23: 'US survey yards', 24: 'US survey miles',
 }
 

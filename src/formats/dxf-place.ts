@@ -60,7 +60,8 @@ class Placer {
         yield { stage: 'Unfolding blocks', done: Math.min(1, this.count / mostEntities) }
       }
       const layer = shape.layer === '0' && around.layer !== null ? around.layer : shape.layer
-      const problem = this.count > mostEntities ? tooMany(shape) : shape.shape === 'insert' ? yield* this.insert(shape, layer, around) : this.entity(shape, layer, around)
+      if (this.count > mostEntities) return tooMany(shape)
+      const problem = shape.shape === 'insert' ? yield* this.insert(shape, layer, around) : this.entity(shape, layer, around)
       if (problem !== null) return problem
     }
     return null
@@ -107,15 +108,16 @@ class Placer {
     const { sheet, file } = this
     const key = insert.block.toLowerCase()
     const block = file.blocks.get(key)
-    const reason = insert.onPaper ? 'paper space' : insert.invisible ? 'invisible' : sheet.hides(layer) === 'layer frozen' ? 'layer frozen' : null
+    const frozen = sheet.hides(layer) === 'layer frozen' ? 'layer frozen' : null
+    const reason = insert.onPaper ? 'paper space' : insert.invisible ? 'invisible' : frozen
     const absent = block === undefined ? 'its block is not in the file' : block.external ? 'its block is in another file' : null
     if (block === undefined || absent !== null || reason !== null) {
       sheet.sketch.leaveOut(`INSERT, ${reason ?? absent}`, layer)
       return null
     }
-    const where = { line: insert.line, entity: insert.entity }
-    if (around.open.includes(key)) return fail('block-in-itself', 'its block contains itself', where, 'explode the block or leave it out').problem
-    if (around.open.length >= deepest) return fail('too-deep', `its block is nested more than ${deepest} deep`, where, 'explode the block or leave it out').problem
+    const cure = 'explode the block or leave it out'
+    if (around.open.includes(key)) return trouble(insert, 'block-in-itself', 'its block contains itself', cure)
+    if (around.open.length >= deepest) return trouble(insert, 'too-deep', `its block is nested more than ${deepest} deep`, cure)
     const { columns, rows, columnStep, rowStep } = insert
     if (columns * rows > mostEntities) return tooMany(insert)
     const open = [...around.open, key]
@@ -135,10 +137,14 @@ class Placer {
   }
 }
 
-function tooMany({ line, entity }: Shape): Problem {
-  return fail('too-many', `with its blocks unfolded the drawing has more than ${mostEntities} entities`, { line, entity }, 'export only the panels').problem
+function trouble({ line, entity }: Shape, code: string, message: string, cure: string): Problem {
+  return fail(code, message, { line, entity }, cure).problem
 }
 
-function tooManyChords({ line, entity }: Shape): Problem {
-  return fail('too-many', `it would take more than ${mostChords} chords`, { line, entity }, 'allow a larger sagitta (--sagitta) or check the unit').problem
+function tooMany(shape: Shape): Problem {
+  return trouble(shape, 'too-many', `with its blocks unfolded the drawing has more than ${mostEntities} entities`, 'export only the panels')
+}
+
+function tooManyChords(shape: Shape): Problem {
+  return trouble(shape, 'too-many', `it would take more than ${mostChords} chords`, 'allow a larger sagitta (--sagitta) or check the unit')
 }

@@ -11,7 +11,7 @@
 import type { Steps } from '../base/steps.ts'
 import { polyline } from './dxf-entities.ts'
 import { head, plane, tilted } from './dxf-head.ts'
-import type { DxfRecords } from './dxf-records.ts'
+import { damaged, type DxfRecords } from './dxf-records.ts'
 import type { Common, Mesh, Shape } from './dxf-shapes.ts'
 
 const recordsPerStep = 10_000
@@ -37,12 +37,12 @@ export function* polylineShapes(record: DxfRecords): Steps<Shape[]> {
   let count = 0
   for (;;) {
     if (!record.advance()) {
-      record.refuse('incomplete', 'a POLYLINE has no SEQEND', 'the file is damaged; export it again', described.line)
+      record.refuse('incomplete', 'a POLYLINE has no SEQEND', damaged, described.line)
       return []
     }
     if (record.kind === 'SEQEND') break
     if (record.kind !== 'VERTEX') {
-      record.refuse('incomplete', `${described.entity} has no SEQEND before this`, 'the file is damaged; export it again')
+      record.refuse('incomplete', `${described.entity} has no SEQEND before this`, damaged)
       return []
     }
     vertex(record, (flags & 64) !== 0, found)
@@ -83,7 +83,8 @@ function polyface(record: DxfRecords, described: Common, { points, faces }: Vert
     }
     for (const index of face) {
       if (Math.abs(index) > count) {
-        record.refuse('index-out-of-range', `${described.entity} has a face with vertex ${Math.abs(index)}, but there are ${count}`, 'export the file again', described.line)
+        const message = `${described.entity} has a face with vertex ${Math.abs(index)}, but there are ${count}`
+        record.refuse('index-out-of-range', message, 'export the file again', described.line)
         return []
       }
       mesh.corner.push(Math.abs(index) - 1)
@@ -105,7 +106,8 @@ function rowsAndColumns(record: DxfRecords, described: Common, found: Vertices, 
     shape: 'mesh', ...described, points: drawn.flatMap((i) => found.points.slice(3 * i, 3 * i + 3)), start: [0], corner: [], hidden: null,
   }
   if (m < 2 || n < 2 || m * n !== drawn.length) {
-    record.refuse('incomplete', `${described.entity} states ${m} x ${n} vertices and has ${drawn.length}`, 'export the file again', described.line)
+    const message = `${described.entity} states ${m} x ${n} vertices and has ${drawn.length}`
+    record.refuse('incomplete', message, 'export the file again', described.line)
     return mesh
   }
   const rows = (flags & 1) !== 0 ? m : m - 1

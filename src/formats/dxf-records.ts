@@ -16,6 +16,8 @@ import { printable, quoted } from './text-quote.ts'
 /** Group code of data that belongs to an embedded object, not to the entity; it ends what is of use here. */
 const embeddedObject = 101
 
+export const damaged = 'the file is damaged; export it again'
+
 export class DxfRecords {
   /** Kind of the current record, e.g. "LINE". */
   kind = ''
@@ -80,7 +82,7 @@ export class DxfRecords {
     if (Number.isNaN(code)) {
       if (this.start === this.stop && text.slice(this.position).trim() === '') return this.cutOff()
       const message = `${quoted(text.slice(this.start, this.stop))} stands where a group code should be`
-      this.problem = fail('not-a-group-code', message, { line: this.lines, ...this.entity() }, 'the file is damaged; export it again').problem
+      this.problem = fail('not-a-group-code', message, { line: this.lines, ...this.entity() }, damaged).problem
       return false
     }
     this.code = code
@@ -142,8 +144,8 @@ export class DxfRecords {
   numberAt(i: number): number {
     const value = decimalIn(this.text, this.from[i], this.to[i])
     if (Number.isNaN(value)) this.trouble(i, 'not-a-number', `${quoted(this.value(i))} is not a number`, 'export the file again')
-    else if (Math.abs(value) > farthest) this.trouble(i, 'too-far', `the number ${quoted(this.value(i))} is beyond 1e12`, 'move the drawing nearer to its origin')
-    else return value
+    else if (Math.abs(value) <= farthest) return value
+    else this.trouble(i, 'too-far', `the number ${quoted(this.value(i))} is beyond 1e12`, 'move the drawing nearer to its origin')
     return 0
   }
 

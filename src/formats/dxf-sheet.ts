@@ -192,8 +192,10 @@ export class DxfSheet {
 
   private nothing(): Result<never> {
     const other = this.sketch.leftOut.map(({ kind, layer, count }) => `${count} x ${kind} on layer ${quoted(layer, 40)}`)
-    const only = other.length === 0 ? '' : `, only ${other.slice(0, 6).join(', ')}${other.length > 6 ? ` and ${other.length - 6} other kinds` : ''}`
-    return fail('nothing-drawn', `the file has no faces, outlines or lines to read${only}`, null, 'export the edges of the panels as lines or closed polylines')
+    const more = other.length > 6 ? ` and ${other.length - 6} other kinds` : ''
+    const only = other.length === 0 ? '' : `, only ${other.slice(0, 6).join(', ')}${more}`
+    const cure = 'export the edges of the panels as lines or closed polylines'
+    return fail('nothing-drawn', `the file has no faces, outlines or lines to read${only}`, null, cure)
   }
 
   private full({ line, entity }: Common): Problem | null {
@@ -231,6 +233,6 @@ function samePlace(points: readonly number[], i: number, j: number, roughly: boo
   if (!roughly) return false
   let size = 0
   for (let k = 0; k < points.length; k += 3) size = Math.max(size, Math.abs(points[k] - points[0]), Math.abs(points[k + 1] - points[1]))
-  const rounding = 8 * epsilon * Math.max(Math.abs(points[i]), Math.abs(points[i + 1]))
-  return Math.abs(points[i] - points[j]) <= sameEnd * size + rounding && Math.abs(points[i + 1] - points[j + 1]) <= sameEnd * size + rounding
+  const within = sameEnd * size + 8 * epsilon * Math.max(Math.abs(points[i]), Math.abs(points[i + 1]))
+  return Math.abs(points[i] - points[j]) <= within && Math.abs(points[i + 1] - points[j + 1]) <= within
 }

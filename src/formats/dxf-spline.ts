@@ -32,14 +32,16 @@ function byKnots(record: DxfRecords, controls: readonly number[]): Bezier[] {
   const count = controls.length / 3
   const wrong = record.problem === null ? fault(degree, knots, weights, count) : null
   if (wrong !== null) record.refuse('bad-spline', wrong, 'draw it anew or leave it out')
-  return record.problem === null ? bezierPieces(degree, knots, controls, weights.length === 0 || weights.every((w) => w === 1) ? null : weights) : []
+  if (record.problem !== null) return []
+  return bezierPieces(degree, knots, controls, weights.every((w) => w === 1) ? null : weights)
 }
 
 /** What is wrong with the spline, as a clause, or null. */
 function fault(degree: number, knots: readonly number[], weights: readonly number[], count: number): string | null {
   if (degree < 1 || degree > highestDegree) return `its degree is ${degree}; degrees 1 to ${highestDegree} are read`
   if (count < degree + 1) return `it has ${count} control points; degree ${degree} takes at least ${degree + 1}`
-  if (knots.length !== count + degree + 1) return `it has ${knots.length} knots; ${count} control points of degree ${degree} take ${count + degree + 1}`
+  const take = count + degree + 1
+  if (knots.length !== take) return `it has ${knots.length} knots; ${count} control points of degree ${degree} take ${take}`
   if (knots.some((knot, i) => i > 0 && knot < knots[i - 1])) return 'its knots are out of order'
   if (!(knots[count] > knots[degree])) return 'its knots leave it no length'
   if (weights.length !== 0 && weights.length !== count) return `it has ${weights.length} weights for ${count} control points`

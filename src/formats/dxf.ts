@@ -35,7 +35,8 @@ function* readText(text: string, options: FormatOptions): Steps<Result<Drawing>>
   if (!file.ok) return file
   const stated = file.value.unit
   if (stated !== null && typeof stated !== 'string' && options.metresPerUnit === null) {
-    return fail('unit-not-read', `the drawing's unit is ${stated.name}, which is not read`, null, 'set it to mm, cm, m, in or ft, or say --unit')
+    const message = `the drawing's unit is ${stated.name}, which is not read`
+    return fail('unit-not-read', message, null, 'set it to mm, cm, m, in or ft, or say --unit')
   }
   const unit: Unit | null = typeof stated === 'string' ? stated : null
   const metresPerUnit = options.metresPerUnit ?? (unit === null ? 1 : metres[unit])

@@ -28,7 +28,8 @@ export class LayerChoice {
       if (there.has(key)) continue
       const names = [...there.values()].filter((layer) => layer !== '').sort()
       const shown = names.slice(0, 12).map((layer) => quoted(layer, 40)).join(', ')
-      const cure = names.length === 0 ? 'the file has no named layers' : `the file has ${shown}${names.length > 12 ? ` and ${names.length - 12} more` : ''}`
+      const more = names.length > 12 ? ` and ${names.length - 12} more` : ''
+      const cure = names.length === 0 ? 'the file has no named layers' : `the file has ${shown}${more}`
       return fail('no-such-layer', `there is no layer ${quoted(name, 40)}`, null, cure).problem
     }
     return null

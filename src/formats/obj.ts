@@ -21,7 +21,8 @@ export const obj: Format = { title: 'OBJ', extensions: ['obj'], recognises, read
 
 /** Statements that say nothing about where things are. */
 const silent = new Set([
-  'vt', 'vn', 'vp', 's', 'mtllib', 'usemtl', 'maplib', 'usemap', 'mg', 'bevel', 'c_interp', 'd_interp', 'lod', 'shadow_obj', 'trace_obj', 'ctech', 'stech',
+  'vt', 'vn', 'vp', 's', 'mtllib', 'usemtl', 'maplib', 'usemap', 'mg', 'bevel', 'c_interp', 'd_interp', 'lod',
+  'shadow_obj', 'trace_obj', 'ctech', 'stech',
   'cstype', 'deg', 'bmat', 'step', 'parm', 'trim', 'hole', 'scrv', 'sp', 'end', 'con',
 ])
 
@@ -93,14 +94,14 @@ class ObjReader {
       const value = decimalIn(line.text, line.from, line.to)
       if (Number.isNaN(value)) return notANumber(line)
       if (Math.abs(value) > farthest) {
-        return fail('too-far', `the coordinate ${quoted(line.word())} is beyond 1e12`, { line: line.number }, 'move the drawing nearer to its origin').problem
+        return trouble(line, 'too-far', `the coordinate ${quoted(line.word())} is beyond 1e12`, 'move the drawing nearer to its origin')
       }
       if (count === 0) x = value
       else if (count === 1) y = value
       else z = value
       count += 1
     }
-    if (count < 2) return fail('too-few-numbers', 'a vertex has fewer than two coordinates', { line: line.number }, 'give x, y and z').problem
+    if (count < 2) return trouble(line, 'too-few-numbers', 'a vertex has fewer than two coordinates', 'give x, y and z')
     this.sketch.point(x, y, z, count === 3)
     return null
   }
@@ -111,7 +112,7 @@ class ObjReader {
     const { corners } = this
     while (corners.length > 1 && corners[corners.length - 1] === corners[0]) corners.pop()
     if (corners.length < 3) {
-      return fail('too-few-corners', `a face has fewer than three different corners`, { line: line.number }, 'give it three or more, or leave it out').problem
+      return trouble(line, 'too-few-corners', 'a face has fewer than three different corners', 'give it three or more, or leave it out')
     }
     if (this.taken) this.sketch.outlines.add(corners, this.layer, line.number)
     else this.sketch.leaveOut('face, layer not chosen', this.group)
@@ -123,7 +124,7 @@ class ObjReader {
     if (problem !== null) return problem
     const { corners } = this
     if (corners.length < 2) {
-      return fail('too-few-corners', 'a line has fewer than two different points', { line: line.number }, 'give it two or more, or leave it out').problem
+      return trouble(line, 'too-few-corners', 'a line has fewer than two different points', 'give it two or more, or leave it out')
     }
     if (!this.taken) this.sketch.leaveOut('line, layer not chosen', this.group)
     else for (let i = 1; i < corners.length; i += 1) this.sketch.segment(corners[i - 1], corners[i], this.layer, line.number)
@@ -166,8 +167,8 @@ class ObjReader {
   }
 
   drawing(): Result<Drawing> {
-    const { sketch } = this
-    if (this.highest >= sketch.pointCount) return { ok: false, problem: outOfRange(String(this.highest + 1), sketch.pointCount, this.highestLine) }
+    const { sketch, highest } = this
+    if (highest >= sketch.pointCount) return { ok: false, problem: outOfRange(String(highest + 1), sketch.pointCount, this.highestLine) }
     const missing = this.choice.missing(this.layers)
     if (missing !== null) return { ok: false, problem: missing }
     if (sketch.outlines.length + sketch.segmentCount + sketch.markCount === 0) {
@@ -179,10 +180,14 @@ class ObjReader {
   }
 }
 
+function trouble(line: ObjLine, code: string, message: string, cure: string): Problem {
+  return fail(code, message, { line: line.number }, cure).problem
+}
+
 function notANumber(line: ObjLine): Problem {
   const word = line.word()
   const cure = /^[-+]?\d+,\d+$/.test(word) ? 'write decimals with a point' : 'export the file again'
-  return fail('not-a-number', `${quoted(word)} is not a number`, { line: line.number }, cure).problem
+  return trouble(line, 'not-a-number', `${quoted(word)} is not a number`, cure)
 }
 
 function outOfRange(reference: string, count: number, line: number): Problem {

@@ -18,7 +18,10 @@ const signatures: readonly Signature[] = [
   { code: 'pdf', head: /^%PDF-/, message: 'this is a PDF, which is not read', cure: `${saveAsDxf}, or as SVG` },
   { code: 'zip', head: /^PK(\x03\x04|\x05\x06)/, message: 'this is a ZIP archive, which is not read', cure: 'unpack it first' },
   { code: 'gzip', head: /^\x1f\x8b/, message: 'this is a gzip archive, which is not read', cure: 'unpack it first' },
-  { code: 'picture', head: /^(\x89PNG|\xff\xd8\xff|GIF8|BM..\0\0|II\*\0|MM\0\*)/s, message: 'this is a picture made of pixels, not a drawing', cure: saveAsDxf },
+  {
+    code: 'picture', head: /^(\x89PNG|\xff\xd8\xff|GIF8|BM..\0\0|II\*\0|MM\0\*)/s,
+    message: 'this is a picture made of pixels, not a drawing', cure: saveAsDxf,
+  },
   { code: 'step', head: /^\s*ISO-10303-21;/, message: 'this is a STEP file, which is not read', cure: `${saveAsDxf}, or as OBJ` },
 ]
 

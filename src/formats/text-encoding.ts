@@ -72,7 +72,8 @@ function looksBinary(head: Uint8Array): boolean {
 function namedEncoding(head: Uint8Array): { label: string; beforeUtf8: boolean } | null {
   const ascii = decoded(head, 'windows-1252')
   const page = /\$DWGCODEPAGE\s+3\s+(\S+)/i.exec(ascii)?.[1]
-  const label = page !== undefined ? codePage(page) : (/^\s*<\?xml[^>]*\bencoding\s*=\s*["']([\w.:-]+)["']/.exec(ascii)?.[1]?.toLowerCase() ?? null)
+  const declared = /^\s*<\?xml[^>]*\bencoding\s*=\s*["']([\w.:-]+)["']/.exec(ascii)?.[1]?.toLowerCase() ?? null
+  const label = page === undefined ? declared : codePage(page)
   if (label === null) return null
   try {
     new TextDecoder(label)
@@ -84,7 +85,8 @@ function namedEncoding(head: Uint8Array): { label: string; beforeUtf8: boolean }
 }
 
 const codePages: Readonly<Record<string, string>> = {
-  874: 'windows-874', 932: 'shift_jis', 936: 'gbk', 949: 'euc-kr', 950: 'big5', 866: 'ibm866', utf8: 'utf-8', 'utf-8': 'utf-8', gb2312: 'gbk', big5: 'big5',
+  874: 'windows-874', 932: 'shift_jis', 936: 'gbk', 949: 'euc-kr', 950: 'big5', 866: 'ibm866',
+  utf8: 'utf-8', 'utf-8': 'utf-8', gb2312: 'gbk', big5: 'big5',
 }
 
 /** "ANSI_1252" as "windows-1252". DOS pages other than 866 have no decoder; only names can suffer, never numbers. */

@@ -50,7 +50,9 @@ describe('files that other programs wrote', () => {
     const drawing = read('curves.dxf')
     expect(drawing.repairs.map(({ code, count }) => [code, count])).toEqual([['chords', 2]])
     expect(drawing.repairs[0]!.message).toContain('no curve leaves its chord by more than 5 mm')
-    const arc = segmentsOf(drawing).flat().filter(([x, y]) => Math.abs(Math.hypot(x - 5, y) - 5) < 1e-12 && y >= 0)
+    const arc = segmentsOf(drawing)
+      .flat()
+      .filter(([x, y]) => Math.abs(Math.hypot(x - 5, y) - 5) < 1e-12 && y >= 0)
     expect(arc.length).toBeGreaterThanOrEqual(2 * Math.ceil(Math.PI / (2 * Math.acos(1 - 0.001))))
   })
 })
@@ -60,8 +62,22 @@ describe('releases 12 to 2018', () => {
     const drawing = read(`release-${release}.dxf`, { metresPerUnit: 0.001 })
     expect(drawing.unit).toBe(release === 'r12' ? null : 'mm')
     expect(drawing.layers).toEqual(['Träger 90°', 'Gläser'])
-    expect(outlinesOf(drawing)[0]).toEqual([[0, 0, 0], [4000, 0, 0], [4000, 3000, 0], [0, 3000, 0]])
-    expect(segmentsOf(drawing).slice(0, 2)).toEqual([[[0, 0, 0], [4000, 0, 0]], [[4000, 0, 0], [4000, 3000, 0]]])
+    expect(outlinesOf(drawing)[0]).toEqual([
+      [0, 0, 0],
+      [4000, 0, 0],
+      [4000, 3000, 0],
+      [0, 3000, 0],
+    ])
+    expect(segmentsOf(drawing).slice(0, 2)).toEqual([
+      [
+        [0, 0, 0],
+        [4000, 0, 0],
+      ],
+      [
+        [4000, 0, 0],
+        [4000, 3000, 0],
+      ],
+    ])
     for (const [x, y] of outlinesOf(drawing)[1]!) expect(Math.hypot(x - 2000, y - 1500)).toBeCloseTo(500, 9)
     expect(drawing.leftOut).toEqual([{ kind: 'TEXT', layer: 'Notes', count: 1 }])
     expect(read(`release-${release}.dxf`, { layers: ['GLÄSER'] }).outlines.layer).toHaveLength(2)
@@ -86,25 +102,51 @@ test('nested, mirrored, tilted and repeated blocks, as another program unfolds t
 describe('meshes.dxf', () => {
   const drawing = read('meshes.dxf')
   const on = (layer: string): Point[][] => outlinesOf(drawing).filter((_, i) => drawing.layers[drawing.outlines.layer[i]!] === layer)
-  const pentagon = [[0, 0, 0], [4, 0, 0.5], [4, 3, 1], [2, 5, 1.5], [0, 3, 1]]
+  const pentagon = [
+    [0, 0, 0],
+    [4, 0, 0.5],
+    [4, 3, 1],
+    [2, 5, 1.5],
+    [0, 3, 1],
+  ]
 
   test('MESH keeps faces of any number of corners', () => {
-    expect(on('MESH')).toEqual([pentagon, [[4, 0, 0.5], [8, 0, 1], [8, 3, 1.5], [4, 3, 1]]])
+    expect(on('MESH')).toEqual([
+      pentagon,
+      [
+        [4, 0, 0.5],
+        [8, 0, 1],
+        [8, 3, 1.5],
+        [4, 3, 1],
+      ],
+    ])
   })
 
   test('polyface mesh', () => {
     const [a, b, c, d, e] = pentagon.map(([x, y, z]) => [x! + 20, y, z])
-    expect(on('POLYFACE')).toEqual([[a, b, c, e], [c, d, e]])
+    expect(on('POLYFACE')).toEqual([
+      [a, b, c, e],
+      [c, d, e],
+    ])
   })
 
   test('mesh of 4 x 3 vertices: 6 faces', () => {
     expect(on('SHEET')).toHaveLength(6)
-    expect(on('SHEET')[0]).toEqual([[40, 0, 0], [41, 0, 0], [41, 1, 0.1], [40, 1, 0]])
+    expect(on('SHEET')[0]).toEqual([
+      [40, 0, 0],
+      [41, 0, 0],
+      [41, 1, 0.1],
+      [40, 1, 0],
+    ])
   })
 
   test('mesh of 3 x 8 vertices closed in its second direction: 16 faces, each corner of the middle ring in four', () => {
     expect(on('RING')).toHaveLength(16)
-    expect(on('RING').flat().filter(([x, y]) => Math.abs(Math.hypot(x - 60, y) - 3) < 1e-9)).toHaveLength(32)
+    expect(
+      on('RING')
+        .flat()
+        .filter(([x, y]) => Math.abs(Math.hypot(x - 60, y) - 3) < 1e-9),
+    ).toHaveLength(32)
   })
 
   test('3DFACEs with the edge between them hidden are one pentagon', () => {
@@ -112,21 +154,53 @@ describe('meshes.dxf', () => {
   })
 
   test('closed polyline in space, and a point', () => {
-    expect(on('SPACE')).toEqual([[[90, 0, 1], [94, 0, 2], [94, 3, 3]]])
+    expect(on('SPACE')).toEqual([
+      [
+        [90, 0, 1],
+        [94, 0, 2],
+        [94, 3, 3],
+      ],
+    ])
     expect(pointAt(drawing, drawing.marks[0]!)).toEqual([1, 2, 3])
   })
 })
 
 test('leftovers.dxf: all that is not taken is named, with its layer and count', () => {
   const drawing = read('leftovers.dxf')
-  expect(outlinesOf(drawing)).toEqual([[[0, 0, 0], [2, 0, 0], [2, 2, 0], [0, 2, 0]]])
-  expect(segmentsOf(drawing)).toEqual([[[10, 0, 0], [11, 0, 0]]])
+  expect(outlinesOf(drawing)).toEqual([
+    [
+      [0, 0, 0],
+      [2, 0, 0],
+      [2, 2, 0],
+      [0, 2, 0],
+    ],
+  ])
+  expect(segmentsOf(drawing)).toEqual([
+    [
+      [10, 0, 0],
+      [11, 0, 0],
+    ],
+  ])
   const said = Object.fromEntries(drawing.leftOut.map(({ kind, layer, count }) => [`${kind} on ${layer}`, count]))
   expect(said).toEqual({
-    'LINE, layer frozen on Frozen': 3, 'LINE, layer off on off': 2, 'LINE, invisible on PLAN': 1, 'TEXT on PLAN': 2, 'MTEXT on 0': 1, 'HATCH on 0': 1,
-    'DIMENSION on 0': 1, 'SOLID on 0': 1, 'RAY on 0': 1, 'XLINE on 0': 1, 'LEADER on 0': 1, 'ATTRIB on PLAN': 1, 'ATTDEF on PLAN': 1, 'ATTDEF, layer off on Off': 1,
-    'INSERT, layer frozen on Frozen': 1, 'INSERT, its block is not in the file on 0': 1,
-    'LINE, paper space on 0': 1, 'CIRCLE, paper space on 0': 1,
+    'LINE, layer frozen on Frozen': 3,
+    'LINE, layer off on off': 2,
+    'LINE, invisible on PLAN': 1,
+    'TEXT on PLAN': 2,
+    'MTEXT on 0': 1,
+    'HATCH on 0': 1,
+    'DIMENSION on 0': 1,
+    'SOLID on 0': 1,
+    'RAY on 0': 1,
+    'XLINE on 0': 1,
+    'LEADER on 0': 1,
+    'ATTRIB on PLAN': 1,
+    'ATTDEF on PLAN': 1,
+    'ATTDEF, layer off on Off': 1,
+    'INSERT, layer frozen on Frozen': 1,
+    'INSERT, its block is not in the file on 0': 1,
+    'LINE, paper space on 0': 1,
+    'CIRCLE, paper space on 0': 1,
   })
 })
 
@@ -135,10 +209,16 @@ describe('the same lines and polylines as another reader finds', () => {
   test.each(readdirSync(folder).filter((name) => /^(cells|crossing|release)-.*\.dxf$/.test(name)))('%s', (name) => {
     const other = new DxfParser().parseSync(file(name).toString('latin1'))!.entities
     const drawing = read(name)
-    const is = <T extends IEntity>(type: string) => (entity: IEntity): entity is T => entity.type === type
+    const is =
+      <T extends IEntity>(type: string) =>
+      (entity: IEntity): entity is T =>
+        entity.type === type
     const lines = other.filter(is<ILineEntity>('LINE')).map(({ vertices }) => vertices.slice(0, 2).map(({ x, y, z }) => [x, y, z]))
     expect(segmentsOf(drawing).slice(0, lines.length)).toEqual(lines)
-    const closed = other.filter(is<ILwpolylineEntity>('LWPOLYLINE')).filter(({ shape }) => shape).map(({ vertices }) => vertices.map(({ x, y }) => [x, y, 0]))
+    const closed = other
+      .filter(is<ILwpolylineEntity>('LWPOLYLINE'))
+      .filter(({ shape }) => shape)
+      .map(({ vertices }) => vertices.map(({ x, y }) => [x, y, 0]))
     expect(outlinesOf(drawing).slice(0, closed.length)).toEqual(closed)
     expect(lines.length + closed.length).toBeGreaterThan(0)
   })
@@ -150,8 +230,16 @@ test('a file from another writer', () => {
   writer.setUnits(Units.Centimeters)
   writer.addLayer('Glass', 7, 'Continuous')
   writer.setCurrentLayerName('Glass')
-  const outline = [[0, 0], [120.5, 0], [120.5, 80.25], [-3, 79.125]]
-  writer.addLWPolyline(outline.map(([x, y]) => ({ point: point2d(x!, y!) })), { flags: 1 })
+  const outline = [
+    [0, 0],
+    [120.5, 0],
+    [120.5, 80.25],
+    [-3, 79.125],
+  ]
+  writer.addLWPolyline(
+    outline.map(([x, y]) => ({ point: point2d(x!, y!) })),
+    { flags: 1 },
+  )
   writer.addLine(point3d(1, 2, 0), point3d(3, 4, 0))
   writer.add3dFace(point3d(0, 0, 1), point3d(1, 0, 2), point3d(1, 1, 3), point3d(0, 1, 4))
   writer.addCircle(point3d(10, 20, 0), 5)
@@ -163,9 +251,27 @@ test('a file from another writer', () => {
   expect(drawing.unit).toBe('cm')
   const outlines = outlinesOf(drawing)
   expect(outlines[0]).toEqual(outline.map(([x, y]) => [x, y, 0]))
-  expect(outlines[1]).toEqual([[0, 0, 1], [1, 0, 2], [1, 1, 3], [0, 1, 4]])
+  expect(outlines[1]).toEqual([
+    [0, 0, 1],
+    [1, 0, 2],
+    [1, 1, 3],
+    [0, 1, 4],
+  ])
   for (const [x, y] of outlines[2]!) expect(Math.hypot(x - 10, y - 20)).toBeCloseTo(5, 12)
-  expect(outlines[3]).toEqual([[0, 0, 1], [5, 0, 2], [5, 5, 3]])
-  expect(segmentsOf(drawing)).toEqual([[[1, 2, 0], [3, 4, 0]], [[50, 60, 0], [43, 60, 0]]])
+  expect(outlines[3]).toEqual([
+    [0, 0, 1],
+    [5, 0, 2],
+    [5, 5, 3],
+  ])
+  expect(segmentsOf(drawing)).toEqual([
+    [
+      [1, 2, 0],
+      [3, 4, 0],
+    ],
+    [
+      [50, 60, 0],
+      [43, 60, 0],
+    ],
+  ])
   expect(drawing.layers[drawing.outlines.layer[0]!]).toBe('Glass')
 })

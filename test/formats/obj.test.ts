@@ -18,7 +18,14 @@ describe('faces, lines and points', () => {
     ['a corner twice', 'f 1 2 2 3 4 1'],
     ['tabs and blanks', '\tf  1\t2   3 4  '],
   ])('a face, %s', (_, statement) => {
-    expect(outlinesOf(read(`${square}${statement}\n`))).toEqual([[[0, 0, 0], [1, 0, 0], [1, 1, 0], [0, 1, 0]]])
+    expect(outlinesOf(read(`${square}${statement}\n`))).toEqual([
+      [
+        [0, 0, 0],
+        [1, 0, 0],
+        [1, 1, 0],
+        [0, 1, 0],
+      ],
+    ])
   })
 
   test('a face before its vertices', () => {
@@ -27,7 +34,20 @@ describe('faces, lines and points', () => {
 
   test('line elements become segments, point elements marks', () => {
     const drawing = read(`${square}l 1 2 3\nl 3/1 4/2\np 2 4\n`)
-    expect(segmentsOf(drawing)).toEqual([[[0, 0, 0], [1, 0, 0]], [[1, 0, 0], [1, 1, 0]], [[1, 1, 0], [0, 1, 0]]])
+    expect(segmentsOf(drawing)).toEqual([
+      [
+        [0, 0, 0],
+        [1, 0, 0],
+      ],
+      [
+        [1, 0, 0],
+        [1, 1, 0],
+      ],
+      [
+        [1, 1, 0],
+        [0, 1, 0],
+      ],
+    ])
     expect([...drawing.segmentLine]).toEqual([5, 5, 6])
     expect([...drawing.marks]).toEqual([1, 3])
   })
@@ -64,19 +84,30 @@ describe('groups are layers', () => {
 
   test('chosen without regard to case, the rest counted', () => {
     const drawing = read(groups, { layers: ['NORTH SIDE'] })
-    expect(outlinesOf(drawing)).toEqual([[[0, 0, 0], [1, 1, 0], [0, 1, 0]]])
+    expect(outlinesOf(drawing)).toEqual([
+      [
+        [0, 0, 0],
+        [1, 1, 0],
+        [0, 1, 0],
+      ],
+    ])
     expect(drawing.leftOut).toEqual([
-      { kind: 'face, layer not chosen', layer: 'south', count: 1 }, { kind: 'line, layer not chosen', layer: '', count: 1 },
+      { kind: 'face, layer not chosen', layer: 'south', count: 1 },
+      { kind: 'line, layer not chosen', layer: '', count: 1 },
     ])
   })
 
   test('one that is not there', () => {
-    expect(sentenceOf(groups, 'a.obj', { layers: ['west'] })).toBe('a.obj: there is no layer "west"; the file has "North side", "roof", "south".')
+    expect(sentenceOf(groups, 'a.obj', { layers: ['west'] })).toBe(
+      'a.obj: there is no layer "west"; the file has "North side", "roof", "south".',
+    )
   })
 })
 
 test('statements that are not read are counted, those without geometry are not', () => {
-  const drawing = read(`mtllib a.mtl\n${square}vt 0 0\nvn 0 0 1\ns off\nusemtl glass\nf 1 2 3\ncstype bezier\ndeg 3\ncurv 0 1 1 2 3 4\nend\ncurv 0 1 1 2 3 4\n`)
+  const drawing = read(
+    `mtllib a.mtl\n${square}vt 0 0\nvn 0 0 1\ns off\nusemtl glass\nf 1 2 3\ncstype bezier\ndeg 3\n${'curv 0 1 1 2 3 4\nend\n'.repeat(2)}`,
+  )
   expect(drawing.leftOut).toEqual([{ kind: 'statement "curv"', layer: '', count: 2 }])
 })
 
@@ -95,11 +126,27 @@ describe('bad input: one sentence with the line and the cure', () => {
     ['a huge index', `${square}f 1 2 99999999999`, 'a.obj, line 5: "99999999999" is not a number; export the file again.'],
     ['a word for an index', `${square}f 1 2 x`, 'a.obj, line 5: "x" is not a number; export the file again.'],
     ['too many slashes', `${square}f 1/1/1/1 2 3`, 'a.obj, line 5: "1/1/1/1" is not a number; export the file again.'],
-    ['two corners', `${square}f 1 2`, 'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.'],
-    ['one point three times', `${square}f 1 1 1`, 'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.'],
-    ['a line to itself', `${square}l 2 2`, 'a.obj, line 5: a line has fewer than two different points; give it two or more, or leave it out.'],
+    [
+      'two corners',
+      `${square}f 1 2`,
+      'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.',
+    ],
+    [
+      'one point three times',
+      `${square}f 1 1 1`,
+      'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.',
+    ],
+    [
+      'a line to itself',
+      `${square}l 2 2`,
+      'a.obj, line 5: a line has fewer than two different points; give it two or more, or leave it out.',
+    ],
     ['no faces', square, 'a.obj: the file has no faces (f) and no lines (l); export the panels as faces or their edges as lines.'],
-    ['cut off in a face', `${square}f 1 2`, 'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.'],
+    [
+      'cut off in a face',
+      `${square}f 1 2`,
+      'a.obj, line 5: a face has fewer than three different corners; give it three or more, or leave it out.',
+    ],
   ])('%s', (_, text, expected) => {
     expect(sentenceOf(text, 'a.obj')).toBe(expected)
   })
@@ -114,7 +161,9 @@ test('a random mesh, renumbered and turned, reads back to the last digit (seed 1
     while (corners.size < 3 + Math.floor(5 * next())) corners.add(Math.floor(500 * next()))
     return [...corners]
   })
-  const text = `${points.map((p) => `v ${p.join(' ')}`).join('\n')}\n${faces.map((f) => `f ${f.map((i) => (next() < 0.5 ? i + 1 : i - 500)).join(' ')}`).join('\n')}\n`
+  const index = (i: number): number => (next() < 0.5 ? i + 1 : i - 500)
+  const statements = [...points.map((p) => `v ${p.join(' ')}`), ...faces.map((f) => `f ${f.map(index).join(' ')}`)]
+  const text = `${statements.join('\n')}\n`
   expect(outlinesOf(read(text))).toEqual(faces.map((face) => face.map((i) => points[i])))
 })
 

@@ -13,6 +13,11 @@ function utf16(text: string, little: boolean, mark: boolean): Uint8Array {
   return bytes
 }
 
+/** A release-2000 file that states a code page, with one line on the layer. */
+const dxfOn = (layer: string, page: string): string =>
+  `0\nSECTION\n2\nHEADER\n9\n$ACADVER\n1\nAC1015\n9\n$DWGCODEPAGE\n3\n${page}\n0\nENDSEC\n` +
+  `0\nSECTION\n2\nENTITIES\n0\nLINE\n8\n${layer}\n10\n0\n20\n0\n11\n1\n21\n0\n0\nENDSEC\n0\nEOF\n`
+
 const decoded = (bytes: Uint8Array): string => {
   const text = decodedText({ name: 'x', bytes })
   if (!text.ok) throw new Error(text.problem.message)
@@ -34,24 +39,31 @@ describe('encodings', () => {
 
   test.each([['\r\n'], ['\r'], ['\n']])('line ends %j', (end) => {
     expect(decoded(bytesOf(square.replaceAll('\n', end)))).toBe(square)
-    expect(sentenceOf(bytesOf('v 0 0\nv 1 0\nv x 1\n'.replaceAll('\n', end)), 'a.obj')).toBe('a.obj, line 3: "x" is not a number; export the file again.')
+    expect(sentenceOf(bytesOf('v 0 0\nv 1 0\nv x 1\n'.replaceAll('\n', end)), 'a.obj')).toBe(
+      'a.obj, line 3: "x" is not a number; export the file again.',
+    )
   })
 
   // The files of these were written by a DXF library, in the code page that they state.
-  test.each([['cp1251', 'Стекло'], ['cp932', '硝子屋根'], ['gbk', '联通'], ['cp1253', 'γυαλί']])('a DXF in code page %s', (page, layer) => {
+  test.each([
+    ['cp1251', 'Стекло'],
+    ['cp932', '硝子屋根'],
+    ['gbk', '联通'],
+    ['cp1253', 'γυαλί'],
+  ])('a DXF in code page %s', (page, layer) => {
     const bytes = readFileSync(`test/corpus/dxf/code-page-${page}.dxf`)
     expect(drawingOf(bytes).layers).toEqual([layer])
     expect(drawingOf(bytes, 'plan.dxf', { layers: [layer] }).segmentLayer).toHaveLength(1)
   })
 
   test('UTF-8 in a file that states a code page all the same', () => {
-    const text = '0\nSECTION\n2\nHEADER\n9\n$ACADVER\n1\nAC1015\n9\n$DWGCODEPAGE\n3\nANSI_1252\n0\nENDSEC\n0\nSECTION\n2\nENTITIES\n0\nLINE\n8\nTräger\n10\n0\n20\n0\n11\n1\n21\n0\n0\nENDSEC\n0\nEOF\n'
+    const text = dxfOn('Träger', 'ANSI_1252')
     expect(drawingOf(text).layers).toEqual(['Träger'])
     expect(drawingOf(Uint8Array.from(text, (c) => c.charCodeAt(0))).layers).toEqual(['Träger'])
   })
 
   test('an encoding that nobody decodes costs names only', () => {
-    const text = '0\nSECTION\n2\nHEADER\n9\n$ACADVER\n1\nAC1015\n9\n$DWGCODEPAGE\n3\nANSI_1361\n0\nENDSEC\n0\nSECTION\n2\nENTITIES\n0\nLINE\n8\n\xe9\n10\n0\n20\n0\n11\n1\n21\n0\n0\nENDSEC\n0\nEOF\n'
+    const text = dxfOn('\xe9', 'ANSI_1361')
     expect(drawingOf(Uint8Array.from(text, (c) => c.charCodeAt(0))).segmentLayer).toHaveLength(1)
   })
 

@@ -4,7 +4,26 @@ import { sentence } from '../../src/base/result.ts'
 import { readDrawing } from '../../src/formats/all.ts'
 import { usual } from './text-read.ts'
 
-const spice = ['-1', '0', '1e308', 'nan', '-', '\n', '\r\n', '\0', '999999999999', '\ufeff', '\\U+0000', '2147483647', '1e-320', ' ', '70\n1\n', '0\nINSERT\n2\nA\n', 'f 1 2 3\n', '\\\n']
+const spice = [
+  '-1',
+  '0',
+  '1e308',
+  'nan',
+  '-',
+  '\n',
+  '\r\n',
+  '\0',
+  '999999999999',
+  '\ufeff',
+  '\\U+0000',
+  '2147483647',
+  '1e-320',
+  ' ',
+  '70\n1\n',
+  '0\nINSERT\n2\nA\n',
+  'f 1 2 3\n',
+  '\\\n',
+]
 
 /** A damaged copy: one to eight bytes, words, cuts, repeats, or lines in the place of others. */
 export function damaged(bytes: Uint8Array, next: () => number): Uint8Array {
@@ -15,13 +34,37 @@ export function damaged(bytes: Uint8Array, next: () => number): Uint8Array {
     const length = Math.min(out.length - at, 1 + Math.floor(2 ** (10 * next())))
     const piece = out.slice(at, at + length)
     switch (Math.floor(10 * next())) {
-      case 0: out = Uint8Array.from(out); out[at] = Math.floor(256 * next()); break
-      case 1: out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(at)); break
-      case 2: out = joined(out.slice(0, at), out.slice(at + length)); break
-      case 3: out = joined(out.slice(0, at), piece, piece, out.slice(at + length)); break
-      case 4: if (next() < 0.2) out = out.slice(0, at); break
-      case 5: { const to = Math.floor((out.length - length) * next()); out = Uint8Array.from(out); out.set(piece, to); break }
-      case 6: { const end = out.indexOf(10, at); out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(end < 0 ? out.length : end)); break }
+      case 0:
+        out = Uint8Array.from(out)
+        out[at] = Math.floor(256 * next())
+        break
+      case 1:
+        out = joined(out.slice(0, at), new TextEncoder().encode(spice[Math.floor(spice.length * next())]), out.slice(at))
+        break
+      case 2:
+        out = joined(out.slice(0, at), out.slice(at + length))
+        break
+      case 3:
+        out = joined(out.slice(0, at), piece, piece, out.slice(at + length))
+        break
+      case 4:
+        if (next() < 0.2) out = out.slice(0, at)
+        break
+      case 5: {
+        const to = Math.floor((out.length - length) * next())
+        out = Uint8Array.from(out)
+        out.set(piece, to)
+        break
+      }
+      case 6: {
+        const end = out.indexOf(10, at)
+        out = joined(
+          out.slice(0, at),
+          new TextEncoder().encode(spice[Math.floor(spice.length * next())]),
+          out.slice(end < 0 ? out.length : end),
+        )
+        break
+      }
       default: {
         // A line in the place of another keeps codes and values apart, so that the damage reaches the entities.
         const [from, to] = [lineAt(out, at), lineAt(out, Math.floor(out.length * next()))]
@@ -60,7 +103,8 @@ export function upright(name: string, bytes: Uint8Array): 'read' | 'refused' {
   for (; step.done !== true; step = steps.next()) if (++turns > mostTurns) throw new Error('it does not end')
   if (!step.value.ok) {
     const said = sentence(step.value.problem)
-    if (!said.startsWith(name) || !said.endsWith('.') || said.length < name.length + 20 || said.length > 1500) throw new Error(`no sentence: ${said}`)
+    if (!said.startsWith(name) || !said.endsWith('.') || said.length < name.length + 20 || said.length > 1500)
+      throw new Error(`no sentence: ${said}`)
     if (step.value.problem.cure === null) throw new Error(`no cure: ${said}`)
     if (/[\u0000-\u001f]|undefined|\[object|NaN\b/.test(said)) throw new Error(`not fit to print: ${JSON.stringify(said)}`)
     return 'refused'
@@ -68,14 +112,21 @@ export function upright(name: string, bytes: Uint8Array): 'read' | 'refused' {
   const { points, outlines, segments, marks, layers, segmentLayer } = step.value.value
   const count = points.length / 3
   if (!points.every((value) => Math.abs(value) <= 1e12)) throw new Error('a coordinate is not finite')
-  for (const list of [outlines.point, segments, marks]) if (!list.every((i) => i >= 0 && i < count)) throw new Error('a point is named that is not there')
-  for (const list of [outlines.layer, segmentLayer]) if (!list.every((i) => i >= 0 && i < layers.length)) throw new Error('a layer is named that is not there')
-  for (let i = 0; i < outlines.layer.length; i += 1) if (outlines.start[i + 1]! - outlines.start[i]! < 3) throw new Error('an outline has fewer than three corners')
+  for (const list of [outlines.point, segments, marks])
+    if (!list.every((i) => i >= 0 && i < count)) throw new Error('a point is named that is not there')
+  for (const list of [outlines.layer, segmentLayer])
+    if (!list.every((i) => i >= 0 && i < layers.length)) throw new Error('a layer is named that is not there')
+  for (let i = 0; i < outlines.layer.length; i += 1)
+    if (outlines.start[i + 1]! - outlines.start[i]! < 3) throw new Error('an outline has fewer than three corners')
   return 'read'
 }
 
 /** Damages each file in turn, `rounds` times in all; the seed of a failure is in its message. */
-export function damage(files: readonly { name: string; bytes: Uint8Array }[], rounds: number, firstSeed: number): { read: number; refused: number } {
+export function damage(
+  files: readonly { name: string; bytes: Uint8Array }[],
+  rounds: number,
+  firstSeed: number,
+): { read: number; refused: number } {
   const count = { read: 0, refused: 0 }
   for (let i = 0; i < rounds; i += 1) {
     const { name, bytes } = files[i % files.length]!
@@ -83,7 +134,7 @@ export function damage(files: readonly { name: string; bytes: Uint8Array }[], ro
     try {
       count[upright(name, damaged(bytes, random(seed)))] += 1
     } catch (error) {
-      throw new Error(`seed ${seed}, ${name}: ${error instanceof Error ? error.stack ?? error.message : String(error)}`, { cause: error })
+      throw new Error(`seed ${seed}, ${name}: ${error instanceof Error ? (error.stack ?? error.message) : String(error)}`, { cause: error })
     }
   }
   return count

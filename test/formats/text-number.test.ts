@@ -20,20 +20,41 @@ describe('decimals in place', () => {
     }
   })
 
-  test.each(['0', '-0', '.5', '5.', '1e22', '1e23', '9007199254740993', '123456789012345678', '2.2250738585072011e-308', '1e308', '0e99999', '0.1e-400'])('%s', (text) => {
+  test.each([
+    '0',
+    '-0',
+    '.5',
+    '5.',
+    '1e22',
+    '1e23',
+    '9007199254740993',
+    '123456789012345678',
+    '2.2250738585072011e-308',
+    '1e308',
+    '0e99999',
+    '0.1e-400',
+  ])('%s', (text) => {
     expect(Object.is(whole(text), Number(text))).toBe(true)
   })
 
-  test.each(['', '-', '.', 'e5', '1e', '1e+', '1.2.3', '1,5', 'nan', 'NaN', 'inf', 'Infinity', '-1.#IND', '0x10', '1 2', '1e999', '٣'])('%s is none', (text) => {
-    expect(whole(text)).toBeNaN()
-  })
+  test.each(['', '-', '.', 'e5', '1e', '1e+', '1.2.3', '1,5', 'nan', 'NaN', 'inf', 'Infinity', '-1.#IND', '0x10', '1 2', '1e999', '٣'])(
+    '%s is none',
+    (text) => {
+      expect(whole(text)).toBeNaN()
+    },
+  )
 
   test('reads only its own range of the text', () => {
     expect(decimalIn('12345', 1, 3)).toBe(23)
     expect(integerIn('-12345', 0, 3)).toBe(-12)
   })
 
-  test.each([['12', 12], ['-7', -7], ['+3', 3], ['2147483647', 2147483647]])('%s is a whole number', (text, value) => {
+  test.each([
+    ['12', 12],
+    ['-7', -7],
+    ['+3', 3],
+    ['2147483647', 2147483647],
+  ])('%s is a whole number', (text, value) => {
     expect(integerIn(text, 0, text.length)).toBe(value)
   })
 

@@ -7,7 +7,8 @@ import type { Drawing, Loops } from '../../src/plan/drawing.ts'
 
 export const usual: FormatOptions = { layers: null, sagitta: 0.005, metresPerUnit: null }
 
-export const bytesOf = (content: string | Uint8Array): Uint8Array => (typeof content === 'string' ? new TextEncoder().encode(content) : content)
+export const bytesOf = (content: string | Uint8Array): Uint8Array =>
+  typeof content === 'string' ? new TextEncoder().encode(content) : content
 
 /** The drawing; throws the sentence where there is none. */
 export function drawingOf(content: string | Uint8Array, name = 'plan.dxf', options: Partial<FormatOptions> = {}): Drawing {
@@ -29,12 +30,17 @@ export const pointAt = ({ points }: Drawing, i: number): Point => [points[3 * i]
 
 /** Corners of every outline. */
 export function outlinesOf(drawing: Drawing, loops: Loops = drawing.outlines): Point[][] {
-  return Array.from(loops.layer, (_, i) => Array.from(loops.point.subarray(loops.start[i]!, loops.start[i + 1]!), (p) => pointAt(drawing, p)))
+  return Array.from(loops.layer, (_, i) =>
+    Array.from(loops.point.subarray(loops.start[i]!, loops.start[i + 1]!), (p) => pointAt(drawing, p)),
+  )
 }
 
 /** Ends of every segment. */
 export function segmentsOf(drawing: Drawing): [Point, Point][] {
-  return Array.from(drawing.segmentLayer, (_, i) => [pointAt(drawing, drawing.segments[2 * i]!), pointAt(drawing, drawing.segments[2 * i + 1]!)])
+  return Array.from(drawing.segmentLayer, (_, i) => [
+    pointAt(drawing, drawing.segments[2 * i]!),
+    pointAt(drawing, drawing.segments[2 * i + 1]!),
+  ])
 }
 
 /** Distance of a point from the segment a b. */
