@@ -1,10 +1,23 @@
 import { defineConfig } from 'vitest/config'
+import react from '@vitejs/plugin-react'
+import type { Plugin } from 'vite'
 import packageJson from './package.json' with { type: 'json' }
 
-/** Two builds from one source: `--mode cli` bundles the command line into one file; the page comes with its own mode. */
+/** The development server writes styles into the page, which the page's own policy forbids: it is served without one. */
+const withoutPolicy: Plugin = {
+  name: 'without-policy',
+  apply: 'serve',
+  transformIndexHtml: (html) => html.replace(/<meta http-equiv="Content-Security-Policy"[^>]*>/, ''),
+}
+
+/** Two builds from one source: `--mode cli` bundles the command line into one file, any other mode makes the page. */
 export default defineConfig(({ mode }) => ({
   define: { __VERSION__: JSON.stringify(packageJson.version) },
-  build: {
+  // Relative paths: the page works from any folder of any server.
+  base: './',
+  plugins: [react(), withoutPolicy],
+  worker: { format: 'es' },
+  build: mode === 'page' ? { outDir: 'dist/page', emptyOutDir: true, target: 'es2022', assetsInlineLimit: 0 } : {
     ssr: 'src/cli/panewise.ts',
     outDir: 'dist',
     emptyOutDir: false,

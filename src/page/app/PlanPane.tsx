@@ -1,0 +1,99 @@
+/** Drawing 1: the plan, with zoom, pan, picking, and the readings it can be filled by. */
+import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
+import { planDetail, medianPanelWidth } from '../../paper/drawing/level-of-detail.ts'
+import { planArea, planDrawing } from '../../paper/drawing/plan-drawing.ts'
+import { fitted, panned, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
+import { readingNames, readingTitles } from '../../paper/drawing/reading.ts'
+import { useDesk, useDeskState } from './context.ts'
+import { ListCanvas } from './ListCanvas.tsx'
+import { neighbour, pick, runBetween } from './picking.ts'
+import { useReading } from './useReading.ts'
+import { PlanHand } from './PlanHand.tsx'
+
+export function PlanPane() {
+  const desk = useDesk()
+  const answer = useDeskState((state) => state.answer)
+  const selection = useDeskState((state) => state.selection)
+  const reading = useDeskState((state) => state.reading)
+  const fresh = useDeskState((state) => state.fresh || state.busy === null)
+  const picked = useDeskState((state) => state.picked)
+  const made = useReading(answer)
+  const plan = answer?.plan ?? null
+  const [window_, setWindow] = useState<PlanWindow | null>(null)
+  const shown = useRef<PlanWindow | null>(null)
+  const [size, setSize] = useState({ width: 0, height: 0 })
+  useEffect(() => setWindow(null), [plan])
+
+  const draw = useCallback((width: number, height: number) => {
+    setSize((old) => (old.width === width && old.height === height ? old : { width, height }))
+    if (answer === null || made === null) return null
+    shown.current = window_ ?? fitted(answer.plan, planArea(width, height, true))
+    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true })
+  }, [answer, made, window_, selection])
+
+  const zoom = useCallback((factor: number, x: number, y: number) => {
+    setWindow((old) => (old ?? shown.current) === null ? null : zoomed(old ?? (shown.current as PlanWindow), factor, x, y))
+  }, [])
+
+  const pointers = useRef(new Map<number, readonly [number, number]>())
+  const travelled = useRef(0)
+  const nodesShown = plan !== null && shown.current !== null && planDetail(medianPanelWidth(plan) * shown.current.scale).hatch
+
+  const onDown = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
+    event.currentTarget.setPointerCapture(event.pointerId)
+    pointers.current.set(event.pointerId, [x, y])
+    travelled.current = 0
+  }
+  const onMove = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
+    const last = pointers.current.get(event.pointerId)
+    if (last === undefined) return
+    pointers.current.set(event.pointerId, [x, y])
+    travelled.current += Math.hypot(x - last[0], y - last[1])
+    if (travelled.current < 4 || shown.current === null) return
+    const others = [...pointers.current].filter(([id]) => id !== event.pointerId)
+    if (others.length === 1) {
+      const [, [ox, oy]] = others[0]
+      zoom(Math.hypot(x - ox, y - oy) / Math.max(1, Math.hypot(last[0] - ox, last[1] - oy)), ox, oy)
+    } else setWindow((old) => panned(old ?? (shown.current as PlanWindow), x - last[0], y - last[1]))
+  }
+  const onUp = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
+    pointers.current.delete(event.pointerId)
+    if (travelled.current >= 4 || plan === null || shown.current === null || event.type === 'pointercancel') return
+    const found = pick(plan, shown.current, x, y, event.pointerType === 'touch' ? 18 : 9, nodesShown)
+    if (found?.kind === 'node' && event.shiftKey && selection?.kind === 'node') {
+      desk.set({ picked: runBetween(plan, selection.index, found.index), desk: 'profile' })
+      return
+    }
+    desk.set({ selection: found, picked: [] })
+  }
+  const onKey = (event: KeyboardEvent): void => {
+    if (event.key === '+' || event.key === '=') zoom(1.25, size.width / 2, size.height / 2)
+    else if (event.key === '-') zoom(0.8, size.width / 2, size.height / 2)
+    else if (event.key === '0') setWindow(null)
+    else if (event.key.startsWith('Arrow') && plan !== null) {
+      const from = selection?.kind === 'panel' ? selection.index : 0
+      const [dx, dy] = ({ ArrowLeft: [-1, 0], ArrowRight: [1, 0], ArrowUp: [0, 1], ArrowDown: [0, -1] } as Record<string, [number, number]>)[event.key] ?? [0, 0]
+      desk.select({ kind: 'panel', index: selection?.kind === 'panel' ? neighbour(plan, from, dx, dy) : 0 })
+    } else return
+    event.preventDefault()
+  }
+  const label = useMemo(() => made === null ? 'Plan, empty' : `Plan. ${answer?.summary.plan.panels ?? 0} panels. ${made.reading.note} Arrow keys go from panel to panel.`, [made, answer])
+  return (
+    <section className="pane plan" data-pane="plan" aria-labelledby="plan-title">
+      <header>
+        <h2 id="plan-title">1 Plan</h2>
+        <div className="switch" role="radiogroup" aria-label="Panels filled by">
+          <span aria-hidden="true">filled by</span>
+          {readingNames.map((name) => (
+            <button key={name} role="radio" aria-checked={reading === name} className={reading === name ? 'chosen' : ''} onClick={() => desk.set({ reading: name })}>{readingTitles[name]}</button>
+          ))}
+        </div>
+      </header>
+      <div className="stage">
+        <ListCanvas draw={draw} label={label} faded={!fresh} cursor={plan === null ? 'default' : 'crosshair'} onWheel={zoom} onDown={onDown} onMove={onMove} onUp={onUp} onKey={onKey} />
+        {answer !== null && shown.current !== null && <PlanHand answer={answer} window={window_ ?? fitted(answer.plan, planArea(size.width, size.height, true))} picked={picked} size={size} />}
+        {answer === null && <p className="will">The roof from above: panels by slope or flatness, joints by how they fold.</p>}
+      </div>
+    </section>
+  )
+}

@@ -1,0 +1,153 @@
+/** Profiles: the section of a picked run, to be typed or dragged, and held. */
+import { useEffect, useRef, useState, type PointerEvent } from 'react'
+import { conversion } from '../../base/length.ts'
+import { nodeName } from '../../plan/names.ts'
+import { figure, signed } from '../../paper/drawing/figures.ts'
+import type { Condition, Section } from '../../plan/project/condition.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import { useDesk, useDeskState } from './context.ts'
+import { LengthField, NumberField } from './PlanHand.tsx'
+import { levelAt, runSection } from './run-section.ts'
+
+type Kind = 'arc' | 'pitch' | 'levels' | 'level' | 'straight' | 'fall'
+const kinds: readonly (readonly [Kind, string])[] = [['arc', 'arc'], ['pitch', 'pitch'], ['levels', 'levels'], ['level', 'level'], ['straight', 'straight'], ['fall', 'fall']]
+const width = 356
+const height = 118
+
+export function ProfileDesk({ answer }: { readonly answer: Answer }) {
+  const desk = useDesk()
+  const picked = useDeskState((state) => state.picked)
+  const doc = useDeskState((state) => state.doc)
+  const [kind, setKind] = useState<Kind>('arc')
+  const drag = useRef<{ y: number; rise: number; k: number } | null>(null)
+  const [levels, setLevels] = useState<readonly number[]>([])
+  const runKey = picked.join(',')
+  const first = picked[0]
+  const last = picked[picked.length - 1]
+  // eslint-disable-next-line react-hooks/exhaustive-deps -- levels are taken from the roof when a run is picked, not while it moves
+  useEffect(() => setLevels(picked.map((node) => answer.roof?.heights[node] ?? 0)), [runKey])
+  if (doc === null) return null
+  if (picked.length < 2 || first === undefined || last === undefined) {
+    return (
+      <>
+        <p className="entry note">Pick a run on the plan: click its first node, then its last with Shift. Or take a whole side:</p>
+        <p className="entry">{sides(answer).map((side) => <button key={side.title} className="word" onClick={() => desk.set({ picked: side.nodes })}>{side.title}</button>)}</p>
+      </>
+    )
+  }
+  const section = runSection(answer, picked)
+  const mm = conversion(doc.plan.unit, 'mm')
+  const name = `${nodeName(first)} to ${nodeName(last)}`
+  const existing = doc.brief.conditions.find((condition) => condition.name === name)
+  const base = Math.min(section.level[0], section.level[section.level.length - 1])
+  const heldSection: Section | null = existing?.kind === 'profile' ? existing.section : null
+  const heldBase = existing?.kind === 'profile' ? (existing.level ?? 0) : base
+  const rise = heldSection !== null && 'arc' in heldSection ? heldSection.arc.rise : Math.max(...section.level) - base
+  const pitch = heldSection !== null && 'pitch_deg' in heldSection ? heldSection.pitch_deg : (Math.atan((2 * (Math.max(...section.level) - base)) / section.length) * 180) / Math.PI
+
+  const conditionFor = (wished: Section): Condition => ({ name, kind: 'profile', at: { run: picked.map(nodeName) }, section: wished, level: 'points' in wished ? null : heldBase, soft: null })
+  const words = (wished: Section): string => 'arc' in wished ? `${name}: arc, rise ${figure(wished.arc.rise * mm)} mm` : 'pitch_deg' in wished ? `${name}: pitch ${figure(wished.pitch_deg, 1)}°` : `${name}: ${wished.points.length} levels`
+  const take = (wished: Section): void => desk.condition(conditionFor(wished), words(wished))
+  const hold = (wished: Section): void => {
+    const stepDoc = desk.state.steps[desk.state.at]?.doc
+    if (stepDoc === undefined) return
+    const conditions = [...stepDoc.brief.conditions.filter((other) => other.name !== name), conditionFor(wished)]
+    desk.hold({ doc: { ...stepDoc, brief: { ...stepDoc.brief, conditions } }, what: words(wished), before: existing === undefined ? 'was free' : 'was otherwise' })
+  }
+
+  // The drawing: heights at least a tenth of the width, so that a level run can be dragged too.
+  const shown = heldSection
+  const tops = [...section.level, ...(shown === null ? [] : section.along.map((along) => levelAt(shown, heldBase, section.length, along)))]
+  const low = Math.min(base, heldBase, ...tops)
+  const high = Math.max(low + section.length * 0.12, ...tops)
+  const sx = (along: number): number => 14 + (along / section.length) * (width - 28)
+  const scaleY = (height - 44) / (high - low)
+  const sy = (level: number): number => height - 20 - (level - low) * scaleY
+  const path = (levelOf: (along: number, k: number) => number, fine: boolean): string => {
+    const alongs = fine ? Array.from({ length: 41 }, (_, i) => (i / 40) * section.length) : section.along
+    return alongs.map((along, k) => `${k === 0 ? 'M' : 'L'}${sx(along).toFixed(1)} ${sy(levelOf(along, k)).toFixed(1)}`).join('')
+  }
+  const start = (event: PointerEvent<SVGElement>, k: number): void => {
+    event.currentTarget.setPointerCapture(event.pointerId)
+    drag.current = { y: event.clientY, rise: k < 0 ? (kind === 'pitch' ? (section.length / 2) * Math.tan((pitch * Math.PI) / 180) : rise) : levels[k], k }
+  }
+  const move = (event: PointerEvent<SVGElement>): void => {
+    if (drag.current === null || event.buttons === 0) return
+    const value = drag.current.rise + (drag.current.y - event.clientY) / scaleY
+    if (drag.current.k >= 0) {
+      const next = levels.map((level, k) => (k === drag.current?.k ? value : level))
+      setLevels(next)
+      hold({ points: section.along.map((along, k) => [along, next[k]]) })
+    } else if (kind === 'pitch') hold({ pitch_deg: Math.max(-80, Math.min(80, (Math.atan((2 * value) / section.length) * 180) / Math.PI)) })
+    else hold({ arc: { rise: value } })
+  }
+  const end = (event: PointerEvent<SVGElement>): void => {
+    if (drag.current !== null) desk.putDown(event.type !== 'pointercancel')
+    drag.current = null
+  }
+  const knob = kind === 'arc' || kind === 'pitch'
+  const knobY = sy(heldBase + (kind === 'pitch' ? (section.length / 2) * Math.tan((pitch * Math.PI) / 180) : rise))
+  const run = { run: picked.map(nodeName) }
+  return (
+    <>
+      <p className="entry switch" role="radiogroup" aria-label="Section">
+        <span>{name}</span>
+        {kinds.map(([value, title]) => <button key={value} role="radio" aria-checked={kind === value} className={kind === value ? 'chosen' : ''} onClick={() => setKind(value)}>{title}</button>)}
+      </p>
+      <svg className="section" viewBox={`0 0 ${width} ${height}`} role="img" aria-label={`Section ${name}: chord ${figure(section.length * mm)} mm, rise ${figure(rise * mm)} mm`}>
+        <path className="datum" d={`M8 ${sy(heldBase)}H${width - 8}`} />
+        <path className="roof" d={path((_, k) => section.level[k], false)} />
+        {shown !== null && <path className="asked" d={path((along) => levelAt(shown, heldBase, section.length, along), true)} />}
+        {section.along.map((along, k) => <circle key={k} className="joint" cx={sx(along)} cy={sy(section.level[k])} r={2} />)}
+        {knob && <g className="knob" onPointerDown={(event) => start(event, -1)} onPointerMove={move} onPointerUp={end} onPointerCancel={end}><circle className="reach" cx={width / 2} cy={knobY} r={14} /><path d={`M${width / 2} ${knobY - 7}l7 7-7 7-7-7Z`} /></g>}
+        {kind === 'levels' && section.along.map((along, k) => <g key={k} className="knob" onPointerDown={(event) => start(event, k)} onPointerMove={move} onPointerUp={end} onPointerCancel={end}><circle className="reach" cx={sx(along)} cy={sy(levels[k] ?? 0)} r={10} /><circle cx={sx(along)} cy={sy(levels[k] ?? 0)} r={4} /></g>)}
+        <text x={width / 2} y={height - 5} textAnchor="middle">chord {figure(section.length * mm)} mm</text>
+      </svg>
+      <div className="entry fields">
+        {kind === 'arc' && <LengthField label="rise" bare="mm" to={doc.plan.unit} start={figure(rise * mm).replace(/\u202f/g, '')} onValue={(value) => take({ arc: { rise: value } })} />}
+        {kind === 'pitch' && <NumberField label="pitch °" start={figure(pitch, 1)} onValue={(value) => Math.abs(value) < 90 && take({ pitch_deg: value })} />}
+        {kind === 'levels' && <label className="field wide"><span>levels, mm</span><input defaultValue={levels.map((level) => figure(level * mm).replace(/\u202f/g, '')).join(' ')} key={levels.join()} onKeyDown={(event) => {
+          if (event.key !== 'Enter') return
+          event.stopPropagation()
+          const typed = event.currentTarget.value.trim().split(/[\s;]+/).map((text) => Number(text.replace(',', '.').replace('\u2212', '-')))
+          if (typed.length === section.along.length && typed.every(Number.isFinite)) {
+            setLevels(typed.map((value) => value / mm))
+            take({ points: section.along.map((along, k) => [along, typed[k] / mm]) })
+          }
+        }} /><small>{picked.length} levels, Enter</small></label>}
+        {kind === 'level' && <LengthField label="level" bare="mm" to={doc.plan.unit} start={figure(base * mm).replace(/\u202f/g, '')} onValue={(level) => desk.condition({ name, kind: 'level', at: run, level, soft: null }, `${name} level at ${signed(level * mm)} mm`)} />}
+        {kind === 'fall' && <NumberField label="fall \u2030" start="20" onValue={(per_mille) => desk.condition({ name, kind: 'fall', at: run, per_mille, level: null, soft: null }, `${name} falls ${figure(per_mille, 1)} \u2030`)} />}
+        {kind === 'straight' && <button className="word" onClick={() => desk.condition({ name, kind: 'straight', at: run, soft: null }, `${name} straight`)}>Hold straight</button>}
+        {kind === 'arc' && heldSection === null && <button className="word" onClick={() => take({ arc: { rise } })}>Hold</button>}
+        {kind === 'pitch' && heldSection === null && <button className="word" onClick={() => take({ pitch_deg: pitch })}>Hold</button>}
+        {existing !== undefined && <button className="word" onClick={() => desk.release([name])}>Release</button>}
+        <button className="word" onClick={() => desk.set({ picked: [] })}>Put down</button>
+      </div>
+    </>
+  )
+}
+
+/** Straight stretches of the outer rim, longest first, at most six: runs that are often wanted. */
+function sides({ plan }: Answer): { title: string; nodes: number[] }[] {
+  const found: { title: string; nodes: number[]; length: number }[] = []
+  for (let l = 0; l + 1 < plan.rimStart.length; l += 1) {
+    if (plan.rimIsVoid[l] === 1) continue
+    const halves = Array.from(plan.rimHalf.subarray(plan.rimStart[l], plan.rimStart[l + 1]))
+    const direction = (half: number): number => Math.atan2(plan.y[plan.origin[half ^ 1]] - plan.y[plan.origin[half]], plan.x[plan.origin[half ^ 1]] - plan.x[plan.origin[half]])
+    const turns = halves.map((half, k) => Math.abs(Math.sin(direction(half) - direction(halves[(k + halves.length - 1) % halves.length]))) > 0.3)
+    const from = Math.max(0, turns.indexOf(true))
+    let nodes: number[] = []
+    for (let k = 0; k <= halves.length; k += 1) {
+      const i = (from + k) % halves.length
+      const node = plan.origin[halves[i]]
+      if (nodes.length > 0 && (turns[i] || k === halves.length)) {
+        nodes.push(node)
+        const length = Math.hypot(plan.x[node] - plan.x[nodes[0]], plan.y[node] - plan.y[nodes[0]])
+        if (nodes.length > 2) found.push({ nodes, length, title: `${nodeName(nodes[0])} to ${nodeName(node)}` })
+        nodes = []
+      }
+      nodes.push(node)
+    }
+  }
+  return found.sort((a, b) => b.length - a.length).slice(0, 6)
+}

@@ -1,0 +1,167 @@
+/**
+ * Drawing 3 as a three.js scene, by WebGL where there is one and by the canvas painter where not. Rendered on demand only:
+ * a page that renders all the time on a software WebGL starves the worker.
+ */
+import { Canvas, useFrame, useThree } from '@react-three/fiber'
+import { Component, useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
+import { MOUSE, TOUCH, type OrthographicCamera, type PerspectiveCamera } from 'three'
+import { OrbitControls } from 'three/examples/jsm/controls/OrbitControls.js'
+import { metres } from '../../base/length.ts'
+import { fitted } from '../../paper/drawing/plan-window.ts'
+import { planArea } from '../../paper/drawing/plan-drawing.ts'
+import { stockView, type Side } from '../../paper/drawing/projection.ts'
+import { themes } from '../../paper/drawing/theme.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import { cameraFor } from '../view/cameras.ts'
+import { PaperRenderer } from '../view/paper-renderer.ts'
+import { roofScene, type RoofScene } from '../view/roof-scene.ts'
+import { useDesk, useDeskState } from './context.ts'
+import { useReading } from './useReading.ts'
+import type { Size } from './useSize.ts'
+
+/** Above this many panels multisampling is left out where WebGL is software: it costs 70 of 100 ms a frame. */
+const manyPanels = 2500
+
+export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size }) {
+  const webgl = useDeskState((state) => state.webgl)
+  const [lost, setLost] = useState(0)
+  const [failed, setFailed] = useState(false)
+  const painter = webgl === 'none' || failed
+  const smooth = webgl === 'hardware' || answer.plan.panelCount <= manyPanels
+  if (size.width === 0 || size.height === 0) return null
+  const paint = (
+    <Canvas
+      key={`${painter ? 'paper' : 'webgl'} ${smooth} ${lost}`} frameloop="demand" flat dpr={webgl === 'hardware' ? [1, 2] : 1} orthographic
+      gl={painter ? (props) => new PaperRenderer(props.canvas as HTMLCanvasElement) as never : { antialias: smooth, alpha: true, powerPreference: 'low-power' }}
+      onCreated={({ gl }) => {
+        gl.domElement.addEventListener('webglcontextlost', (event) => {
+          event.preventDefault()
+          // A fresh canvas gets a fresh context; if that fails too the boundary turns to the painter.
+          setTimeout(() => setLost((count) => count + 1), 50)
+        }, { once: true })
+      }}
+    >
+      <Scene answer={answer} size={size} planSize={planSize} />
+    </Canvas>
+  )
+  return (
+    <>
+      <Boundary key={String(painter)} onFail={() => setFailed(true)}>{paint}</Boundary>
+      {painter && <p className="foot last">Drawn without WebGL; same figures, turns more slowly.</p>}
+    </>
+  )
+}
+
+/** If WebGL fails in mid-flight React would take the whole page down with it. */
+class Boundary extends Component<{ readonly onFail: () => void; readonly children: ReactNode }, { failed: boolean }> {
+  override state = { failed: false }
+  static getDerivedStateFromError(): { failed: boolean } {
+    return { failed: true }
+  }
+  override componentDidCatch(): void {
+    this.props.onFail()
+  }
+  override render(): ReactNode {
+    return this.state.failed ? null : this.props.children
+  }
+}
+
+/** Scale of the plan beside: parallel views share it. */
+export function roofScale(answer: Answer, size: Size, planSize: Size): { scale: number; shift: number } {
+  const onPlan = planSize.width > 0 && planSize.height > 0
+  const area = onPlan ? planArea(planSize.width, planSize.height, true) : planArea(size.width, size.height, false)
+  const window = fitted(answer.plan, area)
+  const fits = onPlan && size.width === planSize.width
+  const scale = Math.min(window.scale, (0.94 * size.width * window.scale) / Math.max(1, area.right - area.left), (1.45 * (size.height - 40)) / Math.max(1, planHeight(answer)))
+  return { scale: fits && scale >= window.scale * 0.8 ? window.scale : scale, shift: fits ? window.middleX - size.width / 2 : 0 }
+}
+
+function planHeight(answer: Answer): number {
+  let low = Infinity
+  let high = -Infinity
+  for (const y of answer.plan.y) {
+    if (y < low) low = y
+    if (y > high) high = y
+  }
+  return high - low
+}
+
+function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size }) {
+  const desk = useDesk()
+  const themeName = useDeskState((state) => state.theme)
+  const side = useDeskState((state) => state.side)
+  const exaggeration = useDeskState((state) => state.exaggeration)
+  const selection = useDeskState((state) => state.selection)
+  const made = useReading(answer)
+  const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize]) // eslint-disable-line
+  const selectedPanel = selection?.kind === 'panel' ? selection.index : -1
+  const scene = useMemo<RoofScene | null>(
+    () => made === null ? null : roofScene(answer, { ...made, theme: themes[themeName], exaggeration, scale, selectedPanel }),
+    [answer, made, themeName, exaggeration, scale, selectedPanel],
+  )
+  const invalidate = useThree((three) => three.invalidate)
+  useEffect(() => {
+    invalidate()
+    return () => scene?.dispose()
+  }, [scene, invalidate])
+  useFrame(({ camera }) => scene?.face(camera, size.height))
+  const down = useRef<readonly [number, number]>([0, 0])
+  return (
+    <>
+      <View answer={answer} side={side} size={size} scale={scale} shift={shift} top={scene?.top ?? 0} exaggeration={exaggeration} />
+      {scene !== null && (
+        <primitive
+          object={scene.group}
+          onPointerDown={(event: { clientX: number; clientY: number }) => { down.current = [event.clientX, event.clientY] }}
+          onClick={(event: { clientX: number; clientY: number; object: unknown; faceIndex?: number; stopPropagation: () => void }) => {
+            if (Math.hypot(event.clientX - down.current[0], event.clientY - down.current[1]) > 4) return
+            if (event.object !== scene.faces || event.faceIndex === undefined) return
+            event.stopPropagation()
+            desk.select({ kind: 'panel', index: scene.panelOfTriangle[event.faceIndex] })
+          }}
+        />
+      )}
+    </>
+  )
+}
+
+function View({ answer, side, size, scale, shift, top, exaggeration }: {
+  readonly answer: Answer; readonly side: Side; readonly size: Size; readonly scale: number; readonly shift: number; readonly top: number; readonly exaggeration: number
+}) {
+  const set = useThree((three) => three.set)
+  const gl = useThree((three) => three.gl)
+  const invalidate = useThree((three) => three.invalidate)
+  const { plan } = answer
+  const topKept = useRef(top)
+  topKept.current = top
+  useEffect(() => {
+    // The eye of a person of 1.65 m who stands outside, a storey below the springing.
+    const eye = (1.65 - 3) / metres[plan.unit]
+    const { camera, target } = cameraFor(stockView(side, eye), { span: plan.frame.span, top: topKept.current, scale, width: size.width, height: size.height })
+    const manual = camera as (OrthographicCamera | PerspectiveCamera) & { manual?: boolean }
+    manual.manual = true
+    if ('isOrthographicCamera' in camera) {
+      camera.left -= shift
+      camera.right -= shift
+      camera.updateProjectionMatrix()
+    }
+    set({ camera: camera as never })
+    const controls = new OrbitControls(camera, gl.domElement)
+    controls.target.copy(target)
+    controls.enableDamping = false
+    controls.minZoom = scale / 4
+    controls.maxZoom = scale * 60
+    controls.maxPolarAngle = Math.PI * 0.52
+    controls.mouseButtons = { LEFT: MOUSE.ROTATE, MIDDLE: MOUSE.PAN, RIGHT: MOUSE.PAN }
+    controls.touches = { ONE: TOUCH.ROTATE, TWO: TOUCH.DOLLY_PAN }
+    controls.update()
+    const onChange = (): void => invalidate()
+    controls.addEventListener('change', onChange)
+    invalidate()
+    return () => {
+      controls.removeEventListener('change', onChange)
+      controls.dispose()
+    }
+  }, [plan, side, size.width, size.height, scale, shift, exaggeration, set, gl, invalidate])
+  return null
+}

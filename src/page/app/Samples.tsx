@@ -1,0 +1,28 @@
+/** The empty sheet's lower right: how to begin, and the samples. */
+import { useEffect, useState } from 'react'
+import { useDesk, useDeskState } from './context.ts'
+import { samples } from './samples.ts'
+import { savedProjects, type Saved } from './autosave.ts'
+
+export function Samples() {
+  const desk = useDesk()
+  const problem = useDeskState((state) => state.problem)
+  const [saved, setSaved] = useState<readonly Saved[]>([])
+  useEffect(() => { void savedProjects().then(setSaved) }, [])
+  return (
+    <section className="pane desk" data-pane="ways" aria-labelledby="begin-title">
+      <header><h2 id="begin-title">Begin</h2><span className="note">your drawing stays on this computer</span></header>
+      <div className="scroll">
+        <p className="entry"><button className={problem === null ? 'solid' : 'word'} data-first onClick={() => document.querySelector<HTMLInputElement>('#open-file')?.click()}>Open a drawing</button> <span className="note">or drop it anywhere, or paste it: DXF, OBJ, SVG, GeoJSON</span></p>
+        {saved.length > 0 && <>
+          <h3>Go on with</h3>
+          <ul className="samples">{saved.slice(0, 4).map((project) => <li key={project.id}><button className="word" onClick={() => desk.goOn(project)}>{project.name}</button> <span className="note">step {project.steps}, {project.at}</span></li>)}</ul>
+        </>}
+        <h3>Or look at a sample</h3>
+        <ul className="samples">{samples.map((sample) => (
+          <li key={sample.name}><button className="word" onClick={() => void sample.text().then((text) => desk.openFile(sample.name, new TextEncoder().encode(text)))}>{sample.name}</button> <span className="note">{sample.note}</span></li>
+        ))}</ul>
+      </div>
+    </section>
+  )
+}

@@ -1,0 +1,24 @@
+/** The starting shape: what the roof comes as near to as its conditions let it. */
+import { shapes } from '../../plan/project/brief.ts'
+import { useDesk, useDeskState } from './context.ts'
+
+export function ShapeRow() {
+  const desk = useDesk()
+  const doc = useDeskState((state) => state.doc)
+  if (doc === null) return null
+  const { target, brief: { shape, down } } = doc
+  const hasHeights = doc.read.heights !== null
+  const shown = target !== null ? 'hand' : (shape ?? (hasHeights ? 'drawing' : 'dome'))
+  return (
+    <p className="entry switch" role="radiogroup" aria-label="Shape">
+      <span>Near to</span>
+      {shapes.map((name) => (
+        <button key={name} role="radio" aria-checked={shown === name} className={shown === name ? 'chosen' : ''}
+          onClick={() => desk.take({ doc: { ...doc, target: null, brief: { ...doc.brief, shape: name } }, what: `Near to a ${name}`.replace('a pitched', 'a pitched roof').replace('a hipped', 'a hipped roof'), before: shape === null ? 'was as drawn' : `was ${shape}` })}>{name}</button>
+      ))}
+      {hasHeights && <button role="radio" aria-checked={shown === 'drawing'} className={shown === 'drawing' ? 'chosen' : ''} onClick={() => desk.take({ doc: { ...doc, target: null, brief: { ...doc.brief, shape: null } }, what: 'Near to the drawing', before: 'was a shape' })}>the drawing</button>}
+      {shown === 'hand' && <button role="radio" aria-checked className="chosen">set by hand</button>}
+      <button aria-pressed={down} className={down ? 'chosen' : ''} onClick={() => desk.brief({ down: !down }, down ? 'Rises' : 'Hangs', down ? 'hung' : 'rose')}>hanging</button>
+    </p>
+  )
+}

@@ -1,0 +1,108 @@
+/** The sheet: one frame, its panes, and the tabs that a phone has in their place. */
+import { useEffect, useRef, useState, type DragEvent } from 'react'
+import { ChartPane } from './ChartPane.tsx'
+import { ComparePane } from './ComparePane.tsx'
+import { DeskPane } from './DeskPane.tsx'
+import { Dialogs } from './Dialogs.tsx'
+import { Head } from './Head.tsx'
+import { OpeningPlan, ReaderReport } from './OpeningPane.tsx'
+import { PanelList } from './PanelList.tsx'
+import { PlanPane } from './PlanPane.tsx'
+import { RoofPane } from './RoofPane.tsx'
+import { Samples } from './Samples.tsx'
+import { StepsPane } from './StepsPane.tsx'
+import { TitleBlock } from './TitleBlock.tsx'
+import { jointName, nodeName, panelName } from '../../plan/names.ts'
+import { figure } from '../../paper/drawing/figures.ts'
+import { slopeOf } from '../../paper/drawing/fall.ts'
+import { useDesk, useDeskState } from './context.ts'
+import type { Pane } from './state.ts'
+import { useSize } from './useSize.ts'
+
+const tabs: readonly (readonly [Pane, string])[] = [['roof', 'Roof'], ['plan', 'Plan'], ['chart', 'Slopes'], ['list', 'Panels'], ['steps', 'Steps']]
+
+export function Sheet() {
+  const desk = useDesk()
+  const theme = useDeskState((state) => state.theme)
+  const opening = useDeskState((state) => state.opening !== null)
+  const empty = useDeskState((state) => state.doc === null && state.opening === null)
+  const pane = useDeskState((state) => state.pane)
+  const compared = useDeskState((state) => state.compared)
+  const [over, setOver] = useState(false)
+  const planBox = useRef<HTMLDivElement>(null)
+  const planSize = useStageSize(planBox)
+  useEffect(() => { document.documentElement.dataset.theme = theme }, [theme])
+
+  const onDrop = (event: DragEvent): void => {
+    event.preventDefault()
+    setOver(false)
+    const file = event.dataTransfer.files[0]
+    if (file !== undefined) void file.arrayBuffer().then((bytes) => desk.openFile(file.name, new Uint8Array(bytes)))
+  }
+  useEffect(() => {
+    const onPaste = (event: ClipboardEvent): void => {
+      if (event.target instanceof HTMLInputElement) return
+      const file = event.clipboardData?.files[0]
+      const text = event.clipboardData?.getData('text/plain') ?? ''
+      if (file !== undefined) void file.arrayBuffer().then((bytes) => desk.openFile(file.name, new Uint8Array(bytes)))
+      else if (text.trim() !== '') void desk.openFile(pastedName(text), new TextEncoder().encode(text))
+    }
+    window.addEventListener('paste', onPaste)
+    return () => window.removeEventListener('paste', onPaste)
+  }, [desk])
+  return (
+    <div className={`sheet${over ? ' over' : ''}${opening ? ' is-opening' : ''}`} data-shown={opening ? 'plan' : pane}
+      onDragOver={(event) => { event.preventDefault(); setOver(true) }} onDragLeave={(event) => { if (event.relatedTarget === null) setOver(false) }} onDrop={onDrop}>
+      <Head />
+      <StepsPane />
+      {opening ? <OpeningPlan /> : (
+        <>
+          <div className="cell-plan" ref={planBox}><PlanPane /></div>
+          {compared === null ? <ChartPane /> : <ComparePane step={compared} />}
+          <RoofPane planSize={planSize} />
+          {empty ? <Samples /> : <DeskPane />}
+        </>
+      )}
+      {opening ? <ReaderReport /> : <section className="pane list" data-pane="list" aria-label="Panel list"><PanelList /></section>}
+      <TitleBlock />
+      <nav className="tabs-phone" aria-label="Drawings">
+        {tabs.map(([name, title]) => <button key={name} aria-pressed={pane === name} onClick={() => desk.set({ pane: name })}>{title}</button>)}
+      </nav>
+      <Announcement />
+      <Dialogs />
+      {over && <p className="drop-here">Drop it: it is read here, on this computer.</p>}
+    </div>
+  )
+}
+
+/** The size of the stage inside the plan's cell: the roof below takes its scale from it. */
+function useStageSize(cell: React.RefObject<HTMLDivElement | null>) {
+  const stage = useRef<HTMLElement | null>(null)
+  stage.current = cell.current?.querySelector<HTMLElement>('.stage') ?? null
+  const [, again] = useState(0)
+  useEffect(() => { again(1) }, [])
+  const whole = useSize(cell)
+  const size = stage.current === null ? whole : { width: stage.current.clientWidth, height: stage.current.clientHeight }
+  const kept = useRef(size)
+  if (kept.current.width !== size.width || kept.current.height !== size.height) kept.current = size
+  return kept.current
+}
+
+/** The selection as a sentence, for those who do not see it. */
+function Announcement() {
+  const answer = useDeskState((state) => state.answer)
+  const selection = useDeskState((state) => state.selection)
+  if (answer === null || selection === null) return <p className="unseen" aria-live="polite" />
+  const { kind, index } = selection
+  const words = kind === 'node' ? `Node ${nodeName(index)} selected.` : kind === 'joint' ? `Joint ${jointName(index)} selected.`
+    : `Panel ${panelName(index)} selected${answer.roof === null ? '' : `, slope ${figure(slopeOf(answer.roof.gradient, index), 1)} degrees, flatness ${figure(answer.roof.flatness_mm[index], 2)} mm`}.`
+  return <p className="unseen" aria-live="polite">{words}</p>
+}
+
+/** Pasted text has no name; its first characters tell the format. */
+function pastedName(text: string): string {
+  const head = text.trimStart()
+  if (head.startsWith('{')) return /"panewise"\s*:\s*"project"/.test(head.slice(0, 400)) ? 'pasted.panewise.json' : 'pasted.geojson'
+  if (head.startsWith('<')) return 'pasted.svg'
+  return /^(?:#|v\s|o\s|g\s)/m.test(head.slice(0, 2000)) && !/^\s*0\s*\r?\nSECTION/m.test(head.slice(0, 2000)) ? 'pasted.obj' : 'pasted.dxf'
+}

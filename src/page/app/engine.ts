@@ -1,0 +1,28 @@
+/** What the page asks of the worker. `null` stands for work that was cancelled or overtaken by a newer question. */
+import type { Result } from '../../base/result.ts'
+import type { Progress } from '../../base/steps.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import type { Doc, OpeningOptions } from './state.ts'
+
+export interface NamedBytes {
+  readonly name: string
+  readonly bytes: Uint8Array
+}
+
+/** A drawing read, with the layers it has. */
+export interface DrawingRead {
+  readonly read: ReadPlan
+  readonly layers: readonly string[]
+}
+
+export interface Engine {
+  read(file: NamedBytes, options: OpeningOptions, onProgress: (progress: Progress) => void): Promise<Result<DrawingRead> | null>
+  /** The last question wins: earlier ones come back as null. */
+  answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Answer> | null>
+  /** The independent ways left under the last answer's conditions, smoothest first. */
+  ways(doc: Doc, count: number): Promise<Result<readonly { readonly heights: Float64Array }[]> | null>
+  /** Files to take away: model and lists. */
+  files(doc: Doc): Promise<Result<readonly NamedBytes[]> | null>
+  stop(): void
+}

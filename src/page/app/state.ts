@@ -1,0 +1,110 @@
+/** Everything that the page knows. The document is what undo goes back over; the rest is how it is looked at. */
+import type { Problem } from '../../base/result.ts'
+import type { Progress } from '../../base/steps.ts'
+import type { Side } from '../../paper/drawing/projection.ts'
+import type { Selection } from '../../paper/drawing/plan-drawing.ts'
+import type { ReadingName } from '../../paper/drawing/reading.ts'
+import type { SlopeUnit } from '../../paper/drawing/figures.ts'
+import type { ThemeName } from '../../paper/drawing/theme.ts'
+import type { Plan } from '../../plan/plan.ts'
+import { emptyBrief, type Brief } from '../../plan/project/brief.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+
+/** The plan in hand with what is asked of its roof: immutable, so that older ones are the undo. */
+export interface Doc {
+  readonly name: string
+  readonly plan: Plan
+  /** The plan as it was read, with the heights that the drawing had. */
+  readonly read: ReadPlan
+  /** Heights to come near to (length nodeCount), in the place of shape and drawing; null: none. */
+  readonly target: Float64Array | null
+  readonly brief: Brief
+  /** Names of conditions that are switched off. */
+  readonly off: readonly string[]
+  /** Degrees; null: none asked. */
+  readonly leastSlope: number | null
+}
+
+/** A document and how it came about: the steps of the list at the left. */
+export interface Step {
+  readonly doc: Doc
+  readonly what: string
+  readonly before: string
+}
+
+/** A drawing that is read and not accepted yet. */
+export interface Opening {
+  readonly file: { readonly name: string; readonly bytes: Uint8Array }
+  readonly read: ReadPlan | null
+  readonly problem: Problem | null
+  readonly options: OpeningOptions
+  readonly layers: readonly string[]
+  readonly chosenRepair: number
+  readonly ms: number
+}
+
+export interface OpeningOptions {
+  readonly unit: 'mm' | 'cm' | 'm' | 'in' | 'ft' | null
+  readonly scale: number | null
+  readonly snap_mm: number | null
+  readonly layers: readonly string[] | null
+  readonly voids: readonly (readonly [number, number])[]
+  readonly accept: readonly string[]
+}
+
+export const openingOptions: OpeningOptions = { unit: null, scale: null, snap_mm: null, layers: null, voids: [], accept: [] }
+
+export type Pane = 'roof' | 'plan' | 'chart' | 'list' | 'steps'
+export type Desk = 'ways' | 'conditions' | 'profile'
+export type Dialog = 'keys' | 'take' | 'words' | null
+
+export interface State {
+  readonly doc: Doc | null
+  /** All steps taken, oldest first; `at` is the one in force, those after it are undone. */
+  readonly steps: readonly Step[]
+  readonly at: number
+  /** Edit in hand, while the pointer moves: shown and answered, not a step yet. */
+  readonly inHand: Step | null
+  readonly answer: Answer | null
+  /** The answer belongs to the document in force. */
+  readonly fresh: boolean
+  readonly answerMs: number
+  /** Roof before the edit in hand. */
+  readonly before: Answer | null
+  readonly busy: (Progress & { readonly since: number }) | null
+  readonly problem: Problem | null
+  readonly opening: Opening | null
+  readonly selection: Selection | null
+  readonly picked: readonly number[]
+  readonly reading: ReadingName
+  readonly side: Side
+  readonly exaggeration: number
+  readonly slopeUnit: SlopeUnit
+  readonly theme: ThemeName
+  readonly pane: Pane
+  readonly desk: Desk
+  readonly dialog: Dialog
+  readonly letterKeys: boolean
+  readonly sort: { readonly by: ListColumn; readonly down: boolean }
+  readonly filter: ListFilter
+  readonly webgl: 'none' | 'software' | 'hardware'
+  readonly saved: string
+  /** Ways left for the answer shown, null while they are not known. */
+  /** Step that the one in force is compared with, null: none. */
+  readonly compared: number | null
+  readonly ways: readonly { readonly heights: Float64Array }[] | null
+}
+
+export type ListColumn = 'panel' | 'area' | 'slope' | 'fall' | 'corner' | 'flat'
+export type ListFilter = 'all' | 'flagged' | 'group'
+
+export const initialState: State = {
+  doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
+  selection: null, picked: [], reading: 'slope', side: 'south', exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
+  desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
+}
+
+export function newDoc(name: string, read: ReadPlan): Doc {
+  return { name, plan: read.plan, read, target: null, brief: { ...emptyBrief, unit: read.plan.unit }, off: [], leastSlope: 3 }
+}

@@ -1,0 +1,31 @@
+/** A value that React listens to. Updates are functions from one immutable state to the next. */
+import { useSyncExternalStore } from 'react'
+
+export interface Store<S> {
+  readonly state: () => S
+  readonly update: (change: (state: S) => S) => void
+  readonly subscribe: (listener: () => void) => () => void
+}
+
+export function createStore<S>(initial: S): Store<S> {
+  let state = initial
+  const listeners = new Set<() => void>()
+  return {
+    state: () => state,
+    update(change) {
+      const next = change(state)
+      if (next === state) return
+      state = next
+      for (const listener of [...listeners]) listener()
+    },
+    subscribe(listener) {
+      listeners.add(listener)
+      return () => listeners.delete(listener)
+    },
+  }
+}
+
+/** The part of the state that `pick` returns; the component renders anew when it is another value. */
+export function useStore<S, T>(store: Store<S>, pick: (state: S) => T): T {
+  return useSyncExternalStore(store.subscribe, () => pick(store.state()))
+}

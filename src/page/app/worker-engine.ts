@@ -1,0 +1,58 @@
+/** The engine behind the page: the worker, told of each plan once and of each brief anew. */
+import type { Result } from '../../base/result.ts'
+import type { Progress } from '../../base/steps.ts'
+import { noOptions, type Options } from '../../plan/project/options.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import { WorkerClient, type Port } from '../../job/worker/client.ts'
+import type { DrawingRead, Engine, NamedBytes } from './engine.ts'
+import type { Doc, OpeningOptions } from './state.ts'
+
+export class WorkerEngine implements Engine {
+  private readonly client = new WorkerClient(() => new Worker(new URL('../../job/worker/worker.ts', import.meta.url), { type: 'module' }) as unknown as Port)
+  private told: { read: ReadPlan; generation: number; number: number } | null = null
+  private plans = 0
+
+  async read(file: NamedBytes, options: OpeningOptions, onProgress: (progress: Progress) => void): Promise<Result<DrawingRead> | null> {
+    const { unit, scale, snap_mm, layers, voids, accept } = options
+    const request = {
+      command: 'read', source: file, brief: null, levels: null, given: {},
+      options: { ...noOptions, unit, scale, snap_mm, layers, voids, accept },
+    } as const
+    const result = await this.client.ask('read', request, true, onProgress)
+    if (result === null || !result.ok) return result
+    return { ok: true, value: { read: result.value.readPlan, layers: result.value.layers } }
+  }
+
+  async answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Answer> | null> {
+    const plan = this.base(doc)
+    const brief = { ...doc.brief, conditions: doc.brief.conditions.filter(({ name }) => !doc.off.includes(name)) }
+    return this.client.ask('answer', { plan, brief, options: optionsFor(doc), target: doc.target }, true, onProgress)
+  }
+
+  ways(doc: Doc, count: number): ReturnType<Engine['ways']> {
+    return this.client.ask('ways', { plan: this.base(doc), count }, true)
+  }
+
+  files(doc: Doc): ReturnType<Engine['files']> {
+    return this.client.ask('files', { plan: this.base(doc), csv: 'comma' }, false)
+  }
+
+  stop(): void {
+    this.client.stop()
+  }
+
+  /** Number of the document's plan with the worker, which is told of it first when it does not know it. */
+  private base(doc: Doc): number {
+    if (this.told !== null && this.told.read === doc.read && this.told.generation === this.client.generation) return this.told.number
+    this.plans += 1
+    void this.client.ask('base', { plan: this.plans, read: doc.read, name: doc.name }, false).catch(() => {})
+    this.told = { read: doc.read, generation: this.client.generation, number: this.plans }
+    return this.plans
+  }
+}
+
+/** A shape that was chosen wins over heights in the drawing; heights set by hand win over both. */
+function optionsFor(doc: Doc): Options {
+  return { ...noOptions, target: doc.target !== null ? 'input' : doc.brief.shape !== null ? 'none' : null }
+}

@@ -1,0 +1,116 @@
+/** A plan as it was read and before it is accepted: lines of one weight, faces to be told panel from void, repairs in balloons. */
+import { metres } from '../../base/length.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
+import { Batch, dots, label, moved, polyline, type DisplayList, type Item } from './display-list.ts'
+import { figure } from './figures.ts'
+import { northPoint, scaleBar } from './furniture.ts'
+import { centres, nodesOnSheet } from './plan-drawing.ts'
+import { panelArea } from './panel-readings.ts'
+import { fitted, toSheet, type PlanWindow } from './plan-window.ts'
+
+export interface ReadDrawingOptions {
+  readonly width: number
+  readonly height: number
+  readonly window: PlanWindow | null
+  /** Panel under the pointer, -1: none. */
+  readonly panel: number
+  /** Index of the repair that is asked about, -1: none. */
+  readonly repair: number
+}
+
+/** Places that are drawn for one repair: a hundred balloons say no more than thirty. */
+const mostPlaces = 30
+
+export const readWindow = (read: ReadPlan, width: number, height: number): PlanWindow =>
+  fitted(read.plan, { left: 40, top: 40, right: width - 56, bottom: height - 66 })
+
+export function readDrawing(read: ReadPlan, options: ReadDrawingOptions): DisplayList {
+  const { plan } = read
+  const { width, height } = options
+  const window = options.window ?? readWindow(read, width, height)
+  const px = nodesOnSheet(plan, window)
+  const items: Item[] = []
+  const faces = new Batch()
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) faces.point(px[2 * plan.corner[c]], px[2 * plan.corner[c] + 1])
+    faces.end(p)
+  }
+  items.push(faces.fills('cool1'))
+  if (options.panel >= 0 && options.panel < plan.panelCount) {
+    const one = new Batch()
+    for (let c = plan.panelStart[options.panel]; c < plan.panelStart[options.panel + 1]; c += 1) one.point(px[2 * plan.corner[c]], px[2 * plan.corner[c] + 1])
+    one.end()
+    items.push(one.fills('handWash'), one.strokes('held', null, true))
+  }
+  const lines = new Batch()
+  for (let e = 0; e < plan.edgeCount; e += 1) {
+    const a = 2 * plan.origin[2 * e]
+    const b = 2 * plan.origin[2 * e + 1]
+    lines.segment(px[a], px[a + 1], px[b], px[b + 1])
+  }
+  items.push(lines.strokes('thin'), ...voids(read, px))
+  if (options.panel >= 0 && options.panel < plan.panelCount) {
+    const [x, y] = centres(plan, px, options.panel)
+    const area = panelArea(plan, options.panel) * metres[plan.unit] ** 2
+    items.push(label(x, y - 2, 'panel', { tone: 'hand', bold: true, anchor: 'middle', size: 11 }), label(x, y + 11, `${figure(area, 2)} m\u00b2`, { tone: 'hand', anchor: 'middle', size: 11 }))
+  }
+  items.push(...balloons(read, window, options))
+  items.push(...moved(scaleBar(plan.unit, window.scale).items, 40, height - 36), ...moved(northPoint().items, width - 40, 14))
+  return {
+    width, height, items, title: 'Plan as read',
+    description: `${figure(plan.panelCount)} panels, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges; ${figure(read.repairs.length)} repairs.`,
+  }
+}
+
+function voids({ plan }: ReadPlan, px: Float64Array): Item[] {
+  const items: Item[] = []
+  for (let l = 0; l + 1 < plan.rimStart.length; l += 1) {
+    if (plan.rimIsVoid[l] === 0) continue
+    let left = Infinity
+    let right = -Infinity
+    let top = Infinity
+    let bottom = -Infinity
+    for (let k = plan.rimStart[l]; k < plan.rimStart[l + 1]; k += 1) {
+      const node = plan.origin[plan.rimHalf[k]]
+      left = Math.min(left, px[2 * node])
+      right = Math.max(right, px[2 * node])
+      top = Math.min(top, px[2 * node + 1])
+      bottom = Math.max(bottom, px[2 * node + 1])
+    }
+    // A small cross in the middle: the box's corners need not lie in the void.
+    const x = (left + right) / 2
+    const y = (top + bottom) / 2
+    const r = Math.min(right - left, bottom - top) * 0.28
+    items.push(polyline('voidCross', [x - r, y - r, x + r, y + r]), polyline('voidCross', [x - r, y + r, x + r, y - r]))
+    items.push(label(x, y + 4, 'void', { tone: 'ink', anchor: 'middle', plate: true, bold: true }))
+  }
+  return items
+}
+
+function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, width, height }: ReadDrawingOptions): Item[] {
+  const items: Item[] = []
+  const leaders = new Batch()
+  const spots: number[] = []
+  const filled: number[] = []
+  const open: number[] = []
+  const words: Item[] = []
+  for (const [i, repair] of read.repairs.entries()) {
+    for (const [k, [x, y]] of repair.where.slice(0, chosen === i ? mostPlaces : 3).entries()) {
+      const [px, py] = toSheet(window, x, y)
+      if (px < -20 || py < -20 || px > width + 20 || py > height + 20) continue
+      // Out of the middle, so that balloons stand clear of one another and of what they point at.
+      const turn = Math.atan2(py - height / 2, px - width / 2) + (k % 3) * 0.7
+      const bx = Math.max(12, Math.min(width - 12, px + 26 * Math.cos(turn)))
+      const by = Math.max(12, Math.min(height - 12, py + 26 * Math.sin(turn)))
+      leaders.segment(px, py, bx, by)
+      spots.push(px, py)
+      ;(chosen === i ? filled : open).push(bx, by)
+      words.push(label(bx, by + 4, String(i + 1), { size: 11, bold: true, anchor: 'middle', tone: chosen === i ? 'paper' : 'fault' }))
+    }
+  }
+  if (!leaders.empty) items.push(leaders.strokes('water', 0.9))
+  if (spots.length > 0) items.push(dots(spots, 3.5, null, 'fault', 1.1))
+  if (open.length > 0) items.push(dots(open, 9, 'paper', 'fault', 1.2))
+  if (filled.length > 0) items.push(dots(filled, 9, 'fault', 'fault', 1.2))
+  return [...items, ...words]
+}
