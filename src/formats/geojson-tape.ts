@@ -9,12 +9,12 @@ import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { Integers } from './growing.ts'
 import { decimalIn } from './text-number.ts'
-import { quoted } from './text-quote.ts'
+import { printable, quoted } from './text-quote.ts'
 
 /** Deeper nesting than any drawing has. */
 const deepest = 128
 /** Eight bytes each, and as much again while they grow. */
-const mostValues = 30_000_000
+const mostValues = 16_000_000
 /** Values between two turns: about a millisecond. */
 const slice = 1 << 14
 
@@ -64,10 +64,13 @@ export class JsonTape {
     return inner.includes('\\') ? (JSON.parse(this.text.slice(start, end)) as string) : inner
   }
 
-  /** The value as it stands in the text, cut short: for sentences. */
+  /** What a value is, for sentences: a text in quotes, a number or word as it stands, else "a list" or "an object". */
   shown(value: number): string {
+    const kind = this.kind(value)
+    if (kind === 'array') return 'a list'
+    if (kind === 'object') return 'an object'
     const start = this.start.at(value)
-    return quoted(this.text.slice(start, start + 30).replace(/\s+/g, ' '))
+    return kind === 'number' ? printable(this.text.slice(start, numberEnd(this.text, start)), 24) : kind === 'string' ? quoted(this.string(value) ?? '') : kind
   }
 
   /** The value of an object's member of this name, the last one if there are several; -1 when there is none. */

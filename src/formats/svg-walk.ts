@@ -27,7 +27,7 @@ const silent = new Set([
 ])
 
 /** Elements drawn, each as often as it is used: a use inside a use multiplies them. */
-const mostDrawn = 1_000_000
+const mostDrawn = 600_000
 /** Elements inside one another, uses counted. */
 const deepest = 600
 /** Elements, or subpaths of one element, between two turns: about a millisecond. */

@@ -12,7 +12,7 @@ import type { Drawing } from '../plan/drawing.ts'
 import type { Format, FormatOptions, Source } from './format.ts'
 import { mostRules, styleSheet } from './svg-style.ts'
 import { svgSpace, SvgWalk } from './svg-walk.ts'
-import { quoted } from './text-quote.ts'
+import { printable, quoted } from './text-quote.ts'
 import { xmlTree, type XmlElement } from './xml.ts'
 
 export const svg: Format = { title: 'SVG', extensions: ['svg'], recognises, read }
@@ -30,7 +30,8 @@ function* read(text: string, _source: Source, options: FormatOptions): Steps<Res
   if (!tree.ok) return tree
   const root = tree.value
   if (root.name !== 'svg' || (root.space !== svgSpace && root.space !== '')) {
-    return fail('not-svg', `the first element is <${quoted(root.name).slice(1, -1)}>, not <svg>`, { line: root.line }, 'export the drawing as SVG')
+    const message = root.name !== 'svg' ? `the first element is <${printable(root.name)}>, not <svg>` : `the first element is of ${quoted(root.space, 60)}, not of SVG`
+    return fail('not-svg', message, { line: root.line }, 'export the drawing as SVG')
   }
 
   const byId = new Map<string, XmlElement>()

@@ -42,8 +42,8 @@ interface Growing {
 
 /** Deeper nesting than any drawing has; keeps every walk over the tree from running out of stack. */
 const deepest = 256
-/** An element takes about 300 bytes, so that this many stay well below a gigabyte. */
-const mostElements = 1_000_000
+/** An element takes about 500 bytes with all that is made of it, so that this many stay well below half a gigabyte. */
+const mostElements = 600_000
 /** Characters between two turns: about a millisecond. */
 const slice = 1 << 14
 
@@ -120,7 +120,7 @@ export function* xmlTree(text: string, options: XmlOptions): Steps<Result<XmlEle
   ended = true
   if (problem === null) parser.close()
   if (problem !== null) return { ok: false, problem }
-  return root === null ? fail('not-xml', 'there is no element in the file') : ok(root)
+  return root === null ? fail('cut-off', 'there is no element in the file', null, 'export it again') : ok(root)
 }
 
 /** Code, message and cure for what the parser says; `closed` is the element that it closed last. */

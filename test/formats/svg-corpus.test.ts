@@ -5,7 +5,9 @@
 import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { expect, test } from 'vitest'
+import { finish } from '../../src/base/steps.ts'
 import { svg } from '../../src/formats/svg.ts'
+import { planFromDrawing } from '../../src/plan/from-drawing.ts'
 import { area, drawingOf, outlines, segments, type Point } from './svg-reading.ts'
 
 const corpus = join(import.meta.dirname, '..', 'corpus', 'svg')
@@ -72,4 +74,14 @@ test('cells-plot.svg: 73 lines that bound 24 faces of the same shapes, and a bac
   // 11.545... mm a metre: the axes are 589.09 pt wide for 18 m.
   const scale = (618.545455 - 29.454545) / 72 * 25.4 / 180
   plotted.forEach((length, i) => expect(Math.abs(length - scale * drawn[i]!)).toBeLessThan(2e-4))
+})
+
+test('both are plans of 24 panels and 50 nodes, cells.svg of 18 x 12 m', () => {
+  for (const name of ['cells.svg', 'cells-plot.svg']) {
+    const read = finish(planFromDrawing(drawingOf(svg, text(name)), { unit: null, scale: 100, snap_mm: null, voids: [], accept: [] }))
+    if (!read.ok) throw new Error(JSON.stringify(read.problem))
+    const { plan } = read.value
+    expect([plan.panelCount, plan.nodeCount, plan.edgeCount, plan.partCount, plan.unit], name).toEqual([24, 50, 73, 1, 'm'])
+    if (name === 'cells.svg') expect(Math.max(...plan.x)).toBeCloseTo(18, 7)
+  }
 })

@@ -210,3 +210,18 @@ test('a drawing that multiplies itself by use is refused, not drawn', () => {
   // A curve that would need more chords than there are is refused at once.
   expect(refusal('<circle r="1e9"/>', { sagitta: 1e-9 }).message).toMatch(/more than 100000 chords/)
 })
+
+test('gives turns within one long path, one long list of points and many rings, so that reading can be stopped', () => {
+  const turns = (inside: string): number => {
+    const steps = svg.read(sheet(inside), { name: 'a', bytes: new Uint8Array() }, { layers: null, sagitta: 0.005, metresPerUnit: null })
+    let count = 0
+    while (steps.next().done !== true) count += 1
+    return count
+  }
+  // The text itself gives a turn every 16,384 characters; the rest is what the path or list adds.
+  const added = (inside: string): number => turns(inside) - inside.length / 16384
+  expect(added(`<path d="M0 0${'h1v1'.repeat(50_000)}"/>`)).toBeGreaterThan(20)
+  expect(added(`<polygon points="${'1 2 3 4 '.repeat(50_000)}"/>`)).toBeGreaterThan(20)
+  expect(added(`<path d="${Array.from({ length: 20_000 }, (_, i) => `M${2 * (i % 100)} ${2 * Math.floor(i / 100)}h1v1z`).join('')}"/>`)).toBeGreaterThan(60)
+  expect(added('<line x2="5" stroke="red"/>'.repeat(10_000))).toBeGreaterThan(15)
+})
