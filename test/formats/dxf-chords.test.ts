@@ -257,6 +257,14 @@ describe('splines', () => {
     )
   })
 
+  // The middle of that curve stands at 3/8 of the sum of its inner control heights: 3/8 * 2 * 4 sqrt(1/2) / 3 = sqrt(1/2).
+  test('fit points with directions at the ends (codes 12 and 13)', () => {
+    const drawing = drawn([{ kind: 'SPLINE', pairs: [[71, 3], ...at(12, 3, 3), ...at(13, 2, -2), ...at(11, 0, 0), ...at(11, 4, 0)] }], 0.001)
+    const heights = segmentsOf(drawing).map(([, end]) => end[1])
+    expect(Math.max(...heights)).toBeLessThanOrEqual(Math.SQRT1_2 + 1e-15)
+    expect(Math.max(...heights)).toBeGreaterThanOrEqual(Math.SQRT1_2 - 0.001)
+  })
+
   test('closed fit points: slope and curvature go through every point, the first too (seed 4)', () => {
     const next = random(4)
     const points = Array.from({ length: 9 }, (_, i) => [10 * Math.cos(i / 1.5) + next(), 6 * Math.sin(i / 1.5) + next(), next()]).flat()
