@@ -67,7 +67,7 @@ function* misfitOf(plan: Plan, free: FreeRim, rows: Rows): Steps<number> {
   const soft: SoftRows = { ...rows, softWeight: new Float64Array(rowCount(rows)).fill(1) }
   const metric = metricOf(almostNothing, soft)
   const zero = new Float64Array(plan.nodeCount)
-  const roof = yield* nearestLift(free.space, zero, metric, metric.pull(zero, false))
+  const roof = yield* nearestLift(free.space, zero, metric, zero, false)
   let worst = 0
   for (let r = 0; r < rowCount(rows); r += 1) {
     let value = -rows.value[r]

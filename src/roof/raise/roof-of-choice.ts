@@ -44,16 +44,16 @@ export interface Ground {
   readonly shiftFree: boolean
 }
 
-/** `start` is a roof that meets the conditions (see `roofUnderConditions`). */
+/** `start` is a roof that meets the conditions (see `under-conditions.ts`). */
 export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): Steps<Choice> {
   const { space, metric, rim } = ground
   if (wish.rise === null) {
-    const nearest = yield* nearestLift(space, start, metric, metric.pull(wish.heights, false))
+    const nearest = yield* nearestLift(space, start, metric, wish.heights, false)
     const heights = settled(ground, nearest, wish)
     return { heights, notice: null, kept: keptOf(ground, heights, wish.heights) }
   }
   if (ground.scaleFree) {
-    const nearest = yield* nearestLift(space, start, metric, metric.pull(wish.heights, false))
+    const nearest = yield* nearestLift(space, start, metric, wish.heights, false)
     const kept = keptOf(ground, nearest, wish.heights)
     const shape = kept >= keptShare ? nearest : smoothest(ground, wish)
     const rise = shape === null ? 0 : riseOf(shape, rim, wish.rule)
@@ -70,8 +70,8 @@ const smoothestSaid = 'no roof under these conditions comes near the starting sh
 function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: number): Steps<Choice> {
   const { space, metric, rim } = ground
   const zero = new Float64Array(start.length)
-  const rest = yield* nearestLift(space, start, metric, metric.pull(zero, false))
-  let direction = yield* nearestLift(space, zero, metric, metric.pull(wish.heights, true))
+  const rest = yield* nearestLift(space, start, metric, zero, false)
+  let direction = yield* nearestLift(space, zero, metric, wish.heights, true)
   const kept = keptOf(ground, direction, wish.heights)
   let notice: string | null = null
   if (space.dimension > 0 && kept < keptShare) {

@@ -55,7 +55,8 @@ export function* underConditions(
 export function* feasibleRoof(
   plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array,
 ): Steps<{ space: LiftSpace; start: Float64Array | null; rowClashes: readonly RowClash[] }> {
-  if (rowCount(hard) === 0) return { space: free.space, start: yield* roofUnderConditions(free.space, wish), rowClashes: [] }
+  // With nothing held the flat roof is one.
+  if (rowCount(hard) === 0) return { space: free.space, start: new Float64Array(plan.nodeCount), rowClashes: [] }
   const { elimination, clashes } = eliminate(hard, plan.nodeCount, names)
   const space = yield* liftSpace(plan, free.bases, elimination)
   if (clashes.length > 0) return { space, start: null, rowClashes: clashes }

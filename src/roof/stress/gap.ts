@@ -2,50 +2,37 @@
  * The gap: square root of the smallest eigenvalue of the flatness form above tau, in a plan of span 1: how far the nearest
  * near lift is from being a lift.
  *
- * Block Krylov space of F = (I + tau K^-1)^m K^-1, then Rayleigh-Ritz with Q itself (Golub, Underwood 1977; Parlett, "The
- * Symmetric Eigenvalue Problem"). K^-1 alone blows the lifts up to 1/tau; each factor I + tau K^-1 takes them down to their
- * rounding over tau, about 1e-2 to 1e-3. The share of lifts left in the Ritz vector is measured, and m grows until it is small.
- * Tried and dropped: single-vector Lanczos with m = 1 (finds the rounding of the lifts, 1e10 above 1/gap^2, and calls it the
- * gap); m = 5 throughout (right, and twice the solves where the gap is small anyway).
+ * Block Krylov space of K^-1 Q K^-1, then Rayleigh-Ritz with Q itself (Golub, Underwood 1977; Parlett, "The Symmetric
+ * Eigenvalue Problem"). K^-1 blows lifts up to 1/tau and near lifts to 1/lambda; Q takes the lifts out again, exactly but for
+ * the rounding of what it leaves (see `applyForm`), and the second K^-1 restores the near lifts.
+ * Tried and dropped: K^-1 alone and filters I + tau K^-1 (each takes the lifts down by their rounding over tau, 1e-2 to 1e-3
+ * only, so five of them are needed: three times the solves).
  * Only for the free rim (T = I), where the metric is the identity.
  */
 import { EigenvalueDecomposition, Matrix } from 'ml-matrix'
 import { gaussians } from '../../base/random.ts'
 import { solve } from '../../base/sparse/solve.ts'
-import { tau } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
-import { projected, type LiftSpace } from './lift-space.ts'
+import type { LiftSpace } from './lift-space.ts'
 import { applyForm } from './panel-bases.ts'
 
 /** Columns carried through one solve, and how many blocks make the space: enough for three digits of the figure. */
 const width = 4
 const mostBlocks = 6
 const wantedShare = 1e-3
-/** Share of lifts (2-norm) that a Ritz vector may hold: it lowers the eigenvalue by its square. */
-const liftShare = 1e-2
-const mostFilters = 9
 
 /** Smallest eigenvalue above tau; null when every height vector lifts. */
 export function* smallestNearLift(space: LiftSpace): Steps<number | null> {
-  if (space.dimension >= space.plan.nodeCount) return null
-  for (let filters = 2; ; filters += 2) {
-    const { value, vector } = yield* smallestRitz(space, filters)
-    const lifts = projected(space, vector)
-    if (dot(lifts, lifts) < liftShare ** 2 * dot(vector, vector) || filters >= mostFilters) return value
-  }
-}
-
-/** Smallest Ritz value of Q over the filtered Krylov space, and its vector. */
-function* smallestRitz(space: LiftSpace, filters: number): Steps<{ value: number; vector: Float64Array }> {
   const n = space.plan.nodeCount
+  if (space.dimension >= n) return null
   const columns = Math.min(width, n - space.dimension)
   const basis: Float64Array[] = []
   const formed: Float64Array[] = []
   let block = gaussians(columns * n, 7)
-  let found = { value: Infinity, vector: new Float64Array(n) }
+  let found = Infinity
   for (let step = 0; step < mostBlocks; step += 1) {
     yield { stage: 'Measuring the gap', done: step / mostBlocks }
-    block = filtered(space, block, columns, filters)
+    block = filtered(space, block, columns)
     const before = basis.length
     for (let k = 0; k < columns; k += 1) {
       const direction = newDirection(basis, block.subarray(k * n, (k + 1) * n))
@@ -56,20 +43,19 @@ function* smallestRitz(space: LiftSpace, filters: number): Steps<{ value: number
     }
     if (basis.length === before) break
     const next = ritz(basis, formed)
-    const settled = Math.abs(next.value - found.value) < wantedShare * next.value
+    const settled = Math.abs(next - found) < wantedShare * next
     found = next
     if (settled || basis.length >= n - space.dimension) break
   }
   return found
 }
 
-function filtered(space: LiftSpace, block: Float64Array, columns: number, filters: number): Float64Array {
-  let out = solve(space.factor, block, columns)
-  for (let pass = 0; pass < filters; pass += 1) {
-    const again = solve(space.factor, out, columns)
-    out = out.map((value, i) => value + tau * again[i])
-  }
-  return out
+/** K^-1 Q K^-1 of each column. */
+function filtered(space: LiftSpace, block: Float64Array, columns: number): Float64Array {
+  const n = space.plan.nodeCount
+  const out = solve(space.factor, block, columns)
+  for (let k = 0; k < columns; k += 1) out.set(applyForm(space.plan, space.bases, out.subarray(k * n, (k + 1) * n)), k * n)
+  return solve(space.factor, out, columns)
 }
 
 /** What is new in the vector against the orthonormal basis, of length 1; null when nothing reliable is. */
@@ -83,28 +69,14 @@ function newDirection(basis: readonly Float64Array[], column: Float64Array): Flo
     }
   }
   const after = Math.sqrt(dot(direction, direction))
-  // Less than this is amplified noise, lifts among it.
-  return after > 1e-4 * before ? direction.map((value) => value / after) : null
+  // Less than this is amplified noise.
+  return after > 1e-6 * before ? direction.map((value) => value / after) : null
 }
 
-function ritz(basis: readonly Float64Array[], formed: readonly Float64Array[]): { value: number; vector: Float64Array } {
-  const size = basis.length
-  const small = new Matrix(size, size)
-  for (let a = 0; a < size; a += 1) {
-    for (let b = a; b < size; b += 1) {
-      const entry = dot(basis[a], formed[b])
-      small.set(a, b, entry)
-      small.set(b, a, entry)
-    }
-  }
-  const { realEigenvalues, eigenvectorMatrix } = new EigenvalueDecomposition(small, { assumeSymmetric: true })
-  const least = realEigenvalues.indexOf(Math.min(...realEigenvalues))
-  const vector = new Float64Array(basis[0].length)
-  basis.forEach((column, k) => {
-    const share = eigenvectorMatrix.get(k, least)
-    for (let i = 0; i < vector.length; i += 1) vector[i] += share * column[i]
-  })
-  return { value: realEigenvalues[least], vector }
+/** Smallest eigenvalue of Q on the span of an orthonormal basis; `formed` is Q of each. */
+function ritz(basis: readonly Float64Array[], formed: readonly Float64Array[]): number {
+  const small = new Matrix(basis.map((column) => formed.map((other) => dot(column, other))))
+  return Math.min(...new EigenvalueDecomposition(small, { assumeSymmetric: true }).realEigenvalues)
 }
 
 function dot(a: Float64Array, b: Float64Array): number {

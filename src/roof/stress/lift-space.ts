@@ -4,8 +4,8 @@
  * With N the flatness conditions of all panels, Q = sum N N^T the flatness form and h = h0 + T y the heights that keep the
  * conditions (T from elimination, the identity when nothing is held), K = T^T (Q - tau I) T is factored once:
  *   its negative pivots count the lifts (Sylvester's law of inertia: the number does not depend on the basis T);
- *   -tau T K^-1 T^T projects any heights to the nearest lift, up to tau / lambda on what is not one, so twice is enough;
- *   the same factor solves for a roof that meets conditions which are not zero.
+ *   -tau T K^-1 T^T projects any heights to the nearest lift, up to tau / lambda on what is not one;
+ *   I - T K^-1 T^T Q takes out what is left, and flattens a roof that meets conditions which are not zero.
  * Tried and dropped: weighting panels by area or its inverse (spoils the decision between lift and near lift on uneven
  * plans); an augmented Lagrangian on M + mu Q (one factor as well, four solves, 1e3 times less exact on uneven plans).
  */
@@ -19,7 +19,7 @@ import { tau } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Elimination } from '../conditions/eliminate.ts'
-import type { PanelBases } from './panel-bases.ts'
+import { applyForm, type PanelBases } from './panel-bases.ts'
 
 export interface LiftSpace {
   readonly plan: Plan
@@ -205,17 +205,27 @@ export function reduce(elimination: Elimination, heights: Float64Array, columns 
 }
 
 /**
- * The nearest lifts (least squares over the nodes) that keep the conditions with all their values zero, to `columns`
- * vectors of heights stored one after another (length nodeCount * columns). h <- -tau T K^-1 T^T h, twice.
+ * Heights less what is not flat in them, to first order: h - T K^-1 T^T Q h, per column. What is not a lift shrinks by
+ * tau / (lambda - tau); what is one stays to the last digits, since Q h holds nothing of it. Conditions that h keeps stay kept.
+ */
+export function flattened(space: LiftSpace, heights: Float64Array, columns = 1): Float64Array {
+  const { elimination, plan, bases } = space
+  const n = plan.nodeCount
+  const formed = new Float64Array(heights.length)
+  for (let column = 0; column < columns; column += 1) formed.set(applyForm(plan, bases, heights.subarray(column * n, (column + 1) * n)), column * n)
+  const correction = expand(elimination, solve(space.factor, reduce(elimination, formed, columns), columns), columns)
+  return heights.map((height, i) => height - correction[i])
+}
+
+/**
+ * Lifts that keep the conditions with all their values zero, near to `columns` vectors of heights stored one after another
+ * (length nodeCount * columns): the least-squares projection, good to 1e-3 among the lifts (the solve at tau = 1e-13 leaves
+ * so much) and flat to (tau / lambda)^2. Where the lift itself must be right, correct by the projection of what is left.
  */
 export function projected(space: LiftSpace, heights: Float64Array, columns = 1): Float64Array {
-  const { elimination, factor: factored } = space
   if (space.dimension === 0) return new Float64Array(heights.length)
-  let h = heights
-  for (let pass = 0; pass < 2; pass += 1) {
-    const y = solve(factored, reduce(elimination, h, columns), columns)
-    for (let i = 0; i < y.length; i += 1) y[i] *= -tau
-    h = expand(elimination, y, columns)
-  }
-  return h
+  const { elimination } = space
+  const y = solve(space.factor, reduce(elimination, heights, columns), columns)
+  for (let i = 0; i < y.length; i += 1) y[i] *= -tau
+  return flattened(space, expand(elimination, y, columns), columns)
 }

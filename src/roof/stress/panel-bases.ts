@@ -86,23 +86,33 @@ export function squaredResidual(plan: Plan, bases: PanelBases, heights: Float64A
   return total
 }
 
-/** Q h: each panel's residual added back to its corners (length nodeCount). */
+/**
+ * Q h: each panel's residual added back to its corners (length nodeCount). The affine part is taken out twice: what is left
+ * is then orthogonal to affine functions to the rounding of the residual itself, not of the heights, so Q h has nothing of a
+ * lift in it that a solve near singularity could blow up.
+ */
 export function applyForm(plan: Plan, bases: PanelBases, heights: Float64Array): Float64Array {
   const { panelStart, corner, panelCount } = plan
   const { e } = bases
   const out = new Float64Array(plan.nodeCount)
+  let left = new Float64Array(16)
   for (let p = 0; p < panelCount; p += 1) {
-    const from = panelStart[p], to = panelStart[p + 1]
-    if (to - from === 3) continue
-    let mean = 0, a1 = 0, a2 = 0
-    for (let c = from; c < to; c += 1) mean += heights[corner[c]]
-    mean /= to - from
-    for (let c = from; c < to; c += 1) {
-      const h = heights[corner[c]] - mean
-      a1 += e[2 * c] * h
-      a2 += e[2 * c + 1] * h
+    const from = panelStart[p], count = panelStart[p + 1] - from
+    if (count === 3) continue
+    if (left.length < count) left = new Float64Array(2 * count)
+    for (let k = 0; k < count; k += 1) left[k] = heights[corner[from + k]]
+    for (let pass = 0; pass < 2; pass += 1) {
+      let mean = 0, a1 = 0, a2 = 0
+      for (let k = 0; k < count; k += 1) mean += left[k]
+      mean /= count
+      for (let k = 0; k < count; k += 1) {
+        left[k] -= mean
+        a1 += e[2 * (from + k)] * left[k]
+        a2 += e[2 * (from + k) + 1] * left[k]
+      }
+      for (let k = 0; k < count; k += 1) left[k] -= a1 * e[2 * (from + k)] + a2 * e[2 * (from + k) + 1]
     }
-    for (let c = from; c < to; c += 1) out[corner[c]] += heights[corner[c]] - mean - a1 * e[2 * c] - a2 * e[2 * c + 1]
+    for (let k = 0; k < count; k += 1) out[corner[from + k]] += left[k]
   }
   return out
 }
