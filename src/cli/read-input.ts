@@ -8,8 +8,8 @@ import { osCode, osReason } from './os-reason.ts'
 /** How standard input is called in sentences, summaries and folders. */
 export const stdinName = 'stdin'
 
-/** Larger inputs are refused before they fill the memory: a plan of 100,000 panels is 8 MB. */
-export const largestInput = 2 ** 30
+/** Larger inputs are refused before they fill the memory (a text longer than 512 MiB is none to the engine); a plan of 100,000 panels is 8 MB. */
+export const largestInput = 400 * 2 ** 20
 
 const chunk = 1 << 20
 
@@ -19,11 +19,11 @@ export type ReadCalls = Pick<typeof nodeFs, 'openSync' | 'readSync' | 'fstatSync
  * The bytes of a file; `path` "-" is standard input. The name is the path's last part. Fails with code "cannot-read",
  * "is-a-folder", "too-large" or "file-changed" (it grew, shrank or was written while it was read).
  */
-export async function readInput(path: string, fs: ReadCalls = nodeFs): Promise<Result<Source>> {
-  return path === '-' ? await readStdin() : readFile(path, fs)
+export async function readInput(path: string, fs: ReadCalls = nodeFs, most = largestInput): Promise<Result<Source>> {
+  return path === '-' ? await readStdin(most) : readFile(path, fs, most)
 }
 
-function readFile(path: string, fs: ReadCalls): Result<Source> {
+function readFile(path: string, fs: ReadCalls, most: number): Result<Source> {
   const name = basename(path)
   const place = { file: path }
   let file: number | null = null
@@ -31,6 +31,7 @@ function readFile(path: string, fs: ReadCalls): Result<Source> {
     file = fs.openSync(path, 'r')
     const before = fs.fstatSync(file)
     if (before.isDirectory()) return fail('is-a-folder', 'this is a folder, not a plan', place, 'name a file in it')
+    if (before.size > most) return tooLarge(path, most)
     const parts: Uint8Array[] = []
     let length = 0
     for (;;) {
@@ -40,7 +41,7 @@ function readFile(path: string, fs: ReadCalls): Result<Source> {
       if (count === 0) break
       parts.push(part.subarray(0, count))
       length += count
-      if (length > largestInput) return tooLarge(path)
+      if (length > most) return tooLarge(path, most)
     }
     const after = fs.fstatSync(file)
     if (before.isFile() && (after.size !== length || after.mtimeMs !== before.mtimeMs)) {
@@ -55,14 +56,14 @@ function readFile(path: string, fs: ReadCalls): Result<Source> {
   }
 }
 
-async function readStdin(): Promise<Result<Source>> {
+async function readStdin(most: number): Promise<Result<Source>> {
   const parts: Uint8Array[] = []
   let length = 0
   try {
     for await (const part of process.stdin as AsyncIterable<Uint8Array>) {
       parts.push(part)
       length += part.length
-      if (length > largestInput) return tooLarge(stdinName)
+      if (length > most) return tooLarge(stdinName, most)
     }
   } catch (error) {
     return fail('cannot-read', `standard input cannot be read, since ${osReason(error)}`, { file: stdinName })
@@ -70,7 +71,8 @@ async function readStdin(): Promise<Result<Source>> {
   return ok({ name: stdinName, bytes: joined(parts, length) })
 }
 
-const tooLarge = (file: string): Result<never> => fail('too-large', 'this is more than 1 GiB', { file }, 'export only the panels')
+const tooLarge = (file: string, most: number): Result<never> =>
+  fail('too-large', `this is more than ${Math.round(most / 2 ** 20)} MiB`, { file }, 'export only the panels')
 
 function joined(parts: readonly Uint8Array[], length: number): Uint8Array {
   if (parts.length === 1) return parts[0]

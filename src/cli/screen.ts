@@ -50,9 +50,10 @@ export class Screen {
     if (this.manner.json) this.print(`${jsonText(record)}\n`)
   }
 
-  /** A problem as a sentence. */
+  /** A problem as a sentence; a name that stands first keeps its letters. */
   complain(problem: Problem): void {
-    this.err.write(`${printable(sentence(problem))}\n`)
+    const words = printable(sentence(problem))
+    this.err.write(`${problem.where === null ? words.slice(0, 1).toUpperCase() + words.slice(1) : words}\n`)
   }
 
   /** Marks text on a terminal that shows it; NO_COLOR (no-color.org) asks for none. */

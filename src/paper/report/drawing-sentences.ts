@@ -30,7 +30,8 @@ function repairSentence({ code, state, message, where }: Repair): string {
   const clause = message.trim().replace(/\.$/, '')
   const places = where.length === 0 ? '' : `, at ${listWords(where.map(([x, y]) => `(${coordinate(x)}, ${coordinate(y)})`), placesNamed)}`
   const take = state === 'proposed' ? ` (take it with --accept ${code})` : ''
-  return `${states[state]} [${code}]: ${clause}${places}${take}.`
+  const done = code === 'unit-assumed' ? 'Assumed' : states[state]
+  return `${done} [${code}]: ${clause}${places}${take}.`
 }
 
 /** The question with what answers it. */
@@ -39,7 +40,9 @@ export function questionSentence({ message, options }: Question): string {
 }
 
 function leftOutSentence(leftOut: readonly LeftOut[]): string {
-  const kinds = leftOut.map(({ kind, layer, count }) => `${count} ${kind}${layer === '' ? '' : ` on layer "${layer}"`}`)
+  // A kind may carry its reason: "LINE, layer frozen".
+  const named = (kind: string): string => kind.replace(/, (.*)$/, ' ($1)')
+  const kinds = leftOut.map(({ kind, layer, count }) => `${count} ${named(kind)}${layer === '' ? '' : ` on layer "${layer}"`}`)
   const all = leftOut.reduce((sum, { count }) => sum + count, 0)
   return `Left out: ${counted(all, 'thing')} that ${all === 1 ? 'is' : 'are'} no part of a plan: ${listWords(kinds, kindsNamed)}.`
 }

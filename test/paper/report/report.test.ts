@@ -120,10 +120,11 @@ describe('the rest', () => {
   const answer = answerOf(bays, vault, {
     repairs: [
       { code: 'joined', state: 'applied', count: 5, message: '5 line ends were joined, at most 0.4 mm apart', where: [[1, 2], [3.25, 4], [5, 6], [7, 8], [9, 0.0004]] },
+      { code: 'unit-assumed', state: 'applied', count: 1, message: 'The file states no unit: metres are assumed.', where: [] },
       { code: 'straighten', state: 'proposed', count: 1, message: 'Axis 3 is off straight by 4 mm.', where: [] },
     ],
     questions: [{ code: 'unit', message: 'panels of 38.1 m are not plausible', options: ['--unit mm', '--scale 1:N'] }],
-    leftOut: [{ kind: 'TEXT', layer: 'A-ANNO', count: 14 }, { kind: 'HATCH', layer: '', count: 1 }],
+    leftOut: [{ kind: 'TEXT', layer: 'A-ANNO', count: 14 }, { kind: 'HATCH, paper space', layer: '', count: 1 }],
     notices: ['the heights in the file are no target'],
     held: { clashes: [{ conditions: ['south gutter', 'north wall'], misfit_mm: 12 }] },
     stress: { freedom: 18, decided: false, countAt: [18, 20] },
@@ -133,9 +134,10 @@ describe('the rest', () => {
 
   test('repairs with their places, questions with their answers, what was left out, clashes, doubts', () => {
     expect(said).toContain('Repaired [joined]: 5 line ends were joined, at most 0.4 mm apart, at (1, 2), (3.25, 4), (5, 6) and 2 more.')
+    expect(said).toContain('Assumed [unit-assumed]: The file states no unit: metres are assumed.')
     expect(said).toContain('Proposed [straighten]: Axis 3 is off straight by 4 mm (take it with --accept straighten).')
     expect(said).toContain('Question: Panels of 38.1 m are not plausible. Answer with --unit mm or --scale 1:N.')
-    expect(said).toContain('Left out: 15 things that are no part of a plan: 14 TEXT on layer "A-ANNO" and 1 HATCH.')
+    expect(said).toContain('Left out: 15 things that are no part of a plan: 14 TEXT on layer "A-ANNO" and 1 HATCH (paper space).')
     expect(said).toContain('The heights in the file are no target.')
     expect(said).toContain('"south gutter" and "north wall" clash by 12 mm.')
     expect(said).toContain('not decided: 18 or 20')
