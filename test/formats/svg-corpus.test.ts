@@ -6,8 +6,10 @@ import { readFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { expect, test } from 'vitest'
 import { finish } from '../../src/base/steps.ts'
+import { geojson } from '../../src/formats/geojson.ts'
 import { svg } from '../../src/formats/svg.ts'
 import { planFromDrawing } from '../../src/plan/from-drawing.ts'
+import { voidCount } from '../../src/plan/plan.ts'
 import { area, drawingOf, outlines, segments, type Point } from './svg-reading.ts'
 
 const corpus = join(import.meta.dirname, '..', 'corpus', 'svg')
@@ -84,4 +86,24 @@ test('both are plans of 24 panels and 50 nodes, cells.svg of 18 x 12 m', () => {
     expect([plan.panelCount, plan.nodeCount, plan.edgeCount, plan.partCount, plan.unit], name).toEqual([24, 50, 73, 1, 'm'])
     if (name === 'cells.svg') expect(Math.max(...plan.x)).toBeCloseTo(18, 7)
   }
+})
+
+test('the samples of Tern Yard: a hall of 52 panels with an arc for a gable, a ring of 36 panels round a court', () => {
+  const sample = (name: string, scale: number | null) => {
+    const markup = readFileSync(join(import.meta.dirname, '..', '..', 'samples', name), 'utf8')
+    expect(markup.length).toBeLessThan(30_000)
+    const drawing = drawingOf(name.endsWith('.svg') ? svg : geojson, markup, scale === null ? {} : { metresPerUnit: scale / 1000 })
+    const read = finish(planFromDrawing(drawing, { unit: null, scale, snap_mm: null, voids: [], accept: [] }))
+    if (!read.ok) throw new Error(JSON.stringify(read.problem))
+    return read.value
+  }
+  const hall = sample('tern-yard-hall.svg', 100)
+  expect([hall.plan.panelCount, voidCount(hall.plan), hall.plan.partCount]).toEqual([52, 0, 1])
+  expect(hall.leftOut.map(({ kind, count }) => `${count} ${kind}`)).toEqual(['3 text', '1 line, hidden', '1 page background'])
+  // Six arcs of 30 degrees and 6 m radius: n chords leave an arc by r (1 - cos(pi / 12 / n)); 7 are the fewest within 5 mm.
+  const leaves = (n: number): number => 6000 * (1 - Math.cos(Math.PI / 12 / n))
+  expect([leaves(6) > 5, leaves(7) <= 5]).toEqual([true, true])
+  expect(hall.repairs).toMatchObject([{ code: 'chords', count: 6, message: expect.stringContaining('became 42 chords') }])
+  const court = sample('tern-yard-court.geojson', null)
+  expect([court.plan.panelCount, court.plan.jointCount, voidCount(court.plan), court.plan.partCount]).toEqual([36, 54, 1, 1])
 })
