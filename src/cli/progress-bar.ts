@@ -31,7 +31,7 @@ export class ProgressBar {
     this.drawn = now
     this.isShown = true
     const share = Math.min(1, Math.max(0, done))
-    const width = Math.min(widest, (this.stream.columns ?? 80) - stage.length - 12)
+    const width = Math.min(widest, (this.stream.columns === undefined || this.stream.columns === 0 ? 80 : this.stream.columns) - stage.length - 12)
     const full = Math.round(share * width)
     const bar = width < 5 ? '' : ` [${'='.repeat(full)}${' '.repeat(width - full)}]`
     this.stream.write(`\r\u001b[K${stage}${bar} ${Math.floor(100 * share)} %`)
