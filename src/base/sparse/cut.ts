@@ -11,7 +11,6 @@
  */
 import { Cover } from './cover.ts'
 import type { Pattern } from './matrix.ts'
-import { neighbours, type Neighbours } from './neighbours.ts'
 import { places } from './places.ts'
 
 /** The unknowns along one axis; the segment [from, to) of `sorted` is one piece's, in ascending place. */
@@ -25,16 +24,14 @@ export interface Axis {
 
 /** Positions looked at are within this share of the unknowns about the middle. */
 const reachShare = 0.1
-const mostPositions = 12
-/** Positions solved exactly. Pieces below `plainSize` are cut in the middle: their separators cost little either way. */
-const tries = 2
+const mostPositions = 33
+/** Pieces smaller than this are cut in the middle: their separators cost little either way. */
 const plainSize = 100
 
 /** An uneven cut must save this much: a cut off the middle by a share u counts (1 + unevenness u^2) times its size. */
-const unevenness = 6
+const unevenness = 15
 
 export class Cuts {
-  readonly graph: Neighbours
   readonly axes: readonly [Axis, Axis]
   /** The piece an unknown is in. */
   readonly label: Int32Array
@@ -44,14 +41,15 @@ export class Cuts {
   count = 0
   readonly separator: Int32Array
   private readonly cover: Cover
+  /** Positions in the segment, the places they stand for, unknowns with neighbours across on either side. */
   private readonly position = new Int32Array(mostPositions)
-  private readonly size = new Float64Array(mostPositions)
+  private readonly limit = new Int32Array(mostPositions)
   private readonly leftSize = new Int32Array(mostPositions)
   private readonly rightSize = new Int32Array(mostPositions)
+  private best = Infinity
 
-  constructor(pattern: Pattern, private readonly coordinates: Float64Array) {
-    this.graph = neighbours(pattern)
-    this.axes = [reaches(this.graph, coordinates, 0), reaches(this.graph, coordinates, 1)]
+  constructor(private readonly pattern: Pattern, private readonly coordinates: Float64Array) {
+    this.axes = [reaches(pattern, coordinates, 0), reaches(pattern, coordinates, 1)]
     this.label = new Int32Array(pattern.size)
     this.separator = new Int32Array(pattern.size)
     this.cover = new Cover(pattern.size)
@@ -60,29 +58,39 @@ export class Cuts {
   /** Chooses a cut of piece `piece`, which has the segment [from, to) on both axes. */
   choose(piece: number, from: number, to: number): void {
     this.axis = this.span(1, from, to) > this.span(0, from, to) ? 1 : 0
-    const half = from + ((to - from) >> 1)
-    const count = to - from < plainSize ? 1 : this.positions(from, to)
-    if (count === 1) {
-      this.threshold = this.thresholdAt(half)
-      this.separate(piece, from, this.threshold)
-      this.count = this.cover.count
-      this.separator.set(this.cover.members.subarray(0, this.count))
+    const size = to - from
+    const half = from + (size >> 1)
+    this.best = Infinity
+    if (size < plainSize) {
+      this.solve(piece, from, to, half)
       return
     }
-    let best = Infinity
-    for (let round = 0; round < tries; round++) {
-      let c = 0
-      for (let d = 1; d < count; d++) if ((this.size[d] as number) < (this.size[c] as number)) c = d
-      this.size[c] = Infinity
-      const threshold = this.thresholdAt(this.position[c] as number)
-      this.separate(piece, from, threshold)
-      const size = this.cover.count * uneven(((this.position[c] as number) - half) / (to - from))
-      if (size >= best) continue
-      best = size
-      this.threshold = threshold
-      this.count = this.cover.count
-      for (let m = 0; m < this.count; m++) this.separator[m] = this.cover.members[m] as number
-    }
+    // The best of coarse positions, then of fine ones about it: a gap or a neck is narrow.
+    const reach = Math.floor(reachShare * size)
+    const coarse = this.estimate(from, to, half, reach)
+    this.solve(piece, from, to, coarse)
+    const spacing = Math.ceil((2 * reach) / (mostPositions - 1))
+    const fine = this.estimate(from, to, coarse, Math.min(spacing, coarse - from - 1, to - coarse - 1))
+    if (fine !== coarse) this.solve(piece, from, to, fine)
+  }
+
+  /** Solves the cut at a position and keeps it if it is the best so far. */
+  private solve(piece: number, from: number, to: number, position: number): void {
+    const { cover } = this
+    const { sorted, place } = this.axes[this.axis] as Axis
+    const threshold = place[sorted[position] as number] as number
+    this.separate(piece, from, to, threshold)
+    const size = cover.count * this.uneven(from, to, position)
+    if (size >= this.best) return
+    this.best = size
+    this.threshold = threshold
+    this.count = cover.count
+    for (let m = 0; m < cover.count; m++) this.separator[m] = cover.members[m] as number
+  }
+
+  private uneven(from: number, to: number, position: number): number {
+    const share = (position - from) / (to - from) - 0.5
+    return 1 + unevenness * share * share
   }
 
   private span(axis: 0 | 1, from: number, to: number): number {
@@ -92,82 +100,78 @@ export class Cuts {
     return Number.isFinite(span) ? span : 0
   }
 
-  private thresholdAt(position: number): number {
-    const { sorted, place } = this.axes[this.axis] as Axis
-    return place[sorted[position] as number] as number
-  }
-
-  /** Fills position[0 .. n) with positions about the middle and size[] with estimates of their separators; returns n. */
-  private positions(from: number, to: number): number {
+  /** The position within `reach` of `middle` whose separator seems smallest. */
+  private estimate(from: number, to: number, middle: number, reach: number): number {
     const { sorted, place, low, high } = this.axes[this.axis] as Axis
-    const { position, leftSize, rightSize, size } = this
-    const half = from + ((to - from) >> 1)
-    const reach = Math.floor(reachShare * (to - from))
-    const first = this.firstLimit
+    const { position, limit, leftSize, rightSize } = this
+    const half = (mostPositions - 1) / 2
     for (let c = 0; c < mostPositions; c++) {
-      const at = half - reach + Math.round((2 * reach * c) / (mostPositions - 1))
+      const at = middle + Math.round((reach * (c - half)) / half)
       position[c] = at
-      first[c] = place[sorted[at] as number] as number
+      limit[c] = place[sorted[at] as number] as number
       leftSize[c] = 0
       rightSize[c] = 0
     }
     // Only unknowns near the window are counted: long connections from far off are missed, and met when the cut is solved.
-    const end = Math.min(to, half + 2 * reach)
+    const margin = reach + Math.ceil(6 * Math.sqrt(to - from))
+    const end = Math.min(to, middle + margin)
     let passed = 0
-    for (let k = Math.max(from, half - 2 * reach); k < end; k++) {
+    for (let k = Math.max(from, middle - margin); k < end; k++) {
       const v = sorted[k] as number
       while (passed < mostPositions && (position[passed] as number) <= k) passed++
       const highest = high[v] as number
-      for (let c = passed; c < mostPositions && (first[c] as number) <= highest; c++) leftSize[c] = (leftSize[c] as number) + 1
+      for (let c = passed; c < mostPositions && (limit[c] as number) <= highest; c++) leftSize[c] = (leftSize[c] as number) + 1
       const lowest = low[v] as number
-      for (let c = passed - 1; c >= 0 && (first[c] as number) > lowest; c--) rightSize[c] = (rightSize[c] as number) + 1
+      for (let c = passed - 1; c >= 0 && (limit[c] as number) > lowest; c--) rightSize[c] = (rightSize[c] as number) + 1
     }
+    let best = Infinity
+    let choice = middle
     for (let c = 0; c < mostPositions; c++) {
-      size[c] = Math.min(leftSize[c] as number, rightSize[c] as number) * uneven(((position[c] as number) - half) / (to - from))
+      const size = Math.min(leftSize[c] as number, rightSize[c] as number) * this.uneven(from, to, position[c] as number)
+      if (size >= best) continue
+      best = size
+      choice = position[c] as number
     }
-    return mostPositions
+    return choice
   }
 
-  private readonly firstLimit = new Int32Array(mostPositions)
-
-  /** The smallest separator of the piece between places below and from `threshold` on, in this.cover. */
-  private separate(piece: number, from: number, threshold: number): void {
-    const { sorted, place, high } = this.axes[this.axis] as Axis
-    const { cover, label, graph: { start, other } } = this
-    cover.clear()
-    for (let k = from; ; k++) {
+  /** The smallest separator between the piece's unknowns at places below `threshold` and the others, in this.cover. */
+  private separate(piece: number, from: number, to: number, threshold: number): void {
+    const { sorted, place, low, high } = this.axes[this.axis] as Axis
+    const { cover, label, pattern: { start, row } } = this
+    // Every connection is kept once in the pattern, with either of its ends: both sides are looked through.
+    for (let k = from; k < to; k++) {
       const v = sorted[k] as number
-      if ((place[v] as number) >= threshold) break
-      if ((high[v] as number) < threshold) continue
-      const begin = start[v] as number
+      const isLeft = (place[v] as number) < threshold
+      if (isLeft ? (high[v] as number) < threshold : (low[v] as number) >= threshold) continue
       const end = start[v + 1] as number
-      const open = cover.open(end - begin)
-      const { edge } = cover
-      let at = open
-      for (let p = begin; p < end; p++) {
-        const u = other[p] as number
-        if (label[u] === piece && (place[u] as number) >= threshold) edge[at++] = u
+      for (let p = (start[v] as number) + 1; p < end; p++) {
+        const u = row[p] as number
+        if (label[u] !== piece || (place[u] as number) < threshold === isLeft) continue
+        if (isLeft) cover.add(v, u)
+        else cover.add(u, v)
       }
-      if (at > open) cover.close(v, at)
     }
     cover.solve()
   }
 }
 
-const uneven = (share: number): number => 1 + unevenness * share * share
-
-function reaches({ start, other }: Neighbours, coordinates: Float64Array, axis: 0 | 1): Axis {
+function reaches({ size, start, row }: Pattern, coordinates: Float64Array, axis: 0 | 1): Axis {
   const { sorted, place } = places(coordinates, axis)
-  const low = new Int32Array(sorted.length)
-  const high = new Int32Array(sorted.length)
-  for (let v = 0; v < sorted.length; v++) {
-    let lowest = place[v] as number
-    let highest = lowest
+  const low = place.slice()
+  const high = place.slice()
+  for (let v = 0; v < size; v++) {
+    const at = place[v] as number
+    let lowest = low[v] as number
+    let highest = high[v] as number
     const end = start[v + 1] as number
-    for (let p = start[v] as number; p < end; p++) {
-      const at = place[other[p] as number] as number
-      if (at < lowest) lowest = at
-      if (at > highest) highest = at
+    for (let p = (start[v] as number) + 1; p < end; p++) {
+      const u = row[p] as number
+      const there = place[u] as number
+      if (there < lowest) lowest = there
+      if (there > highest) highest = there
+      if (at < (low[u] as number)) low[u] = at
+      if (at > (high[u] as number)) high[u] = at
     }
     low[v] = lowest
     high[v] = highest

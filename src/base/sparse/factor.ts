@@ -34,18 +34,26 @@ const blockColumns = 16
 const blockRows = 64
 
 
+/** Below this much work the plain kernels are done before a module is set up. */
+const worthwhileOperations = 3e7
+
 /** Operations between two looks at the clock: below a millisecond. */
 const operationsPerLook = 2e6
 const sliceMs = 40
 
+export interface FactorOptions {
+  /** Whether to use the binary kernels; by default where they pay. The numbers are the same. */
+  readonly binary?: boolean
+}
+
 /** Factors the values (one per entry of the analysed pattern). Values must be finite. */
-export function* factor(analysis: Analysis, values: Float64Array): Steps<Factor> {
+export function* factor(analysis: Analysis, values: Float64Array, options: FactorOptions = {}): Steps<Factor> {
   const { fronts, first } = analysis
   const pivotAt = new Int32Array(fronts + 1)
   for (let t = 0; t < fronts; t++) pivotAt[t + 1] = (pivotAt[t] as number) + four((first[t + 1] as number) - (first[t] as number))
   const into: Factor = {
     analysis, pivotAt, zeros: 0, ready: true,
-    store: newStore(analysis.storeSize + Math.max(16 * blockColumns, 16 * analysis.widest), analysis.operations),
+    store: newStore(analysis.storeSize + Math.max(16 * blockColumns, 16 * analysis.widest), options.binary ?? analysis.operations >= worthwhileOperations),
     pivot: new Float64Array(pivotAt[fronts] as number),
     scale: new Float64Array(pivotAt[fronts] as number),
   }

@@ -23,12 +23,13 @@ export function* solving(factor: Factor, right: Float64Array, columns = 1): Step
   assert(factor.ready, 'the factor is complete')
   assert(right.length === size * columns, 'a right-hand side has the length of the matrix')
   const result = new Float64Array(size * columns)
+  const groups = Array.from({ length: columns < 2 ? 0 : (Math.min(together, columns) + 3) >> 2 }, () => new Float64Array(4 * size))
   for (let column = 0; column < columns; ) {
     const taken = Math.min(together, columns - column)
     const from = right.subarray(column * size, (column + taken) * size)
     const to = result.subarray(column * size, (column + taken) * size)
     if (taken === 1) yield* one(factor, from, to)
-    else yield* several(factor, from, to, taken)
+    else yield* several(factor, from, to, taken, groups.slice(0, (taken + 3) >> 2))
     column += taken
   }
   return result
@@ -43,9 +44,9 @@ function* one(factor: Factor, right: Float64Array, result: Float64Array): Steps<
   for (let i = 0; i < x.length; i++) result[i] = x[place[i] as number] as number
 }
 
-function* several(factor: Factor, right: Float64Array, result: Float64Array, columns: number): Steps<void> {
+/** groups[g]: four columns each, four numbers a place; what an unused column holds does not matter. */
+function* several(factor: Factor, right: Float64Array, result: Float64Array, columns: number, groups: readonly Float64Array[]): Steps<void> {
   const { place, pattern: { size } } = factor.analysis
-  const groups = Array.from({ length: (columns + 3) >> 2 }, () => new Float64Array(4 * size))
   groups.forEach((x, g) => {
     for (let c = 0; c < Math.min(4, columns - 4 * g); c++) {
       const shift = (4 * g + c) * size

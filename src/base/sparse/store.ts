@@ -9,8 +9,6 @@ export interface Store extends Kernels {
   readonly data: Float64Array
 }
 
-/** Below this much work the plain kernel is done before a module is set up. */
-const worthwhileOperations = 3e6
 const pageBytes = 65536
 const mostPages = 65535
 
@@ -28,8 +26,8 @@ function kernelModule(): WebAssembly.Module | null {
   return compiled
 }
 
-/** Room for `numbers` zeros; `binary` forces or forbids the binary kernel, for tests and timing. */
-export function newStore(numbers: number, operations: number, binary = operations >= worthwhileOperations): Store {
+/** Room for `numbers` zeros, with the binary kernels if asked for and possible. */
+export function newStore(numbers: number, binary: boolean): Store {
   const pages = Math.ceil((8 * numbers) / pageBytes)
   const code = binary && pages <= mostPages ? kernelModule() : null
   if (code !== null) {

@@ -2,7 +2,7 @@
  * The solver against ml-matrix (dense, another's code), against eigenvalues known by construction, and against itself on
  * another road (refactor and factor, many columns and one).
  */
-import { EigenvalueDecomposition, Matrix, solve as denseSolve } from 'ml-matrix'
+import { determinant, EigenvalueDecomposition, Matrix, solve as denseSolve } from 'ml-matrix'
 import { describe, expect, test } from 'vitest'
 import { gaussians, random } from '../../../src/base/random.ts'
 import { analyse } from '../../../src/base/sparse/analyse.ts'
@@ -128,6 +128,26 @@ describe('cliques', () => {
   })
 })
 
+test('pivots multiply to the determinant that ml-matrix finds', () => {
+  const plan = bricks(7, 6)
+  const matrix = flatnessForm(plan, 0.3)
+  const full = new Matrix(dense(matrix))
+  const product = factorOf(matrix, plan.coordinates).pivot.reduce((a, d) => a * d, 1)
+  expect(Math.abs(product / determinant(full) - 1)).toBeLessThan(1e-12)
+})
+
+test('a dense clique of 500 among quads', () => {
+  const grid = quads(30, 30)
+  const plan = {
+    coordinates: grid.coordinates,
+    start: Int32Array.of(...grid.start, grid.index.length + 500),
+    index: Int32Array.of(...grid.index, ...Array.from({ length: 500 }, (_, i) => (i * 7) % 961)),
+  }
+  const matrix = dominant(plan, 4)
+  const b = gaussians(961, 5)
+  expect(residual(matrix, solve(factorOf(matrix, plan.coordinates), b), b)).toBeLessThan(rounding)
+})
+
 describe('larger matrices', () => {
   const plan = quads(140, 140)
   const matrix = flatnessForm(plan, 1e-3)
@@ -162,6 +182,24 @@ describe('larger matrices', () => {
     expect(solve(g, b)).toEqual(solve(f, b))
   })
 
+  test('binary and plain kernels give the same bytes', () => {
+    const [plain, binary] = [false, true].map((which) => finish(factor(analysis, matrix.values, { binary: which }))) as [Factor, Factor]
+    expect(binary.pivot).toEqual(plain.pivot)
+    expect(solve(binary, b)).toEqual(solve(plain, b))
+    expect(solve(binary, gaussians(3 * size, 3), 3)).toEqual(solve(plain, gaussians(3 * size, 3), 3))
+  })
+
+  test('a factor given up halfway is refused, and made good by refactoring', () => {
+    const g = finish(factor(analysis, matrix.values))
+    const expected = solve(g, b)
+    const steps = refactor(g, matrix.values)
+    steps.next()
+    steps.return()
+    if (!g.ready) expect(() => solve(g, b)).toThrow(/complete/)
+    finish(refactor(g, matrix.values))
+    expect(solve(g, b)).toEqual(expected)
+  })
+
   test('the same input gives the same bytes', () => {
     expect(finish(dissection(matrix.pattern, plan.coordinates)).rank).toEqual(analysis.ordering.rank)
     expect(solve(finish(factor(analysis, matrix.values)), b)).toEqual(solve(f, b))
@@ -169,15 +207,12 @@ describe('larger matrices', () => {
 })
 
 describe('inertia', () => {
-  /**
-   * A Laplacian of a grid of quads' edges with weights has one zero eigenvalue; D^T A D of a matrix keeps its inertia
-   * (Sylvester 1852), so S^T diag(+-1) S with unit lower triangular sparse S has that of the diagonal.
-   */
-  test('S^T D S has the signs of D', () => {
+  /** S D S^T keeps the signs of D (Sylvester 1852). */
+  test('S D S^T has the signs of D', () => {
     const plan = quads(40, 30, 0.1, 9)
     const { pattern } = cliquesOf(plan)
     const next = random(12)
-    // S has a unit diagonal and one entry below it in each column, at a panel neighbour: S^T D S stays in the panels' pattern.
+    // S has a unit diagonal and one entry below it in each column, at a panel neighbour, so that S D S^T stays in the panels' pattern.
     const values = new Float64Array(pattern.row.length)
     let negative = 0
     const entry = (i: number, j: number): number => {
@@ -200,11 +235,39 @@ describe('inertia', () => {
     expect(inertia(factorOf({ pattern, values }, plan.coordinates))).toEqual({ negative, zero: 0, positive: pattern.size - negative })
   })
 
-  test('the flatness form of a quad grid has 3 tilts and nx + ny - 1 or more folds below the shift', () => {
+  test('the flatness form of a quad grid has 3 tilts and nx + ny - 2 folds below the shift', () => {
     // A jittered nx x ny grid has joints - 2 inner nodes independent stresses: (nx - 1) ny + nx (ny - 1) - 2 (nx - 1)(ny - 1) = nx + ny - 2.
     const plan = quads(20, 14, 0.1, 3)
     const { negative, zero } = inertia(factorOf(flatnessForm(plan, -1e-13), plan.coordinates))
     expect({ negative, zero }).toEqual({ negative: 3 + 20 + 14 - 2, zero: 0 })
+  })
+
+  test('eigenvalues of a grid below any bound are counted as the formula says', () => {
+    // Five-point Laplacian of a 45 x 38 grid with fixed surroundings: 4 - 2 cos(pi k / 46) - 2 cos(pi l / 39), k = 1 .. 45, l = 1 .. 38.
+    const [nx, ny] = [45, 38]
+    const plan = quads(nx - 1, ny - 1, 0, 2)
+    const { pattern } = cliquesOf(plan)
+    const values = new Float64Array(pattern.row.length)
+    const eigenvalues: number[] = []
+    for (let k = 1; k <= nx; k++) for (let l = 1; l <= ny; l++) eigenvalues.push(4 - 2 * Math.cos((Math.PI * k) / (nx + 1)) - 2 * Math.cos((Math.PI * l) / (ny + 1)))
+    for (const bound of [0.001, 0.05, 0.777, 2.345, 4.001, 6.1, 7.99]) {
+      for (let j = 0; j < pattern.size; j++) {
+        for (let p = pattern.start[j]!; p < pattern.start[j + 1]!; p++) {
+          const apart = Math.abs(plan.coordinates[2 * j]! - plan.coordinates[2 * pattern.row[p]!]!) + Math.abs(plan.coordinates[2 * j + 1]! - plan.coordinates[2 * pattern.row[p]! + 1]!)
+          values[p] = apart === 0 ? 4 - bound : apart === 1 ? -1 : 0
+        }
+      }
+      const negative = eigenvalues.filter((v) => v < bound).length
+      expect(inertia(factorOf({ pattern, values }, plan.coordinates))).toEqual({ negative, zero: 0, positive: nx * ny - negative })
+    }
+  })
+
+  test('panels of sizes 1 : 1000 keep their count', () => {
+    // Graded like the lines of a logarithmic chart; the count of quads does not depend on sizes.
+    const even = quads(24, 18, 0.1, 5)
+    const graded = { ...even, coordinates: even.coordinates.map((c, i) => 1000 ** (c / (i % 2 === 0 ? 24 : 18))) }
+    const { negative, zero } = inertia(factorOf(flatnessForm(graded, -1e-13), graded.coordinates))
+    expect({ negative, zero }).toEqual({ negative: 3 + 24 + 18 - 2, zero: 0 })
   })
 
   test('zero pivots are counted, never silent, and leave no NaN', () => {
