@@ -129,6 +129,11 @@ describe('12 x 8 quads of 1.5 m under conditions', () => {
     // As the rule is stated: the four corner panels begin, all 96 follow.
     expect(held.reason).toMatch(/^P1, P12, P85 and P96 .*all 96 panels level$/)
   })
+  test.each([0, 3, -7.77, 112.35])('the whole rim at level %d: the same plane at another level, and no joint folds', async (at) => {
+    const { stress, held, verdict, reason } = (await ask({ text: bays(12, 8, 1.5), options: { rim: { level: at } } })).answer.summary
+    expect([stress.freedomLeft, held.frozenJoints, held.flatGroups, verdict]).toEqual([0, 172, 1, 'does not lift'])
+    expect(reason).toMatch(/all 96 panels level$/)
+  })
   test('both long sides at level 0: 7 (every lift is f(x) + g(y), f constant, g zero at both ends)', () => {
     const { under, verdict } = raise(grid(12, 8, { bay: 1.5 }), { conditions: [level('south', { run: [[0, 0], [18, 0]] }), level('north', { run: [[0, 12], [18, 12]] })] })
     expect([under.freedomLeft, verdict]).toEqual([7, 'lifts in part'])

@@ -2,12 +2,13 @@
  * Frozen joints: joints whose stress is 0 in every roof there is. Two random lifts show them: a joint that folds in some
  * lift folds in almost every one, so a joint flat in both is frozen but for an event of probability zero.
  */
-import { frozenShare } from '../../base/geometry/tolerance.ts'
+import { clashHeight, frozenShare } from '../../base/geometry/tolerance.ts'
 import { gaussians } from '../../base/random.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { forces, rms, stressOfGradients } from './forces.ts'
 import { projected, type LiftSpace } from './lift-space.ts'
 import { panelPlanes } from './panel-bases.ts'
+import { isTilt } from './tilt-part.ts'
 
 /**
  * 1 for each joint that no roof of the space folds (length jointCount). `tilts` is how many dimensions of the space fold
@@ -17,6 +18,9 @@ export function frozenJoints(space: LiftSpace, tilts: number, roof: Float64Array
   const { plan } = space
   const frozen = new Uint8Array(plan.jointCount).fill(1)
   const mark = (heights: Float64Array): void => {
+    // A level roof at +3 m is flat but for the rounding of 3 m, and the forces of that rounding are all of one size.
+    const size = heights.reduce((most, height) => Math.max(most, Math.abs(height)), 1)
+    if (isTilt(plan, heights, clashHeight * size)) return
     const force = forces(plan, stressOfGradients(plan, panelPlanes(plan, space.bases, heights).gradient))
     // A roof that is flat but for rounding has forces at rounding level: they must not pass for folds.
     const noise = foldNoise(plan, heights)

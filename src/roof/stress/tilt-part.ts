@@ -2,6 +2,7 @@
  * Heights less their tilt: in each part the least-squares plane is taken away, so that what is left says how much a roof
  * rises and folds and not how it leans. A node that parts share counts with the part of its first panel.
  */
+import { collinearSine } from '../../base/geometry/tolerance.ts'
 import type { Plan } from '../../plan/plan.ts'
 
 /** h - (best affine function of each part) (length nodeCount); `areas` weighs the nodes. */
@@ -10,31 +11,64 @@ export function lessTilt(plan: Plan, heights: Float64Array, areas: Float64Array)
   for (let p = plan.panelCount - 1; p >= 0; p -= 1) {
     for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) partOfNode[plan.corner[c]] = plan.partOf[p]
   }
-  const { work } = plan
-  // Per part: sums of m, mx, my, mz, then centred mxx, mxy, myy, mxz, myz.
-  const sums = new Float64Array(9 * plan.partCount)
-  for (let i = 0; i < plan.nodeCount; i += 1) {
-    const at = 9 * partOfNode[i], m = areas[i]
-    sums[at] += m
-    sums[at + 1] += m * work[2 * i]
-    sums[at + 2] += m * work[2 * i + 1]
-    sums[at + 3] += m * heights[i]
+  const planes = partPlanes(plan, heights, Int32Array.from({ length: plan.nodeCount }, (_, i) => i), partOfNode, areas)
+  return heights.map((height, i) => height - at(planes, plan, partOfNode[i], i))
+}
+
+/** Whether the corners of each part, shared nodes too, lie within `tolerance` of one plane: then no joint folds. */
+export function isTilt(plan: Plan, heights: Float64Array, tolerance: number): boolean {
+  const { corner, panelStart } = plan
+  const partOfCorner = new Int32Array(corner.length)
+  for (let p = 0; p < plan.panelCount; p += 1) partOfCorner.fill(plan.partOf[p], panelStart[p], panelStart[p + 1])
+  const planes = partPlanes(plan, heights, corner, partOfCorner, null)
+  return corner.every((node, c) => Math.abs(heights[node] - at(planes, plan, partOfCorner[c], node)) <= tolerance)
+}
+
+/** Mean x, mean y, mean height, gx, gy of each part (length 5 * partCount). */
+type Planes = Float64Array
+
+const at = (planes: Planes, { work }: Plan, part: number, node: number): number =>
+  planes[5 * part + 2] + planes[5 * part + 3] * (work[2 * node] - planes[5 * part]) + planes[5 * part + 4] * (work[2 * node + 1] - planes[5 * part + 1])
+
+/** Least-squares planes through the heights of the nodes listed, each with its part; `areas` by node, null: all alike. */
+function partPlanes(plan: Plan, heights: Float64Array, nodes: Int32Array, parts: Int32Array, areas: Float64Array | null): Planes {
+  const { work, partCount } = plan
+  const planes = new Float64Array(5 * partCount)
+  const weight = new Float64Array(partCount)
+  for (let k = 0; k < nodes.length; k += 1) {
+    const part = parts[k], i = nodes[k], m = areas === null ? 1 : areas[i]
+    weight[part] += m
+    planes[5 * part] += m * work[2 * i]
+    planes[5 * part + 1] += m * work[2 * i + 1]
+    planes[5 * part + 2] += m * heights[i]
   }
-  for (let part = 0; part < plan.partCount; part += 1) for (let k = 1; k < 4; k += 1) sums[9 * part + k] /= sums[9 * part]
-  for (let i = 0; i < plan.nodeCount; i += 1) {
-    const at = 9 * partOfNode[i], m = areas[i]
-    const x = work[2 * i] - sums[at + 1], y = work[2 * i + 1] - sums[at + 2], z = heights[i] - sums[at + 3]
-    sums[at + 4] += m * x * x
-    sums[at + 5] += m * x * y
-    sums[at + 6] += m * y * y
-    sums[at + 7] += m * x * z
-    sums[at + 8] += m * y * z
+  // A part without a node of its own has no plane; nothing asks for it.
+  for (let part = 0; part < partCount; part += 1) for (let k = 0; k < 3; k += 1) planes[5 * part + k] /= weight[part] || 1
+  // Centred xx, xy, yy, xz, yz per part.
+  const sums = new Float64Array(5 * partCount)
+  for (let k = 0; k < nodes.length; k += 1) {
+    const part = parts[k], i = nodes[k], m = areas === null ? 1 : areas[i]
+    const x = work[2 * i] - planes[5 * part], y = work[2 * i + 1] - planes[5 * part + 1], z = heights[i] - planes[5 * part + 2]
+    sums[5 * part] += m * x * x
+    sums[5 * part + 1] += m * x * y
+    sums[5 * part + 2] += m * y * y
+    sums[5 * part + 3] += m * x * z
+    sums[5 * part + 4] += m * y * z
   }
-  return heights.map((height, i) => {
-    const at = 9 * partOfNode[i]
-    const det = sums[at + 4] * sums[at + 6] - sums[at + 5] ** 2
-    const gx = (sums[at + 7] * sums[at + 6] - sums[at + 8] * sums[at + 5]) / det
-    const gy = (sums[at + 8] * sums[at + 4] - sums[at + 7] * sums[at + 5]) / det
-    return height - sums[at + 3] - gx * (work[2 * i] - sums[at + 1]) - gy * (work[2 * i + 1] - sums[at + 2])
-  })
+  for (let part = 0; part < partCount; part += 1) {
+    const [xx, xy, yy, xz, yz] = sums.subarray(5 * part, 5 * part + 5)
+    planes.set(gradient(xx, xy, yy, xz, yz), 5 * part + 3)
+  }
+  return planes
+}
+
+/**
+ * The least gradient that solves (xx xy; xy yy) g = (xz, yz). A part whose other nodes all count with its neighbours may be
+ * left with nodes in a line (then g runs along it) or with one (then g = 0).
+ */
+function gradient(xx: number, xy: number, yy: number, xz: number, yz: number): readonly [gx: number, gy: number] {
+  const trace = xx + yy
+  const det = xx * yy - xy * xy
+  if (det > collinearSine ** 2 * trace * trace) return [(xz * yy - yz * xy) / det, (yz * xx - xz * xy) / det]
+  return trace > 0 ? [xz / trace, yz / trace] : [0, 0]
 }
