@@ -37,7 +37,7 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
         </table>
       )}
       <p className="entry">
-        {freedomLeft === null ? <b className="fault">No roof meets all of these.</b> : conditions.length === 0 ? `Freedom with the rim free: ${figure(answer.summary.stress.freedom)}, tilts not counted.` : freedomLeft === 0 ? 'Exactly one roof meets these.' : `Freedom left: ${figure(freedomLeft)}, tilts counted.`}
+        {freedomLeft === null ? <b className="fault">No roof meets all of these.</b> : conditions.length === 0 ? `Freedom with the rim free: ${figure(answer.summary.stress.freedom)}, tilts not counted.` : freedomLeft === 0 ? (answer.summary.held.frozenJoints === answer.plan.jointCount ? 'Only one roof meets these, and no joint folds in it.' : 'Exactly one roof meets these.') : `Freedom left: ${figure(freedomLeft)}, tilts counted.`}
         {clashes.map((clash, i) => <span key={i} className="fault"> {clash.conditions.join(' and ')} clash{clash.conditions.length === 1 ? 'es with the flatness of the panels' : ''}, by {figure(clash.misfit_mm, 1)} mm.</span>)}
         {conditions.length > 1 && <> <button className="word" onClick={() => desk.release(conditions.map(({ name }) => name))}>Release all</button></>}
       </p>
@@ -55,6 +55,7 @@ export function askedWords(condition: Condition, mm: number): string {
     case 'equal': return 'equal levels'
     case 'coplanar': return 'one plane'
     case 'flush': return 'flush'
+    case 'form-force': return typeof condition.force === 'string' ? condition.force : `${condition.force < 0 ? 'ridge' : condition.force > 0 ? 'valley' : 'flush'} ${figure(Math.abs(condition.force), 3)}`
   }
 }
 

@@ -63,7 +63,7 @@ export function OpeningPlan() {
       <div className="stage">
         <ListCanvas draw={draw} label="Plan as read; click a face to make it a panel or a void" onWheel={(factor, x, y) => shown.current !== null && setWindow(zoomed(shown.current, factor, x, y))}
           onDown={onDown} onMove={onMove} onUp={onUp} onKey={(event) => { if (event.key === '0') setWindow(null) }} />
-        {read === null && opening?.problem == null && <p className="will">Reading {opening?.file.name}.</p>}
+        {read === null && (opening?.problem ?? null) === null && <p className="will">Reading {opening?.file.name}.</p>}
       </div>
     </section>
   )
@@ -86,7 +86,7 @@ export function ReaderReport() {
         {problem !== null && <p className="problem" role="alert"><b>{sentence(problem)}</b></p>}
         {questions.map((question) => (
           <div key={question.code} className="entry question">
-            <p><b>{question.message}.</b></p>
+            <p><b>{withoutOptions(question.message)}.</b></p>
             <p>{question.options.map((option) => <button key={option} className="word" onClick={() => desk.answerQuestion(option)}>{option.replace(/^--/, '').replace('=', ' ')}</button>)}</p>
           </div>
         ))}
@@ -105,13 +105,13 @@ export function ReaderReport() {
           <dt>Join ends</dt>
           <dd>within <SnapField value={options.snap_mm} onValue={(snap_mm) => desk.reopen({ snap_mm })} /> mm</dd>
           {(read?.leftOut.length ?? 0) > 0 && <><dt>Left out</dt><dd>{read?.leftOut.map(({ kind, layer, count }) => <div key={`${kind} ${layer}`}>{figure(count)} {kind}{layer === '' ? '' : ` on ${layer}`}</div>)}</dd></>}
-          {read?.notices.map((notice) => <div key={notice} className="wide">{notice}</div>)}
+          {read?.notices.map((notice) => <div key={notice} className="wide">{withoutOptions(notice)}</div>)}
         </dl>
         <h3>Repairs <span className="note">{figure(read?.repairs.length ?? 0)}{(read?.repairs.length ?? 0) > 0 ? ', all shown on the plan' : ''}</span></h3>
         <ol className="repairs">
           {read?.repairs.map((repair, i) => (
             <li key={i} className={chosenRepair === i ? 'chosen' : ''}>
-              <button aria-pressed={chosenRepair === i} onClick={() => desk.chooseRepair(i)}><b className="balloon">{i + 1}</b><span>{repair.message}{repair.count > 1 ? ` (${figure(repair.count)} places)` : ''}{repair.state === 'proposed' ? ' – proposed' : ''}</span></button>
+              <button aria-pressed={chosenRepair === i} onClick={() => desk.chooseRepair(i)}><b className="balloon">{i + 1}</b><span>{withoutOptions(repair.message)}{repair.count > 1 && !/\d/.test(repair.message) ? ` (${figure(repair.count)} places)` : ''}{repair.state === 'proposed' ? ' – proposed' : ''}</span></button>
             </li>
           ))}
         </ol>
@@ -124,6 +124,9 @@ export function ReaderReport() {
     </section>
   )
 }
+
+/** Readers name the command line's options in brackets; here the controls stand beside the sentence. */
+const withoutOptions = (text: string): string => text.replace(/ \([^()]*--[^()]*\)/g, '')
 
 function SnapField({ value, onValue }: { readonly value: number | null; readonly onValue: (value: number | null) => void }) {
   const [text, setText] = useState(value === null ? '' : String(value))

@@ -53,7 +53,7 @@ export function PanelList() {
   const first = Math.max(0, Math.floor(top / rowHeight) - 5)
   const last = Math.min(order.length, first + Math.ceil(height / rowHeight) + 11)
   const shown = Array.from(order.subarray(first, last))
-  const filters: readonly (readonly [ListFilter, string])[] = [['all', 'every panel'], ['flagged', `${figure(flagged)} flagged`], ['group', 'its flat group']]
+  const filters: readonly (readonly [ListFilter, string])[] = [['all', 'all'], ['flagged', `${figure(flagged)} flagged`], ['group', 'its group']]
   return (
     <div className="panels">
       <header>

@@ -9,7 +9,7 @@ import { fallBearing, slopeOf } from '../../paper/drawing/fall.ts'
 import { compassPoint, figure, signed } from '../../paper/drawing/figures.ts'
 import { jointKinds } from '../../paper/drawing/joint-kinds.ts'
 import { toSheet, type PlanWindow } from '../../paper/drawing/plan-window.ts'
-import type { Condition } from '../../plan/project/condition.ts'
+import type { Condition, Fold } from '../../plan/project/condition.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { jointsOf } from './useReading.ts'
@@ -45,10 +45,9 @@ export function PlanHand({ answer, window, picked, size }: Props) {
 type Placed = Pick<Props, 'answer' | 'window' | 'size'>
 
 function plateAt(x: number, y: number, size: { width: number; height: number }): React.CSSProperties {
-  // On the emptier side: away from the nearer edge of the drawing.
+  // In the corner that is farther off: beside the selection it would cover what moves with it.
   const right = x < size.width / 2
-  const top = Math.max(4, Math.min(size.height - 150, y - 30))
-  return right ? { left: Math.min(x + 22, size.width - 200), top } : { right: Math.min(size.width - x + 22, size.width - 200), top }
+  return { ...(right ? { right: 50 } : { left: 12 }), ...(y < size.height * 0.42 ? { bottom: 74 } : { top: 6 }) }
 }
 
 function NodeHand({ node, answer, window, size }: Placed & { readonly node: number }) {
@@ -116,28 +115,71 @@ function NodeHand({ node, answer, window, size }: Placed & { readonly node: numb
   )
 }
 
+/** A form force as words: its way and its size. */
+const forceWords = (force: number): string => (force === 0 ? 'flush' : `${force < 0 ? 'ridge' : 'valley'} ${figure(Math.abs(force), 3)}`)
+
+/** Pulled across its joint this far, a cross-bar asks for the 95th percentile of the forces; nearer to the middle than the snap, for none. */
+const barReach = 50
+const barSnap = 4
+
 function JointPlate({ joint, answer, window, size }: Placed & { readonly joint: number }) {
   const desk = useDesk()
   const doc = useDeskState((state) => state.doc)
   const { plan } = answer
   const a = plan.origin[2 * joint]
   const b = plan.origin[2 * joint + 1]
-  const [x, y] = toSheet(window, (plan.x[a] + plan.x[b]) / 2, (plan.y[a] + plan.y[b]) / 2)
+  const [ax, ay] = toSheet(window, plan.x[a], plan.y[a])
+  const [bx, by] = toSheet(window, plan.x[b], plan.y[b])
+  const [x, y] = [(ax + bx) / 2, (ay + by) / 2]
+  const length = Math.hypot(bx - ax, by - ay) || 1
+  // Across the joint on the sheet; pulled this way it is a valley, the other way a ridge.
+  const [ux, uy] = [-(by - ay) / length, (bx - ax) / length]
   const name = jointName(joint)
   const joints = jointsOf(answer)
   const kind = jointKinds[joints.kind[joint]]
-  const conditionName = `${name} flush`
+  const force = (kind === 'ridge' ? -1 : 1) * joints.force[joint]
+  const conditionName = `force of ${name}`
   const held = doc?.brief.conditions.some((condition) => condition.name === conditionName) === true
+  const start = useRef<{ x: number; y: number; force: number } | null>(null)
+  const perPx = (joints.force95 > 0 ? joints.force95 : 0.1) / barReach
+  const offset = Math.max(-70, Math.min(70, force / perPx))
+
+  const condition = (asked: number | Fold): Condition => ({ name: conditionName, kind: 'form-force', at: { joints: [name] }, force: asked, soft: null })
+  const ask = (asked: number | Fold): void => desk.condition(condition(asked), `${name} ${typeof asked === 'string' ? asked : forceWords(asked)}`)
+  const onMove = (event: PointerEvent<HTMLButtonElement>): void => {
+    if (start.current === null || event.buttons === 0) return
+    const across = start.current.force / perPx + (event.clientX - start.current.x) * ux + (event.clientY - start.current.y) * uy
+    const asked = Math.abs(across) < barSnap ? 0 : across * perPx
+    const base = desk.state.steps[desk.state.at]?.doc
+    if (base === undefined) return
+    const conditions = [...base.brief.conditions.filter((other) => other.name !== conditionName), condition(asked)]
+    desk.hold({ doc: { ...base, brief: { ...base.brief, conditions } }, what: `${name} ${forceWords(asked)}`, before: `was ${forceWords(start.current.force)}` })
+  }
   return (
-    <div className="plate" style={plateAt(x, y, size)}>
-      <b>{name}</b> {kind}{kind === 'ridge' || kind === 'valley' ? ` ${figure(joints.force[joint], 3)}` : ''}
-      <small>{kind === 'frozen'
-        ? (answer.frozenFree[joint] === 1 ? 'Frozen: it folds in no roof on this plan.' : 'Frozen by the conditions: it folds with a free rim.')
-        : `${figure(joints.fold_deg[joint], 1)}° between its panels. Form force: no load, not a member force.`}</small>
-      {kind !== 'frozen' && <p>{held
-        ? <button className="word" data-release onClick={() => desk.release([conditionName])}>Release <kbd>X</kbd></button>
-        : <button className="word" data-hold onClick={() => desk.condition({ name: conditionName, kind: 'flush', at: { joints: [name] }, soft: null }, `${name} flush`)}>Keep flush <kbd>H</kbd></button>}</p>}
-    </div>
+    <>
+      {kind !== 'frozen' && (
+        <>
+          <svg className="over" width={size.width} height={size.height} aria-hidden="true"><line className="bar-line" x1={x - ux * barReach} y1={y - uy * barReach} x2={x + ux * barReach} y2={y + uy * barReach} /></svg>
+          <button className="handle" style={{ left: x + ux * offset - 12, top: y + uy * offset - 12, cursor: 'move' }} aria-label={`${name}, ${forceWords(force)}: pull across the joint to change its form force`}
+            onPointerDown={(event) => { event.currentTarget.setPointerCapture(event.pointerId); start.current = { x: event.clientX, y: event.clientY, force } }}
+            onPointerMove={onMove} onPointerUp={() => { start.current = null; desk.putDown(true) }} onPointerCancel={() => { start.current = null; desk.putDown(false) }}><span /></button>
+        </>
+      )}
+      <div className="plate" style={plateAt(x, y, size)}>
+        <b>{name}</b> {kind}{kind === 'ridge' || kind === 'valley' ? ` ${figure(joints.force[joint], 3)}` : ''}
+        <small>{kind === 'frozen'
+          ? (answer.frozenFree[joint] === 1 ? 'Frozen: it folds in no roof on this plan.' : 'Frozen by the conditions: it folds with a free rim.')
+          : `${figure(joints.fold_deg[joint], 1)}° between its panels. Form force: no load, not a member force.`}</small>
+        {kind !== 'frozen' && (
+          <>
+            <NumberField label="force" start={(force < 0 ? '\u2212' : '') + figure(Math.abs(force), 3)} onValue={ask} />
+            <p>{(['ridge', 'valley', 'flush'] as const).map((fold) => <button key={fold} className="word spaced" onClick={() => ask(fold)}>{fold}</button>)}
+              {held ? <button className="word" data-release onClick={() => desk.release([conditionName])}>Release <kbd>X</kbd></button>
+                : <button className="word" data-hold onClick={() => ask(force)}>Hold <kbd>H</kbd></button>}</p>
+          </>
+        )}
+      </div>
+    </>
   )
 }
 
@@ -187,13 +229,13 @@ export function LengthField({ label, bare, to, start, onValue }: {
   const parsed = parseLength(text, bare, to)
   return (
     <label className="field">
-      <span>{label}</span>
+      {label !== '' && <span>{label}</span>}
       <input value={text} size={9} inputMode="text" aria-invalid={typed && !parsed.ok}
         onChange={(event) => { setText(event.target.value); setTyped(true) }}
         onBlur={() => setTyped(false)}
         onKeyDown={(event) => {
           if (event.key === 'Escape') { setText(start); setTyped(false); event.currentTarget.blur() }
-          if (event.key === 'Enter' && parsed.ok) { onValue(parsed.value); setTyped(false) }
+          if (event.key === 'Enter' && parsed.ok) { onValue(parsed.value); setTyped(false); event.currentTarget.blur() }
           if (event.key === 'Escape' || event.key === 'Enter') event.stopPropagation()
         }} />
       <small>{!typed ? bare : parsed.ok ? `= ${figure(parsed.value * conversion(to, 'mm'))} mm, Enter` : parsed.problem.cure}</small>
@@ -209,13 +251,13 @@ export function NumberField({ label, start, onValue }: { readonly label: string;
   const good = text.trim() !== '' && Number.isFinite(value)
   return (
     <label className="field">
-      <span>{label}</span>
+      {label !== '' && <span>{label}</span>}
       <input value={text} size={7} inputMode="decimal" aria-invalid={typed && !good}
         onChange={(event) => { setText(event.target.value); setTyped(true) }}
         onBlur={() => setTyped(false)}
         onKeyDown={(event) => {
           if (event.key === 'Escape') { setText(start); setTyped(false); event.currentTarget.blur() }
-          if (event.key === 'Enter' && good) { onValue(value); setTyped(false) }
+          if (event.key === 'Enter' && good) { onValue(value); setTyped(false); event.currentTarget.blur() }
           if (event.key === 'Escape' || event.key === 'Enter') event.stopPropagation()
         }} />
       {typed && <small>{good ? 'Enter' : 'not a number'}</small>}

@@ -8,9 +8,11 @@ import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
 import { neighbour, pick, runBetween } from './picking.ts'
 import { useReading } from './useReading.ts'
+import type { Size } from './useSize.ts'
 import { PlanHand } from './PlanHand.tsx'
 
-export function PlanPane() {
+/** `onSize`: told the size of the drawing, from which the roof below takes its scale. */
+export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) {
   const desk = useDesk()
   const answer = useDeskState((state) => state.answer)
   const selection = useDeskState((state) => state.selection)
@@ -23,6 +25,7 @@ export function PlanPane() {
   const shown = useRef<PlanWindow | null>(null)
   const [size, setSize] = useState({ width: 0, height: 0 })
   useEffect(() => setWindow(null), [plan])
+  useEffect(() => onSize(size), [onSize, size])
 
   const draw = useCallback((width: number, height: number) => {
     setSize((old) => (old.width === width && old.height === height ? old : { width, height }))

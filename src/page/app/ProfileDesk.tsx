@@ -24,7 +24,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
   const runKey = picked.join(',')
   const first = picked[0]
   const last = picked[picked.length - 1]
-  // eslint-disable-next-line react-hooks/exhaustive-deps -- levels are taken from the roof when a run is picked, not while it moves
+  // Levels are taken from the roof when a run is picked, not while it moves.
   useEffect(() => setLevels(picked.map((node) => answer.roof?.heights[node] ?? 0)), [runKey])
   if (doc === null) return null
   if (picked.length < 2 || first === undefined || last === undefined) {

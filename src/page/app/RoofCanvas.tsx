@@ -93,7 +93,7 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
   const exaggeration = useDeskState((state) => state.exaggeration)
   const selection = useDeskState((state) => state.selection)
   const made = useReading(answer)
-  const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize]) // eslint-disable-line
+  const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize])
   const selectedPanel = selection?.kind === 'panel' ? selection.index : -1
   const scene = useMemo<RoofScene | null>(
     () => made === null ? null : roofScene(answer, { ...made, theme: themes[themeName], exaggeration, scale, selectedPanel }),
@@ -140,11 +140,8 @@ function View({ answer, side, size, scale, shift, top, exaggeration }: {
     const { camera, target } = cameraFor(stockView(side, eye), { span: plan.frame.span, top: topKept.current, scale, width: size.width, height: size.height })
     const manual = camera as (OrthographicCamera | PerspectiveCamera) & { manual?: boolean }
     manual.manual = true
-    if ('isOrthographicCamera' in camera) {
-      camera.left -= shift
-      camera.right -= shift
-      camera.updateProjectionMatrix()
-    }
+    // Moved on the screen, whatever the zoom, so that the roof stands under its plan.
+    if ('isOrthographicCamera' in camera) camera.setViewOffset(size.width, size.height, -shift, 0, size.width, size.height)
     set({ camera: camera as never })
     const controls = new OrbitControls(camera, gl.domElement)
     controls.target.copy(target)

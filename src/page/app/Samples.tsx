@@ -18,7 +18,7 @@ export function Samples() {
           <h3>Go on with</h3>
           <ul className="samples">{saved.slice(0, 4).map((project) => <li key={project.id}><button className="word" onClick={() => desk.goOn(project)}>{project.name}</button> <span className="note">step {project.steps}, {project.at}</span></li>)}</ul>
         </>}
-        <h3>Or look at a sample</h3>
+        {samples.length > 0 && <h3>Or look at a sample</h3>}
         <ul className="samples">{samples.map((sample) => (
           <li key={sample.name}><button className="word" onClick={() => void sample.text().then((text) => desk.openFile(sample.name, new TextEncoder().encode(text)))}>{sample.name}</button> <span className="note">{sample.note}</span></li>
         ))}</ul>

@@ -1,5 +1,7 @@
 /** The starting shape: what the roof comes as near to as its conditions let it. */
+import { conversion } from '../../base/length.ts'
 import { shapes } from '../../plan/project/brief.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
 import { useDesk, useDeskState } from './context.ts'
 
 export function ShapeRow() {
@@ -7,7 +9,7 @@ export function ShapeRow() {
   const doc = useDeskState((state) => state.doc)
   if (doc === null) return null
   const { target, brief: { shape, down } } = doc
-  const hasHeights = doc.read.heights !== null
+  const hasHeights = saysHeights(doc.read)
   const shown = target !== null ? 'hand' : (shape ?? (hasHeights ? 'drawing' : 'dome'))
   return (
     <p className="entry switch" role="radiogroup" aria-label="Shape">
@@ -21,4 +23,19 @@ export function ShapeRow() {
       <button aria-pressed={down} className={down ? 'chosen' : ''} onClick={() => desk.brief({ down: !down }, down ? 'Rises' : 'Hangs', down ? 'hung' : 'rose')}>hanging</button>
     </p>
   )
+}
+
+/** Whether the drawing has a surface to come near to: nearly all nodes have a height, and they are not all one. */
+function saysHeights({ plan, heights }: ReadPlan): boolean {
+  if (heights === null) return false
+  let low = Infinity
+  let high = -Infinity
+  let count = 0
+  for (const z of heights) {
+    if (Number.isNaN(z)) continue
+    count += 1
+    low = Math.min(low, z)
+    high = Math.max(high, z)
+  }
+  return count >= 0.9 * plan.nodeCount && (high - low) * conversion(plan.unit, 'mm') > 10 && high - low > plan.frame.span / 1000
 }

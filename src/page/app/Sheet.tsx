@@ -1,5 +1,5 @@
 /** The sheet: one frame, its panes, and the tabs that a phone has in their place. */
-import { useEffect, useRef, useState, type DragEvent } from 'react'
+import { useEffect, useState, type DragEvent } from 'react'
 import { ChartPane } from './ChartPane.tsx'
 import { ComparePane } from './ComparePane.tsx'
 import { DeskPane } from './DeskPane.tsx'
@@ -17,7 +17,7 @@ import { figure } from '../../paper/drawing/figures.ts'
 import { slopeOf } from '../../paper/drawing/fall.ts'
 import { useDesk, useDeskState } from './context.ts'
 import type { Pane } from './state.ts'
-import { useSize } from './useSize.ts'
+import type { Size } from './useSize.ts'
 
 const tabs: readonly (readonly [Pane, string])[] = [['roof', 'Roof'], ['plan', 'Plan'], ['chart', 'Slopes'], ['list', 'Panels'], ['steps', 'Steps']]
 
@@ -29,8 +29,7 @@ export function Sheet() {
   const pane = useDeskState((state) => state.pane)
   const compared = useDeskState((state) => state.compared)
   const [over, setOver] = useState(false)
-  const planBox = useRef<HTMLDivElement>(null)
-  const planSize = useStageSize(planBox)
+  const [planSize, setPlanSize] = useState<Size>({ width: 0, height: 0 })
   useEffect(() => { document.documentElement.dataset.theme = theme }, [theme])
 
   const onDrop = (event: DragEvent): void => {
@@ -57,7 +56,7 @@ export function Sheet() {
       <StepsPane />
       {opening ? <OpeningPlan /> : (
         <>
-          <div className="cell-plan" ref={planBox}><PlanPane /></div>
+          <div className="cell-plan"><PlanPane onSize={setPlanSize} /></div>
           {compared === null ? <ChartPane /> : <ComparePane step={compared} />}
           <RoofPane planSize={planSize} />
           {empty ? <Samples /> : <DeskPane />}
@@ -73,19 +72,6 @@ export function Sheet() {
       {over && <p className="drop-here">Drop it: it is read here, on this computer.</p>}
     </div>
   )
-}
-
-/** The size of the stage inside the plan's cell: the roof below takes its scale from it. */
-function useStageSize(cell: React.RefObject<HTMLDivElement | null>) {
-  const stage = useRef<HTMLElement | null>(null)
-  stage.current = cell.current?.querySelector<HTMLElement>('.stage') ?? null
-  const [, again] = useState(0)
-  useEffect(() => { again(1) }, [])
-  const whole = useSize(cell)
-  const size = stage.current === null ? whole : { width: stage.current.clientWidth, height: stage.current.clientHeight }
-  const kept = useRef(size)
-  if (kept.current.width !== size.width || kept.current.height !== size.height) kept.current = size
-  return kept.current
 }
 
 /** The selection as a sentence, for those who do not see it. */

@@ -123,7 +123,7 @@ export class Desk {
     const ms = performance.now() - started
     if (!result.ok) {
       // Outside a drawing the sentence sits in the verdict cell, and the open project is untouched.
-      if (before?.read == null) this.set({ opening: null, problem: result.problem })
+      if (before === null || before.read === null) this.set({ opening: null, problem: result.problem })
       else this.set({ opening: { ...this.state.opening, problem: result.problem, ms } })
       return
     }

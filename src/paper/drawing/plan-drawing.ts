@@ -349,7 +349,9 @@ function held(answer: Answer, px: Float64Array, detail: Detail, width: number): 
     if (middle !== undefined) {
       const x = px[2 * middle]
       const anchor = x < 70 ? 'start' : x > width - 70 ? 'end' : 'middle'
-      items.push(label(x, px[2 * middle + 1] + 19, condition.soft ? `${condition.name}, soft` : condition.name, { tone: 'hand', anchor, plate: true, bold: true }))
+      // On the side away from the plan's middle, where there is paper.
+      const below = plan.y[middle] <= plan.frame.centreY
+      items.push(label(x, px[2 * middle + 1] + (below ? 19 : -11), condition.soft ? `${condition.name}, soft` : condition.name, { tone: 'hand', anchor, plate: true, bold: true }))
     }
   }
   return items
