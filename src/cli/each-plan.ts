@@ -41,6 +41,7 @@ export async function eachPlan({ args, screen, signal }: Run, work: Work, hearin
   const useless = badWords(args)
   if (useless !== null) return gaveUp(screen, useless)
   const request = await asked(args)
+  if (signal.aborted) return stopped
   if (!request.ok) return gaveUp(screen, request.problem)
   const records: unknown[] = []
   const exits: ExitCode[] = []

@@ -34,7 +34,7 @@ const problems: readonly (readonly [string, string])[] = [
   ['not-a-number, not-a-length, not-a-scale, not-a-point, not-a-count, not-one-of, out-of-range', "an option's value is not as its help has it"],
   ['no-plan, no-out, stdin-twice', 'something is missing on the command line'],
   ['cannot-read, is-a-folder, too-large, file-changed', 'a file could not be read'],
-  ['cannot-write, files-exist, out-is-no-folder', 'the output could not be written; nothing was'],
+  ['cannot-write, files-exist, out-is-no-folder, input-in-the-way', 'the output could not be written; nothing was'],
   ['cancelled', 'the run was stopped'],
   ['fault', 'a fault of panewise itself'],
 ]

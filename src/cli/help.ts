@@ -1,5 +1,4 @@
 /** What `--help` prints, made from the table of options. */
-import { printable } from '../paper/report/printable.ts'
 import { optionsOf, type Command, type OptionEntry } from './option-table.ts'
 
 const purpose: Readonly<Record<Command, string>> = {
@@ -39,4 +38,4 @@ export function commandHelp(command: Command): string {
   )
 }
 
-const synopsis = ({ name, value }: OptionEntry): string => printable(`--${name}${value === null ? '' : ` ${value}`}`)
+const synopsis = ({ name, value }: OptionEntry): string => `--${name}${value === null ? '' : ` ${value}`}`

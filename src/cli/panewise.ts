@@ -41,13 +41,15 @@ async function main(words: readonly string[]): Promise<number> {
   }
   const controller = new AbortController()
   let bySignal: number = stopped
-  process.once('SIGINT', () => controller.abort())
-  for (const signal of ['SIGTERM', 'SIGHUP'] as const) {
-    process.once(signal, () => {
-      bySignal = ended
-      controller.abort()
-    })
+  const stop = (code: number) => (): void => {
+    bySignal = code
+    controller.abort()
+    // Whoever waits for standard input waits no longer.
+    process.stdin.destroy()
   }
+  // Once: a second Ctrl-C ends the process where it stands; what lies aside is removed by the next run.
+  process.once('SIGINT', stop(stopped))
+  for (const signal of ['SIGTERM', 'SIGHUP'] as const) process.once(signal, stop(ended))
   const exit = await work[command]({ args: args.value, screen, signal: controller.signal })
   if (exit === stopped) {
     gaveUp(screen, fail('cancelled', command === 'raise' ? 'stopped, nothing was written' : 'stopped').problem)

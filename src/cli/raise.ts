@@ -1,11 +1,13 @@
 /** `panewise raise`: the roof and its lists into a folder, all files together at the end. */
+import { realpathSync } from 'node:fs'
 import { join } from 'node:path'
-import { fail, ok, type Result } from '../base/result.ts'
+import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import { finish } from '../base/steps.ts'
 import { writeCsv, type CsvStyle } from '../formats/write-csv.ts'
 import { fileNames, files, summaryWithFiles, type OutputFile } from '../job/files.ts'
 import { run as job } from '../job/run.ts'
 import { answerReport, type Report } from '../paper/report/report.ts'
+import type { Arguments } from './arguments.ts'
 import { eachPlan, gaveUp, type Run } from './each-plan.ts'
 import { badUse, exitCodeOf, type ExitCode } from './exit-code.ts'
 import { overview, type OverviewRow } from './overview.ts'
@@ -20,12 +22,33 @@ export async function raisePlans(run: Run): Promise<ExitCode> {
   const isOne = args.plans.length <= 1
   const folders = isOne ? [''] : planFolders(args.plans)
   const owned = [...folders.flatMap((each) => fileNames.map((name) => join(each, name))), ...(isOne ? [] : [overviewName])]
+  const inTheWay = inputAmong(args, owned.map((path) => join(folder, path)))
+  if (inTheWay !== null) return gaveUp(screen, inTheWay)
   const output = openOutput(folder, { overwrite: args.values.has('overwrite'), owned })
   if (!output.ok) return gaveUp(screen, output.problem)
   try {
     return await (isOne ? raiseOne(run, folder, output.value) : raiseSeveral(run, folders, output.value))
   } finally {
     output.value.discard()
+  }
+}
+
+/** The problem of an input that lies where a file is to be written: not even --overwrite may lose a drawing. */
+function inputAmong({ plans, values }: Arguments, written: readonly string[]): Problem | null {
+  const inputs = [...plans, ...['brief', 'target', 'levels'].flatMap((name) => values.get(name) ?? [])]
+  const places = new Set<string | null>(written.map(placeOf))
+  places.delete(null)
+  const input = inputs.find((path) => path !== '-' && places.has(placeOf(path)))
+  if (input === undefined) return null
+  return fail('input-in-the-way', 'the output would replace this input', { file: input }, 'name another folder with --out').problem
+}
+
+/** The true path of a file that is there. */
+function placeOf(path: string): string | null {
+  try {
+    return realpathSync(path)
+  } catch {
+    return null
   }
 }
 

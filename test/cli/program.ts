@@ -17,6 +17,7 @@ export interface Program {
   /** Folder for the test's own files; the processes run in it. */
   readonly room: string
   run(words: readonly string[], options?: { input?: string | Uint8Array; env?: Record<string, string> }): Ran
+  /** Standard input stays open, and nothing comes. */
   start(words: readonly string[]): ChildProcess
   /** Writes a file into the room and returns its name. */
   file(name: string, content: string | Uint8Array): string
@@ -40,7 +41,7 @@ export async function program(): Promise<Program> {
       const done = spawnSync(process.execPath, [path, ...words], { cwd: desk, encoding: 'utf8', input, env: { ...process.env, ...env }, maxBuffer: 1 << 28 })
       return { code: done.status, out: done.stdout, err: done.stderr }
     },
-    start: (words) => spawn(process.execPath, [path, ...words], { cwd: desk, stdio: ['ignore', 'pipe', 'pipe'] }),
+    start: (words) => spawn(process.execPath, [path, ...words], { cwd: desk, stdio: ['pipe', 'pipe', 'pipe'] }),
     file(name, content) {
       writeFileSync(join(desk, name), content)
       return name

@@ -62,6 +62,16 @@ describe('stopped', () => {
     expect(JSON.parse(out)).toMatchObject({ error: { code: 'cancelled' } })
   })
 
+  test.each([['raise', '-'], ['raise', 'small.obj', '--brief', '-']])('while it waits for standard input: %s %s', async (...words) => {
+    const child = cli.start([...words, '--out', 'stopped'])
+    const end = ended(child)
+    await begun()
+    await wait(100)
+    child.kill('SIGINT')
+    expect((await end).code).toBe(130)
+    expect(left()).toEqual([])
+  })
+
   test('in the middle of several plans nothing is written either', async () => {
     const child = cli.start(['raise', 'small.obj', 'large.obj', 'large.obj', '--out', 'several'])
     const end = ended(child)

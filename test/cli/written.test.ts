@@ -211,6 +211,14 @@ describe('what is written when', () => {
     expect(read('kept/notes.txt')).toBe('mine')
   })
 
+  test('an input is never replaced, not even with --overwrite', () => {
+    cli.file('roof.obj', gridObj(2, 2, 1))
+    const { code, err } = cli.run(['raise', 'roof.obj', '--out', '.', '--overwrite'])
+    expect([code, err]).toEqual([2, 'roof.obj: the output would replace this input; name another folder with --out.\n'])
+    expect(read('roof.obj')).toBe(gridObj(2, 2, 1))
+    rmSync(join(cli.room, 'roof.obj'))
+  })
+
   test('same input, same bytes', () => {
     for (const folder of ['one', 'two']) expect(cli.run(['raise', 'ring.obj', '--out', folder, '--full']).code).toBe(0)
     for (const name of readdirSync(join(cli.room, 'one'))) expect(read(`one/${name}`)).toBe(read(`two/${name}`))
