@@ -7,6 +7,7 @@
  * 2002); nodes here keep the coordinates that were drawn and are not moved to pixel centres.
  */
 import { GrowingInts } from '../base/geometry/growing.ts'
+import { NearPoints } from '../base/geometry/near-points.ts'
 import { crossingPoint } from '../base/geometry/segment-crossing.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
@@ -19,6 +20,8 @@ export interface Arrangement {
   readonly y: Float64Array
   /** 1 for given nodes that were moved onto a line that they missed. */
   readonly moved: Uint8Array
+  /** Node that stands for each given node: itself, unless moving brought it to another. */
+  readonly sameAs: Int32Array
   /** Edge e runs from node a[e] to b[e]; its half-edges are 2 e (that way) and 2 e + 1. No edge occurs twice. */
   readonly a: Int32Array
   readonly b: Int32Array
@@ -48,6 +51,8 @@ export function* arrangement(x: Float64Array, y: Float64Array, a: Int32Array, b:
   const lines: LineWork = { x: x.slice(), y: y.slice(), a: distinct.a, b: distinct.b }
   let chains = firstChains(distinct.half)
   const moved = new Uint8Array(given)
+  const sameAs = new Int32Array(given)
+  for (let node = 0; node < given; node += 1) sameAs[node] = node
   const gapOf = new Map<number, number>()
   let reach = options.snap
   yield { stage: 'Joining lines', done: 0.05 }
@@ -57,7 +62,7 @@ export function* arrangement(x: Float64Array, y: Float64Array, a: Int32Array, b:
     if (!touched.ok) return touched
     const touches = touched.value
     noteTouches(touches, gapOf, given)
-    if (round === 0) moveLooseEnds(lines, touches, moved, options)
+    if (round === 0) moveLooseEnds(lines, touches, moved, sameAs, options)
     const crossed = yield* crossings(lines, index, reach)
     if (!crossed.ok) return crossed
     const { cuts } = crossed.value
@@ -65,10 +70,10 @@ export function* arrangement(x: Float64Array, y: Float64Array, a: Int32Array, b:
     if (touches.edge.length === 0 && cuts.edge.length === 0) {
       const touchNode = Int32Array.from(gapOf.keys()).sort()
       const touchGap = Float64Array.from(touchNode, (node) => gapOf.get(node) ?? 0)
-      return ok({ x: lines.x, y: lines.y, moved, a: lines.a, b: lines.b, ...chains, touchNode, touchGap, index })
+      return ok({ x: lines.x, y: lines.y, moved, sameAs, a: lines.a, b: lines.b, ...chains, touchNode, touchGap, index })
     }
     yield { stage: 'Joining lines', done: 1 }
-    chains = cutEdges(lines, [touches, cuts], chains)
+    chains = cutEdges(lines, [touches, cuts], chains, sameAs)
     yield { stage: 'Joining lines', done: 0 }
     reach = Math.max(rounding, reach / 4)
   }
@@ -101,17 +106,18 @@ function noteTouches(cuts: Cuts, gapOf: Map<number, number>, given: number): voi
 
 /**
  * A line that ends just before or behind another is lengthened or cut so that it ends on it, in its own direction: both
- * stay straight. Where the two run nearly alike the end moves square to the other line.
+ * stay straight. Where the two run nearly alike the end moves square to the other line. An end that so comes to another
+ * node becomes that node.
  */
-function moveLooseEnds(lines: LineWork, touches: Cuts, moved: Uint8Array, { snap, rounding }: ArrangementOptions): void {
+function moveLooseEnds(lines: LineWork, touches: Cuts, moved: Uint8Array, sameAs: Int32Array, { snap, rounding }: ArrangementOptions): void {
   const { x, y, a, b } = lines
   const ends = new Int32Array(x.length)
-  const other = new Int32Array(x.length)
+  const origin = new Int32Array(x.length)
   for (let e = 0; e < a.length; e += 1) {
     ends[a[e]] += 1
     ends[b[e]] += 1
-    other[a[e]] = b[e]
-    other[b[e]] = a[e]
+    origin[a[e]] = b[e]
+    origin[b[e]] = a[e]
   }
   const edge = touches.edge.values()
   const node = touches.node.values()
@@ -122,10 +128,14 @@ function moveLooseEnds(lines: LineWork, touches: Cuts, moved: Uint8Array, { snap
     const known = nearest.get(node[k])
     if (known === undefined || gap[k] < gap[known]) nearest.set(node[k], k)
   }
+  if (nearest.size === 0) return
+  const near = new NearPoints(snap, x.length)
+  const nodeAt = new Int32Array(x.length)
+  for (let n = 0; n < x.length; n += 1) if (!nearest.has(n)) nodeAt[near.add(x[n], y[n])] = n
   const at = new Float64Array(2)
   for (const [n, k] of nearest) {
     const p = a[edge[k]], q = b[edge[k]]
-    crossingPoint(x[other[n]], y[other[n]], x[n], y[n], x[p], y[p], x[q], y[q], at)
+    crossingPoint(x[origin[n]], y[origin[n]], x[n], y[n], x[p], y[p], x[q], y[q], at)
     if (!(Math.hypot(at[0] - x[n], at[1] - y[n]) <= 2 * snap)) {
       const ux = x[q] - x[p], uy = y[q] - y[p]
       const share = ((x[n] - x[p]) * ux + (y[n] - y[p]) * uy) / (ux * ux + uy * uy)
@@ -135,11 +145,15 @@ function moveLooseEnds(lines: LineWork, touches: Cuts, moved: Uint8Array, { snap
     x[n] = at[0]
     y[n] = at[1]
     moved[n] = 1
+    const other = near.nearest(at[0], at[1])
+    if (other >= 0) sameAs[n] = nodeAt[other]
+    else nodeAt[near.add(at[0], at[1])] = n
   }
 }
 
 /** Replaces the edges that are cut by their pieces, drops repeats, and returns the lines' chains of the new edges. */
-function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains): Chains {
+function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains, sameAs: Int32Array): Chains {
+  const same = (node: number): number => (node < sameAs.length ? sameAs[node] : node)
   const { x, y, a, b } = lines
   const cutStart = new Int32Array(a.length + 1)
   for (const cuts of all) for (const edge of cuts.edge.values()) cutStart[edge + 1] += 1
@@ -164,13 +178,13 @@ function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains): Chains
       if (nodes.length > 1) nodes.sort((m, n) => along(m) - along(n) || m - n)
       for (const node of nodes) {
         if (node === last || node === a[e] || node === b[e]) continue
-        pieceA.push(last)
-        pieceB.push(node)
+        pieceA.push(same(last))
+        pieceB.push(same(node))
         last = node
       }
     }
-    pieceA.push(last)
-    pieceB.push(b[e])
+    pieceA.push(same(last))
+    pieceB.push(same(b[e]))
     pieceStart[e + 1] = pieceA.length
   }
 
@@ -183,8 +197,11 @@ function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains): Chains
     for (let k = chains.chainStart[i]; k < chains.chainStart[i + 1]; k += 1) {
       const half = chains.chain[k]
       const from = pieceStart[half >> 1], to = pieceStart[(half >> 1) + 1]
-      if ((half & 1) === 0) for (let piece = from; piece < to; piece += 1) chain.push(distinct.half[piece])
-      else for (let piece = to - 1; piece >= from; piece -= 1) chain.push(distinct.half[piece] ^ 1)
+      for (let step = 0; step < to - from; step += 1) {
+        const piece = distinct.half[(half & 1) === 0 ? from + step : to - 1 - step]
+        // Pieces whose ends are one node by now are gone.
+        if (piece >= 0) chain.push(piece ^ (half & 1))
+      }
     }
     chainStart[i + 1] = chain.length
   }

@@ -6,7 +6,7 @@ import { cellsSpanned, bin, densityGrid, pointsByCell, segmentsByCell, type Cell
 import { GrowingFloats, GrowingInts } from '../base/geometry/growing.ts'
 import { NearPoints } from '../base/geometry/near-points.ts'
 import { crossProperly, crossingPoint } from '../base/geometry/segment-crossing.ts'
-import { mostCrossings, mostPairs, mostTouches } from '../base/geometry/tolerance.ts'
+import { mostCrossings, mostPairs, mostTouches, splitSine } from '../base/geometry/tolerance.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 
@@ -57,10 +57,19 @@ export function* lineIndex({ x, y, a, b }: LineWork, pad: number): Steps<LineInd
   return { grid, edges }
 }
 
-/** Every node that lies within `reach` of the inside of an edge that does not end there. */
+/**
+ * Every node that lies within `reach` of the inside of an edge that does not end there. A node that a short edge ties to
+ * an end of that edge only touches it when both run nearly alike: plans have edges shorter than the snap distance.
+ */
 export function* touchingNodes({ x, y, a, b }: LineWork, { grid, edges }: LineIndex, reach: number): Steps<Result<Cuts>> {
   const nodes = pointsByCell(grid, x, y, x.length)
   const cuts = new Cuts()
+  const tied = ties(a, b)
+  const inUse = new Uint8Array(x.length)
+  for (let e = 0; e < a.length; e += 1) {
+    inUse[a[e]] = 1
+    inUse[b[e]] = 1
+  }
   let compared = 0
   let pairs = 0
   for (let cell = 0; cell + 1 < edges.start.length; cell += 1) {
@@ -82,12 +91,19 @@ export function* touchingNodes({ x, y, a, b }: LineWork, { grid, edges }: LineIn
       const reachAcross = reach * Math.sqrt(square)
       for (let n = nodesFrom; n < nodesTo; n += 1) {
         const node = nodes.item[n]
-        if (node === a[edge] || node === b[edge]) continue
+        if (node === a[edge] || node === b[edge] || inUse[node] === 0) continue
         const vx = x[node] - ax, vy = y[node] - ay
         const along = ux * vx + uy * vy
         if (!(along > 0 && along < square)) continue
         const across = Math.abs(ux * vy - uy * vx)
-        if (across <= reachAcross) cuts.add(edge, node, across / Math.sqrt(square))
+        if (across > reachAcross) continue
+        const gap = across / Math.sqrt(square)
+        if (gap > 0) {
+          const nearEnd = 2 * along <= square ? a[edge] : b[edge]
+          const far = Math.sqrt((x[node] - x[nearEnd]) ** 2 + (y[node] - y[nearEnd]) ** 2)
+          if (gap > splitSine * far && tied(node, nearEnd)) continue
+        }
+        cuts.add(edge, node, gap)
       }
     }
   }
@@ -168,6 +184,19 @@ export function* crossings(lines: LineWork, { grid, edges }: LineIndex, reach: n
     lines.y = grown.y.slice()
   }
   return ok({ cuts, newNodes: lines.x.length - oldCount })
+}
+
+/** Whether an edge joins two nodes; the table is made when it is first asked for. */
+function ties(a: Int32Array, b: Int32Array): (m: number, n: number) => boolean {
+  let known: Set<number> | null = null
+  const key = (m: number, n: number): number => Math.min(m, n) * 2 ** 26 + Math.max(m, n)
+  return (m, n) => {
+    if (known === null) {
+      known = new Set()
+      for (let e = 0; e < a.length; e += 1) known.add(key(a[e], b[e]))
+    }
+    return known.has(key(m, n))
+  }
 }
 
 function tooManyLines(x: number, y: number): Result<never> {

@@ -85,12 +85,12 @@ function centreOf(low: number, high: number): number {
 }
 
 /**
- * The plan tolerance, but at most a share of the short edges. Where the file states no unit the tolerance is that of the
+ * The plan tolerance, but at most a share of the shorter edges. Where the file states no unit the tolerance is that of the
  * unit which its lengths suggest: ends that miss by 0.3 are 0.3 mm where edges are 1500 long.
  */
 function defaultSnap(lengths: Float64Array, unit: Unit, isAssumed: boolean): number {
   const likely = isAssumed ? (likelyUnit(lengths, unit) ?? unit) : unit
-  const short = lengths.length === 0 ? Infinity : lengths[Math.floor(lengths.length / 20)]
+  const short = lengths.length === 0 ? Infinity : lengths[Math.floor(lengths.length / 4)]
   return Math.min(defaultSnap_mm / millimetresPer(likely), snapShare * short)
 }
 

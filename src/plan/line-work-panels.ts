@@ -1,4 +1,5 @@
 /** The panels of a drawing as clean faces: the closed outlines where they are the panels, else every region of its lines. */
+import { isStrip } from '../base/geometry/polygon-width.ts'
 import type { Repair } from '../base/repair.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
@@ -40,10 +41,11 @@ type Points = readonly (readonly [x: number, y: number])[]
  * "panel-round-hole", "island", "void-nowhere", "too-many-crossings", "too-many-lines", "tangled".
  */
 export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: number, voids: Points): Steps<Result<PanelFaces>> {
-  const { outlines: loops, holes, segments } = drawing
-  const points = yield* joinedPoints(frame.x, frame.y, [loops.point, holes.point, segments], frame.snap, frame.silent)
+  const { outlines: loops, holes } = drawing
+  const ends = lineEnds(drawing, frame)
+  const points = yield* joinedPoints(frame.x, frame.y, ends.a, ends.b, frame)
   const { nodeOf, pointOf } = points
-  const ends = lineEnds(drawing, nodeOf)
+  for (const list of [ends.a, ends.b]) for (let i = 0; i < list.length; i += 1) list[i] = list[i] < 0 ? -1 : nodeOf[list[i]]
   const nodeX = new Float64Array(pointOf.length)
   const nodeY = new Float64Array(pointOf.length)
   for (let node = 0; node < pointOf.length; node += 1) {
@@ -72,7 +74,9 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   yield { stage: 'Tracing panels', done: 0 }
   const graph = new Graph(lines)
   yield { stage: 'Tracing panels', done: 0.5 }
-  const common = { x, y, nodeOfPoint: nodeOf }
+  const nodeOfPoint = new Int32Array(nodeOf.length)
+  for (let i = 0; i < nodeOf.length; i += 1) nodeOfPoint[i] = nodeOf[i] < 0 ? -1 : lines.sameAs[nodeOf[i]]
+  const common = { x, y, nodeOfPoint }
 
   let notices: string[] = []
   if (loops.line.length > 0) {
@@ -82,7 +86,7 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
     const onHole = new Uint8Array(graph.edgeCount)
     for (let k = lines.chainStart[traced.firstHole]; k < lines.chainStart[traced.firstSegment]; k += 1) onHole[lines.chain[k] >> 1] = 1
     const judged = outlineFaces({
-      drawing, lines, graph, outlines, onHole, isOne: isOneFigure(graph), figures, snap: frame.snap, rounding: frame.rounding,
+      drawing, lines, graph, outlines, onHole, isOne: isOneFigure(graph), figures, snap: frame.snap, rounding: frame.rounding, x: frame.x, y: frame.y,
       at: traced.at, pointAt: (point) => [frame.planX[point], frame.planY[point]],
     })
     if (!judged.ok) return judged
@@ -133,22 +137,31 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   })
 }
 
-/** Ends of all lines as nodes: sides of outlines, sides of interior rings, open segments. */
-function lineEnds({ outlines, holes, segments }: Drawing, nodeOf: Int32Array): { a: Int32Array; b: Int32Array } {
+/**
+ * Ends of all lines as points: sides of outlines, sides of interior rings, open segments. An outline narrower than the
+ * snap distance is left out (-1), so that what lies on its two sides can be joined.
+ */
+function lineEnds({ outlines, holes, segments }: Drawing, { x, y, snap }: LineFrame): { a: Int32Array; b: Int32Array } {
   const a = new Int32Array(outlines.point.length + holes.point.length + segments.length / 2)
   const b = new Int32Array(a.length)
   let filled = 0
   for (const { start, point } of [outlines, holes]) {
     for (let i = 0; i + 1 < start.length; i += 1) {
+      if (isStrip(x, y, point, start[i], start[i + 1], snap)) {
+        a.fill(-1, filled, filled + start[i + 1] - start[i])
+        b.fill(-1, filled, filled + start[i + 1] - start[i])
+        filled += start[i + 1] - start[i]
+        continue
+      }
       for (let k = start[i]; k < start[i + 1]; k += 1, filled += 1) {
-        a[filled] = nodeOf[point[k]]
-        b[filled] = nodeOf[point[k + 1 < start[i + 1] ? k + 1 : start[i]]]
+        a[filled] = point[k]
+        b[filled] = point[k + 1 < start[i + 1] ? k + 1 : start[i]]
       }
     }
   }
   for (let i = 0; i < segments.length; i += 2, filled += 1) {
-    a[filled] = nodeOf[segments[i]]
-    b[filled] = nodeOf[segments[i + 1]]
+    a[filled] = segments[i]
+    b[filled] = segments[i + 1]
   }
   return { a, b }
 }

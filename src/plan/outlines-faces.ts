@@ -3,6 +3,7 @@
  * no other line runs inside one; then each is one region of the arrangement: at every corner its next side is also the
  * graph's next edge, and no figure floats inside it.
  */
+import { meanWidth } from '../base/geometry/polygon-width.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
 import type { Drawing } from './drawing.ts'
 import type { Arrangement } from './line-work-arrangement.ts'
@@ -38,7 +39,10 @@ export interface OutlineInput {
   /** Outlines whose mean width is below this have collapsed. */
   readonly snap: number
   readonly rounding: number
-  /** Coordinates of a point of the drawing, and of a node, in the plan. */
+  /** Coordinates per point of the drawing. */
+  readonly x: Float64Array
+  readonly y: Float64Array
+  /** Coordinates of a node, and of a point of the drawing, in the plan. */
   readonly at: (node: number) => [number, number]
   readonly pointAt: (point: number) => [number, number]
 }
@@ -75,7 +79,7 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
     let perimeter = 0
     for (let k = from; k < to; k += 1) perimeter += graph.length(outlines.half[k] >> 1)
     if (2 * outlines.area[i] <= input.snap * perimeter) {
-      const drawn = drawnWidth(input, i)
+      const drawn = meanWidth(input.x, input.y, loops.point, loops.start[i], loops.start[i + 1])
       const corner = input.pointAt(loops.point[loops.start[i]])
       if (drawn <= input.rounding) {
         return fail('no-area', 'the panel has no area', { ...(loops.line[i] > 0 ? { line: loops.line[i] } : {}), names: [panelName(i)], at: corner }, 'delete it, or give it its corners')
@@ -159,18 +163,4 @@ function three(known: Findings['overlap'], place: Place, panel: number): Finding
 function sameLoop(outlineOf: Int32Array, half: Int32Array, from: number, to: number, loop: number): boolean {
   for (let k = from; k < to; k += 1) if (outlineOf[half[k]] !== loop) return false
   return true
-}
-
-/** Mean width 2 A / perimeter of an outline as drawn. */
-function drawnWidth({ drawing, pointAt }: OutlineInput, loop: number): number {
-  const { start, point } = drawing.outlines
-  const [x0, y0] = pointAt(point[start[loop]])
-  let twice = 0, perimeter = 0
-  for (let k = start[loop], before = start[loop + 1] - 1; k < start[loop + 1]; before = k, k += 1) {
-    const [ax, ay] = pointAt(point[before])
-    const [bx, by] = pointAt(point[k])
-    twice += (ax - x0) * (by - y0) - (ay - y0) * (bx - x0)
-    perimeter += Math.hypot(bx - ax, by - ay)
-  }
-  return perimeter === 0 ? 0 : Math.abs(twice) / perimeter
 }

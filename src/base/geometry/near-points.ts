@@ -67,6 +67,21 @@ export class NearPoints {
     return best
   }
 
+  /** Indices of all points within the reach, in no particular order. */
+  within(x: number, y: number): number[] {
+    const { cell, first, px, py, following, reach } = this
+    const out: number[] = []
+    const slots = new Set<number>()
+    for (const row of [Math.floor((y - reach) / cell), Math.floor((y + reach) / cell)]) {
+      for (const column of [Math.floor((x - reach) / cell), Math.floor((x + reach) / cell)]) slots.add(slot(column, row, first.length))
+    }
+    // The reach is a quarter of a cell, so the four corners name every cell.
+    for (const at of slots) {
+      for (let i = first[at]; i >= 0; i = following[i]) if ((px[i] - x) ** 2 + (py[i] - y) ** 2 <= reach * reach) out.push(i)
+    }
+    return out
+  }
+
   private link(index: number): void {
     const at = slot(Math.floor(this.px[index] / this.cell), Math.floor(this.py[index] / this.cell), this.first.length)
     this.following[index] = this.first[at]

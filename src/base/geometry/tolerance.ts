@@ -15,6 +15,12 @@ export const tau = 1e-13
 /** A count is only called decided when it is the same here. */
 export const tauCoarse = 1e-11
 
+/**
+ * A row on heights that every lift leaves within this share of its terms is the same in all roofs: lifts are flat to 5e-14, and
+ * the least fold of a live joint moves its row by 1e-9 at 100,000 panels.
+ */
+export const fixedShare = 1e-10
+
 /** A joint is frozen where its force is below this share of the RMS force (measured: frozen 3e-11, live 1e-4). */
 export const frozenShare = 1e-7
 
@@ -73,7 +79,7 @@ export const areaTie = 1e-9
 /** The plan tolerance of a drawing, in mm: line ends nearer than this are one node. Our own choice, below any joint's width. */
 export const snap_mm = 1
 
-/** The snap distance is never more than this share of the drawing's short edges (the 5 % quantile), whatever the unit. */
+/** The snap distance is never more than this share of the drawing's shorter edges (the lower quartile), whatever the unit. */
 export const snapShare = 1 / 20
 
 /** What moves by less than this share of the snap distance is rounding of the file's digits and no repair: 1 um of 1 mm. */
@@ -99,6 +105,9 @@ export const mostPairs = 1_000_000_000
 
 /** Nodes on the inside of lines at most: thousands of lines drawn over each other. */
 export const mostTouches = 5_000_000
+
+/** Two edges from one node that part at more than this sine (about a degree) are two edges, however short; less is one drawn twice. */
+export const splitSine = 0.02
 
 /** A void whose mean width is below this, in mm, is a gap between outlines rather than an opening. */
 export const gap_mm = 20
