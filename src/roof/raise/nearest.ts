@@ -75,7 +75,7 @@ export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metri
   let size = dot(residual, g)
   const first = dot(pull, projected(space, pull))
   const most = Math.min(2 * space.dimension + 10, mostSteps)
-  for (let step = 0; step < most && size > nearestShare ** 2 * first; step += 1) {
+  for (let step = 0; step < most && size > nearestShare ** 2 * first && isProjection(g, size); step += 1) {
     yield { stage: 'Raising', done: 0.5 + (0.5 * step) / most }
     const turned = metric.apply(direction)
     const curvature = dot(direction, turned)
@@ -91,6 +91,15 @@ export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metri
     for (let i = 0; i < n; i += 1) direction[i] = g[i] + share * direction[i]
   }
   return yield* broughtFlat(space, h, 1)
+}
+
+/**
+ * Whether g is the projection of the residual r, `along` = r.g: then r.g = g.g, to the 1e-3 that the projection is good to.
+ * Where only rounding is left of it, g stands on what is not a lift, r.g is large beside g.g, and a step would leave the lifts.
+ */
+function isProjection(g: Float64Array, along: number): boolean {
+  const size = dot(g, g)
+  return along < 2 * size && along > size / 2
 }
 
 /** Node areas of a plan with panels of 1:1000 need some hundred steps; usual plans take under twenty. */
