@@ -36,6 +36,7 @@ function kind(name: string, description: string, places: readonly string[], fiel
       at: refs.length === 1 ? only : { oneOf: refs },
       ...fields,
       soft: { type: 'number', exclusiveMinimum: 0, description: 'weight of a wish; without it the condition must be met' },
+      off: { type: 'boolean', description: 'true: the condition is kept here and not asked for; default: false' },
     },
     required: ['kind', 'at', ...required],
     additionalProperties: false,
@@ -113,6 +114,14 @@ export const briefSchema: SchemaDocument = {
           bearing_deg: number('downhill direction, clockwise from +y'),
         }, ['pitch_deg', 'bearing_deg']),
         kind('flush', 'the two panels of each joint in one plane', ['joints'], {}),
+        kind('form-force', 'the form force of each joint: the jump of slope across it, which carries no load; more than 0 is a valley, less a ridge', ['joints'], {
+          force: {
+            oneOf: [
+              number('slope on the left less slope on the right, rise over run: 0.1 folds a level panel by 5.7 degrees'),
+              { type: 'string', enum: ['ridge', 'valley', 'flush'], description: 'the sign alone: a ridge or a valley of at least 0.6 degrees, or no fold' },
+            ],
+          },
+        }, ['force']),
         kind('profile', 'the nodes of a run, or nodes in order, held to a section', ['run', 'nodes'], {
           section: { $ref: '#/$defs/section' },
           level: number('level of both ends of an arc or pitch; default: the datum'),

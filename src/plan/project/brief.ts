@@ -81,6 +81,7 @@ interface WrittenCondition {
   readonly section?: { readonly points?: readonly (readonly [number, number])[] }
   readonly level?: number
   readonly soft?: number
+  readonly off?: boolean
 }
 
 function foreignDocument(value: unknown): Problem | null {
@@ -141,12 +142,13 @@ function namedConditions(written: readonly WrittenCondition[]): Result<readonly 
     }
   }
   const hasLevel = ['level', 'fall', 'profile']
-  return ok(written.map((condition) => ({
+  return ok(written.map(({ off, ...condition }) => ({
     ...condition,
     name: condition.name ?? nextName(condition.kind),
     at: condition.at.rim === undefined ? condition.at : { rim: rimOf(condition.at.rim) },
     ...(hasLevel.includes(condition.kind) ? { level: condition.level ?? null } : {}),
     soft: condition.soft ?? null,
+    ...(off === true ? { off } : {}),
   }) as unknown as Condition))
 }
 

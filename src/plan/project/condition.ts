@@ -40,6 +40,8 @@ interface Common {
   readonly name: string
   /** Weight (> 0) of a soft condition; null: hard. */
   readonly soft: number | null
+  /** Switched off: kept in the document, and nothing is asked by it. */
+  readonly off?: true
 }
 
 /** All nodes at one level; null: at the datum. */
@@ -108,6 +110,19 @@ export interface ProfileCondition extends Common {
   readonly level: number | null
 }
 
+/** What a form force may be asked to be by its sign alone. */
+export type Fold = 'ridge' | 'valley' | 'flush'
+
+/**
+ * Each joint has this form force, the signed jump of slope across it (no unit): > 0 a valley, < 0 a ridge. A word asks
+ * for the sign alone: ridge and valley at least the fold `leastFold` of roof/conditions, flush none.
+ */
+export interface FormForceCondition extends Common {
+  readonly kind: 'form-force'
+  readonly at: AtJoints
+  readonly force: number | Fold
+}
+
 export type Condition =
   | LevelCondition
   | FallCondition
@@ -117,15 +132,16 @@ export type Condition =
   | PlaneCondition
   | FlushCondition
   | ProfileCondition
+  | FormForceCondition
 
 export type ConditionKind = Condition['kind']
 
 /** Kinds that have their name and no code yet; a brief that uses one is refused by that name. */
-export const kindsNotBuilt: readonly string[] = ['form-force', 'bounds', 'one-way', 'slope']
+export const kindsNotBuilt: readonly string[] = ['bounds', 'one-way', 'slope']
 
 /**
  * The condition with all its lengths and points multiplied by `factor`: from the brief's unit to the plan's. Names,
- * angles, per mille and millimetres stay.
+ * angles, per mille, form forces and millimetres stay.
  */
 export function inUnit(condition: Condition, factor: number): Condition {
   if (factor === 1) return condition

@@ -52,7 +52,10 @@ export function wishesOf(brief: Brief, options: Options, unit: Unit): Result<Wis
   if (!pitch.ok) return pitch
 
   const conditions: Condition[] = []
-  for (const condition of brief.conditions) if (!(options.rim !== null && levelsOuterRim(condition))) conditions.push(inUnit(condition, fromBrief))
+  for (const condition of brief.conditions) {
+    if (condition.off === true || (options.rim !== null && levelsOuterRim(condition))) continue
+    conditions.push(inUnit(condition, fromBrief))
+  }
   const rim = rimCondition(options.rim, typed)
   if (!rim.ok) return rim
   if (rim.value !== null) conditions.push(rim.value)

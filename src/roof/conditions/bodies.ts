@@ -4,7 +4,8 @@
  *
  *   dim 1: h_n = c + offset_n             (equal levels, a fall or a plane of known gradient without a level)
  *   dim 2: h_n = c + d t_n                (a straight run, t_n along it)
- *   dim 3: h_n = c + g . p_n              (a panel, panels in one plane)
+ *   dim 3: h_n = c + g . p_n + offset_n   (a panel, panels in one plane; with a form force: a plane and corners that lie
+ *                                          so high over it)
  *
  * So dim known heights in general position give the rest.
  */

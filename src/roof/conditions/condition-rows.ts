@@ -1,4 +1,4 @@
-/** All conditions of a plan as rows: the hard ones, and the soft ones with their weights. */
+/** All conditions of a plan as rows: the hard ones, the soft ones with their weights, and those that bound one side only. */
 import { never } from '../../base/assert.ts'
 import { ok, placed, type Result } from '../../base/result.ts'
 import type { Plan } from '../../plan/plan.ts'
@@ -7,6 +7,7 @@ import { coplanarRows } from './coplanar.ts'
 import { equalRows } from './equal.ts'
 import { fallRows } from './fall.ts'
 import { flushRows } from './flush.ts'
+import { formForceRows } from './form-force.ts'
 import { levelRows } from './level.ts'
 import { planeRows } from './plane.ts'
 import { profileRows } from './profile.ts'
@@ -15,7 +16,7 @@ import { siteOf, type Site } from './site.ts'
 import { straightRows } from './straight.ts'
 
 export interface SoftRows extends Rows {
-  /** Weight of each row's condition. */
+  /** Weight of each row's condition; infinite where a hard one stands among them. */
   readonly softWeight: Float64Array
 }
 
@@ -30,6 +31,8 @@ export interface Held {
 export interface ConditionRows {
   readonly hard: Rows
   readonly soft: SoftRows
+  /** Rows that read "sum of weight * h <= value": form forces of which the sign alone is asked, hard and soft. */
+  readonly signed: SoftRows
   /** One per condition, in the order given: the `condition` of the rows counts in it. */
   readonly held: readonly Held[]
 }
@@ -42,18 +45,18 @@ export function conditionRows(plan: Plan, conditions: readonly Condition[], datu
   const site = siteOf(plan, datum)
   const hard = rowList()
   const soft = rowList()
+  const signed = rowList()
   const held: Held[] = []
   for (const [index, condition] of conditions.entries()) {
-    const nodes = rowsOf(site, condition, (condition.soft === null ? hard : soft).emit(index))
+    const nodes = rowsOf(site, condition, (condition.soft === null ? hard : soft).emit(index), signed.emit(index))
     if (!nodes.ok) return { ok: false, problem: placed(nodes.problem, { entity: `condition "${condition.name}"` }) }
     held.push({ name: condition.name, kind: condition.kind, soft: condition.soft !== null, nodes: nodes.value })
   }
-  const softRows = soft.rows()
-  const softWeight = Float64Array.from(softRows.condition, (index) => conditions[index].soft ?? 0)
-  return ok({ hard: hard.rows(), soft: { ...softRows, softWeight }, held })
+  const weighted = (rows: Rows): SoftRows => ({ ...rows, softWeight: Float64Array.from(rows.condition, (index) => conditions[index].soft ?? Infinity) })
+  return ok({ hard: hard.rows(), soft: weighted(soft.rows()), signed: weighted(signed.rows()), held })
 }
 
-function rowsOf(site: Site, condition: Condition, emit: Emit): Result<Int32Array> {
+function rowsOf(site: Site, condition: Condition, emit: Emit, signed: Emit): Result<Int32Array> {
   switch (condition.kind) {
     case 'level': return levelRows(site, condition, emit)
     case 'fall': return fallRows(site, condition, emit)
@@ -63,6 +66,7 @@ function rowsOf(site: Site, condition: Condition, emit: Emit): Result<Int32Array
     case 'plane': return planeRows(site, condition, emit)
     case 'flush': return flushRows(site, condition, emit)
     case 'profile': return profileRows(site, condition, emit)
+    case 'form-force': return formForceRows(site, condition, emit, signed)
     default: return never(condition)
   }
 }

@@ -246,9 +246,12 @@ function heightOn(
     const sharpness = Math.max(1, squaredDistance(plan, p, q) / Math.abs(whole))
     const u = doubleArea(plan, q, r, n) / whole
     const v = doubleArea(plan, r, p, n) / whole
-    take(out, u, sharpness, height[p], rounding[p])
-    take(out, v, sharpness, height[q], rounding[q])
-    take(out, 1 - u - v, sharpness, height[r], rounding[r])
+    // The heights less their offsets lie in one plane.
+    out.value = bodies.offset[i]
+    out.error = epsilon * Math.abs(out.value)
+    take(out, u, sharpness, height[p] - bodies.offset[a], rounding[p])
+    take(out, v, sharpness, height[q] - bodies.offset[b], rounding[q])
+    take(out, 1 - u - v, sharpness, height[r] - bodies.offset[c], rounding[r])
   }
 }
 

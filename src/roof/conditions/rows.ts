@@ -48,3 +48,19 @@ export function rowList(): { emit(condition: number): Emit; rows(): Rows } {
     }),
   }
 }
+
+/** The rows and, after them, those of another list with these numbers. */
+export function joined(rows: Rows, others: Rows, which: readonly number[]): Rows {
+  const entries = which.flatMap((r) => Array.from({ length: others.start[r + 1] - others.start[r] }, (_, k) => others.start[r] + k))
+  const start = new Int32Array(rows.start.length + which.length)
+  start.set(rows.start)
+  which.forEach((r, k) => (start[rows.start.length + k] = start[rows.start.length + k - 1] + others.start[r + 1] - others.start[r]))
+  const both = (a: ArrayLike<number>, b: ArrayLike<number>, pick: readonly number[]): number[] => [...Array.from(a), ...pick.map((k) => b[k])]
+  return {
+    start,
+    node: Int32Array.from(both(rows.node, others.node, entries)),
+    weight: Float64Array.from(both(rows.weight, others.weight, entries)),
+    value: Float64Array.from(both(rows.value, others.value, which)),
+    condition: Int32Array.from(both(rows.condition, others.condition, which)),
+  }
+}

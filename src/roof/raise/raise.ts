@@ -5,19 +5,21 @@
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { ConditionRows } from '../conditions/condition-rows.ts'
-import { rowCount } from '../conditions/rows.ts'
+import { joined, rowCount } from '../conditions/rows.ts'
 import { dualWalk } from '../stress/dual-walk.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
+import { flatGroups } from '../stress/frozen-joints.ts'
 import { stressOfGradients } from '../stress/forces.ts'
 import { panelPlanes, squaredResidual } from '../stress/panel-bases.ts'
 import { clashOf, type FoundClash } from './clash.ts'
 import { integrate } from './integrate.ts'
 import { broughtFlat } from './nearest.ts'
 import { nearRoof } from './near-roof.ts'
+import { oneSided, type OneSided } from './one-sided.ts'
 import { outerRimNodes, type RiseRule } from './rise.ts'
 import { roofOfChoice } from './roof-of-choice.ts'
 import { shapeHeights, type Shape } from './shapes.ts'
-import { metricOf } from './soft.ts'
+import { metricOf, type Metric } from './soft.ts'
 import { underConditions, type UnderConditions } from './under-conditions.ts'
 
 export interface RaiseQuestion {
@@ -59,17 +61,17 @@ export interface Raised {
 }
 
 export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion): Steps<Raised> {
-  const { rows, names, rule } = question
+  const { rows, rule } = question
   const { wish, rise } = wishOf(plan, question)
-  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas)
-  const clashes = yield* clashesOf(plan, free, areas, question, under)
+  const metric = metricOf(areas, rows.soft)
+  const { under, sides, clashes } = yield* keptBy(plan, free, areas, question, wish, metric)
 
   const folding = plan.jointCount - under.frozen.reduce((sum, value) => sum + value, 0)
   const lifts = under.start !== null && (folding === plan.jointCount || question.pitched)
   if (under.start !== null && (lifts || folding > 0)) {
     const ground = {
-      space: under.space, tilts: under.tilts, areas, metric: metricOf(areas, rows.soft), rim: outerRimNodes(plan),
-      scaleFree: under.scaleFree && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
+      space: under.space, tilts: under.tilts, areas, metric, sides, rim: outerRimNodes(plan),
+      scaleFree: under.scaleFree && sides === null && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
     }
     const choice = yield* roofOfChoice(ground, under.start, { heights: wish, rise, rule, settle: question.target === null })
     return {
@@ -96,10 +98,29 @@ function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; rise
   return { wish: heights.map((height) => amplitude * height), rise }
 }
 
-function* clashesOf(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, under: UnderConditions): Steps<readonly FoundClash[]> {
-  if (under.rowClashes.length > 0) return under.rowClashes
-  if (under.start !== null || rowCount(question.rows.hard) === 0) return []
-  return [yield* clashOf(plan, free, question.rows.hard, question.names, areas)]
+interface Kept {
+  readonly under: UnderConditions
+  /** null: no condition bounds one side, or no roof is left. */
+  readonly sides: OneSided | null
+  readonly clashes: readonly FoundClash[]
+}
+
+/** What the hard conditions leave, equalities first and then what bounds one side; or the clash among them. */
+function* keptBy(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, wish: Float64Array, metric: Metric): Steps<Kept> {
+  const { rows, names } = question
+  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas)
+  if (under.rowClashes.length > 0) return { under, sides: null, clashes: under.rowClashes }
+  if (under.start === null) return { under, sides: null, clashes: [yield* clashOf(plan, free, rows.hard, names, areas)] }
+  if (rowCount(rows.signed) === 0) return { under, sides: null, clashes: [] }
+  const sides = oneSided(under.space, metric, rows.signed)
+  const { broken } = yield* sides.held(under.start)
+  if (broken.length === 0) return { under, sides, clashes: [] }
+  // The broken ones held at their bounds clash like any others, and the near roof comes near to them.
+  const hard = joined(rows.hard, rows.signed, broken)
+  const bound = yield* underConditions(plan, free, hard, names, wish, areas)
+  const clashes = bound.rowClashes.length > 0 ? bound.rowClashes : [yield* clashOf(plan, free, hard, names, areas)]
+  const frozen = new Uint8Array(plan.jointCount).fill(1)
+  return { under: { ...bound, start: null, freedomLeft: null, frozen, ...flatGroups(plan, frozen) }, sides: null, clashes }
 }
 
 /**

@@ -8,6 +8,7 @@ import type { LiftSpace } from '../stress/lift-space.ts'
 import { smoothestLifts } from '../stress/smoothest-lifts.ts'
 import { lessTilt } from '../stress/tilt-part.ts'
 import { nearestLift } from './nearest.ts'
+import type { OneSided } from './one-sided.ts'
 import { riseOf, springing, type RiseRule } from './rise.ts'
 import type { Metric } from './soft.ts'
 
@@ -37,6 +38,8 @@ export interface Ground {
   readonly areas: Float64Array
   /** Node areas and soft conditions: what the nearest roof is nearest in. */
   readonly metric: Metric
+  /** Conditions that bound one side, which some roof is known to keep; null: there are none. */
+  readonly sides: OneSided | null
   readonly rim: Int32Array
   /** The conditions, soft ones too, stay as they are met when all heights are scaled about the datum. */
   readonly scaleFree: boolean
@@ -49,7 +52,7 @@ export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): 
   const { space, metric, rim } = ground
   if (wish.rise === null) {
     const nearest = yield* nearestLift(space, start, metric, wish.heights, false)
-    const heights = settled(ground, nearest, wish)
+    const heights = settled(ground, yield* onSides(ground, nearest), wish)
     return { heights, notice: null, kept: keptOf(ground, heights, wish.heights) }
   }
   if (ground.scaleFree) {
@@ -81,42 +84,53 @@ function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: nu
       notice = smoothestSaid
     }
   }
-  const at = (a: number): Float64Array => rest.map((height, i) => height + a * direction[i])
-  const riseAt = (a: number): number => riseOf(at(a), rim, wish.rule)
+  const at = (a: number): Steps<Float64Array> => onSides(ground, rest.map((height, i) => height + a * direction[i]))
+  function* riseAt(a: number): Steps<number> {
+    return riseOf(yield* at(a), rim, wish.rule)
+  }
   const scale = riseOf(direction, rim, { ...wish.rule, datum: null }) + spread(direction)
-  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: settled(ground, rest, wish), notice, kept }
+  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: settled(ground, yield* at(0), wish), notice, kept }
   const unit = asked / scale
-  const a = amplitudeFor(riseAt, asked, unit)
-  return { heights: settled(ground, at(a), wish), notice, kept }
+  const a = yield* amplitudeFor(riseAt, asked, unit)
+  return { heights: settled(ground, yield* at(a), wish), notice, kept }
+}
+
+/** The nearest roof that keeps the one-sided conditions too. */
+function* onSides({ sides }: Ground, heights: Float64Array): Steps<Float64Array> {
+  return sides === null ? heights : (yield* sides.held(heights)).heights
 }
 
 /**
  * Smallest a >= 0 with rise(a) = asked for a convex rise; where the rise is above the asked one all the way, the a of the
- * least rise; where it never gets there, as far as the search goes.
+ * least rise; where it never gets there (the peak is held, by conditions that bound one side too), `unit`.
  */
-function amplitudeFor(riseAt: (a: number) => number, asked: number, unit: number): number {
+function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit: number): Steps<number> {
   let low = 0
   let high = unit
-  if (riseAt(0) > asked) {
+  if ((yield* riseAt(0)) > asked) {
     // Above already: walk down the convex valley on the side where it falls.
     let left = -64 * unit, right = 64 * unit
     for (let k = 0; k < 100; k += 1) {
       const a = left + (right - left) / 3, b = right - (right - left) / 3
-      if (riseAt(a) < riseAt(b)) right = b
+      if ((yield* riseAt(a)) < (yield* riseAt(b))) right = b
       else left = a
     }
     const bottom = (left + right) / 2
-    if (riseAt(bottom) >= asked) return bottom
+    if ((yield* riseAt(bottom)) >= asked) return bottom
     low = bottom
     high = 0
   } else {
-    for (let k = 0; k < 60 && riseAt(high) < asked; k += 1) high *= 2
-    if (riseAt(high) < asked) return high
+    let doublings = 0
+    while (doublings < 60 && (yield* riseAt(high)) < asked) {
+      high *= 2
+      doublings += 1
+    }
+    if (doublings === 60) return unit
   }
   for (let k = 0; k < 100; k += 1) {
     const middle = (low + high) / 2
     if (middle === low || middle === high) break
-    if (riseAt(middle) < asked) low = middle
+    if ((yield* riseAt(middle)) < asked) low = middle
     else high = middle
   }
   return (low + high) / 2

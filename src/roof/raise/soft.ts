@@ -14,11 +14,15 @@ export interface Metric {
   pull(wish: Float64Array, zero: boolean): Float64Array
 }
 
-export function metricOf(areas: Float64Array, soft: SoftRows): Metric {
-  const nodeCount = areas.length
+/** What each row counts: its condition's weight, shared among the condition's rows; see above. */
+export function rowWeights(soft: SoftRows, nodeCount: number): Float64Array {
   const rowsOf = new Map<number, number>()
   for (const condition of soft.condition) rowsOf.set(condition, (rowsOf.get(condition) ?? 0) + 1)
-  const weight = soft.softWeight.map((w, r) => (w * nodeCount) / (rowsOf.get(soft.condition[r]) ?? 1))
+  return soft.softWeight.map((w, r) => (w * nodeCount) / (rowsOf.get(soft.condition[r]) ?? 1))
+}
+
+export function metricOf(areas: Float64Array, soft: SoftRows): Metric {
+  const weight = rowWeights(soft, areas.length)
   const spread = (out: Float64Array, r: number, amount: number): void => {
     for (let k = soft.start[r]; k < soft.start[r + 1]; k += 1) out[soft.node[k]] += amount * soft.weight[k]
   }

@@ -95,3 +95,7 @@ test('rises that are not above 0 are refused with the way out', () => {
   expect(refusal({ rise: '-2m' })).toBe('--rise: the rise must be more than 0; use --down for a roof that hangs from its rim.')
   expect(refusal({ rise: 0 })).toContain('more than 0')
 })
+
+test('what is switched off is not asked for', () => {
+  expect(wishes({ conditions: [{ ...gutter, off: true }, rim] }, {}).conditions).toEqual([rim])
+})
