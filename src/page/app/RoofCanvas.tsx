@@ -96,14 +96,18 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
   const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize])
   const selectedPanel = selection?.kind === 'panel' ? selection.index : -1
   const scene = useMemo<RoofScene | null>(
-    () => made === null ? null : roofScene(answer, { ...made, theme: themes[themeName], exaggeration, scale, selectedPanel }),
-    [answer, made, themeName, exaggeration, scale, selectedPanel],
+    () => made === null ? null : roofScene(answer, { ...made, theme: themes[themeName], exaggeration, scale }),
+    [answer, made, themeName, exaggeration, scale],
   )
   const invalidate = useThree((three) => three.invalidate)
   useEffect(() => {
     invalidate()
     return () => scene?.dispose()
   }, [scene, invalidate])
+  useEffect(() => {
+    scene?.select(selectedPanel)
+    invalidate()
+  }, [scene, selectedPanel, invalidate])
   useFrame(({ camera }) => scene?.face(camera, size.height))
   const down = useRef<readonly [number, number]>([0, 0])
   return (

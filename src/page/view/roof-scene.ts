@@ -19,7 +19,8 @@ export interface PaintedRoof {
   readonly hatch: { readonly start: Int32Array; readonly ends: Float32Array; readonly water: boolean }[]
   readonly curtain: Float32Array
   readonly theme: Theme
-  readonly selected: number
+  /** Selected panel, -1: none. Changes without a new scene. */
+  selected: number
 }
 
 export interface RoofScene {
@@ -29,6 +30,8 @@ export interface RoofScene {
   readonly top: number
   /** Turns the ribbons towards the camera; call before every frame. `height`: of the picture in px. */
   face(camera: Camera, height: number): void
+  /** Outlines a panel, -1: none. */
+  select(panel: number): void
   dispose(): void
 }
 
@@ -39,7 +42,6 @@ export interface RoofSceneOptions {
   readonly exaggeration: number
   /** px to the plan unit at the fitted scale: decides on detail and dashes. */
   readonly scale: number
-  readonly selectedPanel: number
 }
 
 /** The scene of an answer's roof, null when it has none. */
@@ -59,15 +61,24 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
   for (const set of hatch) group.add(hatchLines(set, theme, plan.frame.span))
   const ribbons = ribbonMesh(strokes, theme, plan.frame.span)
   group.add(ribbons.mesh)
-  const outline = selectedRibbons(shape, options.selectedPanel, theme)
-  if (outline !== null) group.add(outline.mesh)
-  const painted: PaintedRoof = { surface: shape, strokes, hatch, curtain, theme, selected: options.selectedPanel }
+  let outline: Ribbons | null = null
+  const painted: PaintedRoof = { surface: shape, strokes, hatch, curtain, theme, selected: -1 }
   group.userData.roof = painted
   return {
     group, faces, panelOfTriangle: shape.panelOfTriangle, top: shape.top,
     face(camera, height) {
       ribbons.face(camera, height)
       outline?.face(camera, height)
+    },
+    select(panel) {
+      painted.selected = panel
+      if (outline !== null) {
+        group.remove(outline.mesh)
+        outline.mesh.geometry.dispose()
+        ;(outline.mesh.material as MeshBasicMaterial).dispose()
+      }
+      outline = selectedRibbons(shape, panel, theme)
+      if (outline !== null) group.add(outline.mesh)
     },
     dispose() {
       group.traverse((object) => {

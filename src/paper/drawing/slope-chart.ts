@@ -29,6 +29,7 @@ export interface SlopeChartOptions {
   readonly selection: Selection | null
   /** Gradients before the edit in hand, gx gy ..: how far each panel has moved is drawn; null: no edit in hand. */
   readonly before: Float64Array | null
+  /** The slope reading, whose tones the points take; null: worked out here. */
   readonly tones: Reading | null
 }
 
@@ -68,11 +69,11 @@ export function slopeChart(answer: Answer, options: SlopeChartOptions): DisplayL
     points[2 * p] = window.middleX + window.scale * x
     points[2 * p + 1] = window.middleY - window.scale * y
   }
+  const slopes = options.tones ?? slopeReading(answer, options.leastSlope)
   items.push(...edges(answer, points, options))
   if (options.before !== null) items.push(...moves(answer, points, options.before, window))
-  items.push(...panelPoints(answer, points, options))
-  items.push(...callouts(answer, points, options, window))
-  const slopes = slopeReading(answer, options.leastSlope)
+  items.push(...panelPoints(answer, points, slopes))
+  items.push(...callouts(points, slopes, options, window))
   return {
     width, height, title, items,
     description: `Slopes from ${slopeFigure(slopes.smallest, options.unit)} to ${slopeFigure(slopes.largest, options.unit)}; a point a panel, where it falls to.`,
@@ -154,9 +155,8 @@ function moves(answer: Answer, points: Float64Array, before: Float64Array, windo
   return batch.empty ? [] : [batch.strokes('moved')]
 }
 
-function panelPoints(answer: Answer, points: Float64Array, { leastSlope, tones }: SlopeChartOptions): Item[] {
+function panelPoints(answer: Answer, points: Float64Array, reading: Reading): Item[] {
   const { plan } = answer
-  const reading = tones !== null && tones.panelClass !== null ? tones : slopeReading(answer, leastSlope)
   const many = plan.panelCount > manyPanels
   const byClass = reading.panelClasses.map(() => [] as number[])
   const paper: number[] = []
@@ -176,11 +176,8 @@ function panelPoints(answer: Answer, points: Float64Array, { leastSlope, tones }
 }
 
 /** The selected panel and the steepest one, named on plates outside the figure. */
-function callouts(answer: Answer, points: Float64Array, { selection, unit }: SlopeChartOptions, window: ChartWindow): Item[] {
-  const { roof } = answer
-  if (roof === null) return []
+function callouts(points: Float64Array, slopes: Reading, { selection, unit }: SlopeChartOptions, window: ChartWindow): Item[] {
   const items: Item[] = []
-  const slopes = slopeReading(answer, null)
   let steepest = 0
   for (let p = 1; p < slopes.value.length; p += 1) if (slopes.value[p] > slopes.value[steepest]) steepest = p
   const chosen = selection !== null && selection.kind === 'panel' ? selection.index : -1
