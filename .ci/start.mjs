@@ -5,7 +5,7 @@ import { join } from 'node:path'
 import { root, tool, vite } from './tools.mjs'
 
 /** The sample that is shown; without it the first plan among the samples. */
-const preferred = 'market-hall.dxf'
+const preferred = 'tern-yard-court.geojson'
 const out = join('out', 'sample')
 
 if (tool(vite, ['build', '--mode', 'cli', '--logLevel', 'warn']) !== 0) {

@@ -4,6 +4,8 @@
  */
 import { sentence, type Problem } from '../base/result.ts'
 import { jsonText } from '../formats/write-json.ts'
+import type { OpenQuestion } from '../job/check.ts'
+import { questionSentence } from '../paper/report/drawing-sentences.ts'
 import { printable } from '../paper/report/printable.ts'
 import { osCode, osReason } from './os-reason.ts'
 import { ProgressBar } from './progress-bar.ts'
@@ -52,7 +54,7 @@ export class Screen {
 
   /** A problem as a sentence; a name that stands first keeps its letters. */
   complain(problem: Problem): void {
-    const words = printable(sentence(problem))
+    const words = printable('questions' in problem ? openQuestion(problem as OpenQuestion) : sentence(problem))
     this.err.write(`${problem.where === null ? words.slice(0, 1).toUpperCase() + words.slice(1) : words}\n`)
   }
 
@@ -70,6 +72,11 @@ export class Screen {
   private print(text: string): void {
     if (!this.isClosed) this.out.write(text)
   }
+}
+
+/** What is asked, and what answers it. */
+function openQuestion({ questions, where }: OpenQuestion): string {
+  return `${where?.file === undefined ? '' : `${where.file}: `}${questions.map(questionSentence).join(' ')}`
 }
 
 /** A problem as `--json` prints it. */

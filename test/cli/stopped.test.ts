@@ -115,7 +115,7 @@ describe('killed at random moments (seed 20)', () => {
     expect((await ended(cli.start(words))).code).toBe(0)
     expect(left()).toEqual(['killed'])
     expect(readdirSync(join(cli.room, 'killed')).sort()).toEqual(all)
-  })
+  }, 180_000)
 
   test('over an earlier run: after the next run the folder is whole, and foreign files are still there', async () => {
     mkdirSync(join(cli.room, 'kept'))
@@ -139,5 +139,5 @@ describe('killed at random moments (seed 20)', () => {
     expect((await ended(cli.start(words(3)))).code).toBe(0)
     expect(readdirSync(join(cli.room, 'kept')).sort()).toEqual([...all, 'notes.txt'].sort())
     expect(riseOf()).toBe(3)
-  })
+  }, 180_000)
 })

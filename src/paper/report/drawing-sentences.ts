@@ -20,7 +20,7 @@ const states: Readonly<Record<Repair['state'], string>> = { applied: 'Repaired',
 export function drawingSentences({ repairs, questions, leftOut, notices }: DrawingNotes): string[] {
   return [
     ...repairs.map(repairSentence),
-    ...questions.map(questionSentence),
+    ...questions.map((question) => `Question: ${questionSentence(question)}`),
     ...(leftOut.length > 0 ? [leftOutSentence(leftOut)] : []),
     ...notices.map(sentenceOf),
   ]
@@ -36,7 +36,7 @@ function repairSentence({ code, state, message, where }: Repair): string {
 
 /** The question with what answers it. */
 export function questionSentence({ message, options }: Question): string {
-  return `Question: ${sentenceOf(message)}${options.length === 0 ? '' : ` Answer with ${options.join(' or ')}.`}`
+  return `${sentenceOf(message)}${options.length === 0 ? '' : ` Answer with ${options.join(' or ')}.`}`
 }
 
 function leftOutSentence(leftOut: readonly LeftOut[]): string {

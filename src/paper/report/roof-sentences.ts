@@ -8,7 +8,7 @@ export function roofSentences(answer: Answer): string[] {
   const { roof, plan, near, verdict } = answer.summary
   if (roof === null) return []
   const isNear = near === true || answer.roof?.isNear === true
-  const sentences = [riseSentence(roof, plan.unit, answer.summary.options['down'] === true), flatnessSentence(answer, roof)]
+  const sentences = [riseSentence(roof, plan.unit, answer.summary.options), flatnessSentence(answer, roof)]
   if (isNear && verdict === 'does not lift') sentences.unshift('What follows is the nearest roof; its panels are not flat.')
   if (isNear && roof.heightError !== undefined) sentences.push(`Its heights differ from the wish by ${lengthWords(roof.heightError, plan.unit)} (root mean square).`)
   if (roof.worstPanels.length > 0) {
@@ -17,11 +17,14 @@ export function roofSentences(answer: Answer): string[] {
   return sentences
 }
 
-function riseSentence({ rise, riseAsked }: RoofFacts, unit: Unit, down: boolean): string {
-  const words = down ? `It hangs ${lengthWords(rise, unit)} below the highest node of its rim` : `It rises ${lengthWords(rise, unit)} above its springing`
+function riseSentence({ rise, riseAsked }: RoofFacts, unit: Unit, options: Readonly<Record<string, unknown>>): string {
+  const height = lengthWords(rise, unit)
+  const words = options['down'] === true ? `It hangs ${height} below the highest node of its rim` : `It rises ${height} above its springing`
   if (riseAsked === null) return `${words}.`
-  if (isNothing(rise - riseAsked, unit)) return `${words}, as asked.`
-  return `${words}; the ${lengthWords(riseAsked, unit)} asked cannot be had under the conditions.`
+  // A rise that nobody asked for is the default.
+  const isAsked = options['rise'] !== undefined || options['brief'] !== undefined
+  if (isNothing(rise - riseAsked, unit)) return `${words}${isAsked ? ', as asked' : ''}.`
+  return `${words}; the ${lengthWords(riseAsked, unit)} ${isAsked ? 'asked' : 'of the default'} cannot be had under the conditions.`
 }
 
 function flatnessSentence({ roof }: Answer, facts: RoofFacts): string {

@@ -108,11 +108,14 @@ describe('figures', () => {
     expect(listWords(['a', 'b', 'c', 'd'], 3)).toBe('a, b, c and d')
   })
 
-  test('a rise that was not asked, asked, or not to be had', () => {
-    expect(text(answerOf(bays, vault, { roof: { rise: 2.4, riseAsked: 2.4 } }))).toContain('It rises 2.400 m above its springing, as asked.')
-    expect(text(answerOf(bays, vault, { roof: { rise: 1.203, riseAsked: 2.4 } }))).toContain('It rises 1.203 m above its springing; the 2.400 m asked cannot be had under the conditions.')
-    expect(text(answerOf(bays, vault, { roof: { rise: 1.2, riseAsked: null } }))).toContain('It rises 1.200 m above its springing.')
-    expect(text(answerOf(bays, vault, { roof: { rise: 1.2, riseAsked: null }, options: { down: true } }))).toContain('It hangs 1.200 m below the highest node of its rim.')
+  test('a rise that was asked, had by default, or not to be had', () => {
+    const rise = (rise: number, riseAsked: number | null, options: Record<string, unknown> = {}): string => text(answerOf(bays, vault, { roof: { rise, riseAsked }, options }))
+    expect(rise(2.4, 2.4, { rise: '2.4' })).toContain('It rises 2.400 m above its springing, as asked.')
+    expect(rise(2.4, 2.4)).toContain('It rises 2.400 m above its springing.')
+    expect(rise(1.203, 2.4, { rise: '2.4' })).toContain('It rises 1.203 m above its springing; the 2.400 m asked cannot be had under the conditions.')
+    expect(rise(1.203, 1.2, {})).toContain('the 1.200 m of the default cannot be had')
+    expect(rise(1.2, null)).toContain('It rises 1.200 m above its springing.')
+    expect(rise(1.2, null, { down: true })).toContain('It hangs 1.200 m below the highest node of its rim.')
   })
 })
 
