@@ -21,6 +21,6 @@ if (sample === undefined) {
 const words = ['raise', join('samples', sample), '--out', out, '--overwrite']
 process.stdout.write(`\n> panewise ${words.join(' ')}\n\n`)
 const done = spawnSync(process.execPath, [join(root, 'dist', 'panewise.mjs'), ...words], { cwd: root, stdio: 'inherit' })
-process.stdout.write(`\nThe roof is in ${join(out, 'roof.obj')}, the lists are panels.csv, joints.csv and nodes.csv beside it.\n`)
+if (done.status !== 2 && done.status !== null) process.stdout.write(`\nThe roof is in ${join(out, 'roof.obj')}, the lists are panels.csv, joints.csv and nodes.csv beside it.\n`)
 // Verdicts other than "lifts" have codes of their own; here they are no failure.
 process.exitCode = done.status === 2 || done.status === null ? 1 : 0
