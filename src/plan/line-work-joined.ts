@@ -33,82 +33,94 @@ export function* joinedPoints(x: Float64Array, y: Float64Array, a: Int32Array, b
   const inUse = new Uint8Array(x.length)
   for (const list of [a, b]) for (let i = 0; i < list.length; i += 1) if (list[i] >= 0) inUse[list[i]] = 1
 
-  // First what is one point but for rounding; whatever lies near another spot is looked at again.
-  const spots = new NearPoints(snap, x.length)
+  // First what is one point but for rounding ..
+  const spots = new NearPoints(silent, x.length)
   const spotOf = new Int32Array(x.length).fill(-1)
   const firstPoint = new Int32Array(x.length)
-  const crowded: number[] = []
   let uneven = false
   for (let i = 0; i < x.length; i += 1) {
-    if (i % pointsPerStep === 0) yield { stage: 'Joining points', done: i / x.length }
+    if (i % pointsPerStep === 0) yield { stage: 'Joining points', done: (0.5 * i) / x.length }
     if (inUse[i] === 0) continue
     let spot = spots.nearest(x[i], y[i])
-    if (spot >= 0) {
-      const dx = x[i] - x[firstPoint[spot]], dy = y[i] - y[firstPoint[spot]]
-      if (dx * dx + dy * dy > silent * silent) {
-        crowded.push(spots.count)
-        spot = -1
-      } else if (dx !== 0 || dy !== 0) uneven = true
-    }
     if (spot < 0) {
       spot = spots.add(x[i], y[i])
       firstPoint[spot] = i
-    }
+    } else if (x[i] !== x[firstPoint[spot]] || y[i] !== y[firstPoint[spot]]) uneven = true
     spotOf[i] = spot
   }
-  const centreOf = crowded.length === 0 ? null : centresOfSpots(spots, crowded, spotOf, a, b)
 
-  const nodeOfSpot = new Int32Array(spots.count).fill(-1)
+  // .. then what lies within the snap distance and is not told apart by a line.
+  const nodes = new NearPoints(snap, spots.count)
+  const nodeOfSpot = new Int32Array(spots.count)
   const pointOf = new Int32Array(spots.count)
-  let count = 0
+  let links: Links | null = null
   for (let spot = 0; spot < spots.count; spot += 1) {
-    if (centreOf !== null && centreOf[spot] !== spot) continue
-    pointOf[count] = firstPoint[spot]
-    nodeOfSpot[spot] = count
-    count += 1
+    if (spot % pointsPerStep === 0) yield { stage: 'Joining points', done: 0.5 + (0.5 * spot) / spots.count }
+    const i = firstPoint[spot]
+    let node = nodes.nearest(x[i], y[i])
+    if (node >= 0) {
+      links ??= linksOf(spots.count, spotOf, a, b)
+      node = untiedNode(nodes, x[i], y[i], links, spot, nodeOfSpot)
+    }
+    if (node < 0) {
+      node = nodes.add(x[i], y[i])
+      pointOf[node] = i
+    } else uneven = true
+    nodeOfSpot[spot] = node
   }
   const nodeOf = spotOf
-  for (let i = 0; i < x.length; i += 1) if (spotOf[i] >= 0) nodeOf[i] = nodeOfSpot[centreOf === null ? spotOf[i] : centreOf[spotOf[i]]]
+  for (let i = 0; i < x.length; i += 1) if (spotOf[i] >= 0) nodeOf[i] = nodeOfSpot[spotOf[i]]
   const joined = new Places()
-  if (centreOf !== null || uneven) {
+  if (uneven) {
     for (const [node, members] of spreadNodes(x, y, nodeOf, pointOf)) {
-      pointOf[node] = middlePoint(x, y, members)
-      const dx = members.map((i) => Math.hypot(x[i] - x[pointOf[node]], y[i] - y[pointOf[node]]))
-      const moved = Math.max(...dx)
-      if (moved > silent) joined.note(x[pointOf[node]], y[pointOf[node]], moved)
+      const chosen = middlePoint(x, y, members)
+      pointOf[node] = chosen
+      let moved = 0
+      for (const i of members) moved = Math.max(moved, Math.hypot(x[i] - x[chosen], y[i] - y[chosen]))
+      if (moved > silent) joined.note(x[chosen], y[chosen], moved)
     }
   }
-  return { nodeOf, pointOf: pointOf.slice(0, count), joined }
+  return { nodeOf, pointOf: pointOf.slice(0, nodes.count), joined }
 }
 
-/** For each spot the spot that it joins, itself when none. */
-function centresOfSpots(spots: NearPoints, crowded: readonly number[], spotOf: Int32Array, a: Int32Array, b: Int32Array): Int32Array {
-  const centreOf = new Int32Array(spots.count)
-  for (let spot = 0; spot < spots.count; spot += 1) centreOf[spot] = spot
-  const isCrowded = new Set(crowded)
-  const linked = new Map<number, number[]>()
-  for (const spot of crowded) linked.set(spot, [])
+/** Spots that lines tie to each spot: spot[start[s] .. start[s + 1]). */
+interface Links {
+  readonly start: Int32Array
+  readonly spot: Int32Array
+}
+
+function linksOf(count: number, spotOf: Int32Array, a: Int32Array, b: Int32Array): Links {
+  const start = new Int32Array(count + 1)
   for (let i = 0; i < a.length; i += 1) {
     if (a[i] < 0) continue
-    const p = spotOf[a[i]], q = spotOf[b[i]]
-    if (isCrowded.has(p)) linked.get(p)?.push(q)
-    if (isCrowded.has(q)) linked.get(q)?.push(p)
+    start[spotOf[a[i]] + 1] += 1
+    start[spotOf[b[i]] + 1] += 1
   }
-  const { x, y } = spots
-  for (const spot of crowded) {
-    const taken = new Set((linked.get(spot) ?? []).filter((other) => other < spot).map((other) => centreOf[other]))
-    let best = -1, bestSquare = Infinity
-    for (const other of spots.within(x[spot], y[spot])) {
-      if (other >= spot || centreOf[other] !== other || taken.has(other)) continue
-      const square = (x[other] - x[spot]) ** 2 + (y[other] - y[spot]) ** 2
-      if (square < bestSquare) {
-        best = other
-        bestSquare = square
-      }
-    }
-    if (best >= 0) centreOf[spot] = best
+  for (let s = 0; s < count; s += 1) start[s + 1] += start[s]
+  const fill = start.slice(0, count)
+  const spot = new Int32Array(start[count])
+  for (let i = 0; i < a.length; i += 1) {
+    if (a[i] < 0) continue
+    spot[fill[spotOf[a[i]]]++] = spotOf[b[i]]
+    spot[fill[spotOf[b[i]]]++] = spotOf[a[i]]
   }
-  return centreOf
+  return { start, spot }
+}
+
+/** The nearest node within the snap distance to which no line from this spot leads, -1 when there is none. */
+function untiedNode(nodes: NearPoints, px: number, py: number, { start, spot }: Links, from: number, nodeOfSpot: Int32Array): number {
+  const tied = new Set<number>()
+  // Spots that come later have no node yet.
+  for (let k = start[from]; k < start[from + 1]; k += 1) if (spot[k] < from) tied.add(nodeOfSpot[spot[k]])
+  const { x, y } = nodes
+  let best = -1, bestSquare = Infinity
+  for (const node of nodes.within(px, py)) {
+    const square = (x[node] - px) ** 2 + (y[node] - py) ** 2
+    if (tied.has(node) || square > bestSquare || (square === bestSquare && node > best)) continue
+    best = node
+    bestSquare = square
+  }
+  return best
 }
 
 /** The points of every node whose points are not identical. */
