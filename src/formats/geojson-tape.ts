@@ -69,8 +69,9 @@ export class JsonTape {
     const kind = this.kind(value)
     if (kind === 'array') return 'a list'
     if (kind === 'object') return 'an object'
+    if (kind === 'string') return quoted(this.string(value) ?? '')
     const start = this.start.at(value)
-    return kind === 'number' ? printable(this.text.slice(start, numberEnd(this.text, start)), 24) : kind === 'string' ? quoted(this.string(value) ?? '') : kind
+    return kind === 'number' ? printable(this.text.slice(start, numberEnd(this.text, start)), 24) : kind
   }
 
   /** The value of an object's member of this name, the last one if there are several; -1 when there is none. */
@@ -163,7 +164,7 @@ export function* jsonTape(text: string): Steps<Result<JsonTape>> {
       }
       if (code !== (inObject ? 125 : 93)) return unexpected(inObject ? 'a comma or }' : 'a comma or ]')
     }
-    if ((code === 125 && (expected === 'firstKey' || expected === 'more')) || (code === 93 && (expected === 'first' || expected === 'more'))) {
+    if ((code === 125 || code === 93) && (expected === 'more' || expected === (code === 125 ? 'firstKey' : 'first'))) {
       at += 1
       next.set(open.pop() ?? 0, start.length)
       const outer = open.at(-1)
@@ -216,7 +217,9 @@ export function* jsonTape(text: string): Steps<Result<JsonTape>> {
   }
 
   function badString(offset: number): { ok: false; problem: Problem } {
-    if (offset >= text.length) return refuse('cut-off', 'the file ends inside a text in double quotes', 'it may be cut off: export it again')
+    if (offset >= text.length) {
+      return refuse('cut-off', 'the file ends inside a text in double quotes', 'it may be cut off: export it again')
+    }
     return refuse('not-json', `a text in double quotes holds ${quoted(text.slice(offset, offset + 6))}`, 'export the file again', offset)
   }
 }
@@ -238,8 +241,9 @@ function numberEnd(text: string, from: number): number {
   for (;;) {
     const code = text.charCodeAt(at)
     // Digits, sign, point, e and E; also letters, so that 12abc is one wrong word.
-    const part = (code >= 48 && code <= 57) || code === 45 || code === 43 || code === 46 || (code >= 65 && code <= 90) || (code >= 97 && code <= 122)
-    if (!part) return at
+    const isSign = code === 45 || code === 43 || code === 46
+    const isLetter = (code >= 65 && code <= 90) || (code >= 97 && code <= 122)
+    if (!isSign && !isLetter && !(code >= 48 && code <= 57)) return at
     at += 1
   }
 }

@@ -290,7 +290,9 @@ class GeoJsonReader {
     }
     const size = Math.max(right - left, high - low)
     if (size === 0 || size > degreesWithin || left < -180 || right > 180 || low < -90 || high > 90) return
-    const message = `the drawing is ${size.toPrecision(2)} wide, as if in degrees of longitude and latitude; it is read as lengths: export it in a projected system`
+    const message =
+      `The drawing is ${Number(size.toPrecision(2))} wide, as if in degrees of longitude and latitude; ` +
+      'the numbers are read as lengths: export it in a projected system'
     sketch.repair({ code: 'unit-assumed', state: 'applied', count: 1, message, where: [] })
   }
 }

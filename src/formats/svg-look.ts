@@ -31,7 +31,8 @@ export const strokes = (look: Look): boolean => look.stroke && look.strokeSeen &
 export const isSeen = (look: Look): boolean => look.shown && look.visible
 
 const zero = String.raw`\s*(?:0+|0*\.0+|0+\.)0*%?\s*\)`
-const transparent = new RegExp(String.raw`^(?:transparent|#[0-9a-f]{3}0|#[0-9a-f]{6}00|(?:rgb|hsl)a?\((?:[^,)]*,){3}${zero}|[a-z]+\([^/)]*/${zero})$`, 'i')
+const colourWithZero = String.raw`(?:rgb|hsl)a?\((?:[^,)]*,){3}${zero}|[a-z]+\([^/)]*/${zero}`
+const transparent = new RegExp(String.raw`^(?:transparent|#[0-9a-f]{3}0|#[0-9a-f]{6}00|${colourWithZero})$`, 'i')
 const inherits = /^(inherit|unset|revert|revert-layer)$/i
 
 /** The look of an element with these declarations inside an element with the look `outer`. */

@@ -68,9 +68,11 @@ export function page(root: XmlElement): Page | string {
   if (typeof height === 'string') return height
   const physical = width?.physical === true || height?.physical === true
   // A side that is not given follows from the view box: by the other side, or at 96 user units to an inch.
-  const perUnit = box === null ? null : width !== null ? width.mm / box.width : height !== null ? height.mm / box.height : millimetresPerPixel
-  const wide = width?.mm ?? (box === null || perUnit === null ? null : box.width * perUnit)
-  const high = height?.mm ?? (box === null || perUnit === null ? null : box.height * perUnit)
+  let perUnit = millimetresPerPixel
+  if (box !== null && width !== null) perUnit = width.mm / box.width
+  else if (box !== null && height !== null) perUnit = height.mm / box.height
+  const wide = width?.mm ?? (box === null ? null : box.width * perUnit)
+  const high = height?.mm ?? (box === null ? null : box.height * perUnit)
 
   const known = wide !== null && high !== null
   const inner: Affine | string = box === null || !known
@@ -97,7 +99,9 @@ function paperSize(root: XmlElement, name: string): { readonly mm: number; reado
 }
 
 /** The map of a view box, if there is one, into a rectangle at x, y; a string when it cannot be read. */
-export function placedBox(element: XmlElement, x: number, y: number, size: Viewport | null): { readonly map: Affine; readonly viewport: Viewport | null } | string {
+export function placedBox(
+  element: XmlElement, x: number, y: number, size: Viewport | null,
+): { readonly map: Affine; readonly viewport: Viewport | null } | string {
   const box = viewBox(element)
   if (typeof box === 'string') return box
   if (box === null) return { map: translation(x, y), viewport: size }

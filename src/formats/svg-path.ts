@@ -4,6 +4,7 @@
  */
 import type { Steps } from '../base/steps.ts'
 import { NumberScanner } from './svg-numbers.ts'
+import { quoted } from './text-quote.ts'
 
 /** What draws: every point absolute, in user units. */
 export interface Pen {
@@ -68,11 +69,12 @@ export function* drawnPath(data: string, pen: Pen): Steps<PathFault | null> {
     const needed = arity[kind] ?? 0
     for (let i = 0; i < needed; i += 1) {
       if (i > 0) scanner.skipSeparator()
-      const at = scanner.at
-      const value = kind === 'A' && (i === 3 || i === 4) ? scanner.flag() : scanner.number()
+      const isFlag = kind === 'A' && (i === 3 || i === 4)
+      const value = isFlag ? scanner.flag() : scanner.number()
       if (value === null) {
         if (scanner.atEnd) return fault(`${command} needs ${needed} number${needed === 1 ? '' : 's'}, the data ends after ${i}`)
-        return fault(kind === 'A' && (i === 3 || i === 4) ? 'a flag of an arc is 0 or 1' : `a number is expected in place of "${data[at] ?? ''}"`)
+        const word = /^\S{1,12}/.exec(data.slice(scanner.at, scanner.at + 12))?.[0] ?? ''
+        return fault(isFlag ? 'a flag of an arc is 0 or 1' : `a number is expected in place of ${quoted(word)}`)
       }
       if (!Number.isFinite(value)) return fault('a number is beyond the range of numbers')
       v[i] = value

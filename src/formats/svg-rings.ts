@@ -51,7 +51,8 @@ export function* holes(rings: Rings, evenOdd: boolean): Steps<Uint8Array | null>
   const width = (whole[across + 2] - whole[across]) / bucketCount
   const bucketOf = (value: number): number => (width > 0 ? Math.min(bucketCount - 1, Math.floor((value - whole[across]) / width)) : 0)
   const buckets = Array.from({ length: bucketCount }, (): number[] => [])
-  const order = boxes.map((_, i) => i).sort((a, b) => boxes[a][along] - boxes[b][along] || boxes[b][along + 2] - boxes[a][along + 2] || a - b)
+  const order = boxes.map((_, i) => i)
+  order.sort((a, b) => boxes[a][along] - boxes[b][along] || boxes[b][along + 2] - boxes[a][along + 2] || a - b)
   yield { stage: 'Reading', done: 0.5 }
 
   for (const ring of order) {

@@ -146,8 +146,9 @@ function* drawnPoints(text: string, tracer: Tracer): Steps<string | null> {
   scanner.skipBlanks()
   for (let count = 0; !scanner.atEnd; count += 1) {
     const value = scanner.number()
-    if (value === null) return `points, character ${scanner.at + 1}: a number is expected in place of ${quoted(text.slice(scanner.at, scanner.at + 12))}`
-    if (!Number.isFinite(value)) return `points, character ${scanner.at + 1}: a number is beyond the range of numbers`
+    const place = `points, character ${scanner.at + 1}`
+    if (value === null) return `${place}: a number is expected in place of ${quoted(text.slice(scanner.at, scanner.at + 12))}`
+    if (!Number.isFinite(value)) return `${place}: a number is beyond the range of numbers`
     scanner.skipSeparator()
     if (count % 2 === 0) {
       if (scanner.atEnd) return 'points has an odd count of numbers'

@@ -118,7 +118,8 @@ function simpleRule(selector: string, order: number, declarations: readonly Decl
   const classes = parts.filter((part) => part.startsWith('.')).map((part) => part.slice(1))
   const ids = parts.filter((part) => part.startsWith('#')).map((part) => part.slice(1))
   if (ids.length > 1) return null
-  return { tag, id: ids[0] ?? null, classes, specificity: 1e6 * ids.length + 1e3 * classes.length + (tag === null ? 0 : 1), order, declarations }
+  const specificity = 1e6 * ids.length + 1e3 * classes.length + (tag === null ? 0 : 1)
+  return { tag, id: ids[0] ?? null, classes, specificity, order, declarations }
 }
 
 /** The declarations of a block or of a style attribute. */
@@ -173,8 +174,8 @@ function matches(sheet: StyleSheet, element: XmlElement): Rule[] {
   const out: Rule[] = []
   const from = (key: string): void => {
     for (const rule of sheet.rules.get(key) ?? []) {
-      const fits = (rule.tag === null || rule.tag === element.name) && (rule.id === null || rule.id === id) && rule.classes.every((word) => classes.has(word))
-      if (fits) out.push(rule)
+      const named = (rule.tag === null || rule.tag === element.name) && (rule.id === null || rule.id === id)
+      if (named && rule.classes.every((word) => classes.has(word))) out.push(rule)
     }
   }
   from('*')

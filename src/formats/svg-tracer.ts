@@ -92,7 +92,8 @@ export class Tracer implements Pen {
     this.setControl(2, x1, y1)
     this.setControl(4, x2, y2)
     this.setControl(6, x, y)
-    if (!isStraight(p)) this.chorded({ kind: 'bezier', points: [p[0], p[1], 0, p[2], p[3], 0, p[4], p[5], 0, p[6], p[7], 0], weights: null })
+    const points = [p[0], p[1], 0, p[2], p[3], 0, p[4], p[5], 0, p[6], p[7], 0]
+    if (!isStraight(p)) this.chorded({ kind: 'bezier', points, weights: null })
     this.line(x, y)
   }
 

@@ -22,8 +22,8 @@ const metresPerMillimetre = 0.001
 
 /** Elements that draw nothing where they stand: definitions, descriptions, scripts' and editors' data. */
 const silent = new Set([
-  'defs', 'symbol', 'clipPath', 'mask', 'pattern', 'marker', 'linearGradient', 'radialGradient', 'filter', 'style', 'title', 'desc', 'metadata', 'view',
-  'cursor', 'font', 'font-face', 'color-profile', 'solidcolor', 'hatch', 'meshgradient',
+  'defs', 'symbol', 'clipPath', 'mask', 'pattern', 'marker', 'linearGradient', 'radialGradient', 'filter', 'style', 'title', 'desc',
+  'metadata', 'view', 'cursor', 'font', 'font-face', 'color-profile', 'solidcolor', 'hatch', 'meshgradient',
 ])
 
 /** Elements drawn, each as often as it is used: a use inside a use multiplies them. */
@@ -84,7 +84,8 @@ export class SvgWalk {
     if (typeof sheetOfPaper === 'string') return unreadable(root, sheetOfPaper)
     this.page = sheetOfPaper
     const { map, viewport } = sheetOfPaper
-    const outside: Inside = { map, look: initialLook, layer: '', chosen: this.choice.takes(''), viewport, depth: 0, used: [], style: new Map() }
+    const chosen = this.choice.takes('')
+    const outside: Inside = { map, look: initialLook, layer: '', chosen, viewport, depth: 0, used: [], style: new Map() }
     const inside = this.inside(root, outside)
     if ('code' in inside) return inside
     const problem = yield* this.children(root, inside)
@@ -127,7 +128,9 @@ export class SvgWalk {
     const map = mapOf(style, outer.map)
     if (typeof map === 'string') return unreadable(element, map)
     const depth = outer.depth + 1
-    if (depth > deepest) return fail('too-deep', `elements are used more than ${deepest} deep`, place(element), 'ungroup the drawing').problem
+    if (depth > deepest) {
+      return fail('too-deep', `elements are used more than ${deepest} deep`, place(element), 'ungroup the drawing').problem
+    }
     let { layer, chosen } = outer
     const id = element.name === 'g' && outer.used.length === 0 ? (attribute(element, 'id') ?? '') : ''
     if (id !== '') {
@@ -155,7 +158,9 @@ export class SvgWalk {
   private *element(element: XmlElement, outer: Inside): Steps<Problem | null> {
     if (!this.isSvg(element)) return null
     this.drawn += 1
-    if (this.drawn > mostDrawn) return fail('too-large', `more than ${mostDrawn} elements are drawn`, place(element), 'split the drawing').problem
+    if (this.drawn > mostDrawn) {
+      return fail('too-large', `more than ${mostDrawn} elements are drawn`, place(element), 'split the drawing').problem
+    }
     if (this.drawn % slice === 0) yield reading
     const { name } = element
     if (silent.has(name)) return null

@@ -13,7 +13,7 @@ import type { Format, FormatOptions, Source } from './format.ts'
 import { mostRules, styleSheet } from './svg-style.ts'
 import { svgSpace, SvgWalk } from './svg-walk.ts'
 import { printable, quoted } from './text-quote.ts'
-import { xmlTree, type XmlElement } from './xml.ts'
+import { attribute, xmlTree, type XmlElement } from './xml.ts'
 
 export const svg: Format = { title: 'SVG', extensions: ['svg'], recognises, read }
 
@@ -30,8 +30,8 @@ function* read(text: string, _source: Source, options: FormatOptions): Steps<Res
   if (!tree.ok) return tree
   const root = tree.value
   if (root.name !== 'svg' || (root.space !== svgSpace && root.space !== '')) {
-    const message = root.name !== 'svg' ? `the first element is <${printable(root.name)}>, not <svg>` : `the first element is of ${quoted(root.space, 60)}, not of SVG`
-    return fail('not-svg', message, { line: root.line }, 'export the drawing as SVG')
+    const what = root.name !== 'svg' ? `<${printable(root.name)}>, not <svg>` : `of ${quoted(root.space, 60)}, not of SVG`
+    return fail('not-svg', `the first element is ${what}`, { line: root.line }, 'export the drawing as SVG')
   }
 
   const byId = new Map<string, XmlElement>()
@@ -55,8 +55,8 @@ function* read(text: string, _source: Source, options: FormatOptions): Steps<Res
 
 /** Elements by id, the first of each, and the texts of all style sheets. Not deeper than the reader of XML lets in. */
 function index(element: XmlElement, byId: Map<string, XmlElement>, styles: string[]): void {
-  const { attributes } = element
-  for (let i = 0; i < attributes.length; i += 2) if (attributes[i] === 'id' && !byId.has(attributes[i + 1])) byId.set(attributes[i + 1], element)
+  const id = attribute(element, 'id')
+  if (id !== null && !byId.has(id)) byId.set(id, element)
   if (element.name === 'style') styles.push(element.text)
   for (const child of element.children) index(child, byId, styles)
 }

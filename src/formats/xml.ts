@@ -79,7 +79,8 @@ export function* xmlTree(text: string, options: XmlOptions): Steps<Result<XmlEle
   })
   parser.on('doctype', (doctype) => {
     if (/<!ENTITY/i.test(doctype)) {
-      refuse('xml-entities', 'the document type declares entities, which are never expanded', 'export it as plain SVG, without <!ENTITY ...>')
+      const cure = 'export it as plain SVG, without <!ENTITY ...>'
+      refuse('xml-entities', 'the document type declares entities, which are never expanded', cure)
     }
   })
   parser.on('opentagstart', () => {
@@ -131,8 +132,10 @@ function told(said: string, closed: Growing | undefined): [code: string, message
   if (said === 'unexpected close tag' && closed !== undefined) {
     return ['not-xml', `a closing tag does not fit <${closed.name}>, which line ${closed.line} opens`, 'export the file again']
   }
-  const prefix = /^unbound namespace prefix: "?([^"]*)"?/.exec(said)
-  if (prefix !== null) return ['not-xml', `the prefix "${prefix[1] ?? ''}:" is not declared`, `add xmlns:${prefix[1] ?? 'x'}="..." to the root element`]
+  const prefix = /^unbound namespace prefix: "?([^"]*)"?/.exec(said)?.[1]
+  if (prefix !== undefined) {
+    return ['not-xml', `the prefix "${prefix}:" is not declared`, `add xmlns:${prefix}="..." to the root element`]
+  }
   return ['not-xml', `this is not well-formed XML: ${said}`, 'export the file again']
 }
 

@@ -35,7 +35,10 @@ function value(next: () => number, depth: number): unknown {
   if (kind === 1) return next() < 0.5
   if (kind === 2) return Math.round((next() - 0.5) * 1e6)
   if (kind === 3) return (next() - 0.5) * 10 ** Math.round(40 * (next() - 0.5))
-  if (kind === 4) return Array.from({ length: Math.floor(next() * 6) }, () => String.fromCharCode(Math.floor(next() * (next() < 0.5 ? 128 : 65536)))).join('')
+  if (kind === 4)
+    return Array.from({ length: Math.floor(next() * 6) }, () =>
+      String.fromCharCode(Math.floor(next() * (next() < 0.5 ? 128 : 65536))),
+    ).join('')
   const count = Math.floor(next() * 5)
   if (kind === 5) return Array.from({ length: count }, () => value(next, depth + 1))
   return Object.fromEntries(Array.from({ length: count }, (_, i) => [`k"\\${i}\n`, value(next, depth + 1)]))
@@ -61,7 +64,8 @@ test('3,000 documents with characters changed, seed 2: valid for both or for nei
     const changes = 1 + Math.floor(next() * 2)
     for (let k = 0; k < changes; k += 1) {
       const at = Math.floor(next() * (text.length + 1))
-      text = text.slice(0, at) + (next() < 0.7 ? letters[Math.floor(next() * letters.length)]! : '') + text.slice(at + Math.floor(next() * 2))
+      text =
+        text.slice(0, at) + (next() < 0.7 ? letters[Math.floor(next() * letters.length)]! : '') + text.slice(at + Math.floor(next() * 2))
     }
     let theirs: unknown
     let accepted = true
@@ -119,8 +123,19 @@ test('a value knows its line and its path', () => {
   const found: [string, number][] = []
   for (let i = 0; i < tape.start.length; i += 1) found.push([tape.path(i), tape.line(i)])
   expect(found).toEqual([
-    ['', 1], ['a', 1], ['a', 2], ['a[0]', 2], ['a[1]', 2], ['a[1]["b c"]', 2], ['a[1]["b c"]', 3], ['a[1]["b c"][0]', 3], ['a[1]["b c"][0][0]', 3],
-    ['a[1]["b c"][0][1]', 3], ['a[1]["b c"][1]', 4], ['d', 4], ['d', 4],
+    ['', 1],
+    ['a', 1],
+    ['a', 2],
+    ['a[0]', 2],
+    ['a[1]', 2],
+    ['a[1]["b c"]', 2],
+    ['a[1]["b c"]', 3],
+    ['a[1]["b c"][0]', 3],
+    ['a[1]["b c"][0][0]', 3],
+    ['a[1]["b c"][0][1]', 3],
+    ['a[1]["b c"][1]', 4],
+    ['d', 4],
+    ['d', 4],
   ])
   expect(tape.line(0)).toBe(1)
 })

@@ -30,7 +30,9 @@ test('cells.svg: 24 outlines with the areas that their relative coordinates give
   expect(loops).toHaveLength(24)
   expect([drawing.segmentLayer.length, drawing.holes.layer.length, drawing.leftOut, drawing.repairs]).toEqual([0, 0, [], []])
   // A second route to each area: the sums of the relative steps, without any of the reader's code; 10 mm a unit.
-  const steps = [...markup.matchAll(/d="m([^"]*) z"/g)].map(([, d]) => d!.split('l').map((pair) => pair.trim().split(' ').map(Number) as Point))
+  const steps = [...markup.matchAll(/d="m([^"]*) z"/g)].map(([, d]) =>
+    d!.split('l').map((pair) => pair.trim().split(' ').map(Number) as Point),
+  )
   expect(steps).toHaveLength(24)
   steps.forEach(([, ...moves], i) => {
     let [x, y, twice] = [0, 0, 0]
@@ -74,7 +76,7 @@ test('cells-plot.svg: 73 lines that bound 24 faces of the same shapes, and a bac
   const plotted = sorted(lines.map(([[x, y], [u, v]]) => Math.hypot(u - x, v - y)))
   const drawn = sorted(sides.values())
   // 11.545... mm a metre: the axes are 589.09 pt wide for 18 m.
-  const scale = (618.545455 - 29.454545) / 72 * 25.4 / 180
+  const scale = (((618.545455 - 29.454545) / 72) * 25.4) / 180
   plotted.forEach((length, i) => expect(Math.abs(length - scale * drawn[i]!)).toBeLessThan(2e-4))
 })
 

@@ -21,9 +21,11 @@ export function problemOf(format: Format, text: string, options: Partial<FormatO
   return read.problem
 }
 
+const names = 'xmlns="http://www.w3.org/2000/svg" xmlns:xlink="http://www.w3.org/1999/xlink"'
+
 /** A page of 100 mm square whose user unit is the mm: a point (x, y) of the markup lies at (x, 100 - y). */
 export const sheet = (inside: string): string =>
-  `<svg xmlns="http://www.w3.org/2000/svg" xmlns:xlink="http://www.w3.org/1999/xlink" width="100mm" height="100mm" viewBox="0 0 100 100">${inside}</svg>`
+  `<svg ${names} width="100mm" height="100mm" viewBox="0 0 100 100">${inside}</svg>`
 
 export const drawn = (inside: string, options: Partial<FormatOptions> = {}): Drawing => drawingOf(svg, sheet(inside), options)
 export const refusal = (inside: string, options: Partial<FormatOptions> = {}): Problem => problemOf(svg, sheet(inside), options)

@@ -8,7 +8,9 @@ import { grid } from '../make/plans.ts'
 import { geoJsonWays, svgWays } from './svg-written.ts'
 
 function read(name: string, text: string, scale: number | null, voids: readonly (readonly [number, number])[] = []): Plan {
-  const drawing = finish(readDrawing({ name, bytes: new TextEncoder().encode(text) }, { layers: null, sagitta: 0.005, metresPerUnit: null }))
+  const drawing = finish(
+    readDrawing({ name, bytes: new TextEncoder().encode(text) }, { layers: null, sagitta: 0.005, metresPerUnit: null }),
+  )
   if (!drawing.ok) throw new Error(JSON.stringify(drawing.problem))
   const plan = finish(planFromDrawing(drawing.value, { unit: null, scale, snap_mm: null, voids, accept: [] }))
   if (!plan.ok) throw new Error(JSON.stringify(plan.problem))
@@ -27,7 +29,15 @@ function shapes(plan: Plan): string[] {
 
 const plans: Record<string, Plan> = {
   'a loose grid of 7 x 5': grid(7, 5, { bay: 2.5, loose: 0.2, seed: 3 }),
-  'a grid with a void': grid(6, 6, { bay: 1.25, loose: 0.15, seed: 8, voids: [[2, 3], [3, 3]] }),
+  'a grid with a void': grid(6, 6, {
+    bay: 1.25,
+    loose: 0.15,
+    seed: 8,
+    voids: [
+      [2, 3],
+      [3, 3],
+    ],
+  }),
 }
 
 describe.each(Object.entries(plans))('%s', (_name, plan) => {
@@ -35,12 +45,22 @@ describe.each(Object.entries(plans))('%s', (_name, plan) => {
   const hole: [number, number][] = voidCount(plan) === 0 ? [] : [[3.75, 4.375]]
 
   const sameAs = (back: Plan): void => {
-    expect([back.panelCount, back.nodeCount, back.jointCount, back.edgeCount, voidCount(back)]).toEqual([plan.panelCount, plan.nodeCount, plan.jointCount, plan.edgeCount, voidCount(plan)])
+    expect([back.panelCount, back.nodeCount, back.jointCount, back.edgeCount, voidCount(back)]).toEqual([
+      plan.panelCount,
+      plan.nodeCount,
+      plan.jointCount,
+      plan.edgeCount,
+      voidCount(plan),
+    ])
     expect(shapes(back)).toEqual(shapes(plan))
   }
 
-  test.each(Object.entries(svgWays))('SVG: %s', (way, written) => sameAs(read('plan.svg', written(plan), 100, way.startsWith('lines') ? hole : [])))
-  test.each(Object.entries(geoJsonWays))('GeoJSON: %s', (way, written) => sameAs(read('plan.geojson', written(plan), null, way.startsWith('line') ? hole : [])))
+  test.each(Object.entries(svgWays))('SVG: %s', (way, written) =>
+    sameAs(read('plan.svg', written(plan), 100, way.startsWith('lines') ? hole : [])),
+  )
+  test.each(Object.entries(geoJsonWays))('GeoJSON: %s', (way, written) =>
+    sameAs(read('plan.geojson', written(plan), null, way.startsWith('line') ? hole : [])),
+  )
 })
 
 test('the generator does not write the same twice: each way differs, and a moved node is seen', () => {

@@ -31,7 +31,21 @@ test('the rightmost function acts first', () => {
 })
 
 test('what is no list of functions of the plane is refused', () => {
-  for (const text of ['rotate', 'rotate(', 'rotate(1 2)', 'matrix(1 2 3 4 5)', 'scale()', 'rotate(x)', 'rotate3d(1 1 1 5)', 'translate(5%)', 'foo(1)', 'scale(1e999)', 'scale(1))', 'scale(1) 5', 'translate(1 2 3 4 5 6 7)']) {
+  for (const text of [
+    'rotate',
+    'rotate(',
+    'rotate(1 2)',
+    'matrix(1 2 3 4 5)',
+    'scale()',
+    'rotate(x)',
+    'rotate3d(1 1 1 5)',
+    'translate(5%)',
+    'foo(1)',
+    'scale(1e999)',
+    'scale(1))',
+    'scale(1) 5',
+    'translate(1 2 3 4 5 6 7)',
+  ]) {
     expect(transformList(text), text).toBeNull()
   }
   expect(transformList('scale(1) '.repeat(2000))).toBeNull()
@@ -42,17 +56,25 @@ test('200 random lists move points where a second reader moves them', () => {
   const number = (): string => ((next() - 0.5) * 8).toFixed(2)
   for (let i = 0; i < 200; i += 1) {
     const functions = Array.from({ length: 1 + Math.floor(next() * 4) }, () => {
-      const kinds = [`translate(${number()},${number()})`, `scale(${number()} ${number()})`, `rotate(${Number(number()) * 90})`,
-        `rotate(${Number(number()) * 20} ${number()} ${number()})`, `skewX(${number()})`, `skewY(${number()})`,
-        `matrix(${number()} ${number()} ${number()} ${number()} ${number()} ${number()})`]
+      const kinds = [
+        `translate(${number()},${number()})`,
+        `scale(${number()} ${number()})`,
+        `rotate(${Number(number()) * 90})`,
+        `rotate(${Number(number()) * 20} ${number()} ${number()})`,
+        `skewX(${number()})`,
+        `skewY(${number()})`,
+        `matrix(${number()} ${number()} ${number()} ${number()} ${number()} ${number()})`,
+      ]
       return kinds[Math.floor(next() * kinds.length)]!
     })
     const list = functions.join(' ')
     const [a, b, c, d, e, f] = transformList(list)!
     const theirs: number[] = []
-    svgpath('M1.5 -2.25').transform(list).iterate((segment) => {
-      if (segment[0] === 'M') theirs.push(segment[1], segment[2])
-    })
+    svgpath('M1.5 -2.25')
+      .transform(list)
+      .iterate((segment) => {
+        if (segment[0] === 'M') theirs.push(segment[1], segment[2])
+      })
     const size = Math.abs(theirs[0]!) + Math.abs(theirs[1]!) + 1000
     expect(Math.abs(a * 1.5 + c * -2.25 + e - theirs[0]!), list).toBeLessThan(1e-13 * size)
     expect(Math.abs(b * 1.5 + d * -2.25 + f - theirs[1]!), list).toBeLessThan(1e-13 * size)
@@ -63,18 +85,43 @@ test('nested groups compose; transform may stand in a style', () => {
   // Exact: (0,0)-(10,5) scaled by 2, moved by (30, 10), then turned by 90 degrees about (50, 50): (x, y) -> (100 - y, x).
   const square = '<rect width="10" height="5"/>'
   const attribute = outlines(drawn(`<g transform="rotate(90 50 50)"><g transform="translate(30 10) scale(2)">${square}</g></g>`))
-  const style = outlines(drawn(`<g style="transform: rotate(90deg)" transform="scale(9)"><g transform="translate(0 -100) translate(30 10)"><g style="transform:scale(2)">${square}</g></g></g>`))
-  expect(attribute).toEqual([[[90, 70], [90, 50], [80, 50], [80, 70]]])
+  const style = outlines(
+    drawn(
+      `<g style="transform: rotate(90deg)" transform="scale(9)">` +
+        `<g transform="translate(0 -100) translate(30 10)"><g style="transform:scale(2)">${square}</g></g></g>`,
+    ),
+  )
+  expect(attribute).toEqual([
+    [
+      [90, 70],
+      [90, 50],
+      [80, 50],
+      [80, 70],
+    ],
+  ])
   expect(style).toEqual(attribute)
 })
 
 test('a mirror turns the sense of an outline, not its area', () => {
   const [plain, mirrored] = outlines(drawn('<path d="M0 0H10V5H0z"/><path transform="matrix(-1 0 0 1 50 0)" d="M0 0H10V5H0z"/>'))
-  expect(plain).toEqual([[0, 100], [10, 100], [10, 95], [0, 95]])
-  expect(mirrored).toEqual([[50, 100], [40, 100], [40, 95], [50, 95]])
+  expect(plain).toEqual([
+    [0, 100],
+    [10, 100],
+    [10, 95],
+    [0, 95],
+  ])
+  expect(mirrored).toEqual([
+    [50, 100],
+    [40, 100],
+    [40, 95],
+    [50, 95],
+  ])
 })
 
 test('a transform that cannot be read is refused at its element', () => {
-  expect(refusal('<g id="a" transform="rotate(1 2)"><rect width="1" height="1"/></g>')).toMatchObject({ message: 'transform cannot be read: "rotate(1 2)"', where: { line: 1, entity: '<g> "a"' } })
+  expect(refusal('<g id="a" transform="rotate(1 2)"><rect width="1" height="1"/></g>')).toMatchObject({
+    message: 'transform cannot be read: "rotate(1 2)"',
+    where: { line: 1, entity: '<g> "a"' },
+  })
   expect(refusal('<rect style="transform:scale(2);transform-origin:center" width="1" height="1"/>').message).toMatch(/^transform-origin/)
 })

@@ -18,9 +18,15 @@ function refused(text: string): { code: string; message: string; line: number | 
 }
 
 test('elements, attributes, lines, and the text that is asked for', () => {
-  const tree = root('<?xml version="1.0"?>\n<a x="1" y=\'&lt;&#65;&#x42;&amp;\'>\n<b/>text<note>one &gt; <![CDATA[<two>]]></note>\n<c>\n</c></a>')
+  const tree = root(
+    '<?xml version="1.0"?>\n<a x="1" y=\'&lt;&#65;&#x42;&amp;\'>\n<b/>text<note>one &gt; <![CDATA[<two>]]></note>\n<c>\n</c></a>',
+  )
   expect([tree.name, tree.line, attribute(tree, 'x'), attribute(tree, 'y'), attribute(tree, 'z')]).toEqual(['a', 2, '1', '<AB&', null])
-  expect(tree.children.map(({ name, line, text }) => [name, line, text])).toEqual([['b', 3, ''], ['note', 3, 'one > <two>'], ['c', 4, '']])
+  expect(tree.children.map(({ name, line, text }) => [name, line, text])).toEqual([
+    ['b', 3, ''],
+    ['note', 3, 'one > <two>'],
+    ['c', 4, ''],
+  ])
 })
 
 test('namespaces: local names, and attributes of the one that is kept, whatever its prefix', () => {
@@ -37,10 +43,19 @@ test('entities that multiply themselves are refused, not expanded', () => {
   const before = process.memoryUsage().heapUsed
   expect(refused(`<?xml version="1.0"?><!DOCTYPE svg [${declarations}]><svg><text>&l9;</text></svg>`).code).toBe('xml-entities')
   expect(process.memoryUsage().heapUsed - before).toBeLessThan(50e6)
-  for (const declaration of ['<!ENTITY a "b">', '<!ENTITY a SYSTEM "file:///etc/passwd">', '<!ENTITY % p SYSTEM "http://example.org/x.dtd"> %p;', '<!entity a "b">']) {
+  for (const declaration of [
+    '<!ENTITY a "b">',
+    '<!ENTITY a SYSTEM "file:///etc/passwd">',
+    '<!ENTITY % p SYSTEM "http://example.org/x.dtd"> %p;',
+    '<!entity a "b">',
+  ]) {
     expect(refused(`<!DOCTYPE a [${declaration}]><a/>`).code, declaration).toBe('xml-entities')
   }
-  expect(refused('<a>\n&nbsp;</a>')).toEqual({ code: 'xml-entities', message: 'an entity is used that XML does not define by itself', line: 2 })
+  expect(refused('<a>\n&nbsp;</a>')).toEqual({
+    code: 'xml-entities',
+    message: 'an entity is used that XML does not define by itself',
+    line: 2,
+  })
   expect(refused('<a b="&hello;"/>').code).toBe('xml-entities')
 })
 
