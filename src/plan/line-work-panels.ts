@@ -37,7 +37,7 @@ export interface PanelFaces {
 type Points = readonly (readonly [x: number, y: number])[]
 
 /**
- * Fails with "no-panels", "no-area", "self-crossing", "corner-twice", "panels-overlap", "three-panels",
+ * Fails with "no-panels", "no-area", "self-crossing", "corner-twice", "panels-overlap", "panel-twice", "three-panels",
  * "panel-round-hole", "island", "void-nowhere", "too-many-crossings", "too-many-lines", "tangled".
  */
 export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: number, voids: Points): Steps<Result<PanelFaces>> {

@@ -2,6 +2,10 @@
  * Whether the closed outlines of a drawing are its panels. They are when none overlap, none cross or touch themselves and
  * no other line runs inside one; then each is one region of the arrangement: at every corner its next side is also the
  * graph's next edge, and no figure floats inside it.
+ *
+ * Where they overlap, a mesh (OBJ) is refused: it says itself what its faces are. In drawings one outline inside another is
+ * a perimeter or a zone, and all is line work; outlines that cut across each other are refused, since reading them as line
+ * work would make slivers of panels that overlap by mistake.
  */
 import { meanWidth } from '../base/geometry/polygon-width.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
@@ -57,6 +61,7 @@ interface Findings {
 export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
   const { drawing, graph, outlines, onHole, at } = input
   const { outlines: loops } = drawing
+  const isMesh = drawing.format === 'OBJ'
   const repeats = new Places()
   const collapsed = new Places()
   const findings: Findings = { lineInside: null, overlap: null, ring: null }
@@ -89,7 +94,10 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
     }
     const first = outlineOf[outlines.half[from]]
     if (first >= 0 && outlines.start[first + 1] - outlines.start[first] === to - from && sameLoop(outlineOf, outlines.half, from, to, first)) {
-      const [x, y] = at(graph.origin[outlines.half[from]])
+      const node = graph.origin[outlines.half[from]]
+      // In a drawing a line drawn over another is a slip; a mesh that has a face twice is wrong in itself.
+      if (isMesh) return fail('panel-twice', 'the panel is there twice', place(i, node, [first]), 'delete one of the two')
+      const [x, y] = at(node)
       repeats.note(x, y)
       continue
     }
@@ -143,8 +151,8 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
   if (findings.overlap !== null) {
     const { place: where, three: isThree } = findings.overlap
     const { cycles, nested } = input.figures()
-    const crossed = drawing.format === 'OBJ' ? null : outlinesCross(graph, cycles, nested, outlines, panels)
-    if (drawing.format !== 'OBJ' && crossed === null) return asLines('One closed outline lies inside another', where.at ?? [0, 0])
+    const crossed = isMesh ? null : outlinesCross(graph, cycles, nested, outlines, panels)
+    if (!isMesh && crossed === null) return asLines('One closed outline lies inside another', where.at ?? [0, 0])
     if (isThree) return fail('three-panels', 'three panels share one joint', where, 'a roof has two panels at a joint: delete or redraw one')
     const [one, other] = crossed ?? findings.overlap.panels
     const spot = crossed === null ? where : place(Math.max(one, other), crossed[2], [Math.min(one, other)])

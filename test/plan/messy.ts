@@ -78,7 +78,7 @@ export function messyOutlines(seed: number, numRuns: number): Map<string, number
       const outcome = result.ok ? 'read' : result.problem.code
       outcomes.set(outcome, (outcomes.get(outcome) ?? 0) + 1)
       if (!result.ok) {
-        expect(['panels-overlap', 'three-panels', 'island', 'corner-twice']).toContain(result.problem.code)
+        expect(['panels-overlap', 'panel-twice', 'three-panels', 'island', 'corner-twice']).toContain(result.problem.code)
         return
       }
       const { plan } = result.value
