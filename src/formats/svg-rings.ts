@@ -3,6 +3,8 @@
  * rule evenodd, a ring inside an odd number of others bounds a hole; by nonzero, it does when the windings of itself and
  * of all round it add up to zero (SVG 2, section 13.4.2).
  */
+import { pointInPolygon } from '../base/geometry/point-in-polygon.ts'
+import { signedArea } from '../base/geometry/polygon-area.ts'
 import type { Steps } from '../base/steps.ts'
 
 /** Rings inside one another beyond this are no drawing. */
@@ -11,9 +13,10 @@ export const deepestRings = 64
 /** Boxes and coordinates that are looked at between two turns: about a millisecond. */
 const slice = 1 << 16
 
-/** Points x y x y .. of rings, each from `from` to `to`, the first point not repeated. */
+/** Rings as runs of points: ring i has the points from[i] .. to[i] - 1, the first not repeated. */
 export interface Rings {
-  readonly xy: Float64Array
+  readonly x: Float64Array
+  readonly y: Float64Array
   readonly from: readonly number[]
   readonly to: readonly number[]
 }
@@ -29,13 +32,15 @@ export function* holes(rings: Rings, evenOdd: boolean): Steps<Uint8Array | null>
   const count = rings.from.length
   const out = new Uint8Array(count)
   if (count < 2) return out
+  const { x, y, from, to } = rings
+  const point = Int32Array.from(x.keys())
   let looked = 0
   const boxes: Box[] = []
   const area = new Float64Array(count)
   for (let ring = 0; ring < count; ring += 1) {
     boxes.push(box(rings, ring))
-    area[ring] = signedArea(rings, ring)
-    looked += rings.to[ring] - rings.from[ring]
+    area[ring] = signedArea(x, y, point, from[ring], to[ring])
+    looked += to[ring] - from[ring]
     if (looked > slice) {
       looked = 0
       yield { stage: 'Reading', done: 0.5 }
@@ -68,8 +73,8 @@ export function* holes(rings: Rings, evenOdd: boolean): Steps<Uint8Array | null>
       bucket[kept++] = other
       if (!within(own, boxes[other]) || Math.abs(area[other]) <= Math.abs(area[ring])) continue
       inside ??= pointInside(rings, ring)
-      looked += rings.to[other] - rings.from[other]
-      if (!contains(rings, other, inside[0], inside[1])) continue
+      looked += to[other] - from[other]
+      if (pointInPolygon(inside[0], inside[1], x, y, point, from[other], to[other]) !== 1) continue
       depth += 1
       winding += Math.sign(area[other])
       if (depth > deepestRings) return null
@@ -90,13 +95,13 @@ export function* holes(rings: Rings, evenOdd: boolean): Steps<Uint8Array | null>
 
 type Box = readonly [left: number, low: number, right: number, high: number]
 
-function box({ xy, from, to }: Rings, ring: number): Box {
+function box({ x, y, from, to }: Rings, ring: number): Box {
   let [left, low, right, high] = [Infinity, Infinity, -Infinity, -Infinity]
-  for (let i = from[ring]; i < to[ring]; i += 2) {
-    left = Math.min(left, xy[i])
-    right = Math.max(right, xy[i])
-    low = Math.min(low, xy[i + 1])
-    high = Math.max(high, xy[i + 1])
+  for (let i = from[ring]; i < to[ring]; i += 1) {
+    left = Math.min(left, x[i])
+    right = Math.max(right, x[i])
+    low = Math.min(low, y[i])
+    high = Math.max(high, y[i])
   }
   return [left, low, right, high]
 }
@@ -104,46 +109,20 @@ function box({ xy, from, to }: Rings, ring: number): Box {
 const within = (inner: Box, outer: Box): boolean =>
   inner[0] >= outer[0] && inner[1] >= outer[1] && inner[2] <= outer[2] && inner[3] <= outer[3]
 
-/** Half the sum of the cross products, from the first corner so that far coordinates do not cancel; > 0 counter-clockwise. */
-function signedArea({ xy, from, to }: Rings, ring: number): number {
-  const first = from[ring]
-  let twice = 0
-  for (let i = first + 2; i + 3 < to[ring]; i += 2) {
-    twice += (xy[i] - xy[first]) * (xy[i + 3] - xy[first + 1]) - (xy[i + 2] - xy[first]) * (xy[i + 1] - xy[first + 1])
-  }
-  return twice / 2
-}
-
-/** Where the side from corner j to corner i (places in `xy`) meets the level y; NaN where it does not. */
-function crossing(xy: Float64Array, i: number, j: number, y: number): number {
-  if (xy[i + 1] > y === xy[j + 1] > y) return NaN
-  return xy[i] + ((y - xy[i + 1]) / (xy[j + 1] - xy[i + 1])) * (xy[j] - xy[i])
-}
-
-/** Crossing rule on the ray to the right. */
-function contains({ xy, from, to }: Rings, ring: number, x: number, y: number): boolean {
-  let odd = false
-  for (let i = from[ring], j = to[ring] - 2; i < to[ring]; j = i, i += 2) if (x < crossing(xy, i, j, y)) odd = !odd
-  return odd
-}
-
 /** A point inside: the middle of the first piece inside of a level line that passes through no corner. */
-function pointInside({ xy, from, to }: Rings, ring: number): readonly [number, number] {
-  const levels: number[] = []
-  for (let i = from[ring]; i < to[ring]; i += 2) levels.push(xy[i + 1])
-  levels.sort((a, b) => a - b)
+function pointInside({ x, y, from, to }: Rings, ring: number): readonly [number, number] {
+  const levels = y.slice(from[ring], to[ring]).sort()
   let widest = 0
-  let y = levels[0]
+  let level = levels[0]
   for (let i = 1; i < levels.length; i += 1) {
     if (levels[i] - levels[i - 1] <= widest) continue
     widest = levels[i] - levels[i - 1]
-    y = (levels[i] + levels[i - 1]) / 2
+    level = (levels[i] + levels[i - 1]) / 2
   }
   const cuts: number[] = []
-  for (let i = from[ring], j = to[ring] - 2; i < to[ring]; j = i, i += 2) {
-    const cut = crossing(xy, i, j, y)
-    if (!Number.isNaN(cut)) cuts.push(cut)
+  for (let i = from[ring], j = to[ring] - 1; i < to[ring]; j = i, i += 1) {
+    if (y[i] > level !== y[j] > level) cuts.push(x[i] + ((level - y[i]) / (y[j] - y[i])) * (x[j] - x[i]))
   }
   cuts.sort((a, b) => a - b)
-  return cuts.length < 2 ? [xy[from[ring]], xy[from[ring] + 1]] : [(cuts[0] + cuts[1]) / 2, y]
+  return cuts.length < 2 ? [x[from[ring]], y[from[ring]]] : [(cuts[0] + cuts[1]) / 2, level]
 }

@@ -68,6 +68,19 @@ export class Tracer implements Pen {
     return this.rings.at(subpath) === 1
   }
 
+  /** The points as two arrays. */
+  columns(): { x: Float64Array; y: Float64Array } {
+    const { xy } = this
+    const count = xy.length / 2
+    const x = new Float64Array(count)
+    const y = new Float64Array(count)
+    for (let i = 0; i < count; i += 1) {
+      x[i] = xy.at(2 * i)
+      y[i] = xy.at(2 * i + 1)
+    }
+    return { x, y }
+  }
+
   move(x: number, y: number): void {
     this.finishChain(false)
     this.x = this.startX = x

@@ -263,8 +263,8 @@ export class SvgWalk {
       const end = tracer.start(i + 1)
       if (i % slice === slice - 1) yield reading
       if (end - start >= 6 && (tracer.isRing(i) || !stroked)) {
-        from.push(start)
-        to.push(end)
+        from.push(start / 2)
+        to.push(end / 2)
       } else if (stroked) {
         const points = this.points(start, end)
         for (let k = 1; k < points.length; k += 1) sketch.segment(points[k - 1], points[k], index, line)
@@ -273,11 +273,11 @@ export class SvgWalk {
     }
     if (lines + from.length === 0) sketch.leaveOut(`${element.name}, of no size`, layer)
     // Without a fill, rings inside one another are lines inside lines: what is a panel is for the plan to say.
-    const hole = filled && from.length > 1 ? yield* holes({ xy: tracer.xy.array(), from, to }, look.evenOdd) : new Uint8Array(from.length)
+    const hole = filled && from.length > 1 ? yield* holes({ ...tracer.columns(), from, to }, look.evenOdd) : new Uint8Array(from.length)
     if (hole === null) return unreadable(element, `rings lie inside one another more than ${deepestRings} deep`)
     for (let i = 0; i < from.length; i += 1) {
       const list = hole[i] === 1 ? sketch.holes : sketch.outlines
-      list.add(this.points(from[i], to[i]), index, line)
+      list.add(this.points(2 * from[i], 2 * to[i]), index, line)
       if (i % slice === slice - 1) yield reading
     }
     return null

@@ -213,6 +213,10 @@ test('what is wrong is said with the path of the value and its line', () => {
       'line 3, features[0].geometry.coordinates[0][2][1]: a number is expected in place of "x"; correct it, or export the file again.',
     ],
     [
+      '{"type":"Polygon","coordinates":[[[0,0,1],[1,0,1],[1,1,1],[0,0,2]]]}',
+      'line 1, coordinates[0]: the ring is not closed; repeat its first position at its end.',
+    ],
+    [
       '{"type":"MultiPolygon","coordinates":[[[[0,0],[1,0],[0,0]]]]}',
       'line 1, coordinates[0][0]: a ring needs four positions or more, it has 3; correct it, or export the file again.',
     ],
