@@ -3,7 +3,7 @@
  * smallest set of unknowns that leaves no connection across (`cover.ts`).
  *
  * For most positions the size of that set is only estimated, by counting the unknowns on one side that have a neighbour on
- * the other, for all positions in one scan; the best few are then solved exactly.
+ * the other, for all positions in one scan; the best two are then solved exactly.
  *
  * Tried and dropped: exact covers at all of 48 positions (4 times the time of ordering, 1 percent fewer operations); smallest
  * vertex cuts in a wide band about the middle by maximum flow (on cell plans the straight cut was already smallest, in bands
@@ -35,23 +35,27 @@ export class Cuts {
   readonly axes: readonly [Axis, Axis]
   /** The piece an unknown is in. */
   readonly label: Int32Array
-  /** The cut chosen last: its axis and the place from which on unknowns are on the right side; the separator is separator[0 .. count). */
+  /** The cut chosen last: its axis and the position from which on unknowns are on the right side; the separator is separator[0 .. count). */
   axis = 0
-  threshold = 0
+  position = 0
   count = 0
   readonly separator: Int32Array
   private readonly cover: Cover
   /** Positions in the segment, the places they stand for, unknowns with neighbours across on either side. */
-  private readonly position = new Int32Array(mostPositions)
+  private readonly positions = new Int32Array(mostPositions)
   private readonly limit = new Int32Array(mostPositions)
   private readonly leftSize = new Int32Array(mostPositions)
   private readonly rightSize = new Int32Array(mostPositions)
   private best = Infinity
+  /** Unknowns that may have a neighbour across one of the cuts to be solved: near[0 .. nearCount). */
+  private readonly near: Int32Array
+  private nearCount = 0
 
   constructor(private readonly pattern: Pattern, private readonly coordinates: Float64Array) {
     this.axes = [reaches(pattern, coordinates, 0), reaches(pattern, coordinates, 1)]
     this.label = new Int32Array(pattern.size)
     this.separator = new Int32Array(pattern.size)
+    this.near = new Int32Array(pattern.size)
     this.cover = new Cover(pattern.size)
   }
 
@@ -62,30 +66,30 @@ export class Cuts {
     const half = from + (size >> 1)
     this.best = Infinity
     if (size < plainSize) {
+      this.gather(from, to, half, half)
       this.solve(piece, from, to, half)
       return
     }
     // The best of coarse positions, then of fine ones about it: a gap or a neck is narrow.
     const reach = Math.floor(reachShare * size)
     const coarse = this.estimate(from, to, half, reach)
-    this.solve(piece, from, to, coarse)
     const spacing = Math.ceil((2 * reach) / (mostPositions - 1))
     const fine = this.estimate(from, to, coarse, Math.min(spacing, coarse - from - 1, to - coarse - 1))
+    this.gather(from, to, Math.min(coarse, fine), Math.max(coarse, fine))
+    this.solve(piece, from, to, coarse)
     if (fine !== coarse) this.solve(piece, from, to, fine)
   }
 
   /** Solves the cut at a position and keeps it if it is the best so far. */
   private solve(piece: number, from: number, to: number, position: number): void {
-    const { cover } = this
-    const { sorted, place } = this.axes[this.axis] as Axis
-    const threshold = place[sorted[position] as number] as number
-    this.separate(piece, from, to, threshold)
+    const { cover, separator } = this
+    this.separate(piece, position)
     const size = cover.count * this.uneven(from, to, position)
     if (size >= this.best) return
     this.best = size
-    this.threshold = threshold
+    this.position = position
     this.count = cover.count
-    for (let m = 0; m < cover.count; m++) this.separator[m] = cover.members[m] as number
+    for (let m = 0; m < cover.count; m++) separator[m] = cover.members[m] as number
   }
 
   private uneven(from: number, to: number, position: number): number {
@@ -103,11 +107,11 @@ export class Cuts {
   /** The position within `reach` of `middle` whose separator seems smallest. */
   private estimate(from: number, to: number, middle: number, reach: number): number {
     const { sorted, place, low, high } = this.axes[this.axis] as Axis
-    const { position, limit, leftSize, rightSize } = this
+    const { positions, limit, leftSize, rightSize } = this
     const half = (mostPositions - 1) / 2
     for (let c = 0; c < mostPositions; c++) {
       const at = middle + Math.round((reach * (c - half)) / half)
-      position[c] = at
+      positions[c] = at
       limit[c] = place[sorted[at] as number] as number
       leftSize[c] = 0
       rightSize[c] = 0
@@ -118,7 +122,7 @@ export class Cuts {
     let passed = 0
     for (let k = Math.max(from, middle - margin); k < end; k++) {
       const v = sorted[k] as number
-      while (passed < mostPositions && (position[passed] as number) <= k) passed++
+      while (passed < mostPositions && (positions[passed] as number) <= k) passed++
       const highest = high[v] as number
       for (let c = passed; c < mostPositions && (limit[c] as number) <= highest; c++) leftSize[c] = (leftSize[c] as number) + 1
       const lowest = low[v] as number
@@ -127,23 +131,43 @@ export class Cuts {
     let best = Infinity
     let choice = middle
     for (let c = 0; c < mostPositions; c++) {
-      const size = Math.min(leftSize[c] as number, rightSize[c] as number) * this.uneven(from, to, position[c] as number)
+      const size = Math.min(leftSize[c] as number, rightSize[c] as number) * this.uneven(from, to, positions[c] as number)
       if (size >= best) continue
       best = size
-      choice = position[c] as number
+      choice = positions[c] as number
     }
     return choice
   }
 
-  /** The smallest separator between the piece's unknowns at places below `threshold` and the others, in this.cover. */
-  private separate(piece: number, from: number, to: number, threshold: number): void {
-    const { sorted, place, low, high } = this.axes[this.axis] as Axis
-    const { cover, label, pattern: { start, row } } = this
-    // Every connection is kept once in the pattern, with either of its ends: both sides are looked through.
-    for (let k = from; k < to; k++) {
+  /** Lists the unknowns of the segment with a neighbour, inside or outside, beyond one of the positions low <= high or between them. */
+  private gather(from: number, to: number, low: number, high: number): void {
+    const { near } = this
+    const axis = this.axes[this.axis] as Axis
+    const { sorted, place } = axis
+    const lowest = place[sorted[low] as number] as number
+    const highest = place[sorted[high] as number] as number
+    let count = 0
+    for (let k = from; k < low; k++) {
       const v = sorted[k] as number
+      if ((axis.high[v] as number) >= lowest) near[count++] = v
+    }
+    for (let k = low; k < high; k++) near[count++] = sorted[k] as number
+    for (let k = high; k < to; k++) {
+      const v = sorted[k] as number
+      if ((axis.low[v] as number) < highest) near[count++] = v
+    }
+    this.nearCount = count
+  }
+
+  /** The smallest separator between the piece's unknowns before and from `position` on, in this.cover. */
+  private separate(piece: number, position: number): void {
+    const { sorted, place } = this.axes[this.axis] as Axis
+    const { cover, label, near, pattern: { start, row } } = this
+    const threshold = place[sorted[position] as number] as number
+    // Every connection is kept once in the pattern, with either of its ends: both sides are looked through.
+    for (let k = 0; k < this.nearCount; k++) {
+      const v = near[k] as number
       const isLeft = (place[v] as number) < threshold
-      if (isLeft ? (high[v] as number) < threshold : (low[v] as number) >= threshold) continue
       const end = start[v + 1] as number
       for (let p = (start[v] as number) + 1; p < end; p++) {
         const u = row[p] as number

@@ -8,9 +8,9 @@
  */
 import { assert } from '../assert.ts'
 import type { Steps } from '../steps.ts'
-import { four, triangle, type Analysis } from './analyse.ts'
-import { addBoundary, addPivotal } from './assemble.ts'
-import { eliminateFour, scaleBelow, type PivotRules } from './pivots.ts'
+import { four, type Analysis } from './analyse.ts'
+import { Elimination, scratchNumbers } from './front.ts'
+import type { PivotRules } from './pivots.ts'
 import { newStore, type Store } from './store.ts'
 
 export interface Factor {
@@ -29,13 +29,8 @@ export interface Factor {
   ready: boolean
 }
 
-/** Columns eliminated before the rest of the front is updated, and rows updated together, in slivers: a block of both stays in cache. */
-const blockColumns = 16
-const blockRows = 64
-
-
 /** Below this much work the plain kernels are done before a module is set up. */
-const worthwhileOperations = 3e7
+const worthwhileOperations = 3e6
 
 /** Operations between two looks at the clock: below a millisecond. */
 const operationsPerLook = 2e6
@@ -53,7 +48,7 @@ export function* factor(analysis: Analysis, values: Float64Array, options: Facto
   for (let t = 0; t < fronts; t++) pivotAt[t + 1] = (pivotAt[t] as number) + four((first[t + 1] as number) - (first[t] as number))
   const into: Factor = {
     analysis, pivotAt, zeros: 0, ready: true,
-    store: newStore(analysis.storeSize + Math.max(16 * blockColumns, 16 * analysis.widest), options.binary ?? analysis.operations >= worthwhileOperations),
+    store: newStore(analysis.storeSize + Math.max(scratchNumbers, 16 * analysis.widest), options.binary ?? analysis.operations >= worthwhileOperations),
     pivot: new Float64Array(pivotAt[fronts] as number),
     scale: new Float64Array(pivotAt[fronts] as number),
   }
@@ -69,68 +64,30 @@ export function* refactor(into: Factor, values: Float64Array): Steps<void> {
 
 /** The factorisation proper; the panels of the store are zero. */
 function* numeric(into: Factor, values: Float64Array): Steps<void> {
-  const { analysis, store: { data, update }, pivot, pivotAt, scale } = into
-  const { target, fronts, first, panel, boundaryStart, schur, childStart, children } = analysis
-  assert(values.length === target.length, 'one value per entry of the pattern')
+  const { analysis } = into
+  assert(values.length === analysis.target.length, 'one value per entry of the pattern')
   into.ready = false
   const largest = scatter(into, values)
   const rules: PivotRules = { stand: largest > 0 ? largest * 2 ** -26 : 1, zeros: 0, finite: true }
-  const b = analysis.storeSize
+  const elimination = new Elimination(into, rules)
   let turn = performance.now()
   let work = 0
   let total = 0
-  for (let t = 0; t < fronts; t++) {
-    const pivots = (first[t + 1] as number) - (first[t] as number)
-    const S = four(pivots) >> 2
-    const R = four((boundaryStart[t + 1] as number) - (boundaryStart[t] as number)) >> 2
-    const base = panel[t] as number
-    const below = base + triangle(S)
-    const at = pivotAt[t] as number
-    const complement = schur[t] as number
-    for (let q = childStart[t] as number; q < (childStart[t + 1] as number); q++) addPivotal(data, analysis, children[q] as number)
-    for (let from = 0; from < S; from += blockColumns) {
-      const to = Math.min(S, from + blockColumns)
-      for (let s = from; s < to; s++) {
-        const corner = base + triangle(s)
-        const depth = 4 * (s - from)
-        if (depth > 0) {
-          scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
-          update(corner + 16 * from, 16 * (s + 1), 16, b, 0, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
-          update(below + 16 * from, 16 * S, 0, b, 0, below + 16 * s, 16 * S, 0, R, depth, 1)
-        }
-        eliminateFour(data, corner + 16 * s, pivot, at + 4 * s, scale, pivots - 4 * s, rules)
-        scaleBelow(data, corner + 16 * s, pivot, at + 4 * s, base + triangle(s + 1) + 16 * s, 16 * (s + 2), 16, S - s - 1)
-        scaleBelow(data, corner + 16 * s, pivot, at + 4 * s, below + 16 * s, 16 * S, 0, R)
-      }
-      const depth = 4 * (to - from)
-      work += depth * depth * (S + R) * 4
-      for (let s = to; s < S; s++) {
-        const corner = base + triangle(s)
-        scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
-        update(corner + 16 * from, 16 * (s + 1), 16, b, 0, corner + 16 * s, 16 * (s + 1), 16, S - s, depth, 1)
-        update(below + 16 * from, 16 * S, 0, b, 0, below + 16 * s, 16 * S, 0, R, depth, 1)
-        work += 32 * depth * (S - s + R)
-      }
-      for (let low = 0; low < R; low += blockRows) {
-        const high = Math.min(R, low + blockRows)
-        for (let j = 0; j < high; j++) {
-          const s = Math.max(j, low)
-          scaled(data, below + 16 * S * j + 16 * from, pivot, at + 4 * from, b, depth)
-          update(below + 16 * S * s + 16 * from, 16 * S, 0, b, 0, complement + triangle(s) + 16 * j, 16 * (s + 1), 16, high - s, depth, from)
-          work += 32 * depth * (high - s)
-        }
-        if (work > operationsPerLook) {
-          total += work
-          work = 0
-          if (performance.now() - turn > sliceMs) {
-            yield { stage: 'Factoring', done: Math.min(1, total / analysis.operations) }
-            turn = performance.now()
-          }
-        }
+  // The loop only counts and looks at the clock: engines optimise generators late, so the work is in plain functions.
+  for (let t = 0; t < analysis.fronts; t++) {
+    elimination.begin(t)
+    for (let part = 0; part !== -1; ) {
+      part = elimination.advance(part)
+      work += elimination.work
+      if (work < operationsPerLook) continue
+      total += work
+      work = 0
+      if (performance.now() - turn > sliceMs) {
+        yield { stage: 'Factoring', done: Math.min(1, total / analysis.operations) }
+        turn = performance.now()
       }
     }
-    for (let q = childStart[t] as number; q < (childStart[t + 1] as number); q++) addBoundary(data, analysis, children[q] as number)
-    work += 1000
+    elimination.end()
   }
   assert(rules.finite, 'the factor grew beyond the largest number')
   into.zeros = rules.zeros
@@ -158,15 +115,4 @@ function scatter({ analysis, store: { data }, pivotAt, scale }: Factor, values: 
     }
   }
   return largest
-}
-
-/** b[4 k + j] = a[4 k + j] d_k: four rows of L, ready to be multiplied from the right. */
-function scaled(data: Float64Array, a: number, pivot: Float64Array, at: number, b: number, depth: number): void {
-  for (let k = 0; k < depth; k++) {
-    const d = pivot[at + k] as number
-    data[b + 4 * k] = (data[a + 4 * k] as number) * d
-    data[b + 4 * k + 1] = (data[a + 4 * k + 1] as number) * d
-    data[b + 4 * k + 2] = (data[a + 4 * k + 2] as number) * d
-    data[b + 4 * k + 3] = (data[a + 4 * k + 3] as number) * d
-  }
 }

@@ -51,8 +51,7 @@ export function* dissection(pattern: Pattern, coordinates: Float64Array): Steps<
     const b = to[t] as number
     const last = end[t] as number
     if (b - a <= smallPiece) {
-      const { sorted } = cuts.axes[0]
-      for (let k = a; k < b; k++) rank[sorted[k] as number] = last - b + k
+      keepWhole(cuts, a, b, rank, last)
       own[t] = b - a
       ranked += b - a
       continue
@@ -77,6 +76,11 @@ export function* dissection(pattern: Pattern, coordinates: Float64Array): Steps<
   return { rank, ...backwards(preorder, own, parentOf) }
 }
 
+function keepWhole(cuts: Cuts, a: number, b: number, rank: Int32Array, last: number): void {
+  const { sorted } = cuts.axes[0]
+  for (let k = a; k < b; k++) rank[sorted[k] as number] = last - b + k
+}
+
 const separated = -1
 
 /**
@@ -84,25 +88,25 @@ const separated = -1
  * on both axes, and ranks the separator, in order along the cut, before `last`. Returns the size of the left half.
  */
 function divide(cuts: Cuts, a: number, b: number, left: number, rank: Int32Array, last: number, spare: Int32Array): number {
-  const { label, separator, count, threshold } = cuts
+  const { label, separator, count, position } = cuts
   const along = cuts.axes[cuts.axis] as Axis
   const across = cuts.axes[1 - cuts.axis] as Axis
   for (let m = 0; m < count; m++) label[separator[m] as number] = separated
-  const { sorted, place } = along
+  const { sorted } = along
   let lefts = 0
   let rights = 0
-  for (let k = a; k < b; k++) {
+  for (let k = a; k < position; k++) {
     const v = sorted[k] as number
     if (label[v] === separated) continue
-    if ((place[v] as number) < threshold) {
-      label[v] = left
-      sorted[a + lefts++] = v
-    } else {
-      label[v] = left + 1
-      spare[rights++] = v
-    }
+    label[v] = left
+    sorted[a + lefts++] = v
   }
-  for (let k = 0; k < rights; k++) sorted[a + lefts + k] = spare[k] as number
+  for (let k = position; k < b; k++) {
+    const v = sorted[k] as number
+    if (label[v] === separated) continue
+    label[v] = left + 1
+    sorted[a + lefts + rights++] = v
+  }
   const other = across.sorted
   let l = a
   let r = 0
