@@ -1,5 +1,6 @@
 /** The coordinates that leave the tool, rounded as they are written, and how flat the panels are there. */
-import { conversion, type Unit } from '../base/length.ts'
+import { micrometreDecimals, rounded } from '../base/decimal.ts'
+import { conversion } from '../base/length.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Plan } from '../plan/plan.ts'
 import type { RoofFacts } from '../roof/answer/answer.ts'
@@ -16,30 +17,17 @@ export interface Written {
   readonly exactMax: number
 }
 
-/** Decimals of z that make at most 1 um, by unit. */
-const micrometreDecimals: Readonly<Record<Unit, number>> = { mm: 3, cm: 4, m: 6, in: 5, ft: 6 }
-
 /** `heights` in the plan's unit; `decimals` null: x and y as read, z to 1 um; else all three to so many. */
 export function* writtenCoordinates(plan: Plan, heights: Float64Array, decimals: number | null): Steps<Written> {
-  const z = rounded(heights, decimals ?? micrometreDecimals[plan.unit])
-  const x = decimals === null ? plan.x : rounded(plan.x, decimals)
-  const y = decimals === null ? plan.y : rounded(plan.y, decimals)
+  const z = heights.map((value) => rounded(value, decimals ?? micrometreDecimals[plan.unit]))
+  const x = decimals === null ? plan.x : plan.x.map((value) => rounded(value, decimals))
+  const y = decimals === null ? plan.y : plan.y.map((value) => rounded(value, decimals))
   const mm = conversion(plan.unit, 'mm')
   const flat = yield* flatness(plan, x, y, z)
   return {
     x, y, z, flat: { corner: flat.corner.map((value) => value * mm), zone: flat.zone.map((value) => value * mm) },
     exactMax: largestZone(plan, plan.x, plan.y, heights) * mm,
   }
-}
-
-/** The nearest number with so many decimals, as its shortest text reads back; never -0. */
-function rounded(values: Float64Array, decimals: number): Float64Array {
-  const scale = 10 ** decimals
-  return values.map((value) => {
-    const scaled = Math.round(value * scale)
-    // Beyond 2^53 the scaled value has no digits to round; the quotient of an integer by 10^d is the number of its text.
-    return Math.abs(scaled) < 2 ** 53 ? scaled / scale + 0 : value
-  })
 }
 
 /** The flatness figures of a summary; at most ten panels that are over the tolerance, worst first. */

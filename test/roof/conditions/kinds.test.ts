@@ -256,15 +256,12 @@ describe('conditions that contradict each other are named, with the misfit', () 
 })
 
 describe('size', () => {
-  test('100,000 nodes, 2,000 of them held: solved in milliseconds', () => {
+  test('100,000 nodes, 2,000 of them held: nothing but the held ones leaves the unknowns', () => {
     const big = grid(316, 316)
     const next = random(9)
     const nodes = Array.from({ length: 2000 }, () => `N${1 + Math.floor(next() * big.nodeCount)}`)
     const rows = rowsOf(big, { ...common, kind: 'level', at: { nodes }, level: 1 }).hard
-    // Time of this process, not of the clock: other tests run beside it. Measured: 15 to 50 ms.
-    const from = process.cpuUsage()
     const { elimination } = eliminate(rows, big.nodeCount, ['it'])
-    expect(process.cpuUsage(from).user).toBeLessThan(200e3)
     expect(elimination.free.length).toBe(big.nodeCount - new Set(nodes).size)
   })
   test('thousands of panels in one plane, and again in two overlapping sets', () => {
@@ -273,9 +270,7 @@ describe('size', () => {
     const sets = [panels(0, 6000), panels(3000, 10000)]
     const made = conditionRows(big, sets.map((list, i) => ({ ...common, name: `set ${i}`, kind: 'coplanar', at: { panels: list } })), 0)
     if (!made.ok) throw new Error(made.problem.message)
-    const from = process.cpuUsage()
     const { elimination, clashes } = eliminate(made.value.hard, big.nodeCount, ['set 0', 'set 1'])
-    expect(process.cpuUsage(from).user).toBeLessThan(1e6)
     expect(clashes).toEqual([])
     expect(elimination.free).toHaveLength(3)
     expect(elimination.start[big.nodeCount]).toBeLessThanOrEqual(3 * big.nodeCount)

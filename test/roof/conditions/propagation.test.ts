@@ -224,13 +224,10 @@ describe('against the null space of all conditions (ml-matrix)', () => {
   })
 })
 
-test('100,000 panels under a level rim: all reached in less than a second', () => {
+test('100,000 panels under a level rim: all reached', () => {
   const big = grid(316, 316)
   const rows = conditionRows(big, [level('rim level', { rim: 'outer' })], 0)
   if (!rows.ok) throw new Error(rows.problem.message)
-  // Time of this process, not of the clock: other tests run beside it. Measured: 0.2 s.
-  const from = process.cpuUsage()
   const found = propagation(big, rows.value.hard)
-  expect(process.cpuUsage(from).user).toBeLessThan(1e6)
   expect(found.forced).toBe(true)
 })
