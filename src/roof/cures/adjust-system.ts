@@ -1,0 +1,194 @@
+/**
+ * The least move, in the metric W of the mobilities, that brings linear rows J u = b and the rise: the multipliers solve
+ *     (J W^-1 J^T) y = b,   u = W^-1 J^T y,
+ * a sparse symmetric matrix over the conditions (panels that share a node couple), positive definite where the conditions are
+ * independent. Where they are not it is raised by a tiny share of its largest entry, and refinement against the matrix as it
+ * is takes the difference out again (proximal multipliers, Rockafellar 1976). The rise, one dense row, is bordered on.
+ *
+ * Tried and dropped: the system in positions, heights and planes (three times as many unknowns, indefinite, needs pivots).
+ */
+import { analyse } from '../../base/sparse/analyse.ts'
+import { cliquePattern, type CliquePattern } from '../../base/sparse/cliques.ts'
+import { factor, refactor, type Factor } from '../../base/sparse/factor.ts'
+import { multiply } from '../../base/sparse/multiply.ts'
+import { dissection } from '../../base/sparse/order.ts'
+import { solve } from '../../base/sparse/solve.ts'
+import type { Steps } from '../../base/steps.ts'
+import type { Mobility } from './adjust-mobility.ts'
+import type { MoveRows, StackedRows } from './adjust-rows.ts'
+
+export interface MoveSystem {
+  readonly stack: StackedRows
+  readonly cliques: CliquePattern
+  /** Entries of the rows by node: entry[start[n] .. start[n + 1]), and the row of each entry. */
+  readonly entryStart: Int32Array
+  readonly entry: Int32Array
+  readonly rowOf: Int32Array
+  readonly values: Float64Array
+  readonly factor: Factor
+}
+
+/** Moves of the nodes: in plan x y x y .., and in height. */
+export interface Moves {
+  readonly plan: Float64Array
+  readonly height: Float64Array
+}
+
+/** One dense row on the heights: sum weight * dz = value. */
+export interface RiseRow {
+  readonly weight: Float64Array
+  readonly value: number
+}
+
+/** Share of the largest diagonal entry by which the matrix is raised: as tau is to the flatness form. */
+const raisedBy = 1e-13
+
+/** Rounds of refinement at most; with independent conditions the first ends it. */
+const mostRounds = 4
+
+/** A rise whose row the conditions answer by less than this share of its own size is theirs to say. */
+const leastAnswer = 1e-9
+
+/** Order and analyse; to be done again only when the rows' nodes change. */
+export function* moveSystem(stack: StackedRows, nodeCount: number, mobility: Mobility): Steps<MoveSystem> {
+  const { rows, at } = stack
+  const rowCount = rows.right.length
+  const rowOf = new Int32Array(rows.node.length)
+  for (let r = 0; r < rowCount; r += 1) rowOf.fill(r, rows.start[r], rows.start[r + 1])
+  const entryStart = new Int32Array(nodeCount + 2)
+  for (const node of rows.node) entryStart[node + 2] += 1
+  for (let n = 2; n < nodeCount + 2; n += 1) entryStart[n] += entryStart[n - 1]
+  const entry = new Int32Array(rows.node.length)
+  for (let e = 0; e < rows.node.length; e += 1) entry[entryStart[rows.node[e] + 1]++] = e
+  const byNode = entryStart.subarray(0, nodeCount + 1)
+  const cliques = cliquePattern(rowCount, byNode, entry.map((e) => rowOf[e]))
+  const analysis = analyse(cliques.pattern, yield* dissection(cliques.pattern, at))
+  const values = new Float64Array(cliques.pattern.row.length)
+  const system = { stack, cliques, entryStart: byNode, entry, rowOf, values }
+  assemble(system, mobility)
+  return { ...system, factor: yield* factor(analysis, raisedValues(cliques, values)) }
+}
+
+/** The factor at the rows' present values. */
+export function* refactored(system: MoveSystem, mobility: Mobility): Steps<void> {
+  assemble(system, mobility)
+  yield* refactor(system.factor, raisedValues(system.cliques, system.values))
+}
+
+function assemble({ stack: { rows, give }, cliques, entryStart, entry, values }: Omit<MoveSystem, 'factor'>, mobility: Mobility): void {
+  const { cx, cy, cz } = rows
+  const { xx, xy, yy, zz } = mobility
+  values.fill(0)
+  let at = 0
+  for (let n = 0; n + 1 < entryStart.length; n += 1) {
+    for (let i = entryStart[n]; i < entryStart[n + 1]; i += 1) {
+      const a = entry[i]
+      const ux = xx[n] * cx[a] + xy[n] * cy[a]
+      const uy = xy[n] * cx[a] + yy[n] * cy[a]
+      const uz = zz[n] * cz[a]
+      for (let j = i; j < entryStart[n + 1]; j += 1) {
+        const b = entry[j]
+        values[cliques.position[at++]] += ux * cx[b] + uy * cy[b] + uz * cz[b]
+      }
+    }
+  }
+  for (let r = 0; r < give.length; r += 1) values[cliques.pattern.start[r]] += give[r]
+}
+
+function raisedValues({ pattern }: CliquePattern, values: Float64Array): Float64Array {
+  let largest = 0
+  for (let i = 0; i < pattern.size; i += 1) largest = Math.max(largest, values[pattern.start[i]])
+  const raised = values.slice()
+  for (let i = 0; i < pattern.size; i += 1) raised[pattern.start[i]] += raisedBy * (largest > 0 ? largest : 1)
+  return raised
+}
+
+/** W^-1 J^T y. */
+export function movesOf(rows: MoveRows, mobility: Mobility, multipliers: Float64Array): Moves {
+  const nodeCount = mobility.xx.length
+  const plan = new Float64Array(2 * nodeCount)
+  const height = new Float64Array(nodeCount)
+  for (let r = 0; r < multipliers.length; r += 1) {
+    const y = multipliers[r]
+    for (let e = rows.start[r]; e < rows.start[r + 1]; e += 1) {
+      const n = rows.node[e]
+      plan[2 * n] += rows.cx[e] * y
+      plan[2 * n + 1] += rows.cy[e] * y
+      height[n] += rows.cz[e] * y
+    }
+  }
+  for (let n = 0; n < nodeCount; n += 1) {
+    const px = plan[2 * n], py = plan[2 * n + 1]
+    plan[2 * n] = mobility.xx[n] * px + mobility.xy[n] * py
+    plan[2 * n + 1] = mobility.xy[n] * px + mobility.yy[n] * py
+    height[n] *= mobility.zz[n]
+  }
+  return { plan, height }
+}
+
+/** J u. */
+export function applied(rows: MoveRows, moves: Moves): Float64Array {
+  const out = new Float64Array(rows.right.length)
+  for (let r = 0; r < out.length; r += 1) {
+    let sum = 0
+    for (let e = rows.start[r]; e < rows.start[r + 1]; e += 1) {
+      const n = rows.node[e]
+      sum += rows.cx[e] * moves.plan[2 * n] + rows.cy[e] * moves.plan[2 * n + 1] + rows.cz[e] * moves.height[n]
+    }
+    out[r] = sum
+  }
+  return out
+}
+
+export interface LeastMove extends Moves {
+  /** Multiplier of each row: what a unit of its right-hand side costs (half the squared move's derivative). */
+  readonly multipliers: Float64Array
+}
+
+/** The least move with J u = right and, where a rise is given, weight . dz = value. */
+export function leastMove(system: MoveSystem, mobility: Mobility, right: Float64Array, rise: RiseRow | null): LeastMove {
+  const { rows } = system.stack
+  if (rise === null) {
+    const multipliers = refinedSolve(system, right)
+    return { ...movesOf(rows, mobility, multipliers), multipliers }
+  }
+  // Border: b = J W^-1 c, d = c^T W^-1 c.
+  const free = rise.weight.map((weight, n) => weight * mobility.zz[n])
+  const border = applied(rows, { plan: new Float64Array(2 * free.length), height: free })
+  const y0 = refinedSolve(system, right)
+  const y1 = refinedSolve(system, border)
+  const size = dot(rise.weight, free)
+  const pivot = size - dot(border, y1)
+  const share = pivot > leastAnswer * size ? (rise.value - dot(border, y0)) / pivot : 0
+  const multipliers = y0.map((y, r) => y - share * y1[r])
+  const moves = movesOf(rows, mobility, multipliers)
+  for (let n = 0; n < free.length; n += 1) moves.height[n] += share * free[n]
+  return { ...moves, multipliers }
+}
+
+function refinedSolve({ factor: factored, cliques: { pattern }, values }: MoveSystem, right: Float64Array): Float64Array {
+  let x = solve(factored, right)
+  let left = missing(right, multiply({ pattern, values }, x))
+  for (let round = 0; round < mostRounds && left.size > 0; round += 1) {
+    const correction = solve(factored, left.vector)
+    const next = x.map((value, i) => value + correction[i])
+    const nextLeft = missing(right, multiply({ pattern, values }, next))
+    if (!(nextLeft.size < left.size)) break
+    const slow = nextLeft.size > left.size / 2
+    x = next
+    left = nextLeft
+    if (slow) break
+  }
+  return x
+}
+
+function missing(right: Float64Array, product: Float64Array): { vector: Float64Array; size: number } {
+  const vector = right.map((value, i) => value - product[i])
+  return { vector, size: Math.sqrt(dot(vector, vector)) }
+}
+
+function dot(a: Float64Array, b: Float64Array): number {
+  let sum = 0
+  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
+  return sum
+}

@@ -1,0 +1,325 @@
+/**
+ * Adjusting: the smallest change of a plan that lets it lift to the asked roof. Minimise
+ *     sum |p - p0|^2 + w sum m (z - t)^2     subject to all panels flat, the conditions met, the rise held,
+ * over node positions p and heights z together (p0 the plan as drawn, t the target, m node areas, working measure).
+ *
+ * Sequential least-change steps (Gauss-Newton with the conditions linearised at the present state: each step is the least
+ * total change from p0, t that meets them), an l1 merit function with halving and a second-order correction (Fletcher 1982),
+ * an active set for the bounds on corners, edges and shifts, and at the end a few steps on the conditions alone. The form of
+ * the problem: Tang, Sun, Gomes, Wallner, Pottmann, "Form-finding with polyhedral meshes made simple" (2014).
+ *
+ * Without the held rise a flat roof is a solution, and one that small w finds. With it, "least shift" alone is still ill
+ * posed (one corner panel folded off costs next to nothing), so w is kept.
+ */
+import type { Steps } from '../../base/steps.ts'
+import type { Plan } from '../../plan/plan.ts'
+import type { Elimination } from '../conditions/eliminate.ts'
+import { boundBlock, bounds, type Bounds, type BoundKind, type BoundOptions } from './adjust-bounds.ts'
+import { flatnessBlock, unflatness } from './adjust-flatness.ts'
+import { tiedBlock } from './adjust-held.ts'
+import { mobility, type MobilityFacts, type RimKeep } from './adjust-mobility.ts'
+import { filled, stacked, type RowBlock, type State } from './adjust-rows.ts'
+import { straightBlock, straightPasses } from './adjust-straight.ts'
+import { applied, leastMove, moveSystem, refactored, type LeastMove, type MoveSystem, type RiseRow } from './adjust-system.ts'
+
+/** What the plan has to keep while it is adjusted. */
+export interface PlanKeeps extends BoundOptions {
+  readonly rim: RimKeep
+  /** Nodes that stay where they are. */
+  readonly fixed: readonly number[]
+  /** Whether straight joint runs stay straight. */
+  readonly straight: boolean
+}
+
+export interface AdjustQuestion {
+  readonly plan: Plan
+  /** Heights to come near to, in spans; they keep the conditions (length nodeCount). */
+  readonly target: Float64Array
+  /** Weights of the rise row: target less its tilt, times the node areas. null: the rise is not held. */
+  readonly riseWeight: Float64Array | null
+  /** The conditions on heights, solved. */
+  readonly elimination: Elimination
+  readonly areas: Float64Array
+  /** w: what a height costs against a shift of the same size, squared. */
+  readonly shapeWeight: number
+  readonly keeps: PlanKeeps
+  /** Relative change of the plan at which the iteration ends; default `settled`. */
+  readonly settle?: number
+}
+
+export interface Adjustment {
+  /** Positions and heights, working measure. */
+  readonly state: State
+  readonly ended: 'settled' | 'stuck' | 'steps'
+  readonly iterations: number
+  /** Largest |N^T z| of a panel, in spans. */
+  readonly unflat: number
+  readonly fixedCount: number
+  readonly slidingCount: number
+  readonly straightCount: number
+  /** Bounds that hold at the end, by kind: how many, and the first corners or edges in question as nodes. */
+  readonly active: readonly { readonly kind: BoundKind; readonly nodes: readonly number[] }[]
+}
+
+/** Relative change of the shifts at which they count as settled; their sum of squares is then right to about its square. */
+export const settled = 1e-3
+
+const mostSteps = 80
+const mostHalvings = 12
+/** Rounds of the active set within one step. */
+const mostRounds = 5
+/** Decrease that a step has to bring, as a share of the predicted one (Armijo 1966). */
+const enough = 1e-4
+/** Panels flatter than this (in spans) are flat to rounding. */
+const flatEnough = 1e-15
+
+export function* adjusted(question: AdjustQuestion): Steps<Adjustment> {
+  const { plan, target, elimination, areas, shapeWeight, keeps } = question
+  const mobile = mobility(plan, keeps.rim, keeps.fixed, elimination, areas, shapeWeight)
+  const all = bounds(plan, keeps)
+  const passes = keeps.straight ? straightPasses(plan) : new Int32Array(0)
+  const fixedBlocks = [flatnessBlock(plan), straightBlock(plan, passes), tiedBlock(plan, elimination)]
+  const anchor: State = { work: plan.work, heights: target }
+  const rise = question.riseWeight
+  const run = new Run(plan, anchor, rise, mobile, all, fixedBlocks, shapeWeight, areas)
+  const ended = yield* run.settle(question.settle ?? settled)
+  yield* run.polish()
+  return {
+    state: run.state, ended, iterations: run.iterations, unflat: unflatness(plan, run.state.work, run.state.heights).largest,
+    fixedCount: mobile.fixedCount, slidingCount: mobile.slidingCount, straightCount: passes.length / 3,
+    active: run.active.map((bound) => ({ kind: all.kindOf(bound), nodes: all.nodesOf(bound) })),
+  }
+}
+
+class Run {
+  state: State
+  iterations = 0
+  active: number[] = []
+  private system: MoveSystem | null = null
+  private builtFor = ''
+  /** By bound: how far beyond its limit the step at hand aims (see `boundBlock`). */
+  private readonly lead = new Map<number, number>()
+  private penalty = 0
+  /** Bounds before this one are not looked at yet. */
+  private first: number
+  private readonly plan: Plan
+  private readonly anchor: State
+  private readonly rise: Float64Array | null
+  private readonly mobile: MobilityFacts
+  private readonly all: Bounds
+  private readonly blocks: readonly RowBlock[]
+  private readonly heightCost: Float64Array
+
+  constructor(
+    plan: Plan, anchor: State, rise: Float64Array | null, mobile: MobilityFacts, all: Bounds, blocks: readonly RowBlock[], shapeWeight: number, areas: Float64Array,
+  ) {
+    this.plan = plan
+    this.anchor = anchor
+    this.rise = rise
+    this.mobile = mobile
+    this.all = all
+    this.blocks = blocks
+    this.heightCost = areas.map((area) => shapeWeight * area)
+    this.first = all.cornersEnd
+    this.state = { work: anchor.work.slice(), heights: anchor.heights.slice() }
+  }
+
+  /**
+   * Edges and shifts are bounded all the way; corners only once the plan is nearly liftable. On the way to it a corner at a
+   * short edge turns this way and that, and holding it then sets off its neighbours (20,000 bounds on 2,500 cells, no step).
+   */
+  *settle(share: number): Steps<Adjustment['ended']> {
+    const ended = yield* this.walk(share)
+    if (ended !== 'settled' || !this.turnsCorners()) return ended
+    this.first = 0
+    return yield* this.walk(share)
+  }
+
+  private turnsCorners(): boolean {
+    for (let bound = 0; bound < this.all.cornersEnd; bound += 1) if (this.all.slack(bound, this.state.work, this.state.work) < 0) return true
+    return false
+  }
+
+  private *walk(share: number): Steps<Adjustment['ended']> {
+    for (let step = 0; step < mostSteps; step += 1) {
+      yield { stage: 'Adjusting', done: 1 - 0.8 ** step }
+      this.iterations += 1
+      const to = yield* this.proposed()
+      const taken = this.searched(to)
+      if (taken === null) return 'stuck'
+      const size = rootMeanSquare(difference(this.state.work, this.anchor.work))
+      const change = rootMeanSquare(difference(taken.work, this.state.work))
+      const lift = rootMeanSquare(difference(taken.heights, this.state.heights))
+      this.state = taken
+      if (change <= share * size + flatEnough && lift <= share * size + flatEnough) return 'settled'
+    }
+    return 'steps'
+  }
+
+  /** Steps on the conditions alone: the last digits of flatness, without moving along the roof of choice. */
+  *polish(): Steps<void> {
+    this.lead.clear()
+    let left = this.misfit(this.state)
+    let fresh = false
+    for (let step = 0; step < 12 && left > flatEnough; step += 1) {
+      yield { stage: 'Adjusting', done: 0.95 }
+      const system = yield* this.prepared(fresh)
+      const move = leastMove(system, this.mobile, system.stack.rows.right, this.riseRow(this.state.heights, this.anchor.heights))
+      const next = moved(this.state, move, 1)
+      const nextLeft = this.misfit(next)
+      if (!(nextLeft < left)) {
+        if (fresh) return
+        fresh = true
+        continue
+      }
+      fresh = nextLeft > left / 10
+      this.state = next
+      left = nextLeft
+    }
+  }
+
+  /** Where the linearised problem would go, bounds that it passes held: the move from the present state. */
+  private *proposed(): Steps<LeastMove> {
+    this.lead.clear()
+    for (let round = 0; ; round += 1) {
+      const system = yield* this.prepared(true)
+      const { rows } = system.stack
+      const sinceAnchor = { plan: difference(this.state.work, this.anchor.work), height: difference(this.state.heights, this.anchor.heights) }
+      const reached = applied(rows, sinceAnchor)
+      const right = rows.right.map((value, r) => value + reached[r])
+      const total = leastMove(system, this.mobile, right, this.riseRow(this.anchor.heights, this.anchor.heights))
+      const move: LeastMove = {
+        plan: difference(total.plan, sinceAnchor.plan), height: difference(total.height, sinceAnchor.height), multipliers: total.multipliers,
+      }
+      if (round === mostRounds) return move
+      const first = system.stack.firstRow[this.blocks.length]
+      const { work } = moved(this.state, move, 1)
+      // A bound that pulls the wrong way is let go, once a step; what the step would pass is held, or aimed at with a lead.
+      const kept = this.active.filter((bound, i) => round > 0 || total.multipliers[first + i] >= 0 || this.all.slack(bound, this.state.work, this.state.work) < 0)
+      const held = new Set(kept)
+      const passed: number[] = []
+      let isMissed = false
+      for (let bound = this.first; bound < this.all.count; bound += 1) {
+        const slack = this.all.slack(bound, work, this.state.work)
+        if (slack >= 0) continue
+        if (!held.has(bound)) passed.push(bound)
+        else if (slack < this.all.floor(bound)) {
+          this.lead.set(bound, (this.lead.get(bound) ?? 0) - slack)
+          isMissed = true
+        }
+      }
+      if (passed.length === 0 && !isMissed && kept.length === this.active.length) return move
+      this.active = [...kept, ...passed].sort((a, b) => a - b)
+    }
+  }
+
+  /** The rows at the present state, and their factor (as it was, unless `fresh` or the rows are others). */
+  private *prepared(fresh: boolean): Steps<MoveSystem> {
+    const key = this.active.join()
+    if (this.system === null || key !== this.builtFor) {
+      const stack = stacked([...this.blocks, boundBlock(this.plan, this.all, this.active, this.lead)])
+      filled(stack, this.state)
+      this.system = yield* moveSystem(stack, this.plan.nodeCount, this.mobile)
+      this.builtFor = key
+    } else {
+      filled(this.system.stack, this.state)
+      if (fresh) yield* refactored(this.system, this.mobile)
+    }
+    return this.system
+  }
+
+  /** weight . (z - from) = weight . (target - from). */
+  private riseRow(from: Float64Array, target: Float64Array): RiseRow | null {
+    return this.rise === null ? null : { weight: this.rise, value: dot(this.rise, target) - dot(this.rise, from) }
+  }
+
+  /** The first state on the way that the merit accepts and no bound forbids; null: there is none. */
+  private searched(move: LeastMove): State | null {
+    const { rows, firstRow } = (this.system as MoveSystem).stack
+    this.penalty = Math.max(this.penalty, 2 * largestMultiplier(move.multipliers.subarray(0, firstRow[this.blocks.length]), rows.start))
+    const before = this.merit(this.state)
+    const gain = this.penalty * this.misfit(this.state) - this.slope(move)
+    for (let halving = 0, share = 1; halving < mostHalvings; halving += 1, share /= 2) {
+      const next = moved(this.state, move, share)
+      if (!this.allowed(next.work)) continue
+      const target = before - enough * share * Math.max(gain, 0) + 1e-14 * Math.abs(before)
+      if (this.merit(next) <= target) return next
+      if (halving > 3) continue
+      const corrected = this.corrected(next)
+      if (this.allowed(corrected.work) && this.merit(corrected) <= target) return corrected
+    }
+    return null
+  }
+
+  /** Second-order correction: the conditions are met again at the new place, with the factor at hand. */
+  private corrected(next: State): State {
+    const system = this.system as MoveSystem
+    filled(system.stack, next)
+    const move = leastMove(system, this.mobile, system.stack.rows.right, this.riseRow(next.heights, this.anchor.heights))
+    filled(system.stack, this.state)
+    return moved(next, move, 1)
+  }
+
+  private allowed(work: Float64Array): boolean {
+    const from = this.state.work
+    for (let bound = this.first; bound < this.all.count; bound += 1) {
+      const slack = this.all.slack(bound, work, from)
+      if (slack < this.all.floor(bound) && !(slack > this.all.slack(bound, from, from))) return false
+    }
+    return true
+  }
+
+  /** 1/2 |u - anchor|^2 in the metric + penalty * misfit. */
+  private merit(state: State): number {
+    const { work, heights } = this.anchor
+    let sum = 0
+    for (let i = 0; i < work.length; i += 1) sum += (state.work[i] - work[i]) ** 2
+    for (let n = 0; n < heights.length; n += 1) sum += this.heightCost[n] * (state.heights[n] - heights[n]) ** 2
+    return sum / 2 + this.penalty * this.misfit(state)
+  }
+
+  /** Derivative of the first half along the move. */
+  private slope(move: LeastMove): number {
+    const { work, heights } = this.anchor
+    let sum = 0
+    for (let i = 0; i < work.length; i += 1) sum += (this.state.work[i] - work[i]) * move.plan[i]
+    for (let n = 0; n < heights.length; n += 1) sum += this.heightCost[n] * (this.state.heights[n] - heights[n]) * move.height[n]
+    return sum
+  }
+
+  /** Unflatness of the panels and what the other conditions miss. */
+  private misfit(state: State): number {
+    let sum = unflatness(this.plan, state.work, state.heights).sum
+    const others = stacked(this.blocks.slice(1))
+    filled(others, state)
+    for (const value of others.rows.right) sum += Math.abs(value)
+    return sum
+  }
+}
+
+function moved(state: State, move: LeastMove, share: number): State {
+  return { work: state.work.map((value, i) => value + share * move.plan[i]), heights: state.heights.map((value, i) => value + share * move.height[i]) }
+}
+
+/** No smaller than the 2-norm of any panel's multipliers: its k - 3 rows have k entries each. */
+function largestMultiplier(multipliers: Float64Array, start: Int32Array): number {
+  let largest = 0
+  for (let r = 0; r < multipliers.length; r += 1) {
+    largest = Math.max(largest, Math.abs(multipliers[r]) * Math.sqrt(Math.max(1, start[r + 1] - start[r] - 3)))
+  }
+  return largest
+}
+
+function difference(a: Float64Array, b: Float64Array): Float64Array {
+  return a.map((value, i) => value - b[i])
+}
+
+function rootMeanSquare(values: Float64Array): number {
+  return Math.sqrt(dot(values, values) / Math.max(1, values.length))
+}
+
+function dot(a: Float64Array, b: Float64Array): number {
+  let sum = 0
+  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
+  return sum
+}
