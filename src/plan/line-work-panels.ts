@@ -81,6 +81,7 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   let notices: string[] = []
   if (loops.line.length > 0) {
     const outlines = closedOutlines(lines, loops, 0)
+    yield { stage: 'Tracing panels', done: 0.6 }
     let whole: Figures | null = null
     const figures = (): Figures => (whole ??= figuresOf(graph, lines))
     const onHole = new Uint8Array(graph.edgeCount)
@@ -90,6 +91,7 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
       at: traced.at, pointAt: (point) => [frame.planX[point], frame.planY[point]],
     })
     if (!judged.ok) return judged
+    yield { stage: 'Tracing panels', done: 0.8 }
     if (judged.value.areFaces) {
       const voided = voidPanels(traced, figures, outlines, judged.value.panels, voids)
       if (!voided.ok) return voided
