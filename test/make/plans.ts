@@ -62,7 +62,8 @@ export function voronoi(count: number, seed: number): { plan: Plan; sites: Point
   const faces = sites.map((_, site) => {
     const polygon = diagram.cellPolygon(site)!.slice(0, -1) as [number, number][]
     const face = polygon.map(([x, y]) => {
-      const key = `${x.toFixed(9)} ${y.toFixed(9)}`
+      // Corners on the rim lie at 1e-17 to either side of 0: -0 and 0 are one place.
+      const key = `${Number(x.toFixed(9)) + 0} ${Number(y.toFixed(9)) + 0}`
       const at = known.get(key) ?? points.push([x, y]) - 1
       known.set(key, at)
       return at
@@ -73,3 +74,24 @@ export function voronoi(count: number, seed: number): { plan: Plan; sites: Point
 }
 
 export const cells = (count: number, seed: number): Plan => voronoi(count, seed).plan
+
+/** Regular hexagons of side 1 in rows, columns x rows of them. */
+export function honeycomb(columns: number, rows: number): Plan {
+  const points: [number, number][] = []
+  const known = new Map<string, number>()
+  // Corners on a lattice of half widths and half sides, so that neighbours share them to the last digit.
+  const at = (i: number, j: number): number => {
+    const key = `${i} ${j}`
+    const node = known.get(key) ?? points.push([(i * Math.sqrt(3)) / 2, j / 2]) - 1
+    known.set(key, node)
+    return node
+  }
+  const faces: number[][] = []
+  for (let row = 0; row < rows; row += 1) {
+    for (let column = 0; column < columns; column += 1) {
+      const [i, j] = [2 * column + (row % 2), 3 * row]
+      faces.push([at(i, j + 1), at(i + 1, j), at(i + 2, j + 1), at(i + 2, j + 3), at(i + 1, j + 4), at(i, j + 3)])
+    }
+  }
+  return plan(points, faces)
+}

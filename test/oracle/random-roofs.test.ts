@@ -11,7 +11,7 @@ import type { Plan } from '../../src/plan/plan.ts'
 import { conditionRows } from '../../src/roof/conditions/condition-rows.ts'
 import { freeRim } from '../../src/roof/stress/free-rim.ts'
 import { closureFreedom, dimensionOfLifts } from '../make/dense.ts'
-import { areaShares, dot, foldSizes, largestZone, nearRoofAt, nearest, roofs, tiltDimensionOf, type AffineSet, type Soft } from '../make/dense-roof.ts'
+import { areaShares, dot, foldSizes, largestZone, nearRoofAt, nearest, roofs, tiltDimensionOf, type Soft } from '../make/dense-roof.ts'
 import { plan } from '../make/plans.ts'
 import { raise } from '../make/raise.ts'
 import { randomCondition, type Drawn } from '../make/random-conditions.ts'
@@ -105,7 +105,7 @@ describe('under random conditions', () => {
     const folding = live.filter((folds) => folds).length
     if (set.particular !== null && (folding > 0 || of.jointCount === 0)) {
       expect(verdict).toBe(folding === of.jointCount ? 'lifts' : 'lifts in part')
-      expectRoofOfChoice(of, set, rows, values, roof!.heights, nearest(set, target, areaShares(of), softOf(of, drawn)))
+      expectRoofOfChoice(of, rows, values, roof!.heights, nearest(set, target, areaShares(of), softOf(of, drawn)))
     } else if (roof !== null) {
       const right = nearRoof(of, rows, values, [...target])
       expect(verdict).toBe(right.isWithin ? 'lifts within tolerance' : 'does not lift')
@@ -116,7 +116,7 @@ describe('under random conditions', () => {
 })
 
 /** Conditions met to 1e-9 of the span, panels flat to rounding, and the nearest of all such roofs. */
-function expectRoofOfChoice(of: Plan, set: AffineSet, rows: readonly number[][], values: readonly number[], heights: Float64Array, right: readonly number[]): void {
+function expectRoofOfChoice(of: Plan, rows: readonly number[][], values: readonly number[], heights: Float64Array, right: readonly number[]): void {
   rows.forEach((row, r) => expect(Math.abs(dot(row, heights) - values[r]!)).toBeLessThan(1e-9))
   expect(largestZone(of, heights)).toBeLessThan(1e-14)
   heights.forEach((height, i) => expect(Math.abs(height - right[i]!)).toBeLessThan(1e-8))
