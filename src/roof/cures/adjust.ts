@@ -164,7 +164,10 @@ class Run {
     for (let step = 0; step < 12 && left > flatEnough; step += 1) {
       yield { stage: 'Adjusting', done: 0.95 }
       const system = yield* this.prepared(fresh)
-      const move = leastMove(system, this.mobile, system.stack.rows.right, this.riseRow(this.state.heights, this.anchor.heights))
+      // Bounds stay where they are: they give a little, and pushing them again would never end.
+      const right = system.stack.rows.right.slice()
+      right.fill(0, system.stack.firstRow[this.blocks.length])
+      const move = leastMove(system, this.mobile, right, this.riseRow(this.state.heights, this.anchor.heights))
       const next = moved(this.state, move, 1)
       const nextLeft = this.misfit(next)
       if (!(nextLeft < left)) {
