@@ -40,7 +40,6 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
 
   const pointers = useRef(new Map<number, readonly [number, number]>())
   const travelled = useRef(0)
-  const nodesShown = plan !== null && shown.current !== null && planDetail(medianPanelWidth(plan) * shown.current.scale).hatch
 
   const onDown = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
     event.currentTarget.setPointerCapture(event.pointerId)
@@ -62,6 +61,7 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const onUp = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
     pointers.current.delete(event.pointerId)
     if (travelled.current >= 4 || plan === null || shown.current === null || event.type === 'pointercancel') return
+    const nodesShown = planDetail(medianPanelWidth(plan) * shown.current.scale).hatch
     const found = pick(plan, shown.current, x, y, event.pointerType === 'touch' ? 18 : 9, nodesShown)
     if (found?.kind === 'node' && event.shiftKey && selection?.kind === 'node') {
       desk.set({ picked: runBetween(plan, selection.index, found.index), desk: 'profile' })

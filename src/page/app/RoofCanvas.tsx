@@ -47,7 +47,7 @@ export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer
   return (
     <>
       <Boundary key={String(painter)} onFail={() => setFailed(true)}>{paint}</Boundary>
-      {painter && <p className="foot last">Drawn without WebGL; same figures, turns more slowly.</p>}
+      {painter && <p className="foot last"><span>Drawn without WebGL; same figures, turns more slowly.</span></p>}
     </>
   )
 }
@@ -92,6 +92,7 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
   const side = useDeskState((state) => state.side)
   const exaggeration = useDeskState((state) => state.exaggeration)
   const selection = useDeskState((state) => state.selection)
+  const views = useDeskState((state) => state.views)
   const made = useReading(answer)
   const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize])
   const selectedPanel = selection?.kind === 'panel' ? selection.index : -1
@@ -112,7 +113,7 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
   const down = useRef<readonly [number, number]>([0, 0])
   return (
     <>
-      <View answer={answer} side={side} size={size} scale={scale} shift={shift} top={scene?.top ?? 0} exaggeration={exaggeration} />
+      <View key={views} answer={answer} side={side} size={size} scale={scale} shift={shift} top={scene?.top ?? 0} exaggeration={exaggeration} />
       {scene !== null && (
         <primitive
           object={scene.group}
@@ -132,6 +133,7 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
 function View({ answer, side, size, scale, shift, top, exaggeration }: {
   readonly answer: Answer; readonly side: Side; readonly size: Size; readonly scale: number; readonly shift: number; readonly top: number; readonly exaggeration: number
 }) {
+  const desk = useDesk()
   const set = useThree((three) => three.set)
   const gl = useThree((three) => three.gl)
   const invalidate = useThree((three) => three.invalidate)
@@ -156,13 +158,32 @@ function View({ answer, side, size, scale, shift, top, exaggeration }: {
     controls.mouseButtons = { LEFT: MOUSE.ROTATE, MIDDLE: MOUSE.PAN, RIGHT: MOUSE.PAN }
     controls.touches = { ONE: TOUCH.ROTATE, TWO: TOUCH.DOLLY_PAN }
     controls.update()
-    const onChange = (): void => invalidate()
+    let moved = false
+    const onStart = (): void => { moved = false }
+    const onChange = (): void => {
+      moved = true
+      invalidate()
+    }
     controls.addEventListener('change', onChange)
+    controls.addEventListener('start', onStart)
+    // A click that turns nothing leaves the stock view in force.
+    const onEnd = (): void => { if (moved) desk.set({ turned: turnedWords(controls.getAzimuthalAngle(), controls.getPolarAngle()) }) }
+    controls.addEventListener('end', onEnd)
     invalidate()
     return () => {
       controls.removeEventListener('change', onChange)
+      controls.removeEventListener('end', onEnd)
+      controls.removeEventListener('start', onStart)
       controls.dispose()
     }
-  }, [plan, side, size.width, size.height, scale, shift, exaggeration, set, gl, invalidate])
+  }, [plan, side, size.width, size.height, scale, shift, exaggeration, set, gl, invalidate, desk])
   return null
+}
+
+/** three's azimuth is 0 for a viewer in the south and grows eastwards when z is up; its polar angle is from the zenith. */
+function turnedWords(azimuth: number, polar: number): string {
+  const east = Math.round((azimuth * 180) / Math.PI)
+  const above = Math.round(90 - (polar * 180) / Math.PI)
+  const where = Math.abs(east) < 1 ? 'from the south' : `${Math.abs(east)}° ${east > 0 ? 'east' : 'west'} of south`
+  return `${where}, ${above}° above`
 }

@@ -13,6 +13,7 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
   const desk = useDesk()
   const answer = useDeskState((state) => state.answer)
   const side = useDeskState((state) => state.side)
+  const turned = useDeskState((state) => state.turned)
   const exaggeration = useDeskState((state) => state.exaggeration)
   const fresh = useDeskState((state) => state.fresh || state.busy === null)
   const box = useRef<HTMLDivElement>(null)
@@ -28,7 +29,7 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
         <div className="switch" role="radiogroup" aria-label="Seen from">
           <span aria-hidden="true">seen from</span>
           {sides.map((name) => (
-            <button key={name} role="radio" data-first={name === 'south' ? true : undefined} aria-checked={side === name} className={side === name ? 'chosen' : ''} onClick={() => desk.set({ side: name })}>
+            <button key={name} role="radio" data-first={name === 'south' ? true : undefined} aria-checked={side === name && turned === null} className={side === name && turned === null ? 'chosen' : ''} onClick={() => desk.view(name)}>
               {name === 'eye' ? 'the eye' : name}
             </button>
           ))}
@@ -41,14 +42,14 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
         {answer === null && <p className="will">The raised roof: drag to turn it, click a panel to find it everywhere.</p>}
         {answer !== null && roof === null && <p className="will">Not raised: no roof meets the conditions.</p>}
         {roof !== null && (
-          <p className="foot">
+          <p className="foot"><span>
             {near ? 'The nearest roof. Not exact: panels are warped as shown. ' : ''}
-            Seen {viewWords(side)}. Heights drawn{' '}
+            Seen {turned ?? viewWords(side)}. Heights drawn{' '}
             {[1, 2, 5].map((times) => (
               <button key={times} className={exaggeration === times ? 'word chosen' : 'word'} aria-pressed={exaggeration === times} onClick={() => desk.set({ exaggeration: times })}>{`\u00d7${times}`}</button>
             ))}
             {exaggeration !== 1 && <strong className="fault"> Heights are drawn {exaggeration} times too high.</strong>}
-          </p>
+          </span></p>
         )}
       </div>
     </section>

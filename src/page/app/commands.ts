@@ -37,7 +37,7 @@ export const commands: readonly Command[] = [
   go('4', 'list', 'Panel list', 'list'), go('5', 'ways', 'Conditions, profile, ways left'), go('6', 'steps', 'Steps', 'steps'),
   reading('S', 'slope', 'Slope'), reading('F', 'flatness', 'Flatness'), reading('D', 'fold', 'Fold'),
   reading('E', 'force', 'Form force'), reading('A', 'group', 'Flat group'), reading('M', 'freedom', 'Freedom'),
-  { key: 'V', title: 'Next view of the roof', group: 'look', run: (desk) => desk.set({ side: sides[(sides.indexOf(desk.state.side) + 1) % sides.length] ?? 'south' }) },
+  { key: 'V', title: 'Next view of the roof', group: 'look', run: (desk) => desk.view(sides[(sides.indexOf(desk.state.side) + 1) % sides.length] ?? 'south') },
   { key: 'H', title: 'Hold what is selected', group: 'edit', run: () => document.querySelector<HTMLElement>('[data-hold]')?.click() },
   { key: 'X', title: 'Release what is selected', group: 'edit', run: () => document.querySelector<HTMLElement>('[data-release]')?.click() },
 ]

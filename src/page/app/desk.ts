@@ -38,6 +38,11 @@ export class Desk {
     this.set({ selection })
   }
 
+  /** Back to a stock view, or to the same one again. */
+  view(side: State['side']): void {
+    this.set({ side, turned: null, views: this.state.views + 1 })
+  }
+
   showDesk(desk: State['desk']): void {
     this.set({ desk })
     if (desk === 'ways' && this.state.ways === null) void this.askWays()

@@ -79,6 +79,10 @@ export interface State {
   readonly picked: readonly number[]
   readonly reading: ReadingName
   readonly side: Side
+  /** Where the roof is seen from once the hand has turned it, in words; null: from the side. */
+  readonly turned: string | null
+  /** Grows with every stock view asked for, so that the same one can be asked for again. */
+  readonly views: number
   readonly exaggeration: number
   readonly slopeUnit: SlopeUnit
   readonly theme: ThemeName
@@ -101,7 +105,7 @@ export type ListFilter = 'all' | 'flagged' | 'group'
 
 export const initialState: State = {
   doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
-  selection: null, picked: [], reading: 'slope', side: 'south', exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
+  selection: null, picked: [], reading: 'slope', side: 'south', turned: null, views: 0, exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
   desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
 }
 
