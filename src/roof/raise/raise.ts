@@ -89,7 +89,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
 }
 
 /** Heights to come near to, and the rise to reach. */
-function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; rise: number | null } {
+export function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; rise: number | null } {
   if (question.pitched) return { wish: new Float64Array(plan.nodeCount), rise: null }
   if (question.target !== null) return { wish: question.target, rise: question.rise }
   const { heights, shorterSide } = shapeHeights(plan, question.shape)
