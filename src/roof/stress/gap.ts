@@ -16,10 +16,10 @@ import type { Steps } from '../../base/steps.ts'
 import type { LiftSpace } from './lift-space.ts'
 import { applyForm } from './panel-bases.ts'
 
-/** Columns carried through one solve, and how many blocks make the space: enough for three digits of the figure. */
+/** Columns carried through one solve, and how many blocks make the space: enough for two digits of the figure. */
 const width = 4
 const mostBlocks = 6
-const wantedShare = 1e-3
+const wantedShare = 5e-3
 
 /** Smallest eigenvalue above tau; null when every height vector lifts. */
 export function* smallestNearLift(space: LiftSpace): Steps<number | null> {
