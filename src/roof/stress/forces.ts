@@ -8,10 +8,13 @@ import type { Plan } from '../../plan/plan.ts'
 /** Plan length |d| of each joint in working coordinates (length jointCount). */
 export function jointLengths(plan: Plan): Float64Array {
   const { origin, work } = plan
-  return Float64Array.from({ length: plan.jointCount }, (_, j) => {
+  const lengths = new Float64Array(plan.jointCount)
+  for (let j = 0; j < lengths.length; j += 1) {
     const a = origin[2 * j], b = origin[2 * j + 1]
-    return Math.hypot(work[2 * b] - work[2 * a], work[2 * b + 1] - work[2 * a + 1])
-  })
+    const dx = work[2 * b] - work[2 * a], dy = work[2 * b + 1] - work[2 * a + 1]
+    lengths[j] = Math.sqrt(dx * dx + dy * dy)
+  }
+  return lengths
 }
 
 /** Stress of each joint, s = (a_L - a_R) . J d / |d|^2, from panel gradients gx gy .. (length jointCount). */

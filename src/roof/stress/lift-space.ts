@@ -158,7 +158,8 @@ export function weightedForm(
 ): Float64Array {
   const { start, weight } = elimination
   const { position } = form.cliques
-  const values = Float64Array.from(form.flatness, (value) => mu * value)
+  const values = form.flatness.slice()
+  if (mu !== 1) for (let i = 0; i < values.length; i += 1) values[i] *= mu
   let nodeEntries = 0
   for (let node = 0; node < plan.nodeCount; node += 1) {
     const k = start[node + 1] - start[node]
