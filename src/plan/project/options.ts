@@ -31,6 +31,21 @@ export interface Levels {
   readonly rows: readonly LevelRow[]
 }
 
+/** What a plan keeps while its nodes are moved. */
+export interface KeepOptions {
+  /** Nodes that stay, by name. */
+  readonly stay: readonly string[]
+  /** slide: along rim lines that run straight through them, corners stay; fixed; free. */
+  readonly rimNodes: 'slide' | 'fixed' | 'free'
+  /** Straight joint runs may bend. */
+  readonly bend: boolean
+  readonly largestShift: TypedLength | null
+  readonly leastEdge: TypedLength | null
+  readonly leastCorner_deg: number | null
+}
+
+export const noKeeps: KeepOptions = { stay: [], rimNodes: 'slide', bend: false, largestShift: null, leastEdge: null, leastCorner_deg: null }
+
 export interface Options {
   // How the drawing is read.
   /** The drawing's unit, whatever the file says. */
@@ -63,6 +78,11 @@ export interface Options {
   /** input: the heights in the drawing; none: not even those; or another file. */
   readonly target: 'input' | 'none' | NamedFile | null
 
+  // When nodes may be moved.
+  readonly keeps: KeepOptions
+  /** A plan that lifts when no node moves by more than this lifts within its tolerance; null: the default. */
+  readonly planTolerance_mm: number | null
+
   // How it is judged and written.
   readonly flat_mm: number | null
   readonly decimals: number | null
@@ -75,5 +95,6 @@ export const noOptions: Options = {
   unit: null, scale: null, layers: null, snap_mm: null, sagitta_mm: null, voids: null, accept: [],
   rim: null, datum: null, levels: null, levelsWithin: null, pitch_deg: null, bearing_deg: null,
   rise: null, down: false, shape: null, target: null,
+  keeps: noKeeps, planTolerance_mm: null,
   flat_mm: null, decimals: null, near: false, csv: 'comma', full: false,
 }

@@ -39,7 +39,7 @@ export const defaultBearing_deg = 180
  */
 export function wishesOf(brief: Brief, options: Options, unit: Unit): Result<Wishes> {
   const fromBrief = conversion(brief.unit ?? unit, unit)
-  const typed = (value: TypedLength, option: string): Result<number> => lengthOf(value, option, unit)
+  const typed = (value: TypedLength, option: string): Result<number> => parsedLength(value, option, unit)
 
   const datum = options.datum === null ? ok(scaled(brief.datum, fromBrief)) : typed(options.datum, '--datum')
   if (!datum.ok) return datum
@@ -91,7 +91,8 @@ export function readOptionsOf(brief: Brief, options: Options, fileUnit: Unit | n
 
 const scaled = (value: number | null, factor: number): number | null => (value === null ? null : value * factor)
 
-function lengthOf(value: TypedLength, option: string, unit: Unit): Result<number> {
+/** A typed length in the plan's unit; the problem's place is the option. */
+export function parsedLength(value: TypedLength, option: string, unit: Unit): Result<number> {
   if (typeof value === 'number') return ok(value)
   const length = parseLength(value, unit, unit)
   return length.ok ? length : { ok: false, problem: placed(length.problem, { field: option }) }
@@ -123,7 +124,7 @@ function rimCondition(rim: Options['rim'], typed: (value: TypedLength, option: s
 /** A level condition for each row, called by file and row. */
 function levelConditions({ levels, levelsWithin }: Options, unit: Unit): Result<readonly LevelCondition[]> {
   if (levels === null) return ok([])
-  const within = levelsWithin === null ? ok(null) : lengthOf(levelsWithin, '--levels-within', unit)
+  const within = levelsWithin === null ? ok(null) : parsedLength(levelsWithin, '--levels-within', unit)
   if (!within.ok) return within
   if (within.value !== null && !(within.value > 0)) return fail('out-of-range', 'this distance must be more than 0', { field: '--levels-within' })
   const factor = conversion(levels.unit ?? unit, unit)
