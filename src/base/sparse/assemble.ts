@@ -4,7 +4,8 @@
  * eliminated; the others are added to the parent's own Schur complement after that has been written as a product, which
  * saves filling it with zeros first.
  */
-import { four, triangle, type Analysis } from './analyse.ts'
+import type { Analysis } from './analyse.ts'
+import { four, triangle } from './layout.ts'
 
 /** Adds the columns of `child` that are pivots of its parent. */
 export function addPivotal(data: Float64Array, analysis: Analysis, child: number): void {

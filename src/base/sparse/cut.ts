@@ -142,21 +142,11 @@ export class Cuts {
   /** Lists the unknowns of the segment with a neighbour, inside or outside, beyond one of the positions low <= high or between them. */
   private gather(from: number, to: number, low: number, high: number): void {
     const { near } = this
-    const axis = this.axes[this.axis] as Axis
-    const { sorted, place } = axis
-    const lowest = place[sorted[low] as number] as number
-    const highest = place[sorted[high] as number] as number
-    let count = 0
-    for (let k = from; k < low; k++) {
-      const v = sorted[k] as number
-      if ((axis.high[v] as number) >= lowest) near[count++] = v
-    }
-    for (let k = low; k < high; k++) near[count++] = sorted[k] as number
-    for (let k = high; k < to; k++) {
-      const v = sorted[k] as number
-      if ((axis.low[v] as number) < highest) near[count++] = v
-    }
-    this.nearCount = count
+    const { sorted, place, low: lowest, high: highest } = this.axes[this.axis] as Axis
+    const left = reachingUp(sorted, highest, from, low, place[sorted[low] as number] as number, near)
+    near.set(sorted.subarray(low, high), left)
+    const right = left + high - low
+    this.nearCount = reachingDown(sorted, lowest, high, to, place[sorted[high] as number] as number, near, right)
   }
 
   /** The smallest separator between the piece's unknowns before and from `position` on, in this.cover. */
@@ -178,6 +168,23 @@ export class Cuts {
     }
     cover.solve()
   }
+}
+
+function reachingUp(sorted: Int32Array, highest: Int32Array, from: number, to: number, limit: number, near: Int32Array): number {
+  let count = 0
+  for (let k = from; k < to; k++) {
+    const v = sorted[k] as number
+    if ((highest[v] as number) >= limit) near[count++] = v
+  }
+  return count
+}
+
+function reachingDown(sorted: Int32Array, lowest: Int32Array, from: number, to: number, limit: number, near: Int32Array, count: number): number {
+  for (let k = from; k < to; k++) {
+    const v = sorted[k] as number
+    if ((lowest[v] as number) < limit) near[count++] = v
+  }
+  return count
 }
 
 function reaches({ size, start, row }: Pattern, coordinates: Float64Array, axis: 0 | 1): Axis {

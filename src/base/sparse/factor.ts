@@ -8,21 +8,14 @@
  */
 import { assert } from '../assert.ts'
 import type { Steps } from '../steps.ts'
-import { four, type Analysis } from './analyse.ts'
-import { Elimination, scratchNumbers } from './front.ts'
+import type { Analysis } from './analyse.ts'
+import { Elimination, scratchNumbers, type Rooms } from './front.ts'
+import { four } from './layout.ts'
 import type { PivotRules } from './pivots.ts'
-import { newStore, type Store } from './store.ts'
+import { newStore } from './store.ts'
 
-export interface Factor {
-  readonly analysis: Analysis
-  /** L and the Schur complements as analysed, and behind them (from analysis.storeSize on) scratch room for four columns of one front. */
-  readonly store: Store
-  /** D by place; where a front's pivots are filled up to a multiple of four, see `pivotAt`. */
-  readonly pivot: Float64Array
-  /** Where front t's pivots begin in `pivot`, which holds four(p) of them. */
-  readonly pivotAt: Int32Array
-  /** |a_ii| of the pivots, beside them. */
-  readonly scale: Float64Array
+/** The factor of one set of values; its rooms are used again by `refactor`. */
+export interface Factor extends Rooms {
   /** Pivots that were replaced. */
   zeros: number
   /** False while a refactorisation is under way or was given up. */

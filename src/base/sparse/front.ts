@@ -7,10 +7,11 @@
  * blocks of rows that stay in cache (J. Dongarra, J. Du Croz, S. Hammarling, I. Duff 1990; K. Goto, R. van de Geijn, ACM
  * Trans. Math. Softw. 34, 2008).
  */
-import { four, triangle } from './analyse.ts'
+import type { Analysis } from './analyse.ts'
 import { addBoundary, addPivotal } from './assemble.ts'
-import type { Factor } from './factor.ts'
+import { four, triangle } from './layout.ts'
 import { eliminateFour, scaleBelow, type PivotRules } from './pivots.ts'
+import type { Store } from './store.ts'
 
 /** In slivers of four: 64 columns and 256 rows of a block make 128 kB. */
 const blockColumns = 16
@@ -18,6 +19,18 @@ const blockRows = 64
 
 /** Numbers of scratch room that the elimination needs: a block of four rows of L, scaled. */
 export const scratchNumbers = 16 * blockColumns
+
+/** What an elimination works in. */
+export interface Rooms {
+  readonly analysis: Analysis
+  /** L and the Schur complements as laid out, and behind them (from analysis.storeSize on) scratch room for four columns of a front. */
+  readonly store: Store
+  /** D: pivot[pivotAt[t] .. pivotAt[t + 1]) are front t's pivots, filled up with ones to a multiple of four. */
+  readonly pivot: Float64Array
+  readonly pivotAt: Int32Array
+  /** |a_ii| of the pivots, beside them. */
+  readonly scale: Float64Array
+}
 
 export class Elimination {
   /** Operations of the part done last. */
@@ -27,17 +40,17 @@ export class Elimination {
   private pivots = 0
   private S = 0
   private R = 0
-  /** In the store: the front's panel, its boundary rows, its Schur complement. In factor.pivot: its first pivot. */
+  /** In the store: the front's panel, its boundary rows, its Schur complement. In `pivot`: its first pivot. */
   private panel = 0
   private below = 0
   private complement = 0
   private at = 0
 
-  constructor(private readonly factor: Factor, private readonly rules: PivotRules) {}
+  constructor(private readonly rooms: Rooms, private readonly rules: PivotRules) {}
 
   /** Takes up front t and adds what its children left on its pivots. */
   begin(t: number): void {
-    const { analysis, store: { data }, pivotAt } = this.factor
+    const { analysis, store: { data }, pivotAt } = this.rooms
     const { first, boundaryStart, panel, schur, childStart, children } = analysis
     this.t = t
     this.pivots = (first[t + 1] as number) - (first[t] as number)
@@ -71,7 +84,7 @@ export class Elimination {
 
   /** Adds what the children left on the boundary, once all parts are done. */
   end(): void {
-    const { analysis, store: { data } } = this.factor
+    const { analysis, store: { data } } = this.rooms
     const { childStart, children } = analysis
     const end = childStart[this.t + 1] as number
     for (let q = childStart[this.t] as number; q < end; q++) addBoundary(data, analysis, children[q] as number)
@@ -80,7 +93,7 @@ export class Elimination {
   /** Eliminates the slivers of columns [from, to). */
   private eliminate(from: number, to: number): void {
     const { S, R, panel, below, at, rules } = this
-    const { store: { data }, pivot, scale } = this.factor
+    const { store: { data }, pivot, scale } = this.rooms
     for (let s = from; s < to; s++) {
       if (s > from) this.subtract(from, s, s)
       const corner = panel + triangle(s) + 16 * s
@@ -101,7 +114,7 @@ export class Elimination {
   /** Subtracts the columns [from, to) from the column sliver s of the panel, from its diagonal down. */
   private subtract(from: number, to: number, s: number): void {
     const { S, R, panel, below, at } = this
-    const { analysis: { storeSize: b }, store: { data, update }, pivot } = this.factor
+    const { analysis: { storeSize: b }, store: { data, update }, pivot } = this.rooms
     const corner = panel + triangle(s)
     const depth = 4 * (to - from)
     scaled(data, corner + 16 * from, pivot, at + 4 * from, b, depth)
@@ -112,7 +125,7 @@ export class Elimination {
   /** Subtracts the columns [from, to) from the row slivers [low, high) of the Schur complement; the first block writes it. */
   private updateSchur(from: number, to: number, low: number, high: number): void {
     const { S, below, complement, at } = this
-    const { analysis: { storeSize: b }, store: { data, update }, pivot } = this.factor
+    const { analysis: { storeSize: b }, store: { data, update }, pivot } = this.rooms
     const depth = 4 * (to - from)
     const rows = below + 16 * from
     for (let j = 0; j < high; j++) {

@@ -92,34 +92,35 @@ function divide(cuts: Cuts, a: number, b: number, left: number, rank: Int32Array
   const along = cuts.axes[cuts.axis] as Axis
   const across = cuts.axes[1 - cuts.axis] as Axis
   for (let m = 0; m < count; m++) label[separator[m] as number] = separated
-  const { sorted } = along
-  let lefts = 0
-  let rights = 0
-  for (let k = a; k < position; k++) {
+  const middle = close(along.sorted, a, position, a, label, left)
+  const end = close(along.sorted, position, b, middle, label, left + 1)
+  split(across.sorted, a, b, label, left, rank, last - count, spare)
+  across.sorted.set(spare.subarray(0, end - middle), middle)
+  return middle - a
+}
+
+/** Moves the unknowns of [from, to) that are not separated to `at` and onwards, labels them, and returns where they end. */
+function close(sorted: Int32Array, from: number, to: number, at: number, label: Int32Array, name: number): number {
+  for (let k = from; k < to; k++) {
     const v = sorted[k] as number
     if (label[v] === separated) continue
-    label[v] = left
-    sorted[a + lefts++] = v
+    label[v] = name
+    sorted[at++] = v
   }
-  for (let k = position; k < b; k++) {
-    const v = sorted[k] as number
-    if (label[v] === separated) continue
-    label[v] = left + 1
-    sorted[a + lefts + rights++] = v
-  }
-  const other = across.sorted
+  return at
+}
+
+/** Moves the unknowns of [a, b) labelled `left` to the front, those labelled left + 1 to `spare`, and ranks the others. */
+function split(sorted: Int32Array, a: number, b: number, label: Int32Array, left: number, rank: Int32Array, next: number, spare: Int32Array): void {
   let l = a
   let r = 0
-  let next = last - count
   for (let k = a; k < b; k++) {
-    const v = other[k] as number
+    const v = sorted[k] as number
     const side = label[v] as number
-    if (side === left) other[l++] = v
+    if (side === left) sorted[l++] = v
     else if (side === separated) rank[v] = next++
     else spare[r++] = v
   }
-  for (let k = 0; k < r; k++) other[l + k] = spare[k] as number
-  return lefts
 }
 
 function backwards(preorder: readonly number[], own: readonly number[], parentOf: readonly number[]): { first: Int32Array; parent: Int32Array } {

@@ -4,8 +4,8 @@
  * x holds four numbers a place (column c of place v at 4 v + c). A front works on its share Y, laid out likewise, in the
  * scratch room of the store: Y is the left factor of each product, a sliver of L the right one.
  */
-import { four, triangle } from './analyse.ts'
 import type { Factor } from './factor.ts'
+import { four, triangle } from './layout.ts'
 
 /** x <- D^-1 L^-1 x for front t. */
 export function forwardFour({ analysis, store: { data, update }, pivot, pivotAt }: Factor, x: Float64Array, t: number): void {

@@ -1,6 +1,6 @@
 /** The two sweeps of a solve for one right-hand side: bound by reading L once each, so plain loops over its slivers serve. */
-import { four, triangle } from './analyse.ts'
 import type { Factor } from './factor.ts'
+import { four, triangle } from './layout.ts'
 
 /** x <- D^-1 L^-1 x for front t; x by place, y room for the widest front's pivots. */
 export function forward({ analysis, store: { data }, pivot, pivotAt }: Factor, x: Float64Array, y: Float64Array, t: number): void {

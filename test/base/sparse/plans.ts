@@ -100,3 +100,8 @@ export function dense({ pattern: { size, start, row }, values }: SymmetricMatrix
   }
   return full
 }
+
+/** Whether two arrays hold the same bytes. */
+export function same(a: Float64Array | Int32Array, b: Float64Array | Int32Array): boolean {
+  return Buffer.from(a.buffer, a.byteOffset, a.byteLength).equals(Buffer.from(b.buffer, b.byteOffset, b.byteLength))
+}
