@@ -10,6 +10,7 @@ import { compassPoint, figure, signed } from '../../paper/drawing/figures.ts'
 import { jointKinds } from '../../paper/drawing/joint-kinds.ts'
 import { toSheet, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import type { Condition, Fold } from '../../plan/project/condition.ts'
+import type { Plan } from '../../plan/plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { jointsOf } from './useReading.ts'
@@ -211,8 +212,18 @@ function PanelPlate({ panel, answer, window, size }: Placed & { readonly panel: 
       <p>{held
         ? <button className="word" data-release onClick={() => desk.release([conditionName])}>Release <kbd>X</kbd></button>
         : <button className="word" data-hold onClick={() => hold(slope, Number.isNaN(bearing) ? 180 : bearing)}>Hold <kbd>H</kbd></button>}</p>
+      <p><button className="word" onClick={() => desk.condition({ name: `one plane at ${name}`, kind: 'coplanar', at: { panels: [name, ...neighbours(plan, panel).map(panelName)] }, soft: null }, `${name} and its neighbours in one plane`)}>One plane with its neighbours</button></p>
     </div>
   )
+}
+
+function neighbours(plan: Plan, panel: number): number[] {
+  const out: number[] = []
+  for (let c = plan.panelStart[panel]; c < plan.panelStart[panel + 1]; c += 1) {
+    const other = plan.panelOf[plan.cornerHalf[c] ^ 1]
+    if (other >= 0 && !out.includes(other)) out.push(other)
+  }
+  return out
 }
 
 /** A length typed as people type it; what was understood is echoed, what was not is said. */

@@ -9,8 +9,8 @@ import { useDesk, useDeskState } from './context.ts'
 import { LengthField, NumberField } from './PlanHand.tsx'
 import { levelAt, runSection } from './run-section.ts'
 
-type Kind = 'arc' | 'pitch' | 'levels' | 'level' | 'straight' | 'fall'
-const kinds: readonly (readonly [Kind, string])[] = [['arc', 'arc'], ['pitch', 'pitch'], ['levels', 'levels'], ['level', 'level'], ['straight', 'straight'], ['fall', 'fall']]
+type Kind = 'arc' | 'pitch' | 'levels' | 'level' | 'equal' | 'straight' | 'fall'
+const kinds: readonly (readonly [Kind, string])[] = [['arc', 'arc'], ['pitch', 'pitch'], ['levels', 'levels'], ['level', 'level'], ['equal', 'equal'], ['straight', 'straight'], ['fall', 'fall']]
 const width = 356
 const height = 118
 
@@ -117,6 +117,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
         }} /><small>{picked.length} levels, Enter</small></label>}
         {kind === 'level' && <LengthField label="level" bare="mm" to={doc.plan.unit} start={figure(base * mm).replace(/\u202f/g, '')} onValue={(level) => desk.condition({ name, kind: 'level', at: run, level, soft: null }, `${name} level at ${signed(level * mm)} mm`)} />}
         {kind === 'fall' && <NumberField label="fall \u2030" start="20" onValue={(per_mille) => desk.condition({ name, kind: 'fall', at: run, per_mille, level: null, soft: null }, `${name} falls ${figure(per_mille, 1)} \u2030`)} />}
+        {kind === 'equal' && <button className="word" onClick={() => desk.condition({ name, kind: 'equal', at: run, soft: null }, `${name} at one level, wherever`)}>Hold at one level, wherever</button>}
         {kind === 'straight' && <button className="word" onClick={() => desk.condition({ name, kind: 'straight', at: run, soft: null }, `${name} straight`)}>Hold straight</button>}
         {kind === 'arc' && heldSection === null && <button className="word" onClick={() => take({ arc: { rise } })}>Hold</button>}
         {kind === 'pitch' && heldSection === null && <button className="word" onClick={() => take({ pitch_deg: pitch })}>Hold</button>}

@@ -1,8 +1,14 @@
 /** The empty sheet's lower right: how to begin, and the samples. */
 import { useEffect, useState } from 'react'
 import { useDesk, useDeskState } from './context.ts'
-import { samples } from './samples.ts'
+import type { Desk } from './desk.ts'
+import { samples, type Sample } from './samples.ts'
 import { savedProjects, type Saved } from './autosave.ts'
+
+export async function openSample(desk: Desk, sample: Sample): Promise<void> {
+  const brief = await sample.brief?.()
+  await desk.openFile(sample.name, new TextEncoder().encode(await sample.text()), { scale: sample.scale, ...(brief === undefined ? {} : { brief }) })
+}
 
 export function Samples() {
   const desk = useDesk()
@@ -20,7 +26,7 @@ export function Samples() {
         </>}
         {samples.length > 0 && <h3>Or look at a sample</h3>}
         <ul className="samples">{samples.map((sample) => (
-          <li key={sample.name}><button className="word" onClick={() => void sample.text().then((text) => desk.openFile(sample.name, new TextEncoder().encode(text)))}>{sample.name}</button> <span className="note">{sample.note}</span></li>
+          <li key={sample.name}><button className="word" onClick={() => void openSample(desk, sample)}>{sample.name}</button> <span className="note">{sample.panels === '' || sample.panels === '0' ? '' : `${sample.panels} panels. `}{sample.note}</span></li>
         ))}</ul>
       </div>
     </section>

@@ -4,6 +4,8 @@ import { fail, type Problem, type Result } from '../../base/result.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { panelAt } from './picking.ts'
 import { openProject } from './project-file.ts'
+import type { Brief } from '../../plan/project/brief.ts'
+import { briefInUnit, openBrief } from './brief-file.ts'
 import type { Condition } from '../../plan/project/condition.ts'
 import type { Selection } from '../../paper/drawing/plan-drawing.ts'
 import type { Engine, NamedBytes } from './engine.ts'
@@ -62,11 +64,14 @@ export class Desk {
   // Opening
 
   /** A project opens as it was left; anything else is a drawing, to be read and accepted. */
-  async openFile(name: string, bytes: Uint8Array): Promise<void> {
+  async openFile(name: string, bytes: Uint8Array, more: { readonly brief?: string; readonly scale?: number | null } = {}): Promise<void> {
+    const brief = /\.json$/i.test(name) ? openBrief(name, new TextDecoder().decode(bytes)) : null
+    if (brief !== null) return this.layBrief(brief, name)
     const project = /\.json$/i.test(name) ? openProject(name, bytes) : null
     if (project === null) {
       this.set({ opening: null })
-      await this.open({ name, bytes })
+      const beside = more.brief === undefined ? null : openBrief(name, more.brief)
+      await this.open({ name, bytes }, { ...openingOptions, scale: more.scale ?? null }, beside !== null && beside.ok ? beside.value : null)
     } else if (project.ok) this.begin(project.value, 'Opened', name)
     else this.set({ problem: project.problem, opening: null })
   }
@@ -77,6 +82,25 @@ export class Desk {
     if (project === null) return
     if (project.ok) this.begin(project.value, 'Gone on with', 'as this browser kept it')
     else this.set({ problem: project.problem })
+  }
+
+  /** A brief that is dropped takes the place of what was asked before. */
+  private layBrief(brief: Result<Brief>, name: string): void {
+    const { doc, opening } = this.state
+    if (!brief.ok) this.set({ problem: brief.problem })
+    else if (opening !== null) void this.open(opening.file, opening.options, brief.value)
+    else if (doc !== null) this.take({ doc: { ...doc, brief: { ...briefInUnit(brief.value, doc.plan.unit), voids: null } }, what: name, before: 'brief laid over the plan' })
+    else this.set({ problem: fail('no-drawing', 'a brief needs a drawing', { file: name }, 'open the drawing first').problem })
+  }
+
+  /** A second surface for the roof to come near to. */
+  async nearSurface(file: NamedBytes): Promise<void> {
+    const { doc } = this.state
+    if (doc === null) return
+    const made = await this.working(() => this.engine.surface(doc, file))
+    if (made === null || this.state.doc !== doc) return
+    if (!made.ok) this.set({ problem: made.problem })
+    else this.take({ doc: { ...doc, target: made.value, brief: { ...doc.brief, rise: null } }, what: `Near to ${file.name}`, before: 'was another shape' })
   }
 
   chooseRepair(repair: number): void {
@@ -119,10 +143,10 @@ export class Desk {
     else if (name === 'layers' || name === 'layer') this.reopen({ layers: value.split(',') })
   }
 
-  async open(file: NamedBytes, options: OpeningOptions = openingOptions): Promise<void> {
+  async open(file: NamedBytes, options: OpeningOptions = openingOptions, brief: Brief | null = this.state.opening?.brief ?? null): Promise<void> {
     const started = performance.now()
     const before = this.state.opening
-    this.set({ problem: null, opening: { file, read: before?.read ?? null, problem: null, options, layers: before?.layers ?? [], chosenRepair: -1, ms: 0 } })
+    this.set({ problem: null, opening: { file, read: before?.read ?? null, problem: null, options, layers: before?.layers ?? [], chosenRepair: -1, brief, ms: 0 } })
     const result = await this.working((onProgress) => this.engine.read(file, options, onProgress))
     if (result === null || this.state.opening?.file !== file || this.state.opening.options !== options) return
     const ms = performance.now() - started
@@ -133,6 +157,11 @@ export class Desk {
       return
     }
     const { read, layers } = result.value
+    const voids = brief === null ? null : briefInUnit(brief, read.plan.unit).voids
+    if (voids !== null && before === null && options.voids.length === 0) {
+      await this.open(file, { ...options, voids }, brief)
+      return
+    }
     // Switched off layers stay on the list.
     const known = before !== null && before.file === file ? before.layers : layers
     this.set({ opening: { ...this.state.opening, read, layers: known, problem: null, ms } })
@@ -146,7 +175,8 @@ export class Desk {
   accept(): void {
     const { opening } = this.state
     if (opening === null || opening.read === null || opening.problem !== null) return
-    const doc = newDoc(opening.file.name, opening.read)
+    const brief = opening.brief === null ? undefined : briefInUnit(opening.brief, opening.read.plan.unit)
+    const doc = newDoc(opening.file.name, opening.read, brief)
     const { panels, repairs } = { panels: opening.read.plan.panelCount, repairs: opening.read.repairs.length }
     this.begin(doc, 'Opened', `${panels} panels, ${repairs} repairs`)
   }
@@ -239,7 +269,7 @@ export class Desk {
       this.set({ problem: result.problem, fresh: true })
       return
     }
-    // The plan comes back as a copy; the page goes on with its own, by which it knows what has not changed.
+    // The plan stays here: it does not come back with every answer.
     const answer = { ...result.value, plan: doc.plan }
     this.answers.set(doc, answer)
     this.set({ answer, fresh: true, problem: null, answerMs: performance.now() - started })

@@ -19,9 +19,11 @@ export interface DrawingRead {
 export interface Engine {
   read(file: NamedBytes, options: OpeningOptions, onProgress: (progress: Progress) => void): Promise<Result<DrawingRead> | null>
   /** The last question wins: earlier ones come back as null. */
-  answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Answer> | null>
+  answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Omit<Answer, 'plan'>> | null>
   /** The independent ways left under the last answer's conditions, smoothest first. */
   ways(doc: Doc, count: number): Promise<Result<readonly { readonly heights: Float64Array }[]> | null>
+  /** Heights of a second surface over the plan's nodes. */
+  surface(doc: Doc, file: NamedBytes): Promise<Result<Float64Array> | null>
   /** Files to take away: model and lists. */
   files(doc: Doc): Promise<Result<readonly NamedBytes[]> | null>
   stop(): void

@@ -9,6 +9,7 @@ import { DeskContext } from './context.ts'
 import { Desk } from './desk.ts'
 import { Sheet } from './Sheet.tsx'
 import { listenForKeys } from './shortcuts.ts'
+import { openSample } from './Samples.tsx'
 import { samples } from './samples.ts'
 import { WorkerEngine } from './worker-engine.ts'
 
@@ -26,5 +27,5 @@ if (root !== null) {
   document.fonts.ready.then(() => desk.store.update((state) => ({ ...state })), () => {})
   const asked = new URLSearchParams(location.search).get('sample')
   const sample = samples.find(({ name }) => name === asked)
-  if (sample !== undefined) void sample.text().then((text) => desk.openFile(sample.name, new TextEncoder().encode(text))).then(() => desk.accept())
+  if (sample !== undefined) void openSample(desk, sample).then(() => desk.accept())
 }

@@ -41,6 +41,8 @@ export interface Opening {
   readonly options: OpeningOptions
   readonly layers: readonly string[]
   readonly chosenRepair: number
+  /** A brief that came with the drawing; its voids are in the options once the unit is known. */
+  readonly brief: Brief | null
   readonly ms: number
 }
 
@@ -109,6 +111,7 @@ export const initialState: State = {
   desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
 }
 
-export function newDoc(name: string, read: ReadPlan): Doc {
-  return { name, plan: read.plan, read, target: null, brief: { ...emptyBrief, unit: read.plan.unit }, off: [], leastSlope: 3 }
+/** `brief`: in the plan's unit. Its voids are in the plan already. */
+export function newDoc(name: string, read: ReadPlan, brief: Brief = emptyBrief): Doc {
+  return { name, plan: read.plan, read, target: null, brief: { ...brief, unit: read.plan.unit, voids: null }, off: [], leastSlope: 3 }
 }

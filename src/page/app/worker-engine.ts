@@ -24,7 +24,7 @@ export class WorkerEngine implements Engine {
     return { ok: true, value: { read: result.value.readPlan, layers: result.value.layers } }
   }
 
-  async answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Answer> | null> {
+  async answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Omit<Answer, 'plan'>> | null> {
     const plan = this.base(doc)
     const brief = { ...doc.brief, conditions: doc.brief.conditions.filter(({ name }) => !doc.off.includes(name)) }
     return this.client.ask('answer', { plan, brief, options: optionsFor(doc), target: doc.target }, true, onProgress)
@@ -32,6 +32,10 @@ export class WorkerEngine implements Engine {
 
   ways(doc: Doc, count: number): ReturnType<Engine['ways']> {
     return this.client.ask('ways', { plan: this.base(doc), count }, true)
+  }
+
+  surface(doc: Doc, file: NamedBytes): ReturnType<Engine['surface']> {
+    return this.client.ask('surface', { plan: this.base(doc), file }, true)
   }
 
   files(doc: Doc): ReturnType<Engine['files']> {
