@@ -75,6 +75,15 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     rise: take('rise', typedLength),
     down: has('down'),
     shape: take('shape', (text, option) => typedWord(text, shapes, option)),
+    keeps: {
+      stay: values.get('stay') ?? [],
+      rimNodes: take('rim-nodes', (text, option) => typedWord(text, ['slide', 'fixed', 'free'] as const, option)) ?? 'slide',
+      bend: has('bend'),
+      largestShift: take('largest-shift', typedLength),
+      leastEdge: take('least-edge', typedLength),
+      leastCorner_deg: take('least-corner', typedDegrees),
+    },
+    planTolerance_mm: take('plan-tolerance', (text, option) => typedMillimetres(text, option, false)),
     flat_mm: take('flat', (text, option) => typedMillimetres(text, option, true)),
     decimals: take('decimals', (text, option) => typedCount(text, mostDecimals, option)),
     near: has('near'),
@@ -126,7 +135,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
     const recorded = ['brief', 'levels', 'target'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
-    record[name] = recorded.length === 0 ? true : ['layer', 'void', 'accept'].includes(name) ? recorded : recorded[0]
+    record[name] = recorded.length === 0 ? true : ['layer', 'void', 'accept', 'stay'].includes(name) ? recorded : recorded[0]
   }
   return record
 }

@@ -4,6 +4,7 @@ import { optionsOf, type Command, type OptionEntry } from './option-table.ts'
 const purpose: Readonly<Record<Command, string>> = {
   read: 'Reads a plan and says what it holds, what was repaired and what is open.',
   check: 'Says whether a plan can be raised into a roof of flat panels under the given conditions. Writes nothing.',
+  adjust: 'Moves nodes, as little as can be, until the plan lifts as asked; writes plan.obj, the roof and its lists, shifts.csv and shifts.svg.',
   raise: 'Raises a plan and writes the roof (roof.obj), the lists (panels.csv, joints.csv, nodes.csv) and summary.json.',
 }
 
@@ -12,6 +13,7 @@ export const usage = `panewise turns the plan of a glazed roof into a roof of fl
   panewise read  PLAN...            what a plan holds
   panewise check PLAN...            whether it can be raised
   panewise raise PLAN... --out DIR  the roof and its lists
+  panewise adjust PLAN --out DIR    the nearest plan that lifts, and its roof
   panewise COMMAND --help           the options of a command
   panewise help brief               the schema of a brief (JSON Schema)
   panewise help formats             what is read of which format
@@ -29,7 +31,7 @@ export function commandHelp(command: Command): string {
     const lines = entries.filter((entry) => entry.group === group).map((entry) => `  ${synopsis(entry).padEnd(width)}  ${entry.help}`)
     return `${group}\n${lines.join('\n')}\n`
   })
-  const out = command === 'raise' ? ' --out DIR' : ''
+  const out = command === 'raise' || command === 'adjust' ? ' --out DIR' : ''
   const tried = command === 'check' ? 'The options of raise are known here too, so that a command line can be tried before it writes.\n' : ''
   return (
     `panewise ${command} PLAN...${out} [options]\n\n${purpose[command]}\n${tried}\n${blocks.join('\n')}\n` +

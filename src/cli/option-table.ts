@@ -1,8 +1,8 @@
 /** Every option of the command line: what it takes, which commands know it, and what `--help` says of it. */
 
-export type Command = 'read' | 'check' | 'raise'
+export type Command = 'read' | 'check' | 'raise' | 'adjust'
 
-export const commands: readonly Command[] = ['read', 'check', 'raise']
+export const commands: readonly Command[] = ['read', 'check', 'raise', 'adjust']
 
 export interface OptionEntry {
   readonly name: string
@@ -10,7 +10,7 @@ export interface OptionEntry {
   readonly value: string | null
   readonly repeatable?: true
   /** The heading it stands under. */
-  readonly group: 'Reading the plan' | 'What must hold' | 'What it should look like' | 'Judging and writing' | 'This run'
+  readonly group: 'Reading the plan' | 'What must hold' | 'What it should look like' | 'What the plan keeps' | 'Judging and writing' | 'This run'
   readonly help: string
 }
 
@@ -34,6 +34,13 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'down', value: null, group: 'What it should look like', help: 'the roof hangs from its rim' },
   { name: 'shape', value: 'SHAPE', group: 'What it should look like', help: 'dome (default), barrel, pitched or hipped' },
   { name: 'target', value: 'FILE|input|none', group: 'What it should look like', help: 'come near to the heights of a file, of the plan itself, or of neither' },
+  { name: 'stay', value: 'NODE', repeatable: true, group: 'What the plan keeps', help: 'this node stays where it is, like N4 (repeatable)' },
+  { name: 'rim-nodes', value: 'slide|fixed|free', group: 'What the plan keeps', help: 'rim nodes slide along straight rim lines (default), stay, or move freely' },
+  { name: 'bend', value: null, group: 'What the plan keeps', help: 'straight joint runs may bend' },
+  { name: 'largest-shift', value: 'LENGTH', group: 'What the plan keeps', help: 'no node moves by more' },
+  { name: 'least-edge', value: 'LENGTH', group: 'What the plan keeps', help: 'no edge gets shorter (default: a quarter of what it is)' },
+  { name: 'least-corner', value: 'DEGREES', group: 'What the plan keeps', help: 'no corner gets sharper (default: half of what it is)' },
+  { name: 'plan-tolerance', value: 'LENGTH', group: 'What the plan keeps', help: 'what the drawing is exact to (bare: mm; default 1)' },
   { name: 'flat', value: 'LENGTH', group: 'Judging and writing', help: 'out of flat that a panel may be (bare: mm; default 1)' },
   { name: 'full', value: null, group: 'Judging and writing', help: 'name frozen joints and flat groups in the summary' },
   { name: 'out', value: 'DIR', group: 'Judging and writing', help: 'where raise writes: one plan into DIR, several into DIR/NAME' },
@@ -50,5 +57,6 @@ const forReading: readonly string[] = ['unit', 'scale', 'layer', 'snap', 'sagitt
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {
-  return command === 'read' ? optionTable.filter(({ name }) => forReading.includes(name)) : optionTable
+  if (command === 'read') return optionTable.filter(({ name }) => forReading.includes(name))
+  return command === 'adjust' ? optionTable.filter(({ name }) => name !== 'near') : optionTable.filter((entry) => entry.group !== 'What the plan keeps')
 }

@@ -7,7 +7,10 @@ import { cancelled, drive, type DriveOptions, type Steps } from '../base/steps.t
 import type { Repair, LeftOut, Question } from '../base/repair.ts'
 import type { PlanFacts } from '../roof/answer/answer.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
+import { adjust, type AdjustAnswer } from './adjust.ts'
+import { adjustFiles } from './adjust-files.ts'
 import { check, planFacts, type Checked } from './check.ts'
+import type { OutputFile } from './files.ts'
 import { reading } from './reading.ts'
 import type { Request } from './request.ts'
 
@@ -35,6 +38,18 @@ export interface ReadAnswer {
 export async function run(request: Request, options: DriveOptions = {}): Promise<Result<Checked>> {
   const sha256 = await sha256Of(request.source.bytes)
   return driven(check(request, version, sha256), options)
+}
+
+/** Reads, checks, moves nodes until the plan lifts, and checks again; nothing is written. */
+export async function adjustPlan(request: Request, options: DriveOptions = {}): Promise<Result<AdjustAnswer>> {
+  const sha256 = await sha256Of(request.source.bytes)
+  return driven(adjust(request, version, sha256), options)
+}
+
+/** The files of an adjusted plan. */
+export async function adjustedFiles(adjusted: AdjustAnswer, options: DriveOptions = {}): Promise<Result<OutputFile[]>> {
+  const made = await drive(adjustFiles(adjusted), options)
+  return made === cancelled ? fail('cancelled', 'stopped before the end') : ok(made)
 }
 
 /** Reads the plan only. */

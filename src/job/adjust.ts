@@ -1,0 +1,141 @@
+/** The job "adjust": the nearest plan that lifts as asked, its roof, and what moved; or why there is none. */
+import { conversion } from '../base/length.ts'
+import { fail, ok, type Result } from '../base/result.ts'
+import type { Steps } from '../base/steps.ts'
+import { indexOfName } from '../plan/names.ts'
+import type { Plan } from '../plan/plan.ts'
+import { parsedLength } from '../plan/project/wishes.ts'
+import type { Options } from '../plan/project/options.ts'
+import type { ReadPlan } from '../plan/read-plan.ts'
+import type { AdjustFacts } from '../roof/answer/adjust-facts.ts'
+import { conditionRows } from '../roof/conditions/condition-rows.ts'
+import type { PlanKeeps } from '../roof/cures/adjust.ts'
+import { movedNodes, type Moved, type MoveOutcome } from '../roof/cures/move-nodes.ts'
+import { flatness } from '../roof/raise/flatness.ts'
+import { nodeAreas } from '../roof/raise/nearest.ts'
+import { answerTo, openQuestion, questionOf, type Checked } from './check.ts'
+import { withLevels } from './levels.ts'
+import { reading } from './reading.ts'
+import type { Request } from './request.ts'
+import { targetOf } from './target.ts'
+
+/** A plan whose nodes move by less lifts within its tolerance: what a drawing is exact to. Our own choice. */
+export const defaultPlanTolerance_mm = 1
+
+export interface AdjustAnswer {
+  readonly before: Checked
+  /** The answer on the adjusted plan; the same as `before` where nothing moved. */
+  readonly after: Checked
+  /** Move of each node of the plan, mm (length nodeCount each). */
+  readonly dx_mm: Float64Array
+  readonly dy_mm: Float64Array
+  readonly facts: AdjustFacts
+}
+
+/** Moves below this, in mm, are none that anybody could set out. */
+const counted_mm = 1
+
+/** Reads, checks, adjusts and checks again. */
+export function* adjust(request: Request, version: string, sha256: string): Steps<Result<AdjustAnswer>> {
+  const options = yield* withLevels(request)
+  if (!options.ok) return options
+  const asked = { ...request, options: options.value }
+  const made = yield* reading(asked)
+  if (!made.ok) return made
+  const { read, brief, target } = made.value
+  if (read.questions.length > 0) return openQuestion(request, read.questions)
+  const before = yield* answerTo({ request: asked, version, sha256, read, brief, target, free: null })
+  if (!before.ok) return before
+  const keeps = keepsOf(read.plan, options.value)
+  if (!keeps.ok) return keeps
+  if (before.value.answer.summary.verdict === 'lifts') return ok(unmoved(before.value, 'lifts', null))
+  const outcome = yield* moveOutcome(asked, read, target, before.value, keeps.value)
+  if (!outcome.ok) return outcome
+  if (outcome.value.kind !== 'moved') return ok(unmoved(before.value, outcome.value.kind, outcome.value))
+  const { moved } = outcome.value
+  const after = yield* answerTo({ request: asked, version, sha256, read: { ...read, plan: moved.plan }, brief, target, free: null })
+  if (!after.ok) return after
+  return ok(yield* answerOf(before.value, after.value, moved, options.value))
+}
+
+/** The cure "move nodes" for a plan that was read and checked. `byHand`: heights set by hand, as `answerTo` takes them. */
+export function* moveOutcome(
+  request: Request, read: ReadPlan, byHand: Float64Array | null, { wishes, under }: Checked, keeps: PlanKeeps,
+): Steps<Result<MoveOutcome>> {
+  const { plan } = read
+  const target = yield* targetOf(request, wishes, read, byHand)
+  if (!target.ok) return target
+  const rows = conditionRows(plan, wishes.conditions, wishes.datum ?? 0)
+  if (!rows.ok) return rows
+  const wish = questionOf(plan, wishes, rows.value, target.value.heights)
+  return ok(yield* movedNodes({ plan, rows: rows.value, conditions: wishes.conditions, under, areas: nodeAreas(plan), wish, keeps }))
+}
+
+/** What the plan keeps, in spans. Fails where a node is not on the plan. */
+export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {
+  const fixed: number[] = []
+  for (const name of keeps.stay) {
+    const node = indexOfName(name, 'N')
+    if (node < 0 || node >= plan.nodeCount) return fail('no-such-node', `the plan has no node ${name}`, { field: '--stay' }, `its nodes are N1 to N${plan.nodeCount}`)
+    fixed.push(node)
+  }
+  const { span } = plan.frame
+  const lengths: (number | null)[] = []
+  for (const [option, typed] of [['--largest-shift', keeps.largestShift], ['--least-edge', keeps.leastEdge]] as const) {
+    const length = typed === null ? ok(null) : parsedLength(typed, option, plan.unit)
+    if (!length.ok) return length
+    if (length.value !== null && !(length.value > 0)) return fail('out-of-range', 'this length must be more than 0', { field: option })
+    lengths.push(length.value === null ? null : length.value / span)
+  }
+  const corner = keeps.leastCorner_deg
+  if (corner !== null && !(corner > 0 && corner < 60)) return fail('out-of-range', `a least corner is between 0 and 60 degrees, not ${corner}`, { field: '--least-corner' })
+  return ok({
+    rim: keeps.rimNodes, fixed, straight: !keeps.bend, largestShift: lengths[0], leastEdge: lengths[1],
+    leastAngle: corner === null ? null : (corner * Math.PI) / 180,
+  })
+}
+
+function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found: MoveOutcome | null): AdjustAnswer {
+  const { plan, summary } = before.answer
+  const why = found === null || found.kind === 'moved' ? null
+    : found.kind === 'refused' ? found.refusal : found
+  const corner = summary.roof?.cornerMax_mm ?? null
+  return {
+    before, after: before, dx_mm: new Float64Array(plan.nodeCount), dy_mm: new Float64Array(plan.nodeCount),
+    facts: {
+      outcome, code: why?.code ?? null, reason: why?.message ?? null, cure: why?.cure ?? null, planVerdict: summary.verdict,
+      largest_mm: 0, rms_mm: 0, count: 0, cornerBefore_mm: corner, cornerAfter_mm: corner, heightError: summary.roof?.heightError ?? null, held: null, iterations: 0,
+    },
+  }
+}
+
+function* answerOf(before: Checked, after: Checked, moved: Moved, options: Options): Steps<AdjustAnswer> {
+  const { plan } = before.answer
+  const mm = conversion(plan.unit, 'mm')
+  const dx_mm = moved.plan.x.map((x, n) => (x - plan.x[n]) * mm)
+  const dy_mm = moved.plan.y.map((y, n) => (y - plan.y[n]) * mm)
+  let largest = 0, squares = 0, count = 0
+  for (let n = 0; n < plan.nodeCount; n += 1) {
+    const shift = Math.hypot(dx_mm[n], dy_mm[n])
+    largest = Math.max(largest, shift)
+    squares += shift * shift
+    if (shift > counted_mm) count += 1
+  }
+  const { summary } = before.answer
+  const noFold = summary.verdict === 'does not lift' || summary.verdict === 'lifts within tolerance'
+  const within = noFold && after.answer.summary.verdict === 'lifts' && largest <= (options.planTolerance_mm ?? defaultPlanTolerance_mm)
+  // What the same heights would have been on the plan as drawn.
+  const asDrawn = yield* flatness(plan, plan.x, plan.y, moved.adjustment.state.heights.map((height) => height * plan.frame.span))
+  const { fixedCount, slidingCount, straightCount, active, iterations } = moved.adjustment
+  return {
+    before, after, dx_mm, dy_mm,
+    facts: {
+      outcome: 'moved', code: null, reason: null, cure: null, planVerdict: within ? 'lifts within plan tolerance' : summary.verdict,
+      largest_mm: largest, rms_mm: Math.sqrt(squares / plan.nodeCount), count,
+      cornerBefore_mm: asDrawn.corner.reduce((most, corner) => Math.max(most, corner), 0) * mm,
+      cornerAfter_mm: after.answer.summary.roof?.cornerMax_mm ?? null,
+      heightError: moved.heightError * plan.frame.span,
+      held: { fixed: fixedCount, sliding: slidingCount, byConditions: moved.placed, straight: straightCount, limits: active.length }, iterations,
+    },
+  }
+}
