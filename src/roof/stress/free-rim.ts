@@ -6,7 +6,7 @@ import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { bareCount } from './closure.ts'
 import { flatGroups, frozenJoints } from './frozen-joints.ts'
-import { smallestNearLift } from './gap.ts'
+import { passesWhereRounded, smallestNearLift } from './gap.ts'
 import { liftSpace, nothingHeld, weightedForm, type LiftSpace } from './lift-space.ts'
 import { panelBases, type PanelBases } from './panel-bases.ts'
 import { tiltDimension } from './tilts.ts'
@@ -34,13 +34,15 @@ export function* freeRim(plan: Plan): Steps<FreeRim> {
   const space = yield* liftSpace(plan, bases, nothingHeld(plan.nodeCount))
   const tilts = tiltDimension(plan, null)
   const freedom = space.dimension - tilts
-  const nearest = yield* smallestNearLift(space)
+  let nearest = yield* smallestNearLift(space)
   // The Ritz value is above the eigenvalue by a share of a percent: near the coarse tau the second count is taken.
   let coarse = freedom
   if (nearest !== null && nearest < 2 * tauCoarse) {
     const shifted = weightedForm(plan, space.elimination, space.form, null, -tauCoarse, 1)
-    const { negative, zero } = inertia(yield* factor(space.analysis, shifted))
+    const off = yield* factor(space.analysis, shifted)
+    const { negative, zero } = inertia(off)
     coarse = negative + zero - tilts
+    if (nearest < tau && coarse === freedom) nearest = yield* smallestNearLift(space, off, passesWhereRounded)
   }
   const frozen = frozenJoints(space, tilts, null)
   const { groupOf, groupCount } = flatGroups(plan, frozen)

@@ -29,3 +29,16 @@ test.each([
   expect(gap! / Math.sqrt(spectrum[space.dimension]!)).toBeGreaterThan(0.999)
   expect(gap! / Math.sqrt(spectrum[space.dimension]!)).toBeLessThan(1.005)
 })
+
+// Lifts of a plan written to so many decimals have eigenvalues of their own, far above rounding: they are not the gap.
+test.each([6, 7])('cells and quads written to %d decimals keep the gap of the exact plan', (decimals) => {
+  for (const exact of [cells(60, 3), cells(300, 8), grid(9, 6, { loose: 0.1 })]) {
+    const rounded = (value: number): number => Math.round(value * 10 ** decimals) / 10 ** decimals
+    const panels = Array.from({ length: exact.panelCount }, (_, p) => [...exact.corner.slice(exact.panelStart[p], exact.panelStart[p + 1])])
+    const written = plan(Array.from(exact.x, (x, node) => [rounded(x), rounded(exact.y[node]!)] as const), panels)
+    const [first, second] = [finish(freeRim(exact)), finish(freeRim(written))]
+    expect([second.freedom, second.decided]).toEqual([first.freedom, true])
+    expect(second.gap! / first.gap!).toBeGreaterThan(0.99)
+    expect(second.gap! / first.gap!).toBeLessThan(1.01)
+  }
+})
