@@ -43,9 +43,9 @@ export function* check(request: Request, version: string, sha256: string): Steps
   if (!options.ok) return options
   const made = yield* reading({ ...request, options: options.value })
   if (!made.ok) return made
-  const { read, brief } = made.value
+  const { read, brief, target } = made.value
   if (read.questions.length > 0) return openQuestion(request, read.questions)
-  return yield* answerTo({ request: { ...request, options: options.value }, version, sha256, read, brief, free: null })
+  return yield* answerTo({ request: { ...request, options: options.value }, version, sha256, read, brief, target, free: null })
 }
 
 /** A plan that has been read and what is asked of it; `free`: of the same plan, from an earlier answer (null: not known). */
@@ -55,15 +55,17 @@ export interface PlanQuestion {
   readonly sha256: string
   readonly read: ReadPlan
   readonly brief: Brief
+  /** Heights set by hand (length nodeCount, NaN: none), in the place of the drawing's and of the brief's shape; null: none. */
+  readonly target: Float64Array | null
   readonly free: FreeRim | null
 }
 
 /** The second half of the job, which every edit of the brief repeats; the factor of the plan is found once and kept. */
-export function* answerTo({ request, version, sha256, read, brief, free: known }: PlanQuestion): Steps<Result<Checked>> {
+export function* answerTo({ request, version, sha256, read, brief, target: byHand, free: known }: PlanQuestion): Steps<Result<Checked>> {
   const { plan } = read
   const wishes = wishesOf(brief, request.options, plan.unit)
   if (!wishes.ok) return wishes
-  const target = yield* targetOf(request, wishes.value, read)
+  const target = yield* targetOf(request, wishes.value, read, byHand)
   if (!target.ok) return target
   const rows = conditionRows(plan, wishes.value.conditions, wishes.value.datum ?? 0)
   if (!rows.ok) return rows
@@ -74,14 +76,14 @@ export function* answerTo({ request, version, sha256, read, brief, free: known }
   return ok({ answer, wishes: wishes.value, free, under: result.under })
 }
 
-function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {
+export function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {
   const { code, message, options } = questions[0]
   const { problem } = fail(code, message, { file: request.source.name }, `answer with ${options.join(' or ')}`)
   return { ok: false, problem: { ...problem, questions } }
 }
 
 /** The wishes in working measure: heights (z - datum) / span. */
-function questionOf(plan: Plan, wishes: Wishes, rows: ConditionRows, target: Float64Array | null): Parameters<typeof raised>[3] {
+export function questionOf(plan: Plan, wishes: Wishes, rows: ConditionRows, target: Float64Array | null): Parameters<typeof raised>[3] {
   const { span } = plan.frame
   const datum = wishes.datum ?? 0
   const tolerance = wishes.flat_mm * conversion('mm', plan.unit)

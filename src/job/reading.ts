@@ -10,6 +10,7 @@ import { emptyBrief, readBrief, type Brief } from '../plan/project/brief.ts'
 import type { Options } from '../plan/project/options.ts'
 import { readOptionsOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
+import { projectIn, withOptions } from './project-reading.ts'
 import type { Request } from './request.ts'
 
 /** Largest distance of a curve from its chords where nobody says otherwise: 5 mm, our own choice. */
@@ -18,6 +19,8 @@ export const defaultSagitta_mm = 5
 export interface Reading {
   readonly brief: Brief
   readonly read: ReadPlan
+  /** Heights set by hand in a project (length nodeCount, NaN: none); null: none. */
+  readonly target: Float64Array | null
   /** Layers of the drawing that were read from, by name. */
   readonly layers: readonly string[]
 }
@@ -27,11 +30,21 @@ export function* reading(request: Request): Steps<Result<Reading>> {
   yield { stage: 'Reading', done: 0 }
   const brief = request.brief === null ? ok(emptyBrief) : readBrief(request.brief.text, request.brief.name)
   if (!brief.ok) return brief
+  const project = projectIn(request.source)
+  if (project !== null) {
+    if (!project.ok) return project
+    // A brief that is given takes the place of the project's, with all that was wished by hand.
+    const asked = request.brief === null ? project.value : { ...project.value, brief: brief.value, target: null }
+    const made = withOptions(asked, request.options, request.source.name)
+    if (!made.ok) return made
+    const { brief: own, target, read } = made.value.project
+    return ok({ brief: own, read: { ...read, notices: [...read.notices, ...made.value.notices] }, target, layers: [''] })
+  }
   const drawing = yield* readDrawing(request.source, formatOptions(request.options))
   if (!drawing.ok) return drawing
   const read = yield* planFromDrawing(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
   if (!read.ok) return { ok: false, problem: placed(read.problem, { file: request.source.name }) }
-  return ok({ brief: brief.value, read: read.value, layers: drawing.value.layers })
+  return ok({ brief: brief.value, read: read.value, target: null, layers: drawing.value.layers })
 }
 
 /** What readers of formats need to know of the options. */

@@ -4,14 +4,16 @@
  */
 import { fail, ok, type Result } from '../base/result.ts'
 import { cancelled, drive, type DriveOptions } from '../base/steps.ts'
-import type { Brief } from '../plan/project/brief.ts'
-import type { Options } from '../plan/project/options.ts'
+import { emptyBrief, type Brief } from '../plan/project/brief.ts'
+import { noOptions, type NamedFile, type Options } from '../plan/project/options.ts'
+import { wishesOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
 import { smoothestLifts } from '../roof/stress/smoothest-lifts.ts'
 import { answerTo, type Checked } from './check.ts'
 import { filesOf, type OutputFile } from './files.ts'
+import { targetOf } from './target.ts'
 import { version } from './run.ts'
 
 /** One independent way in which the roof can still move: heights per node, 1 at its peak over its mean plane. */
@@ -36,9 +38,10 @@ export class Session {
    * take the place of the drawing's own, null: as drawn.
    */
   async answer(brief: Brief, options: Options, target: Float64Array | null, driven: DriveOptions = {}): Promise<Result<Checked>> {
-    const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options, brief: null, levels: null, given: {} } as const
-    const read = target === null ? this.read : { ...this.read, heights: target }
-    const made = await drive(answerTo({ request, version, sha256: '', read, brief, free: this.free }), driven)
+    // Heights set by hand are the target whatever the options say of the drawing's.
+    const asked = target === null ? options : { ...options, target: null, shape: null }
+    const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options: asked, brief: null, levels: null, given: {} } as const
+    const made = await drive(answerTo({ request, version, sha256: '', read: this.read, brief, target, free: this.free }), driven)
     if (made === cancelled) return fail('cancelled', 'stopped before the end')
     if (made.ok) {
       this.free = made.value.free
@@ -53,6 +56,17 @@ export class Session {
     const { under, answer } = this.last
     if (under.freedomLeft === null) return ok([])
     return ok(smoothestLifts(under.space, under.tilts, nodeAreas(answer.plan), count).map((heights) => ({ heights })))
+  }
+
+  /** Heights of a second surface over every node; fails where it does not lie over the plan. */
+  async surface(file: NamedFile, driven: DriveOptions = {}): Promise<Result<Float64Array>> {
+    const wishes = wishesOf(emptyBrief, { ...noOptions, target: file }, this.read.plan.unit)
+    if (!wishes.ok) return wishes
+    const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options: noOptions, brief: null, levels: null, given: {} } as const
+    const made = await drive(targetOf(request, wishes.value, this.read, null), driven)
+    if (made === cancelled) return fail('cancelled', 'stopped before the end')
+    if (!made.ok) return made
+    return made.value.heights === null ? fail('no-target', 'the file has no surface', { file: file.name }) : ok(made.value.heights)
   }
 
   /** The files of the last answer. A near roof is among them and says so. */

@@ -24,9 +24,12 @@ const leastShare = 0.9
 const leastRange_mm = 10
 const leastRangeOfSpan = 1e-3
 
-/** The target that request, wishes and drawing agree on. */
-export function* targetOf(request: Request, wishes: Wishes, read: ReadPlan): Steps<Result<Target>> {
+/** The target that request, wishes and drawing agree on; heights set by hand give way only to what the options ask. */
+export function* targetOf(request: Request, wishes: Wishes, read: ReadPlan, byHand: Float64Array | null): Steps<Result<Target>> {
   const { plan, heights } = read
+  if (byHand !== null && !byHand.every(Number.isNaN) && request.options.target === null && request.options.shape === null && wishes.pitch === null) {
+    return ok({ heights: filled(plan, byHand), notices: ['The heights set by hand are taken as the target.'] })
+  }
   if (wishes.target !== null && typeof wishes.target === 'object') return yield* fromFile(request, wishes.target, plan)
   if (wishes.target === 'none' || wishes.pitch !== null) return ok({ heights: null, notices: [] })
   const refusal = heights === null ? 'the drawing has no heights' : whyNot(plan, heights)

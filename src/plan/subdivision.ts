@@ -14,6 +14,8 @@ export interface Faces {
   readonly y: Float64Array
   readonly start: Int32Array
   readonly corner: Int32Array
+  /** Nodes keep the order of the points, for points that are nodes of a plan already; else they are numbered by first use. */
+  readonly ordered?: true
 }
 
 export interface Subdivision {
@@ -23,17 +25,21 @@ export interface Subdivision {
 }
 
 /**
- * The subdivision with these panels. Nodes are numbered by first use, panels as given.
+ * The subdivision with these panels. Nodes are numbered by first use or as given, panels as given.
  * Fails, with the place: "no-panels", "no-area", "corner-twice", "panels-overlap" (two panels on the same side of an
  * edge), "three-panels".
  */
 export function planFromFaces(faces: Faces): Result<Subdivision> {
   const panelCount = faces.start.length - 1
   if (panelCount < 1) return fail('no-panels', 'there is no closed panel')
-  const { nodeOf, pointOfNode } = nodesByFirstUse(faces)
+  const { nodeOf, pointOfNode } = faces.ordered === true ? nodesInOrder(faces) : nodesByFirstUse(faces)
   const nodeCount = pointOfNode.length
-  const x = Float64Array.from(pointOfNode, (point) => faces.x[point])
-  const y = Float64Array.from(pointOfNode, (point) => faces.y[point])
+  const x = new Float64Array(nodeCount)
+  const y = new Float64Array(nodeCount)
+  for (let n = 0; n < nodeCount; n += 1) {
+    x[n] = faces.x[pointOfNode[n]]
+    y[n] = faces.y[pointOfNode[n]]
+  }
   const { work, frame } = workingCoordinates(x, y)
 
   const oriented = counterClockwise(faces, nodeOf, work, frame.span)
@@ -78,6 +84,14 @@ function nodesByFirstUse(faces: Faces): { nodeOf: Int32Array; pointOfNode: Int32
     count += 1
   }
   return { nodeOf, pointOfNode: points.slice(0, count) }
+}
+
+function nodesInOrder(faces: Faces): { nodeOf: Int32Array; pointOfNode: Int32Array } {
+  const nodeOf = new Int32Array(faces.x.length).fill(-1)
+  for (const point of faces.corner) nodeOf[point] = 0
+  const pointOfNode = Int32Array.from(nodeOf.keys()).filter((point) => nodeOf[point] === 0)
+  pointOfNode.forEach((point, node) => (nodeOf[point] = node))
+  return { nodeOf, pointOfNode }
 }
 
 /** Coordinates centred on the bounding box and divided by its longer side, so that survey offsets cost no digits. */

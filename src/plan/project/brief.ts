@@ -1,9 +1,9 @@
 /** The brief: what a roof must keep and should look like, read from JSON. */
 import { isUnit, type Unit } from '../../base/length.ts'
-import { fail, ok, placed, type Problem, type Result } from '../../base/result.ts'
+import { fail, ok, type Problem, type Result } from '../../base/result.ts'
 import { briefSchema, voidPattern } from './brief-schema.ts'
 import { kindsNotBuilt, type Condition, type Point } from './condition.ts'
-import { readJson, type JsonText } from './json-text.ts'
+import { placedIn, readJson } from './json-text.ts'
 import { misfit } from './schema.ts'
 
 export type Shape = 'dome' | 'barrel' | 'pitched' | 'hipped'
@@ -38,7 +38,7 @@ export function readBrief(text: string, file: string): Result<Brief> {
   const json = readJson(text, file)
   if (!json.ok) return json
   const brief = briefOf(json.value.value)
-  return brief.ok ? brief : { ok: false, problem: withLine(brief.problem, json.value, file) }
+  return brief.ok ? brief : { ok: false, problem: placedIn(brief.problem, json.value, file) }
 }
 
 /** The brief in a value that JSON gave, also one that is part of another document. */
@@ -155,16 +155,4 @@ function namedConditions(written: readonly WrittenCondition[]): Result<readonly 
 function rimOf(text: string): 'outer' | Point {
   const match = new RegExp(voidPattern).exec(text)
   return match === null ? 'outer' : [Number(match[1]), Number(match[2])]
-}
-
-/** The problem with the file, and the line of its field or of what contains it. */
-function withLine(problem: Problem, json: JsonText, file: string): Problem {
-  const path = problem.where?.field ?? ''
-  for (let at = path; at !== ''; ) {
-    const line = json.lineOf(at)
-    if (line !== undefined) return placed(problem, { file, line })
-    const container = at.replace(/(?:\.[^.[]*|\[\d+\])$/, '')
-    at = container === at ? '' : container
-  }
-  return placed(problem, { file })
 }

@@ -40,8 +40,8 @@ interface Common {
   readonly name: string
   /** Weight (> 0) of a soft condition; null: hard. */
   readonly soft: number | null
-  /** Switched off: kept in the document, and nothing is asked by it. */
-  readonly off?: true
+  /** True: switched off, so it is kept in the document and nothing is asked by it. */
+  readonly off?: boolean
 }
 
 /** All nodes at one level; null: at the datum. */

@@ -2,12 +2,20 @@
  * JSON (RFC 8259) read with places: the value, and the line on which each field stands, so that what is wrong with a field
  * can be shown in the file. A field given twice is an error here; the standard leaves it open and one of the two is lost.
  */
-import { fail, ok, type Problem, type Result } from '../../base/result.ts'
+import { fail, ok, placed, type Problem, type Result } from '../../base/result.ts'
 
 export interface JsonText {
   readonly value: unknown
   /** 1-based line of the field with a path like "conditions[2].level"; the whole text has the path "". */
   lineOf(path: string): number | undefined
+  /** Line of the field, or where the path is no field of the text, of the innermost field on it that is. */
+  lineNear(path: string): number | undefined
+}
+
+/** The problem with the file, and the line of its field or of what contains it. */
+export function placedIn(problem: Problem, json: JsonText, file: string): Problem {
+  const line = json.lineNear(problem.where?.field ?? '')
+  return placed(problem, line === undefined ? { file } : { file, line })
 }
 
 /** Deeper nesting than any document of ours, and shallow enough for the stack. */
@@ -18,10 +26,35 @@ const token = /[ \t\r\n]*(?:([{}[\],:])|("(?:[^"\\\u0000-\u001f]|\\(?:["\\/bfnrt
 /** The path of a field inside the path of its object. */
 export const fieldPath = (path: string, field: string): string => (path === '' ? field : `${path}.${field}`)
 
-/** Fails with "not-json" and the line; `file` is the name for sentences. */
+/** Fails with "not-json" or "field-twice" and the line; `file` is the name for sentences. */
 export function readJson(text: string, file: string): Result<JsonText> {
   const source = text.startsWith('\uFEFF') ? text.slice(1) : text
-  const lines = new Map<string, number>()
+  const plain = parsed(source, file, null)
+  // Only what is wrong needs places, and large documents have a million of them.
+  if (!plain.ok) {
+    const wrong = parsed(source, file, new Map())
+    return wrong.ok ? plain : wrong
+  }
+  let places: Map<string, number> | null = null
+  const lineOf = (path: string): number | undefined => {
+    if (places === null) parsed(source, file, (places = new Map()))
+    return places.get(path)
+  }
+  return ok({ value: plain.value, lineOf, lineNear: (path) => lineNear(path, lineOf) })
+}
+
+function lineNear(path: string, lineOf: JsonText['lineOf']): number | undefined {
+  for (let at = path; at !== ''; ) {
+    const line = lineOf(at)
+    if (line !== undefined) return line
+    const container = at.replace(/(?:\.[^.[]*|\[\d+\])$/, '')
+    at = container === at ? '' : container
+  }
+  return undefined
+}
+
+/** `lines` takes the line of every field, by its path; null: paths are not kept. */
+function parsed(source: string, file: string, lines: Map<string, number> | null): Result<unknown> {
   let at = 0
   let line = 1
   let counted = 0
@@ -51,7 +84,7 @@ export function readJson(text: string, file: string): Result<JsonText> {
     if (depth > deepest) return fail('not-json', `values lie more than ${deepest} deep in each other`, { file, line: lineAt(at) })
     const match = read()
     if (match === null) return wrong('a value')
-    lines.set(path, lineAt(at - match[0].trimStart().length))
+    lines?.set(path, lineAt(at - match[0].trimStart().length))
     const [, mark, string, number, word] = match
     if (string !== undefined) return ok(JSON.parse(string) as unknown)
     if (number !== undefined) return ok(Number(number))
@@ -68,7 +101,7 @@ export function readJson(text: string, file: string): Result<JsonText> {
       return ok(list)
     }
     for (;;) {
-      const item = value(`${path}[${list.length}]`, depth + 1)
+      const item = value(lines === null ? '' : `${path}[${list.length}]`, depth + 1)
       if (!item.ok) return item
       list.push(item.value)
       const mark = peek()
@@ -91,7 +124,7 @@ export function readJson(text: string, file: string): Result<JsonText> {
         return wrong('a field name in quotes')
       }
       const field = JSON.parse(name) as string
-      const inside = fieldPath(path, field)
+      const inside = lines === null ? '' : fieldPath(path, field)
       if (fields.has(field)) return fail('field-twice', 'this field is given twice', { file, line: lineAt(at), field: inside }, 'keep one of them')
       if (peek() !== ':') return wrong('":"')
       read()
@@ -110,5 +143,5 @@ export function readJson(text: string, file: string): Result<JsonText> {
   const whole = value('', 0)
   if (!whole.ok) return whole
   if (source.slice(at).trim() !== '') return wrong('the end')
-  return ok({ value: whole.value, lineOf: (path) => lines.get(path) })
+  return whole
 }

@@ -44,7 +44,7 @@ export interface StringSchema {
 }
 
 export interface ConstSchema {
-  readonly const: string | number | boolean
+  readonly const: string | number | boolean | null
   readonly description?: string
 }
 
@@ -121,8 +121,8 @@ function checkArray(schema: ArraySchema, value: readonly unknown[], path: string
     return wrong('wrong-length', path, `must have ${wanted} ${wanted === '1 or more' || minItems !== 1 ? 'entries' : 'entry'}, not ${value.length}`)
   }
   for (const [i, item] of value.entries()) {
-    const problem = check(schema.items, item, `${path}[${i}]`, defs)
-    if (problem !== null) return problem
+    // The place of an entry is written out only when there is something wrong with it: lists may be long.
+    if (check(schema.items, item, '', defs) !== null) return check(schema.items, item, `${path}[${i}]`, defs)
   }
   return null
 }

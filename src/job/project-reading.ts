@@ -1,0 +1,47 @@
+/** A project as the plan of a job: its plan is read already, so nothing is joined, cut or traced again. */
+import { fail, ok, placed, type Result } from '../base/result.ts'
+import type { Source } from '../formats/format.ts'
+import { decodedText } from '../formats/text-encoding.ts'
+import { faceAt } from '../plan/drawn-faces.ts'
+import type { Options } from '../plan/project/options.ts'
+import type { Project } from '../plan/project/project-record.ts'
+import { documentKind, readProject } from '../plan/project/read-project.ts'
+import { turnedFace } from '../plan/project/turned-face.ts'
+import { readOptionsOf } from '../plan/project/wishes.ts'
+
+/** Longest blank start of a document: what people put before the first brace. */
+const headLength = 256
+
+/** The project in a file, null where the file is something else. A brief in the place of a plan is refused. */
+export function projectIn(source: Source): Result<Project> | null {
+  const isNamedOne = /\.panewise\.json$/i.test(source.name)
+  if (!isNamedOne && !source.bytes.subarray(0, headLength).includes('{'.charCodeAt(0))) return null
+  const text = decodedText(source)
+  const kind = text.ok ? documentKind(text.value) : null
+  if (kind === 'brief') return fail('brief-as-plan', 'this is a brief, not a plan', { file: source.name }, 'give it with --brief, beside a plan')
+  if (!isNamedOne && kind === null) return null
+  return text.ok ? readProject(text.value, source.name) : text
+}
+
+/** The project with the voids that options and brief name, and what else of the options there is to say. */
+export function withOptions(project: Project, options: Options, file: string): Result<{ project: Project; notices: readonly string[] }> {
+  const { unit } = project.faces
+  if (options.unit !== null && options.unit !== unit) {
+    return fail('unit-settled', `the plan of this project is in ${unit}`, { file, field: '--unit' }, `leave --unit out, or read the drawing "${project.name}" anew`)
+  }
+  let now = project
+  for (const [x, y] of readOptionsOf(project.brief, options, unit).voids) {
+    const face = faceAt(now.faces, x, y)
+    if (face < 0) return fail('void-nowhere', 'the void point lies in no bounded region', { file, at: [x, y] }, 'put it inside the void, clear of its lines')
+    if (now.faces.isVoid[face] === 1) continue
+    const next = turnedFace(now, face)
+    if (!next.ok) return { ok: false, problem: placed(next.problem, { file }) }
+    now = next.value.project
+  }
+  const idle = [
+    ...(options.scale === null ? [] : ['--scale']), ...(options.layers === null ? [] : ['--layer']), ...(options.snap_mm === null ? [] : ['--snap']),
+    ...(options.sagitta_mm === null ? [] : ['--sagitta']), ...(options.accept.length === 0 ? [] : ['--accept']),
+  ]
+  const notices = idle.length === 0 ? [] : [`The plan of a project is as it was accepted: ${idle.join(', ')} ${idle.length === 1 ? 'changes' : 'change'} nothing.`]
+  return ok({ project: now, notices })
+}
