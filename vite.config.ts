@@ -17,7 +17,7 @@ export default defineConfig(({ mode }) => ({
   base: './',
   plugins: [react(), withoutPolicy],
   worker: { format: 'es' },
-  build: mode === 'page' ? { outDir: 'dist/page', emptyOutDir: true, target: 'es2022', assetsInlineLimit: 0 } : {
+  build: mode === 'page' ? { outDir: 'dist/page', emptyOutDir: true, target: 'es2022', assetsInlineLimit: 0, chunkSizeWarningLimit: 1200 } : {
     ssr: 'src/cli/panewise.ts',
     outDir: 'dist',
     emptyOutDir: false,

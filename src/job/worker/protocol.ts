@@ -5,7 +5,7 @@
 import type { Result } from '../../base/result.ts'
 import type { Progress } from '../../base/steps.ts'
 import type { Brief } from '../../plan/project/brief.ts'
-import type { Options } from '../../plan/project/options.ts'
+import type { NamedFile, Options } from '../../plan/project/options.ts'
 import type { ReadAnswer } from '../run.ts'
 import type { Request } from '../request.ts'
 import type { OutputFile } from '../files.ts'
@@ -19,9 +19,11 @@ export interface Questions {
   /** Takes a plan as the one that `answer`, `ways` and `files` speak of; `plan` is the page's number for it. */
   base: { ask: { plan: number; read: ReadAnswer['readPlan']; name: string }; tell: Result<null> }
   /** `target`: heights that take the place of the drawing's own. */
-  answer: { ask: { plan: number; brief: Brief; options: Options; target: Float64Array | null }; tell: Result<Answer> }
+  answer: { ask: { plan: number; brief: Brief; options: Options; target: Float64Array | null }; tell: Result<Omit<Answer, 'plan'>> }
   /** The independent ways left under the brief of the last answer, smoothest first. */
   ways: { ask: { plan: number; count: number }; tell: Result<readonly Way[]> }
+  /** Heights of a second surface over the nodes of the plan. */
+  surface: { ask: { plan: number; file: NamedFile }; tell: Result<Float64Array> }
   /** Files of the last answer. */
   files: { ask: { plan: number; csv: 'comma' | 'semicolon' }; tell: Result<readonly OutputFile[]> }
 }

@@ -57,10 +57,12 @@ async function told(question: Exclude<ToWorker, { kind: 'cancel' }>, signal: Abo
       if (session === null || session.plan !== question.ask.plan) return fail('no-plan', 'the worker has no such plan')
       const { session: held } = session
       if (question.kind === 'ways') return held.ways(question.ask.count)
+      if (question.kind === 'surface') return held.surface(question.ask.file, drive)
       if (question.kind === 'files') return held.files(question.ask.csv, drive)
       const { brief, options, target } = question.ask
       const made = await held.answer(brief, options, target, drive)
-      return made.ok ? ok(made.value.answer) : made
+      // The page has the plan: a copy of it with every answer would cost it a third of the message.
+      return made.ok ? ok({ ...made.value.answer, plan: undefined }) : made
     }
   }
 }

@@ -69,13 +69,14 @@ function RimRow({ answer }: { readonly answer: Answer }) {
   return (
     <>
       {rims.slice(0, 6).map(({ title, at }) => {
-        const held = doc.brief.conditions.find(({ name }) => name === title)
+        const held = doc.brief.conditions.find((condition) => condition.name === title || ('rim' in condition.at && String(condition.at.rim) === String(at)))
+        const name = held?.name ?? title
         const hold = (kind: 'level' | 'equal'): void => desk.condition(
-          kind === 'level' ? { name: title, kind, at: { rim: at }, level: null, soft: null } : { name: title, kind, at: { rim: at }, soft: null }, `${title} ${kind === 'level' ? 'level at the datum' : 'level, wherever'}`)
+          kind === 'level' ? { name, kind, at: { rim: at }, level: null, soft: null } : { name, kind, at: { rim: at }, soft: null }, `${name} ${kind === 'level' ? 'level at the datum' : 'level, wherever'}`)
         return (
           <p key={title} className="entry switch" role="radiogroup" aria-label={title}>
             <span>{title === 'rim' ? 'Rim' : title.replace('rim', 'Rim')}</span>
-            <button role="radio" aria-checked={held === undefined} className={held === undefined ? 'chosen' : ''} onClick={() => held !== undefined && desk.release([title])}>free</button>
+            <button role="radio" aria-checked={held === undefined} className={held === undefined ? 'chosen' : ''} onClick={() => held !== undefined && desk.release([name])}>free</button>
             <button role="radio" aria-checked={held?.kind === 'level'} className={held?.kind === 'level' ? 'chosen' : ''} onClick={() => hold('level')}>level at the datum</button>
             <button role="radio" aria-checked={held?.kind === 'equal'} className={held?.kind === 'equal' ? 'chosen' : ''} onClick={() => hold('equal')}>level, wherever</button>
           </p>

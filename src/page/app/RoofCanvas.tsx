@@ -22,6 +22,9 @@ import type { Size } from './useSize.ts'
 /** Above this many panels multisampling is left out where WebGL is software: it costs 70 of 100 ms a frame. */
 const manyPanels = 2500
 
+/** Height in px of the words under the roof. */
+const footRoom = 26
+
 export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size }) {
   const webgl = useDeskState((state) => state.webgl)
   const [lost, setLost] = useState(0)
@@ -72,7 +75,7 @@ export function roofScale(answer: Answer, size: Size, planSize: Size): { scale: 
   const area = onPlan ? planArea(planSize.width, planSize.height, true) : planArea(size.width, size.height, false)
   const window = fitted(answer.plan, area)
   const fits = onPlan && size.width === planSize.width
-  const scale = Math.min(window.scale, (0.94 * size.width * window.scale) / Math.max(1, area.right - area.left), (1.45 * (size.height - 40)) / Math.max(1, planHeight(answer)))
+  const scale = Math.min(window.scale, (0.94 * size.width * window.scale) / Math.max(1, area.right - area.left), (1.45 * (size.height - 66)) / Math.max(1, planHeight(answer)))
   return { scale: fits && scale >= window.scale * 0.8 ? window.scale : scale, shift: fits ? window.middleX - size.width / 2 : 0 }
 }
 
@@ -147,7 +150,7 @@ function View({ answer, side, size, scale, shift, top, exaggeration }: {
     const manual = camera as (OrthographicCamera | PerspectiveCamera) & { manual?: boolean }
     manual.manual = true
     // Moved on the screen, whatever the zoom, so that the roof stands under its plan.
-    if ('isOrthographicCamera' in camera) camera.setViewOffset(size.width, size.height, -shift, 0, size.width, size.height)
+    if ('isOrthographicCamera' in camera) camera.setViewOffset(size.width, size.height, -shift, footRoom / 2, size.width, size.height)
     set({ camera: camera as never })
     const controls = new OrbitControls(camera, gl.domElement)
     controls.target.copy(target)

@@ -43,7 +43,7 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
         {answer !== null && roof === null && <p className="will">Not raised: no roof meets the conditions.</p>}
         {roof !== null && (
           <p className="foot"><span>
-            {near ? 'The nearest roof. Not exact: panels are warped as shown. ' : ''}
+            {near ? 'Not exact: panels are warped. ' : ''}
             Seen {turned ?? viewWords(side)}. Heights drawn{' '}
             {[1, 2, 5].map((times) => (
               <button key={times} className={exaggeration === times ? 'word chosen' : 'word'} aria-pressed={exaggeration === times} onClick={() => desk.set({ exaggeration: times })}>{`\u00d7${times}`}</button>

@@ -39,7 +39,8 @@ export interface PlanDrawingOptions {
 /** Where on the sheet the plan itself goes, between its furniture. */
 export function planArea(width: number, height: number, furniture: boolean): Area {
   if (!furniture) return { left: 4, top: 4, right: width - 4, bottom: height - 4 }
-  return { left: 14, top: 16, right: width - (width > 480 ? 100 : 44), bottom: height - 78 }
+  // Room above and below for the names of what is held along the rim.
+  return { left: 14, top: 26, right: width - (width > 480 ? 100 : 44), bottom: height - 90 }
 }
 
 export function planWindow(answer: Answer, options: Pick<PlanDrawingOptions, 'width' | 'height' | 'furniture' | 'window'>): PlanWindow {
