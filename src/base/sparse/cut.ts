@@ -106,30 +106,26 @@ export class Cuts {
 
   /** The position within `reach` of `middle` whose separator seems smallest. */
   private estimate(from: number, to: number, middle: number, reach: number): number {
-    const { sorted, place, low, high } = this.axes[this.axis] as Axis
+    const axis = this.axes[this.axis] as Axis
+    const { sorted, place } = axis
     const { positions, limit, leftSize, rightSize } = this
     const half = (mostPositions - 1) / 2
     for (let c = 0; c < mostPositions; c++) {
-      const at = middle + Math.round((reach * (c - half)) / half)
-      positions[c] = at
-      limit[c] = place[sorted[at] as number] as number
-      leftSize[c] = 0
-      rightSize[c] = 0
+      positions[c] = middle + Math.round((reach * (c - half)) / half)
+      limit[c] = place[sorted[positions[c] as number] as number] as number
     }
+    leftSize.fill(0)
+    rightSize.fill(0)
     // Only unknowns near the window are counted: long connections from far off are missed, and met when the cut is solved.
     const margin = reach + Math.ceil(6 * Math.sqrt(to - from))
-    const end = Math.min(to, middle + margin)
-    let passed = 0
-    for (let k = Math.max(from, middle - margin); k < end; k++) {
-      const v = sorted[k] as number
-      while (passed < mostPositions && (positions[passed] as number) <= k) passed++
-      const highest = high[v] as number
-      for (let c = passed; c < mostPositions && (limit[c] as number) <= highest; c++) leftSize[c] = (leftSize[c] as number) + 1
-      const lowest = low[v] as number
-      for (let c = passed - 1; c >= 0 && (limit[c] as number) > lowest; c--) rightSize[c] = (rightSize[c] as number) + 1
-    }
+    countAcross(axis, Math.max(from, middle - margin), Math.min(to, middle + margin), positions, limit, leftSize, rightSize)
+    return this.smallest(from, to)
+  }
+
+  private smallest(from: number, to: number): number {
+    const { positions, leftSize, rightSize } = this
     let best = Infinity
-    let choice = middle
+    let choice = 0
     for (let c = 0; c < mostPositions; c++) {
       const size = Math.min(leftSize[c] as number, rightSize[c] as number) * this.uneven(from, to, positions[c] as number)
       if (size >= best) continue
@@ -167,6 +163,21 @@ export class Cuts {
       }
     }
     cover.solve()
+  }
+}
+
+/** For each of the ascending positions: the unknowns of [from, to) before it that reach to or beyond it, and those from it on that reach below. */
+function countAcross(
+  { sorted, low, high }: Axis, from: number, to: number, positions: Int32Array, limit: Int32Array, leftSize: Int32Array, rightSize: Int32Array,
+): void {
+  let passed = 0
+  for (let k = from; k < to; k++) {
+    const v = sorted[k] as number
+    while (passed < mostPositions && (positions[passed] as number) <= k) passed++
+    const highest = high[v] as number
+    for (let c = passed; c < mostPositions && (limit[c] as number) <= highest; c++) leftSize[c] = (leftSize[c] as number) + 1
+    const lowest = low[v] as number
+    for (let c = passed - 1; c >= 0 && (limit[c] as number) > lowest; c--) rightSize[c] = (rightSize[c] as number) + 1
   }
 }
 
