@@ -38,10 +38,13 @@ export function* targetOf(request: Request, wishes: Wishes, read: ReadPlan, byHa
     return ok({ heights: filled(plan, heights), notices: [] })
   }
   if (heights === null) return ok({ heights: null, notices: [] })
+  if (refusal === flat) return ok({ heights: null, notices: ['The drawing is flat, so its heights are no target.'] })
   if (refusal !== null) return ok({ heights: null, notices: [`The heights in the drawing are not taken as a target: ${refusal}.`] })
   if (wishes.shape !== null) return ok({ heights: null, notices: [`The heights in the drawing are not taken as a target, since the shape "${wishes.shape}" was asked for.`] })
   return ok({ heights: filled(plan, heights), notices: ['The heights in the drawing are taken as the target.'] })
 }
+
+const flat = 'all nodes have the same'
 
 /** Why these heights are no target, as a clause; null: they are one. */
 function whyNot(plan: Plan, heights: Float64Array): string | null {
@@ -53,7 +56,7 @@ function whyNot(plan: Plan, heights: Float64Array): string | null {
   }
   if (known.length < leastShare * plan.nodeCount) return `only ${known.length} of ${plan.nodeCount} nodes have one`
   const range_mm = (high - low) * conversion(plan.unit, 'mm')
-  if (range_mm <= leastRange_mm) return range_mm === 0 ? 'all nodes have the same' : `they differ by ${range_mm.toPrecision(2)} mm only`
+  if (range_mm <= leastRange_mm) return range_mm === 0 ? flat : `they differ by ${range_mm.toPrecision(2)} mm only`
   if (high - low <= leastRangeOfSpan * plan.frame.span) return `they differ by ${range_mm.toPrecision(3)} mm, less than a thousandth of the span`
   return null
 }
