@@ -11,9 +11,14 @@ await build({
   configFile: false,
   root: join(here, '../..'),
   logLevel: 'error',
-  build: { ssr: join(here, 'solver.ts'), outDir, emptyOutDir: false, target: 'node20', rolldownOptions: { output: { entryFileNames: 'solver.mjs' } } },
+  build: {
+    ssr: join(here, 'solver.ts'), outDir, emptyOutDir: false, target: 'node20',
+    rolldownOptions: { output: { entryFileNames: 'solver.mjs' } },
+  },
   ssr: { noExternal: true },
 })
-const { status } = spawnSync(process.execPath, [join(outDir, 'solver.mjs'), ...process.argv.slice(2)], { stdio: 'inherit', env: { ...process.env, BENCH_FOLDER: here } })
+const { status } = spawnSync(process.execPath, [join(outDir, 'solver.mjs'), ...process.argv.slice(2)], {
+  stdio: 'inherit', env: { ...process.env, BENCH_FOLDER: here },
+})
 rmSync(outDir, { recursive: true })
 process.exit(status ?? 1)

@@ -86,8 +86,9 @@ function output<T>(command: string, args: readonly string[]): T | null {
 }
 
 const header = [
-  'date', 'commit', 'processor', 'plan', 'panels', 'unknowns', 'entries_of_L', 'operations', 'order_s', 'analyse_s', 'factor_s', 'solve_s', 'total_s',
-  'refactor_s', 'solve_8_columns_s', 'gflops', 'processor_s', 'cholmod_processor_s', 'to_cholmod', 'to_splu', 'residual', 'count_below_1e-13', 'megabytes',
+  'date', 'commit', 'processor', 'plan', 'panels', 'unknowns', 'entries_of_L', 'operations',
+  'order_s', 'analyse_s', 'factor_s', 'solve_s', 'total_s', 'refactor_s', 'solve_8_columns_s', 'gflops',
+  'processor_s', 'cholmod_processor_s', 'to_cholmod', 'to_splu', 'residual', 'count_below_1e-13', 'megabytes',
 ]
 
 function compare(sizes: readonly number[], runs: number, here: string, keep: boolean): void {
@@ -116,8 +117,10 @@ function compare(sizes: readonly number[], runs: number, here: string, keep: boo
       const processor = median(own.map((r) => r.processor))
       const other = theirs.length > 0 ? median(theirs.map((t) => t[3]!)) : null
       const row = [
-        new Date().toISOString().slice(0, 10), commit, (cpus()[0]?.model ?? 'unknown').replaceAll(',', ' '), kind, panels, first.unknowns, first.entries, first.operations.toExponential(3),
-        ...wall.map((s) => s.toFixed(3)), total.toFixed(3), median(own.map((r) => r.refactor)).toFixed(3), median(own.map((r) => r.eight)).toFixed(3),
+        new Date().toISOString().slice(0, 10), commit, (cpus()[0]?.model ?? 'unknown').replaceAll(',', ' '),
+        kind, panels, first.unknowns, first.entries, first.operations.toExponential(3),
+        ...wall.map((s) => s.toFixed(3)), total.toFixed(3),
+        median(own.map((r) => r.refactor)).toFixed(3), median(own.map((r) => r.eight)).toFixed(3),
         (first.operations / wall[2]! / 1e9).toFixed(2), processor.toFixed(3), other?.toFixed(3) ?? 'missing',
         other === null ? 'missing' : (processor / other).toFixed(2), splu === null ? 'missing' : (processor / splu[2]!).toFixed(2),
         first.residual.toExponential(1), first.lifts, Math.round(median(own.map((r) => r.megabytes))),

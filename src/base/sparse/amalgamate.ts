@@ -17,7 +17,11 @@ export interface Fronts {
   readonly placeOfRank: Int32Array
 }
 
-/** Nanoseconds, fitted on fronts of 20 to 60 rows; only their ratios matter. */
+/**
+ * Nanoseconds; only their ratios matter. A number of L is dear because its memory is new: at 0.5 instead of 6 there are 13,800
+ * fronts instead of 15,800 on 100,000 cells, and 2 percent more numbers, for no gain in time; without any merging 26,000 and 3
+ * percent fewer.
+ */
 const perFront = 1500
 const perOperation = 0.15
 const perEntryOfL = 6

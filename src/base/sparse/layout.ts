@@ -39,7 +39,7 @@ export function layout({ fronts, parent, first, boundaryStart }: Fronts): Layout
  * its children's are on top of the other stack, so its own is made in place while theirs are read, and none is ever moved.
  * (One stack needs a copy of every complement: 6e7 numbers on 100,000 panels.)
  */
-function schurPlaces(fronts: number, parent: Int32Array, boundaryStart: Int32Array, begin: number): { schur: Int32Array; storeSize: number } {
+function schurPlaces(fronts: number, parent: Int32Array, boundaryStart: Int32Array, begin: number): Pick<Layout, 'schur' | 'storeSize'> {
   const odd = new Uint8Array(fronts)
   for (let t = fronts - 1; t >= 0; t--) odd[t] = (parent[t] as number) < 0 ? 0 : 1 - (odd[parent[t] as number] as number)
   const schur = new Int32Array(fronts)

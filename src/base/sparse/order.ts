@@ -111,7 +111,9 @@ function close(sorted: Int32Array, from: number, to: number, at: number, label: 
 }
 
 /** Moves the unknowns of [a, b) labelled `left` to the front, those labelled left + 1 to `spare`, and ranks the others. */
-function split(sorted: Int32Array, a: number, b: number, label: Int32Array, left: number, rank: Int32Array, next: number, spare: Int32Array): void {
+function split(
+  sorted: Int32Array, a: number, b: number, label: Int32Array, left: number, rank: Int32Array, next: number, spare: Int32Array,
+): void {
   let l = a
   let r = 0
   for (let k = a; k < b; k++) {
@@ -123,7 +125,8 @@ function split(sorted: Int32Array, a: number, b: number, label: Int32Array, left
   }
 }
 
-function backwards(preorder: readonly number[], own: readonly number[], parentOf: readonly number[]): { first: Int32Array; parent: Int32Array } {
+/** The tree in the order of ranks: the preorder read backwards. */
+function backwards(preorder: readonly number[], own: readonly number[], parentOf: readonly number[]): Pick<Ordering, 'first' | 'parent'> {
   const pieces = preorder.length
   const number = new Int32Array(pieces)
   for (let k = 0; k < pieces; k++) number[preorder[k] as number] = pieces - 1 - k

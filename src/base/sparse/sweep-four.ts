@@ -26,7 +26,8 @@ export function forwardFour({ analysis, store: { data, update }, pivot, pivotAt 
       const y2 = (data[c + 8] as number) - (data[corner + 2] as number) * y0 - (data[corner + 6] as number) * y1
       data[c + 4] = y1
       data[c + 8] = y2
-      data[c + 12] = (data[c + 12] as number) - (data[corner + 3] as number) * y0 - (data[corner + 7] as number) * y1 - (data[corner + 11] as number) * y2
+      data[c + 12] = (data[c + 12] as number) - (data[corner + 3] as number) * y0 - (data[corner + 7] as number) * y1
+        - (data[corner + 11] as number) * y2
     }
   }
   const from = boundaryStart[t] as number
@@ -71,7 +72,8 @@ export function backwardFour({ analysis, store: { data, mirror } }: Factor, x: F
       const y1 = (data[c + 4] as number) - (data[corner + 6] as number) * y2 - (data[corner + 7] as number) * y3
       data[c + 8] = y2
       data[c + 4] = y1
-      data[c] = (data[c] as number) - (data[corner + 1] as number) * y1 - (data[corner + 2] as number) * y2 - (data[corner + 3] as number) * y3
+      data[c] = (data[c] as number) - (data[corner + 1] as number) * y1 - (data[corner + 2] as number) * y2
+        - (data[corner + 3] as number) * y3
     }
     mirror(own, at, y, s)
   }

@@ -119,8 +119,11 @@ function backwardPivots(data: Float64Array, l: number, y: Float64Array, p: numbe
 }
 
 /** y[k] <- y[k] - sum of the four rows' entries in column k times their x, k < count. */
-function subtractRows(data: Float64Array, at: number, y: Float64Array, count: number, x0: number, x1: number, x2: number, x3: number): void {
+function subtractRows(
+  data: Float64Array, at: number, y: Float64Array, count: number, x0: number, x1: number, x2: number, x3: number,
+): void {
   for (let k = 0; k < count; k++, at += 4) {
-    y[k] = (y[k] as number) - ((data[at] as number) * x0 + (data[at + 1] as number) * x1 + (data[at + 2] as number) * x2 + (data[at + 3] as number) * x3)
+    const sum = (data[at] as number) * x0 + (data[at + 1] as number) * x1 + (data[at + 2] as number) * x2 + (data[at + 3] as number) * x3
+    y[k] = (y[k] as number) - sum
   }
 }

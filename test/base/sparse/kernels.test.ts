@@ -12,7 +12,8 @@ const filled = (binary: boolean): Store => {
 }
 
 describe('update', () => {
-  for (const [depth, count, keep, bStep, growth] of [[4, 1, 1, 0, 0], [8, 5, 0, 0, 16], [64, 12, 1, 0, 16], [20, 9, 1, 80, 0], [12, 0, 1, 0, 0]] as const) {
+  const cases = [[4, 1, 1, 0, 0], [8, 5, 0, 0, 16], [64, 12, 1, 0, 16], [20, 9, 1, 80, 0], [12, 0, 1, 0, 0]] as const
+  for (const [depth, count, keep, bStep, growth] of cases) {
     test(`depth ${depth}, ${count} blocks, keep ${keep}`, () => {
       const [a, b, c] = [16, 12_000, 14_000]
       const [aStep, cStep] = [4 * depth, 32]
@@ -48,7 +49,8 @@ test('mirror', () => {
   for (let n = 0; n < 16 * count; n += 16) {
     for (let j = 0; j < 4; j++) {
       for (let i = 0; i < 4; i++) {
-        for (let k = 0; k < 4; k++) expected[c + n + 4 * j + i] = expected[c + n + 4 * j + i]! - expected[a + 4 * k + i]! * expected[b + n + 4 * j + k]!
+        const to = c + n + 4 * j + i
+        for (let k = 0; k < 4; k++) expected[to] = expected[to]! - expected[a + 4 * k + i]! * expected[b + n + 4 * j + k]!
       }
     }
   }

@@ -31,7 +31,9 @@ export function bricks(nx: number, ny: number, jitter = 0.1, seed = 1): TestPlan
   const next = random(seed)
   const width = 2 * nx + 2
   const points: [number, number][] = []
-  for (let j = 0; j <= ny; j++) for (let i = 0; i < width; i++) points.push([i + jitter * (2 * next() - 1), 1.7 * j + ((i + j) % 2) * 0.5 + jitter * (2 * next() - 1)])
+  for (let j = 0; j <= ny; j++) {
+    for (let i = 0; i < width; i++) points.push([i + jitter * (2 * next() - 1), 1.7 * j + ((i + j) % 2) * 0.5 + jitter * (2 * next() - 1)])
+  }
   const faces: number[][] = []
   for (let j = 0; j < ny; j++) {
     for (let k = 0; k < nx; k++) {
@@ -64,7 +66,8 @@ export function flatnessForm(plan: TestPlan, shift: number, { pattern, position 
     const k = face.length
     const mean = [0, 1].map((axis) => face.reduce((sum, i) => sum + coordinates[2 * i + axis]!, 0) / k)
     const basis: number[][] = []
-    const raw = [Array.from(face, () => 1), ...[0, 1].map((axis) => Array.from(face, (i) => (coordinates[2 * i + axis]! - mean[axis]!) / span))]
+    const centred = [0, 1].map((axis) => Array.from(face, (i) => (coordinates[2 * i + axis]! - mean[axis]!) / span))
+    const raw = [Array.from(face, () => 1), ...centred]
     for (const column of raw) {
       let v = column
       const before = Math.hypot(...v)
