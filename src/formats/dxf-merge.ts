@@ -5,7 +5,7 @@
  * outside of a group, they were not meant so (some programs hide every edge of a surface), and the faces stay as they are.
  */
 import type { Loops } from '../plan/drawing.ts'
-import { Integers } from './growing.ts'
+import { Integers } from '../base/growing.ts'
 
 /** Corners of a face, as numbers of places, and of the points they came from. */
 interface Face {

@@ -7,7 +7,7 @@
  */
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
-import { Integers } from './growing.ts'
+import { Integers } from '../base/growing.ts'
 import { decimalIn } from './text-number.ts'
 import { printable, quoted } from './text-quote.ts'
 

@@ -5,7 +5,7 @@
 import type { Unit } from '../base/length.ts'
 import type { LeftOut, Repair } from '../base/repair.ts'
 import type { Drawing, Loops } from '../plan/drawing.ts'
-import { Doubles, Integers } from './growing.ts'
+import { Doubles, Integers } from '../base/growing.ts'
 
 /** Closed polygons being collected; see Loops. */
 class LoopList {

@@ -5,7 +5,7 @@
  */
 import { closesWithin } from '../base/geometry/tolerance.ts'
 import { interiorPoints, mostChords, type Curve } from './chords.ts'
-import { Doubles, Integers } from './growing.ts'
+import { Doubles, Integers } from '../base/growing.ts'
 import { ellipticArc, isStraight, mappedArc } from './svg-curves.ts'
 import type { Pen } from './svg-path.ts'
 import { identity, type Affine } from './svg-transform.ts'

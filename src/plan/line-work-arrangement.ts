@@ -6,7 +6,7 @@
  * The idea of snapping until nothing changes is that of iterated snap rounding (D. Halperin, E. Packer, Comput. Geom. 23,
  * 2002); nodes here keep the coordinates that were drawn and are not moved to pixel centres.
  */
-import { GrowingInts } from '../base/geometry/growing.ts'
+import { Integers } from '../base/growing.ts'
 import { NearPoints } from '../base/geometry/near-points.ts'
 import { crossingPoint } from '../base/geometry/segment-crossing.ts'
 import { fail, ok, type Result } from '../base/result.ts'
@@ -97,8 +97,8 @@ function firstChains(half: Int32Array): Chains {
 }
 
 function noteTouches(cuts: Cuts, gapOf: Map<number, number>, given: number): void {
-  const node = cuts.node.values()
-  const gap = cuts.gap.values()
+  const node = cuts.node.view()
+  const gap = cuts.gap.view()
   for (let k = 0; k < node.length; k += 1) {
     if (node[k] < given) gapOf.set(node[k], Math.max(gap[k], gapOf.get(node[k]) ?? 0))
   }
@@ -119,9 +119,9 @@ function moveLooseEnds(lines: LineWork, touches: Cuts, moved: Uint8Array, sameAs
     origin[a[e]] = b[e]
     origin[b[e]] = a[e]
   }
-  const edge = touches.edge.values()
-  const node = touches.node.values()
-  const gap = touches.gap.values()
+  const edge = touches.edge.view()
+  const node = touches.node.view()
+  const gap = touches.gap.view()
   const nearest = new Map<number, number>()
   for (let k = 0; k < node.length; k += 1) {
     if (ends[node[k]] !== 1 || gap[k] <= rounding) continue
@@ -156,19 +156,19 @@ function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains, sameAs:
   const same = (node: number): number => (node < sameAs.length ? sameAs[node] : node)
   const { x, y, a, b } = lines
   const cutStart = new Int32Array(a.length + 1)
-  for (const cuts of all) for (const edge of cuts.edge.values()) cutStart[edge + 1] += 1
+  for (const cuts of all) for (const edge of cuts.edge.view()) cutStart[edge + 1] += 1
   for (let e = 0; e < a.length; e += 1) cutStart[e + 1] += cutStart[e]
   const cutNode = new Int32Array(cutStart[a.length])
   const fill = cutStart.slice(0, a.length)
   for (const cuts of all) {
-    const edge = cuts.edge.values()
-    const node = cuts.node.values()
+    const edge = cuts.edge.view()
+    const node = cuts.node.view()
     for (let k = 0; k < edge.length; k += 1) cutNode[fill[edge[k]]++] = node[k]
   }
 
   const pieceStart = new Int32Array(a.length + 1)
-  const pieceA = new GrowingInts(a.length + cutNode.length)
-  const pieceB = new GrowingInts(a.length + cutNode.length)
+  const pieceA = new Integers(a.length + cutNode.length)
+  const pieceB = new Integers(a.length + cutNode.length)
   for (let e = 0; e < a.length; e += 1) {
     let last = a[e]
     if (cutStart[e + 1] > cutStart[e]) {
@@ -188,10 +188,10 @@ function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains, sameAs:
     pieceStart[e + 1] = pieceA.length
   }
 
-  const distinct = distinctEdges(pieceA.values(), pieceB.values())
+  const distinct = distinctEdges(pieceA.view(), pieceB.view())
   lines.a = distinct.a
   lines.b = distinct.b
-  const chain = new GrowingInts(chains.chain.length + pieceA.length)
+  const chain = new Integers(chains.chain.length + pieceA.length)
   const chainStart = new Int32Array(chains.chainStart.length)
   for (let i = 0; i + 1 < chainStart.length; i += 1) {
     for (let k = chains.chainStart[i]; k < chains.chainStart[i + 1]; k += 1) {
@@ -205,5 +205,5 @@ function cutEdges(lines: LineWork, all: readonly Cuts[], chains: Chains, sameAs:
     }
     chainStart[i + 1] = chain.length
   }
-  return { chainStart, chain: chain.values() }
+  return { chainStart, chain: chain.view() }
 }

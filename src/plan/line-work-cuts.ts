@@ -3,7 +3,7 @@
  * never all against all.
  */
 import { cellsSpanned, bin, densityGrid, pointsByCell, segmentsByCell, type Cells, type Grid } from '../base/geometry/grid-index.ts'
-import { GrowingFloats, GrowingInts } from '../base/geometry/growing.ts'
+import { Doubles, Integers } from '../base/growing.ts'
 import { NearPoints } from '../base/geometry/near-points.ts'
 import { crossProperly, crossingPoint } from '../base/geometry/segment-crossing.ts'
 import { mostCrossings, mostPairs, mostTouches, splitSine } from '../base/geometry/tolerance.ts'
@@ -12,10 +12,10 @@ import type { Steps } from '../base/steps.ts'
 
 /** Cut k: edge[k] passes node[k]. */
 export class Cuts {
-  readonly edge = new GrowingInts()
-  readonly node = new GrowingInts()
+  readonly edge = new Integers()
+  readonly node = new Integers()
   /** How far the node lay from the edge. */
-  readonly gap = new GrowingFloats()
+  readonly gap = new Doubles()
 
   add(edge: number, node: number, gap: number): void {
     this.edge.push(edge)

@@ -2,6 +2,7 @@
  * A plan from its panels: panels as loops of points, every shared edge matching node for node, become half-edges, rim
  * loops, voids and parts. What the panels do in the plane (overlap, cross) is judged before, where the drawing is known.
  */
+import { disjointSets } from '../base/disjoint-sets.ts'
 import type { Unit } from '../base/length.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
 import { panelName } from './names.ts'
@@ -278,23 +279,10 @@ function rimLoops(halves: HalfEdges, work: Float64Array): Pick<Plan, 'rimStart' 
   return { rimStart: Int32Array.from(starts), rimHalf, rimIsVoid: Uint8Array.from(isVoid) }
 }
 
-/** Parts: panels that hang together across joints (union-find with path halving, Tarjan 1975). */
+/** Parts: panels that hang together across joints, numbered by their first panel. */
 function parts(panelCount: number, jointCount: number, panelOf: Int32Array): { partOf: Int32Array; partCount: number } {
-  const parent = Int32Array.from({ length: panelCount }, (_, p) => p)
-  const root = (p: number): number => {
-    while (parent[p] !== p) {
-      parent[p] = parent[parent[p]]
-      p = parent[p]
-    }
-    return p
-  }
-  for (let joint = 0; joint < jointCount; joint += 1) {
-    const a = root(panelOf[2 * joint]), b = root(panelOf[2 * joint + 1])
-    // The lower index stays root, so parts are numbered by their first panel.
-    if (a !== b) parent[Math.max(a, b)] = Math.min(a, b)
-  }
-  const partOf = new Int32Array(panelCount)
-  let partCount = 0
-  for (let p = 0; p < panelCount; p += 1) partOf[p] = root(p) === p ? partCount++ : partOf[root(p)]
-  return { partOf, partCount }
+  const sets = disjointSets(panelCount)
+  for (let joint = 0; joint < jointCount; joint += 1) sets.join(panelOf[2 * joint], panelOf[2 * joint + 1])
+  const { setOf, setCount } = sets.numbered()
+  return { partOf: setOf, partCount: setCount }
 }

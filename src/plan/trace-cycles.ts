@@ -1,5 +1,5 @@
 /** The boundary cycles of a planar graph: counter-clockwise ones bound a region from outside, clockwise ones go round a component. */
-import { GrowingInts } from '../base/geometry/growing.ts'
+import { Integers } from '../base/growing.ts'
 import { signedArea } from '../base/geometry/polygon-area.ts'
 import type { Graph } from './trace-graph.ts'
 
@@ -19,7 +19,7 @@ export function cyclesOf(graph: Graph): Cycles {
   const { next, origin, alive } = graph
   const of = new Int32Array(next.length).fill(-1)
   const half = new Int32Array(next.length)
-  const start = new GrowingInts(1 + (next.length >> 3))
+  const start = new Integers(1 + (next.length >> 3))
   start.push(0)
   let filled = 0
   for (let h = 0; h < next.length; h += 1) {
@@ -33,7 +33,7 @@ export function cyclesOf(graph: Graph): Cycles {
     } while (at !== h)
     start.push(filled)
   }
-  const starts = start.values()
+  const starts = start.view()
   const node = new Int32Array(filled)
   for (let k = 0; k < filled; k += 1) node[k] = origin[half[k]]
   const area = new Float64Array(starts.length - 1)

@@ -2,6 +2,7 @@
  * Which region each figure of a drawing lies in, when its lines are joined to nothing around it: from the leftmost node of
  * every connected component the first line to the left is looked up in the grid.
  */
+import { disjointSets } from '../base/disjoint-sets.ts'
 import { bin } from '../base/geometry/grid-index.ts'
 import { orientation } from '../base/geometry/orientation.ts'
 import type { LineIndex } from './line-work-cuts.ts'
@@ -60,24 +61,11 @@ export function isOneFigure(graph: Graph): boolean {
   return true
 }
 
-/** A number per node, equal where lines connect them (union-find with path halving, Tarjan 1975). */
+/** A number per node, equal where lines connect them. */
 function components({ x, origin, alive, edgeCount }: Graph): Int32Array {
-  const parent = new Int32Array(x.length)
-  for (let node = 0; node < parent.length; node += 1) parent[node] = node
-  const root = (node: number): number => {
-    while (parent[node] !== node) {
-      parent[node] = parent[parent[node]]
-      node = parent[node]
-    }
-    return node
-  }
-  for (let e = 0; e < edgeCount; e += 1) {
-    if (alive[e] === 0) continue
-    const a = root(origin[2 * e]), b = root(origin[2 * e + 1])
-    if (a !== b) parent[Math.max(a, b)] = Math.min(a, b)
-  }
-  for (let node = 0; node < parent.length; node += 1) parent[node] = root(node)
-  return parent
+  const sets = disjointSets(x.length)
+  for (let e = 0; e < edgeCount; e += 1) if (alive[e] !== 0) sets.join(origin[2 * e], origin[2 * e + 1])
+  return Int32Array.from({ length: x.length }, (_, node) => sets.root(node))
 }
 
 /** The half-edge, with the node on its left, that a ray from the node to the left meets first; -1 when it meets none. */

@@ -3,7 +3,7 @@
  * coordinates. A plain uniform grid was dropped: one stray line at the origin of a survey drawing put the whole plan into
  * a single cell. A cell is row * columns + column.
  */
-import { GrowingInts } from './growing.ts'
+import { Integers } from '../growing.ts'
 
 export interface Grid {
   /** Inner borders, ascending: column c lies between border c - 1 and border c; a value on a border belongs above it. */
@@ -70,8 +70,8 @@ export function segmentsByCell(grid: Grid, x: Float64Array, y: Float64Array, a: 
   const { columnBorder, rowBorder, columns } = grid
   const column = bins(columnBorder, x)
   const row = bins(rowBorder, y)
-  const cell = new GrowingInts(4 * a.length)
-  const item = new GrowingInts(4 * a.length)
+  const cell = new Integers(4 * a.length)
+  const item = new Integers(4 * a.length)
   for (let i = 0; i < a.length; i += 1) {
     const forward = x[a[i]] <= x[b[i]]
     const p = forward ? a[i] : b[i]
@@ -103,7 +103,7 @@ export function segmentsByCell(grid: Grid, x: Float64Array, y: Float64Array, a: 
       }
     }
   }
-  return byCell(cell.values(), item.values(), columns * grid.rows)
+  return byCell(cell.view(), item.view(), columns * grid.rows)
 }
 
 function bins(border: Float64Array, values: Float64Array): Int32Array {

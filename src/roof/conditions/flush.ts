@@ -1,9 +1,10 @@
 /** Flush: the two panels of a joint in one plane. Panels that flush joints hang together share one plane. */
+import { disjointSets } from '../../base/disjoint-sets.ts'
 import { ok, type Result } from '../../base/result.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { FlushCondition } from '../../plan/project/condition.ts'
 import { onePlane } from './anchors.ts'
-import { gathered, groups } from './groups.ts'
+import { gathered } from './gathered.ts'
 import { jointsAt, nodesOfPanels } from './places.ts'
 import type { Emit } from './rows.ts'
 import type { Site } from './site.ts'
@@ -19,7 +20,7 @@ export function flushRows(site: Site, condition: FlushCondition, emit: Emit): Re
 
 /** The panels on both sides of the joints, by what hangs together across them. */
 export function flushPanels(plan: Plan, joints: Int32Array): number[][] {
-  const all = groups(plan.panelCount)
+  const all = disjointSets(plan.panelCount)
   const touched = new Set<number>()
   for (const j of joints) {
     const [left, right] = [plan.panelOf[2 * j], plan.panelOf[2 * j + 1]]

@@ -1,8 +1,9 @@
 /** Plane: each panel at a given pitch and bearing. */
+import { disjointSets } from '../../base/disjoint-sets.ts'
 import { ok, type Result } from '../../base/result.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { PlaneCondition } from '../../plan/project/condition.ts'
-import { gathered, groups } from './groups.ts'
+import { gathered } from './gathered.ts'
 import { nodesOfPanels, panelsAt } from './places.ts'
 import type { Emit } from './rows.ts'
 import type { Site } from './site.ts'
@@ -39,7 +40,7 @@ export function planeRows(site: Site, condition: PlaneCondition, emit: Emit): Re
 
 /** The panels by what hangs together through shared nodes. */
 export function touchingPanels(plan: Plan, panels: Int32Array): number[][] {
-  const all = groups(plan.panelCount)
+  const all = disjointSets(plan.panelCount)
   const seen = new Int32Array(plan.nodeCount).fill(-1)
   for (const p of panels) {
     for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) {

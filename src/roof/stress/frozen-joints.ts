@@ -2,6 +2,7 @@
  * Frozen joints: joints whose stress is 0 in every roof there is. Two random lifts show them: a joint that folds in some
  * lift folds in almost every one, so a joint flat in both is frozen but for an event of probability zero.
  */
+import { disjointSets } from '../../base/disjoint-sets.ts'
 import { clashHeight, frozenShare } from '../../base/geometry/tolerance.ts'
 import { gaussians } from '../../base/random.ts'
 import type { Plan } from '../../plan/plan.ts'
@@ -51,21 +52,8 @@ function foldNoise(plan: Plan, heights: Float64Array): number {
  * by first panel, and how many there are; single panels included.
  */
 export function flatGroups(plan: Plan, frozen: Uint8Array): { groupOf: Int32Array; groupCount: number } {
-  const parent = Int32Array.from({ length: plan.panelCount }, (_, p) => p)
-  const root = (p: number): number => {
-    while (parent[p] !== p) {
-      parent[p] = parent[parent[p]]
-      p = parent[p]
-    }
-    return p
-  }
-  for (let j = 0; j < plan.jointCount; j += 1) {
-    if (frozen[j] === 0) continue
-    const a = root(plan.panelOf[2 * j]), b = root(plan.panelOf[2 * j + 1])
-    if (a !== b) parent[Math.max(a, b)] = Math.min(a, b)
-  }
-  const groupOf = new Int32Array(plan.panelCount)
-  let groupCount = 0
-  for (let p = 0; p < plan.panelCount; p += 1) groupOf[p] = root(p) === p ? groupCount++ : groupOf[root(p)]
+  const sets = disjointSets(plan.panelCount)
+  for (let j = 0; j < plan.jointCount; j += 1) if (frozen[j] === 1) sets.join(plan.panelOf[2 * j], plan.panelOf[2 * j + 1])
+  const { setOf: groupOf, setCount: groupCount } = sets.numbered()
   return { groupOf, groupCount }
 }
