@@ -1,10 +1,7 @@
 /** The job "adjust": the nearest plan that lifts as asked, its roof, and what moved; or why there is none. */
 import { conversion } from '../base/length.ts'
-import { fail, ok, type Result } from '../base/result.ts'
+import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
-import { indexOfName } from '../plan/names.ts'
-import type { Plan } from '../plan/plan.ts'
-import { parsedLength } from '../plan/project/wishes.ts'
 import type { Options } from '../plan/project/options.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import type { AdjustFacts } from '../roof/answer/adjust-facts.ts'
@@ -14,13 +11,12 @@ import { movedNodes, type Moved, type MoveOutcome } from '../roof/cures/move-nod
 import { flatness } from '../roof/raise/flatness.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { answerTo, openQuestion, questionOf, type Checked } from './check.ts'
+import { keepsOf } from './keeps.ts'
 import { withLevels } from './levels.ts'
 import { reading } from './reading.ts'
 import type { Request } from './request.ts'
+import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
 import { targetOf } from './target.ts'
-
-/** A plan whose nodes move by less lifts within its tolerance: what a drawing is exact to. Our own choice. */
-export const defaultPlanTolerance_mm = 1
 
 export interface AdjustAnswer {
   readonly before: Checked
@@ -69,30 +65,6 @@ export function* moveOutcome(
   if (!rows.ok) return rows
   const wish = questionOf(plan, wishes, rows.value, target.value.heights)
   return ok(yield* movedNodes({ plan, rows: rows.value, conditions: wishes.conditions, under, areas: nodeAreas(plan), wish, keeps }))
-}
-
-/** What the plan keeps, in spans. Fails where a node is not on the plan. */
-export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {
-  const fixed: number[] = []
-  for (const name of keeps.stay) {
-    const node = indexOfName(name, 'N')
-    if (node < 0 || node >= plan.nodeCount) return fail('no-such-node', `the plan has no node ${name}`, { field: '--stay' }, `its nodes are N1 to N${plan.nodeCount}`)
-    fixed.push(node)
-  }
-  const { span } = plan.frame
-  const lengths: (number | null)[] = []
-  for (const [option, typed] of [['--largest-shift', keeps.largestShift], ['--least-edge', keeps.leastEdge]] as const) {
-    const length = typed === null ? ok(null) : parsedLength(typed, option, plan.unit)
-    if (!length.ok) return length
-    if (length.value !== null && !(length.value > 0)) return fail('out-of-range', 'this length must be more than 0', { field: option })
-    lengths.push(length.value === null ? null : length.value / span)
-  }
-  const corner = keeps.leastCorner_deg
-  if (corner !== null && !(corner > 0 && corner < 60)) return fail('out-of-range', `a least corner is between 0 and 60 degrees, not ${corner}`, { field: '--least-corner' })
-  return ok({
-    rim: keeps.rimNodes, fixed, straight: !keeps.bend, largestShift: lengths[0], leastEdge: lengths[1],
-    leastAngle: corner === null ? null : (corner * Math.PI) / 180,
-  })
 }
 
 function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found: MoveOutcome | null): AdjustAnswer {

@@ -45,12 +45,18 @@ export interface AdjustQuestion {
   readonly keeps: PlanKeeps
   /** Relative change of the plan at which the iteration ends; default `settled`. */
   readonly settle?: number
+  /**
+   * In spans: end as soon as a step shows that some node has to move several times as far. The first step tells the size of
+   * what is to come within a fifth (measured), so a plan that is out of tolerance costs one factor. null: go on.
+   */
+  readonly farBeyond?: number | null
 }
 
 export interface Adjustment {
   /** Positions and heights, working measure. */
   readonly state: State
-  readonly ended: 'settled' | 'stuck' | 'steps'
+  /** stuck: no step helps; slow: flat or not, it crept on; far: see `farBeyond`. */
+  readonly ended: 'settled' | 'stuck' | 'slow' | 'far'
   readonly iterations: number
   /** Largest |N^T z| of a panel, in spans. */
   readonly unflat: number
@@ -64,7 +70,12 @@ export interface Adjustment {
 /** Relative change of the shifts at which they count as settled; their sum of squares is then right to about its square. */
 export const settled = 1e-3
 
-const mostSteps = 80
+const mostSteps = 60
+/** What creeps is ended: the merit has to fall by this share in so many steps. */
+const leastGain = 0.02
+const patience = 8
+/** So many times `farBeyond` is out of reach. */
+const outOfReach = 3
 const mostHalvings = 12
 /** Rounds of the active set within one step. */
 const mostRounds = 5
@@ -82,8 +93,8 @@ export function* adjusted(question: AdjustQuestion): Steps<Adjustment> {
   const anchor: State = { work: plan.work, heights: target }
   const rise = question.riseWeight
   const run = new Run(plan, anchor, rise, mobile, all, fixedBlocks, shapeWeight, areas)
-  const ended = yield* run.settle(question.settle ?? settled)
-  yield* run.polish()
+  const ended = yield* run.settle(question.settle ?? settled, question.farBeyond ?? null)
+  if (ended !== 'far') yield* run.polish()
   return {
     state: run.state, ended, iterations: run.iterations, unflat: unflatness(plan, run.state.work, run.state.heights).largest,
     fixedCount: mobile.fixedCount, slidingCount: mobile.slidingCount, straightCount: passes.length / 3,
@@ -128,11 +139,11 @@ class Run {
    * Edges and shifts are bounded all the way; corners only once the plan is nearly liftable. On the way to it a corner at a
    * short edge turns this way and that, and holding it then sets off its neighbours (20,000 bounds on 2,500 cells, no step).
    */
-  *settle(share: number): Steps<Adjustment['ended']> {
-    const ended = yield* this.walk(share)
+  *settle(share: number, farBeyond: number | null): Steps<Adjustment['ended']> {
+    const ended = yield* this.walk(share, farBeyond)
     if (ended !== 'settled' || !this.turnsCorners()) return ended
     this.first = 0
-    return yield* this.walk(share)
+    return yield* this.walk(share, farBeyond)
   }
 
   private turnsCorners(): boolean {
@@ -140,7 +151,9 @@ class Run {
     return false
   }
 
-  private *walk(share: number): Steps<Adjustment['ended']> {
+  private *walk(share: number, farBeyond: number | null): Steps<Adjustment['ended']> {
+    let merits: number[] = []
+    let penalty = this.penalty
     for (let step = 0; step < mostSteps; step += 1) {
       yield { stage: 'Adjusting', done: 1 - 0.8 ** step }
       this.iterations += 1
@@ -151,9 +164,16 @@ class Run {
       const change = rootMeanSquare(difference(taken.work, this.state.work))
       const lift = rootMeanSquare(difference(taken.heights, this.state.heights))
       this.state = taken
+      if (farBeyond !== null && largest(difference(taken.work, this.anchor.work)) > outOfReach * farBeyond) return 'far'
       if (change <= share * size + flatEnough && lift <= share * size + flatEnough) return 'settled'
+      // Merits of different penalties do not compare.
+      if (this.penalty > penalty) merits = []
+      penalty = this.penalty
+      merits.push(this.merit(taken))
+      const now = merits.length - 1
+      if (now >= patience && merits[now] > (1 - leastGain) * merits[now - patience]) return 'slow'
     }
-    return 'steps'
+    return 'slow'
   }
 
   /** Steps on the conditions alone: the last digits of flatness, without moving along the roof of choice. */
@@ -306,15 +326,19 @@ function moved(state: State, move: LeastMove, share: number): State {
 
 /** No smaller than the 2-norm of any panel's multipliers: its k - 3 rows have k entries each. */
 function largestMultiplier(multipliers: Float64Array, start: Int32Array): number {
-  let largest = 0
+  let most = 0
   for (let r = 0; r < multipliers.length; r += 1) {
-    largest = Math.max(largest, Math.abs(multipliers[r]) * Math.sqrt(Math.max(1, start[r + 1] - start[r] - 3)))
+    most = Math.max(most, Math.abs(multipliers[r]) * Math.sqrt(Math.max(1, start[r + 1] - start[r] - 3)))
   }
-  return largest
+  return most
 }
 
 function difference(a: Float64Array, b: Float64Array): Float64Array {
   return a.map((value, i) => value - b[i])
+}
+
+function largest(values: Float64Array): number {
+  return values.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
 }
 
 function rootMeanSquare(values: Float64Array): number {

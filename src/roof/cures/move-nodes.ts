@@ -24,6 +24,8 @@ export interface MoveQuestion {
   readonly areas: Float64Array
   readonly wish: Pick<RaiseQuestion, 'shape' | 'target' | 'rise' | 'rule' | 'pitched' | 'rows' | 'names' | 'within'>
   readonly keeps: PlanKeeps
+  /** In spans: whether any node would have to move much further is all that is asked; null: the plan itself is. */
+  readonly farBeyond?: number | null
 }
 
 export type MoveOutcome =
@@ -48,8 +50,13 @@ export const heightShare = 0.05
 /** A near roof that keeps less than this of the wish (cosine of the angle between them) is another roof. */
 const keptShape = 0.8
 
-/** w: heights may give way ten times as easily as plan positions, in squares; raised a hundredfold where that loses the shape. */
-const firstWeight = 0.1
+/**
+ * w, in squares: what a height costs against a shift. A target's heights give way before the plan does; a starting shape only
+ * says what kind of roof is meant (at 0.1 its heights drew the nodes of 10,000 cells 14 mm along, at 1e-4 less than 1 mm).
+ * Raised a hundredfold where the roof is lost.
+ */
+const targetWeight = 0.1
+const shapeOnlyWeight = 1e-4
 const mostTries = 3
 
 /** Panels have to be this flat, in spans. */
@@ -72,8 +79,9 @@ export function* movedNodes(question: MoveQuestion): Steps<MoveOutcome> {
   const keeps = { ...question.keeps, fixed: [...new Set([...question.keeps.fixed, ...placed])].sort((a, b) => a - b) }
   const range = spread(target)
   let last: MoveOutcome | null = null
-  for (let attempt = 0, shapeWeight = firstWeight; attempt < mostTries; attempt += 1, shapeWeight *= 100) {
-    const adjustment = yield* adjusted({ plan, target, riseWeight, elimination: under.space.elimination, areas, shapeWeight, keeps })
+  for (let attempt = 0, shapeWeight = wish.target === null ? shapeOnlyWeight : targetWeight; attempt < mostTries; attempt += 1, shapeWeight *= 100) {
+    const adjustment = yield* adjusted({ plan, target, riseWeight, elimination: under.space.elimination, areas, shapeWeight, keeps, farBeyond: question.farBeyond ?? null })
+    if (adjustment.ended === 'far') return failed('too-far', 'nodes would have to move further than the plan tolerance', 'adjust the plan')
     const outcome = outcomeOf(question, adjustment, target, range, placed.length)
     if (outcome.kind !== 'failed' || outcome.code !== 'another-roof') return outcome
     last = outcome
