@@ -25,8 +25,14 @@ describe.each(samples())('$name', ({ name, brief, options, expected }) => {
     const wishes = brief === null ? null : readFileSync(join(folder, briefName(name)), 'utf8')
     const { plan, stress, held, verdict, reasonKind, questions } = (await ask({ name, text, brief: wishes, options })).answer.summary
     const found = {
-      verdict, panels: plan.panels, voids: plan.voids, freedom: stress.freedom, count: stress.count, freedomLeft: stress.freedomLeft,
-      frozen: held.frozenJoints, reasonKind,
+      verdict,
+      panels: plan.panels,
+      voids: plan.voids,
+      freedom: stress.freedom,
+      count: stress.count,
+      freedomLeft: stress.freedomLeft,
+      frozen: held.frozenJoints,
+      reasonKind,
     }
     expect(found).toEqual(expected)
     expect(questions).toEqual([])

@@ -29,7 +29,11 @@ const kinds: readonly Kind[] = ['cells', 'loose quads', 'square quads', 'hexagon
 const sizes = [100, 1000, 5000, 20000] as const
 
 /** One size more for the conditions that leave the lowest near lifts, on the plans that have them. */
-const largest = { panels: 100_000, kinds: ['cells', 'loose quads'] as readonly Kind[], conditions: ['sides equal', 'long sides level', 'thirty joints flush', 'a tenth at 10 degrees'] }
+const largest = {
+  panels: 100_000,
+  kinds: ['cells', 'loose quads'] as readonly Kind[],
+  conditions: ['sides equal', 'long sides level', 'thirty joints flush', 'a tenth at 10 degrees'],
+}
 
 /** Above this many nodes the dense road takes too long. */
 const denseNodes = 400
@@ -38,10 +42,14 @@ function planOf(kind: Kind, panels: number): Plan {
   const rows = Math.round(Math.sqrt(panels / 1.5))
   const columns = Math.round(panels / rows)
   switch (kind) {
-    case 'cells': return cells(panels, 7)
-    case 'loose quads': return grid(columns, rows, { loose: 0.2, seed: 7 })
-    case 'square quads': return grid(columns, rows)
-    case 'hexagons': return honeycomb(columns, rows)
+    case 'cells':
+      return cells(panels, 7)
+    case 'loose quads':
+      return grid(columns, rows, { loose: 0.2, seed: 7 })
+    case 'square quads':
+      return grid(columns, rows)
+    case 'hexagons':
+      return honeycomb(columns, rows)
   }
 }
 
@@ -54,7 +62,13 @@ function conditionsOf(plan: Plan): Record<string, readonly Condition[]> {
   const rim = [...plan.rimPasses.keys()].filter((node) => plan.rimPasses[node]! > 0)
   const named = (nodes: readonly number[]): string[] => nodes.map((node) => `N${node + 1}`)
   const rimWhere = (test: (px: number, py: number) => boolean): number[] => rim.filter((node) => test(x[node]!, y[node]!))
-  const level = (name: string, nodes: readonly number[], height = 0): Condition => ({ kind: 'level', name, soft: null, at: { nodes: named(nodes) }, level: height })
+  const level = (name: string, nodes: readonly number[], height = 0): Condition => ({
+    kind: 'level',
+    name,
+    soft: null,
+    at: { nodes: named(nodes) },
+    level: height,
+  })
   const equal = (name: string, nodes: readonly number[]): Condition => ({ kind: 'equal', name, soft: null, at: { nodes: named(nodes) } })
   const straight = (name: string, from: Point, to: Point): Condition => ({ kind: 'straight', name, soft: null, at: { run: [from, to] } })
   const middle = Array.from({ length: plan.panelCount }, (_, p): Point => {
@@ -65,36 +79,104 @@ function conditionsOf(plan: Plan): Record<string, readonly Condition[]> {
     [...middle.keys()].filter((p) => test(...(middle[p]! as [number, number]))).map((p) => `P${p + 1}`)
   const within = (cx: number, cy: number, radius: number): string[] => panelsWhere((px, py) => Math.hypot(px - cx, py - cy) < radius)
   const coplanar = (name: string, panels: readonly string[]): Condition => ({ kind: 'coplanar', name, soft: null, at: { panels } })
-  const south = rimWhere((_, py) => py < bottom + 0.6 * bay), north = rimWhere((_, py) => py > top - 0.6 * bay)
-  const west = rimWhere((px) => px < left + 0.6 * bay), east = rimWhere((px) => px > right - 0.6 * bay)
+  const south = rimWhere((_, py) => py < bottom + 0.6 * bay),
+    north = rimWhere((_, py) => py > top - 0.6 * bay)
+  const west = rimWhere((px) => px < left + 0.6 * bay),
+    east = rimWhere((px) => px > right - 0.6 * bay)
   const next = random(3)
-  const patches = Array.from({ length: 20 }, (_, k) => coplanar(`patch ${k}`, within(left + width * next(), bottom + depth * next(), 1.5 * bay)))
-    .filter(({ at }) => 'panels' in at && at.panels.length > 1)
+  const patches = Array.from({ length: 20 }, (_, k) =>
+    coplanar(`patch ${k}`, within(left + width * next(), bottom + depth * next(), 1.5 * bay)),
+  ).filter(({ at }) => 'panels' in at && at.panels.length > 1)
   const joints = [...new Set(Array.from({ length: 30 }, () => `J${Math.floor(next() * plan.jointCount) + 1}`))]
   const sides: Condition[] = [
-    straight('south straight', [left, bottom], [right, bottom]), straight('north straight', [left, top], [right, top]),
-    straight('west straight', [left, bottom], [left, top]), straight('east straight', [right, bottom], [right, top]),
+    straight('south straight', [left, bottom], [right, bottom]),
+    straight('north straight', [left, top], [right, top]),
+    straight('west straight', [left, bottom], [left, top]),
+    straight('east straight', [right, bottom], [right, top]),
   ]
   return {
     'nothing held': [],
     'long sides level': [level('south', south), level('north', north)],
-    'half the rim level': [level('west half', rimWhere((px) => px < left + width / 2))],
+    'half the rim level': [
+      level(
+        'west half',
+        rimWhere((px) => px < left + width / 2),
+      ),
+    ],
     'whole rim level': [level('rim', rim)],
-    'sides equal': [equal('south', south), equal('north', north.filter((n) => !south.includes(n)))],
+    'sides equal': [
+      equal('south', south),
+      equal(
+        'north',
+        north.filter((n) => !south.includes(n)),
+      ),
+    ],
     'ends equal': [equal('west', west), equal('east', east)],
     'sides straight': sides,
-    'gutter falls': [{ kind: 'fall', name: 'south gutter', soft: null, at: { run: [[left, bottom], [right, bottom]] }, per_mille: 10, level: null }],
-    'disc of a tenth coplanar': [coplanar('disc', within(left + width / 2, bottom + depth / 2, Math.sqrt((0.1 * width * depth) / Math.PI)))],
-    'half coplanar': [coplanar('half', panelsWhere((px) => px < left + width / 2))],
-    'thin band coplanar': [coplanar('band', panelsWhere((_, py) => Math.abs(py - bottom - depth / 2) < 0.6 * bay))],
+    'gutter falls': [
+      {
+        kind: 'fall',
+        name: 'south gutter',
+        soft: null,
+        at: {
+          run: [
+            [left, bottom],
+            [right, bottom],
+          ],
+        },
+        per_mille: 10,
+        level: null,
+      },
+    ],
+    'disc of a tenth coplanar': [
+      coplanar('disc', within(left + width / 2, bottom + depth / 2, Math.sqrt((0.1 * width * depth) / Math.PI))),
+    ],
+    'half coplanar': [
+      coplanar(
+        'half',
+        panelsWhere((px) => px < left + width / 2),
+      ),
+    ],
+    'thin band coplanar': [
+      coplanar(
+        'band',
+        panelsWhere((_, py) => Math.abs(py - bottom - depth / 2) < 0.6 * bay),
+      ),
+    ],
     'twenty patches coplanar': patches,
     'thirty joints flush': [{ kind: 'flush', name: 'flush', soft: null, at: { joints } }],
-    'a tenth at 10 degrees': [{ kind: 'plane', name: 'pitch', soft: null, at: { panels: panelsWhere((px) => px < left + width / 10 + bay) }, pitch_deg: 10, bearing_deg: 180 }],
-    'mixed': [...sides, ...patches.slice(0, 8), equal('ends', [west[0]!, east[0]!, north[0]!])],
+    'a tenth at 10 degrees': [
+      {
+        kind: 'plane',
+        name: 'pitch',
+        soft: null,
+        at: { panels: panelsWhere((px) => px < left + width / 10 + bay) },
+        pitch_deg: 10,
+        bearing_deg: 180,
+      },
+    ],
+    mixed: [...sides, ...patches.slice(0, 8), equal('ends', [west[0]!, east[0]!, north[0]!])],
   }
 }
 
-const columns = ['plan', 'panels', 'nodes', 'conditions', 'rows', 'unknowns', 'largest_weight', 'count_1e-15', 'count_1e-14', 'count_1e-13', 'count_1e-12', 'count_1e-11', 'dense', 'exact_top', 'near_lowest', 'residual']
+const columns = [
+  'plan',
+  'panels',
+  'nodes',
+  'conditions',
+  'rows',
+  'unknowns',
+  'largest_weight',
+  'count_1e-15',
+  'count_1e-14',
+  'count_1e-13',
+  'count_1e-12',
+  'count_1e-11',
+  'dense',
+  'exact_top',
+  'near_lowest',
+  'residual',
+]
 function measured(kind: Kind, plan: Plan, name: string, hard: Rows): string {
   const bases = panelBases(plan)
   const { elimination, clashes } = eliminate(hard, plan.nodeCount, [])
@@ -107,9 +189,21 @@ function measured(kind: Kind, plan: Plan, name: string, hard: Rows): string {
   const size = Math.sqrt(probe.reduce((sum, h) => sum + h * h, 0) / probe.length)
   const flat = Math.sqrt(squaredResidual(plan, bases, probe) / Math.max(1, plan.corner.length - 3 * plan.panelCount))
   return [
-    kind, plan.panelCount, plan.nodeCount, name, rowCount(hard), unknowns, elimination.weight.reduce((most, w) => Math.max(most, Math.abs(w)), 0).toPrecision(3),
-    count(1e-15), count(1e-14), right, count(1e-12), count(1e-11), plan.nodeCount <= denseNodes ? dense(plan, hard) : '',
-    right === 0 ? '' : exactTop(count, right).toExponential(1), right === unknowns ? '' : nearLowest(count, right).toExponential(1),
+    kind,
+    plan.panelCount,
+    plan.nodeCount,
+    name,
+    rowCount(hard),
+    unknowns,
+    elimination.weight.reduce((most, w) => Math.max(most, Math.abs(w)), 0).toPrecision(3),
+    count(1e-15),
+    count(1e-14),
+    right,
+    count(1e-12),
+    count(1e-11),
+    plan.nodeCount <= denseNodes ? dense(plan, hard) : '',
+    right === 0 ? '' : exactTop(count, right).toExponential(1),
+    right === unknowns ? '' : nearLowest(count, right).toExponential(1),
     right === 0 ? '' : (flat / size).toExponential(1),
   ].join()
 }

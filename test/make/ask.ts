@@ -18,8 +18,12 @@ export interface Question {
 export async function ask({ name = 'plan.obj', text, brief = null, options = {} }: Question): Promise<Checked> {
   const briefText = brief === null ? null : typeof brief === 'string' ? brief : JSON.stringify({ panewise: 'brief', version: 1, ...brief })
   const answer = await run({
-    command: 'raise', source: { name, bytes: new TextEncoder().encode(text) }, options: { ...noOptions, ...options },
-    brief: briefText === null ? null : { name: 'plan.brief.json', text: briefText }, levels: null, given: {},
+    command: 'raise',
+    source: { name, bytes: new TextEncoder().encode(text) },
+    options: { ...noOptions, ...options },
+    brief: briefText === null ? null : { name: 'plan.brief.json', text: briefText },
+    levels: null,
+    given: {},
   })
   if (!answer.ok) throw new Error(sentence(answer.problem))
   return answer.value

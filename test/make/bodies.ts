@@ -30,7 +30,11 @@ export function signed(...vertices: readonly Vector[]): Vector[] {
 }
 
 /** The three cyclic permutations. */
-export const cyclic = ([x, y, z]: Vector): Vector[] => [[x, y, z], [y, z, x], [z, x, y]]
+export const cyclic = ([x, y, z]: Vector): Vector[] => [
+  [x, y, z],
+  [y, z, x],
+  [z, x, y],
+]
 /** All six permutations. */
 export const permuted = ([x, y, z]: Vector): Vector[] => [...cyclic([x, y, z]), ...cyclic([y, x, z])]
 
@@ -72,8 +76,13 @@ export function seenFrom(vertices: readonly Vector[], up: Vector): { plan: Plan;
   const y = cross(z, x)
   const turned = vertices.map((v): Vector => [dot(x, v), dot(y, v), dot(z, v)])
   const faces = hullFaces(turned).filter(({ normal }) => normal[2] > 1e-9)
-  const of = plan(turned.map((v) => [v[0], v[1]] as const), faces.map(({ corners }) => corners))
+  const of = plan(
+    turned.map((v) => [v[0], v[1]] as const),
+    faces.map(({ corners }) => corners),
+  )
   // A view straight down may put two vertices on one point: the upper one is meant.
-  const height = Float64Array.from(of.x, (px, node) => Math.max(...turned.filter((v) => v[0] === px && v[1] === of.y[node]).map((v) => v[2])))
+  const height = Float64Array.from(of.x, (px, node) =>
+    Math.max(...turned.filter((v) => v[0] === px && v[1] === of.y[node]).map((v) => v[2])),
+  )
   return { plan: of, height }
 }

@@ -71,7 +71,12 @@ export interface Soft {
 export const noSoft: Soft = { rows: [], values: [], weights: [] }
 
 /** Of the set, the h that minimises sum m (h - t)^2 + sum w (row h - value)^2. */
-export function nearest({ particular, basis }: AffineSet, wish: ArrayLike<number>, areas: readonly number[], soft: Soft = noSoft): number[] {
+export function nearest(
+  { particular, basis }: AffineSet,
+  wish: ArrayLike<number>,
+  areas: readonly number[],
+  soft: Soft = noSoft,
+): number[] {
   const start = particular!
   if (basis.length === 0) return start
   const metric = (h: readonly number[]): number[] => {
@@ -94,7 +99,14 @@ export function nearest({ particular, basis }: AffineSet, wish: ArrayLike<number
  * The near roof of one mu by its definition: minimise sum m (h - t)^2 + mu h^T Q h where rows h = values and, with t' the wish
  * less its tilt, (M t').h = (M t').t. Lagrange multipliers, one dense system.
  */
-export function nearRoofAt(plan: Plan, rows: readonly number[][], values: readonly number[], wish: readonly number[], areas: readonly number[], mu: number): number[] {
+export function nearRoofAt(
+  plan: Plan,
+  rows: readonly number[][],
+  values: readonly number[],
+  wish: readonly number[],
+  areas: readonly number[],
+  mu: number,
+): number[] {
   const n = plan.nodeCount
   const q = flatnessForm(plan)
   const shape = tiltless(plan, wish, areas).map((value, i) => areas[i]! * value)
@@ -116,11 +128,13 @@ export function flatnessForm(plan: Plan): number[][] {
     const nodes = cornersOf(plan, p)
     const planes = new Matrix(nodes.map((node) => [1, plan.work[2 * node]!, plan.work[2 * node + 1]!]))
     const u = new SVD(planes, { autoTranspose: true }).leftSingularVectors
-    nodes.forEach((a, i) => nodes.forEach((b, j) => {
-      let share = i === j ? 1 : 0
-      for (let k = 0; k < 3; k += 1) share -= u.get(i, k) * u.get(j, k)
-      q[a]![b]! += share
-    }))
+    nodes.forEach((a, i) =>
+      nodes.forEach((b, j) => {
+        let share = i === j ? 1 : 0
+        for (let k = 0; k < 3; k += 1) share -= u.get(i, k) * u.get(j, k)
+        q[a]![b]! += share
+      }),
+    )
   }
   return q
 }
@@ -133,7 +147,9 @@ export function tiltless(plan: Plan, heights: readonly number[], areas: readonly
   for (let k = 0; k < plan.partCount; k += 1) {
     const nodes = [...part.keys()].filter((node) => part[node] === k)
     const rows = nodes.map((node) => [1, plan.work[2 * node]!, plan.work[2 * node + 1]!])
-    const gram = new Matrix([0, 1, 2].map((a) => [0, 1, 2].map((b) => nodes.reduce((sum, node, i) => sum + areas[node]! * rows[i]![a]! * rows[i]![b]!, 0))))
+    const gram = new Matrix(
+      [0, 1, 2].map((a) => [0, 1, 2].map((b) => nodes.reduce((sum, node, i) => sum + areas[node]! * rows[i]![a]! * rows[i]![b]!, 0))),
+    )
     const right = [0, 1, 2].map((a) => nodes.reduce((sum, node, i) => sum + areas[node]! * rows[i]![a]! * heights[node]!, 0))
     const plane = pseudoInverse(gram).mmul(Matrix.columnVector(right)).getColumn(0)
     nodes.forEach((node, i) => (out[node]! -= dot(rows[i]!, plane)))
@@ -190,26 +206,33 @@ export function tiltDimensionOf(plan: Plan): number {
     const panels = [...plan.partOf.keys()].filter((p) => plan.partOf[p] === part)
     return coplanarRows(plan, [...new Set(panels.flatMap((p) => cornersOf(plan, p)))])
   }).flat()
-  return solutions(rows, rows.map(() => 0), plan.nodeCount).basis.length
+  return solutions(
+    rows,
+    rows.map(() => 0),
+    plan.nodeCount,
+  ).basis.length
 }
 
 /** Rows that put all these nodes on the plane of the three that span the largest triangle. */
 export function coplanarRows(plan: Plan, nodes: readonly number[]): number[][] {
   const { work } = plan
   const area = (a: number, b: number, c: number): number =>
-    (work[2 * b]! - work[2 * a]!) * (work[2 * c + 1]! - work[2 * a + 1]!) - (work[2 * b + 1]! - work[2 * a + 1]!) * (work[2 * c]! - work[2 * a]!)
+    (work[2 * b]! - work[2 * a]!) * (work[2 * c + 1]! - work[2 * a + 1]!) -
+    (work[2 * b + 1]! - work[2 * a + 1]!) * (work[2 * c]! - work[2 * a]!)
   let base: [number, number, number] = [nodes[0]!, nodes[1]!, nodes[2]!]
   for (const a of nodes) for (const b of nodes) for (const c of nodes) if (area(a, b, c) > area(...base)) base = [a, b, c]
   const [a, b, c] = base
   const whole = area(a, b, c)
-  return nodes.filter((node) => !base.includes(node)).map((node) => {
-    const row = new Array<number>(plan.nodeCount).fill(0)
-    row[node] = 1
-    row[a] = -area(node, b, c) / whole
-    row[b] = -area(a, node, c) / whole
-    row[c] = -area(a, b, node) / whole
-    return row
-  })
+  return nodes
+    .filter((node) => !base.includes(node))
+    .map((node) => {
+      const row = new Array<number>(plan.nodeCount).fill(0)
+      row[node] = 1
+      row[a] = -area(node, b, c) / whole
+      row[b] = -area(a, node, c) / whole
+      row[c] = -area(a, b, node) / whole
+      return row
+    })
 }
 
 export const cornersOf = (plan: Plan, p: number): number[] => [...plan.corner.slice(plan.panelStart[p], plan.panelStart[p + 1])]

@@ -31,8 +31,13 @@ export function trueArea(plan: Plan, z: Float64Array, panel: number): { inPlan: 
 
 /** Fold angle at a joint in degrees: > 0 at a ridge, < 0 at a valley. The angle by arctangent keeps its digits near 0. */
 export function foldAt(plan: Plan, z: Float64Array, joint: number): number {
-  const left = areaVector(plan, z, plan.panelOf[2 * joint]!), right = areaVector(plan, z, plan.panelOf[2 * joint + 1]!)
-  const across: Vector = [left[1] * right[2] - left[2] * right[1], left[2] * right[0] - left[0] * right[2], left[0] * right[1] - left[1] * right[0]]
+  const left = areaVector(plan, z, plan.panelOf[2 * joint]!),
+    right = areaVector(plan, z, plan.panelOf[2 * joint + 1]!)
+  const across: Vector = [
+    left[1] * right[2] - left[2] * right[1],
+    left[2] * right[0] - left[0] * right[2],
+    left[0] * right[1] - left[1] * right[0],
+  ]
   const angle = Math.atan2(Math.hypot(...across), left[0] * right[0] + left[1] * right[1] + left[2] * right[2]) * (180 / Math.PI)
   // At a ridge the plane on the left falls away to the left: its gradient points to the right of the joint.
   const [from, to] = [plan.origin[2 * joint]!, plan.origin[2 * joint + 1]!]

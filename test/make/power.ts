@@ -23,7 +23,12 @@ export function powerDiagram(sites: readonly Site[], width: number, depth: numbe
     return known >= 0 ? known : points.push([x, y]) - 1
   }
   const faces = sites.map((site) => {
-    let cell: [number, number][] = [[0, 0], [width, 0], [width, depth], [0, depth]]
+    let cell: [number, number][] = [
+      [0, 0],
+      [width, 0],
+      [width, depth],
+      [0, depth],
+    ]
     for (const other of sites) {
       if (other === site) continue
       const [a, b] = [2 * (other.x - site.x), 2 * (other.y - site.y)]
@@ -49,8 +54,12 @@ function below(cell: readonly (readonly [number, number])[], a: number, b: numbe
 
 /** Length of the shortest edge. */
 export function shortestEdge({ points, faces }: Diagram): number {
-  return Math.min(...faces.flatMap((face) => face.map((node, k) => {
-    const [p, q] = [points[node]!, points[face[(k + 1) % face.length]!]!]
-    return Math.hypot(p[0] - q[0], p[1] - q[1])
-  })))
+  return Math.min(
+    ...faces.flatMap((face) =>
+      face.map((node, k) => {
+        const [p, q] = [points[node]!, points[face[(k + 1) % face.length]!]!]
+        return Math.hypot(p[0] - q[0], p[1] - q[1])
+      }),
+    ),
+  )
 }

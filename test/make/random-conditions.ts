@@ -36,28 +36,44 @@ export function randomCondition(plan: Plan, next: Next, name: string, roof: read
   switch (draw) {
     case 0: {
       const rim = rimNodes(plan)
-      return { condition: { kind: 'level', name, soft, at: { rim: 'outer' }, level: 0 }, rows: rim.map((n) => row(plan, [n, 1])), values: rim.map(() => 0) }
+      return {
+        condition: { kind: 'level', name, soft, at: { rim: 'outer' }, level: 0 },
+        rows: rim.map((n) => row(plan, [n, 1])),
+        values: rim.map(() => 0),
+      }
     }
-    case 1: case 2: {
+    case 1:
+    case 2: {
       const height = levelAt(nodes[0]!)
       const [n] = nodes as [number]
-      return { condition: { kind: 'level', name, soft, at: { nodes: [nodeName(n)] }, level: height * span }, rows: [row(plan, [n, 1])], values: [height] }
+      return {
+        condition: { kind: 'level', name, soft, at: { nodes: [nodeName(n)] }, level: height * span },
+        rows: [row(plan, [n, 1])],
+        values: [height],
+      }
     }
     case 3: {
       const pair = [...new Set([...nodes, (nodes[0]! + 1) % plan.nodeCount])]
       return {
         condition: { kind: 'equal', name, soft, at: { nodes: pair.map(nodeName) } },
-        rows: pair.slice(1).map((n) => row(plan, [n, 1], [pair[0]!, -1])), values: pair.slice(1).map(() => 0),
+        rows: pair.slice(1).map((n) => row(plan, [n, 1], [pair[0]!, -1])),
+        values: pair.slice(1).map(() => 0),
       }
     }
     case 4: {
       const panels = [...new Set([below(next, plan.panelCount), below(next, plan.panelCount)])]
       const rows = coplanarRows(plan, [...new Set(panels.flatMap((p) => cornersOf(plan, p)))])
-      return { condition: { kind: 'coplanar', name, soft, at: { panels: panels.map((p) => `P${p + 1}`) } }, rows, values: rows.map(() => 0) }
+      return {
+        condition: { kind: 'coplanar', name, soft, at: { panels: panels.map((p) => `P${p + 1}`) } },
+        rows,
+        values: rows.map(() => 0),
+      }
     }
     case 5: {
       const joint = below(next, plan.jointCount)
-      const rows = coplanarRows(plan, [...new Set([plan.panelOf[2 * joint]!, plan.panelOf[2 * joint + 1]!].flatMap((p) => cornersOf(plan, p)))])
+      const rows = coplanarRows(plan, [
+        ...new Set([plan.panelOf[2 * joint]!, plan.panelOf[2 * joint + 1]!].flatMap((p) => cornersOf(plan, p))),
+      ])
       return { condition: { kind: 'flush', name, soft, at: { joints: [`J${joint + 1}`] } }, rows, values: rows.map(() => 0) }
     }
     case 6: {
@@ -72,10 +88,13 @@ export function randomCondition(plan: Plan, next: Next, name: string, roof: read
       return {
         condition: { kind: 'plane', name, soft, at: { panels: [`P${panel + 1}`] }, pitch_deg, bearing_deg },
         rows: rest.map((n) => row(plan, [n, 1], [first, -1])),
-        values: rest.map((n) => gx * (plan.work[2 * n]! - plan.work[2 * first]!) + gy * (plan.work[2 * n + 1]! - plan.work[2 * first + 1]!)),
+        values: rest.map(
+          (n) => gx * (plan.work[2 * n]! - plan.work[2 * first]!) + gy * (plan.work[2 * n + 1]! - plan.work[2 * first + 1]!),
+        ),
       }
     }
-    default: return runCondition(plan, next, name, soft)
+    default:
+      return runCondition(plan, next, name, soft)
   }
 }
 
@@ -102,7 +121,8 @@ function runCondition(plan: Plan, next: Next, name: string, soft: number | null)
   const rest = run.slice(1)
   return {
     condition: { kind: 'fall', name, soft, at, per_mille, level: null },
-    rows: rest.map(({ node }) => row(plan, [node, 1], [first.node, -1])), values: rest.map(({ along }) => (-per_mille / 1000) * along),
+    rows: rest.map(({ node }) => row(plan, [node, 1], [first.node, -1])),
+    values: rest.map(({ along }) => (-per_mille / 1000) * along),
   }
 }
 
@@ -116,7 +136,8 @@ function between(plan: Plan, from: number, to: number): { node: number; along: n
   return Array.from({ length: plan.nodeCount }, (_, node) => {
     const [qx, qy] = [plan.work[2 * node]! - px, plan.work[2 * node + 1]! - py]
     return { node, along: (qx * dx + qy * dy) / length, off: Math.abs(qx * dy - qy * dx) / length }
-  }).filter(({ along, off }) => off <= within && along > -within && along < length + within)
+  })
+    .filter(({ along, off }) => off <= within && along > -within && along < length + within)
     .sort((a, b) => a.along - b.along)
 }
 
@@ -138,7 +159,9 @@ function gradient(plan: Plan, corners: readonly number[], heights: readonly numb
   // Least squares over all corners: exact for a lift.
   const mean = (of: (n: number) => number): number => corners.reduce((sum, n) => sum + of(n), 0) / corners.length
   const [mx, my, mz] = [mean((n) => plan.work[2 * n]!), mean((n) => plan.work[2 * n + 1]!), mean((n) => heights[n]!)]
-  const xs = corners.map((n) => plan.work[2 * n]! - mx), ys = corners.map((n) => plan.work[2 * n + 1]! - my), zs = corners.map((n) => heights[n]! - mz)
+  const xs = corners.map((n) => plan.work[2 * n]! - mx),
+    ys = corners.map((n) => plan.work[2 * n + 1]! - my),
+    zs = corners.map((n) => heights[n]! - mz)
   const [xx, xy, yy, xz, yz] = [dot(xs, xs), dot(xs, ys), dot(ys, ys), dot(xs, zs), dot(ys, zs)]
   const det = xx * yy - xy * xy
   return [(xz * yy - yz * xy) / det, (yz * xx - xz * xy) / det]

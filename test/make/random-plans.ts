@@ -12,17 +12,30 @@ export interface Drawn {
 
 export type Kind = 'grid with voids' | 'quads and triangles' | 'merged cells' | 'bricks' | 'slanted cuts' | 'scattered cells'
 
-export const kinds: readonly Kind[] = ['grid with voids', 'quads and triangles', 'merged cells', 'bricks', 'slanted cuts', 'scattered cells']
+export const kinds: readonly Kind[] = [
+  'grid with voids',
+  'quads and triangles',
+  'merged cells',
+  'bricks',
+  'slanted cuts',
+  'scattered cells',
+]
 
 export function randomPlan(kind: Kind, seed: number): Drawn {
   const next = random(1000 * seed + kinds.indexOf(kind))
   switch (kind) {
-    case 'grid with voids': return looseGrid(next, 0.15, 0)
-    case 'quads and triangles': return looseGrid(next, 0.1, 0.3)
-    case 'scattered cells': return looseGrid(next, 0.4, 0.1)
-    case 'merged cells': return mergedCells(next, seed)
-    case 'bricks': return cuts(next, 0)
-    case 'slanted cuts': return cuts(next, 0.25)
+    case 'grid with voids':
+      return looseGrid(next, 0.15, 0)
+    case 'quads and triangles':
+      return looseGrid(next, 0.1, 0.3)
+    case 'scattered cells':
+      return looseGrid(next, 0.4, 0.1)
+    case 'merged cells':
+      return mergedCells(next, seed)
+    case 'bricks':
+      return cuts(next, 0)
+    case 'slanted cuts':
+      return cuts(next, 0.25)
   }
 }
 
@@ -53,7 +66,9 @@ function looseGrid(next: Next, left: number, divided: number): Drawn {
 function mergedCells(next: Next, seed: number): Drawn {
   const { plan } = voronoi(12 + below(next, 14), seed)
   const points: [number, number][] = Array.from(plan.x, (x, node) => [x, plan.y[node]!])
-  let faces: number[][] = Array.from({ length: plan.panelCount }, (_, p) => [...plan.corner.slice(plan.panelStart[p], plan.panelStart[p + 1])])
+  let faces: number[][] = Array.from({ length: plan.panelCount }, (_, p) => [
+    ...plan.corner.slice(plan.panelStart[p], plan.panelStart[p + 1]),
+  ])
   for (let merge = below(next, 4); merge > 0; merge -= 1) {
     const a = below(next, faces.length)
     for (let b = 0; b < faces.length; b += 1) {
@@ -83,7 +98,14 @@ function merged(a: readonly number[], b: readonly number[]): number[] | null {
 
 /** A rectangle cut again and again across its pieces; every end of a cut becomes a corner of the panel beyond it. */
 function cuts(next: Next, slant: number): Drawn {
-  let pieces: [number, number][][] = [[[0, 0], [9, 0], [9, 6], [0, 6]]]
+  let pieces: [number, number][][] = [
+    [
+      [0, 0],
+      [9, 0],
+      [9, 6],
+      [0, 6],
+    ],
+  ]
   for (let cut = 5 + below(next, 8); cut > 0; cut -= 1) {
     const largest = pieces.reduce((best, piece, k) => (areaOf(piece) > areaOf(pieces[best]!) ? k : best), 0)
     const at = next() < 0.7 ? largest : below(next, pieces.length)
@@ -122,10 +144,14 @@ function halves(piece: readonly [number, number][], nx: number, ny: number, leve
 }
 
 function areaOf(piece: readonly (readonly [number, number])[]): number {
-  return Math.abs(piece.reduce((sum, [x, y], k) => {
-    const [u, v] = piece[(k + 1) % piece.length]!
-    return sum + x * v - y * u
-  }, 0)) / 2
+  return (
+    Math.abs(
+      piece.reduce((sum, [x, y], k) => {
+        const [u, v] = piece[(k + 1) % piece.length]!
+        return sum + x * v - y * u
+      }, 0),
+    ) / 2
+  )
 }
 
 /** The loop with every known point that lies on one of its sides put in as a corner. */
@@ -136,7 +162,11 @@ export function withNodesOnSides(loop: readonly number[], points: Points): numbe
     const [dx, dy] = [q[0] - p[0], q[1] - p[1]]
     const length = Math.hypot(dx, dy)
     const on = points
-      .map(([x, y], node) => ({ node, t: ((x - p[0]) * dx + (y - p[1]) * dy) / length ** 2, off: Math.abs((x - p[0]) * dy - (y - p[1]) * dx) / length }))
+      .map(([x, y], node) => ({
+        node,
+        t: ((x - p[0]) * dx + (y - p[1]) * dy) / length ** 2,
+        off: Math.abs((x - p[0]) * dy - (y - p[1]) * dx) / length,
+      }))
       .filter(({ node, t, off }) => node !== from && node !== to && t > 0 && t < 1 && off < 1e-6)
       .sort((a, b) => a.t - b.t)
     return [from, ...on.map(({ node }) => node)]

@@ -47,12 +47,25 @@ const digits = (value: number, decimals: number): string => String(Number(value.
 function obj(title: string, points: Points, faces: Faces, options: { decimals?: number; heights?: readonly number[] } = {}): string {
   const { decimals = 3, heights } = options
   const nodes = points.map(([x, y], k) => `v ${digits(x, decimals)} ${digits(y, decimals)} ${digits(heights?.[k] ?? 0, 3)}`)
-  return [`# Tern Yard, ${title}. An invented building; metres.`, ...nodes, ...faces.map((face) => `f ${face.map((node) => node + 1).join(' ')}`), ''].join('\n')
+  return [
+    `# Tern Yard, ${title}. An invented building; metres.`,
+    ...nodes,
+    ...faces.map((face) => `f ${face.map((node) => node + 1).join(' ')}`),
+    '',
+  ].join('\n')
 }
 
 const brief = (wishes: object): object => ({ panewise: 'brief', version: 1, unit: 'm', ...wishes })
-const levelAt = (name: string, from: readonly number[], to: readonly number[], height: number): object => ({ name, kind: 'level', at: { run: [from, to] }, level: height })
-const eaves = (height: number): object[] => [levelAt('south eaves', [0, 0], [width, 0], height), levelAt('north eaves', [0, depth], [width, depth], height)]
+const levelAt = (name: string, from: readonly number[], to: readonly number[], height: number): object => ({
+  name,
+  kind: 'level',
+  at: { run: [from, to] },
+  level: height,
+})
+const eaves = (height: number): object[] => [
+  levelAt('south eaves', [0, 0], [width, 0], height),
+  levelAt('north eaves', [0, depth], [width, depth], height),
+]
 const levelRim = { name: 'eaves', kind: 'level', at: { rim: 'outer' }, level: 0 }
 
 const square = hipPoints(columns, rows, 0, (i, j) => [bay * i, bay * j])
@@ -115,7 +128,10 @@ function target(): string {
 /** Bar lines of a hall of 24 by 18 m in bays of 2 m; the court in the middle is 8 by 6 m, and no bar crosses it. */
 function court(): string {
   const [east, north, step] = [24, 18, 2]
-  const [court0, court1] = [[8, 6], [16, 12]] as const
+  const [court0, court1] = [
+    [8, 6],
+    [16, 12],
+  ] as const
   const bars = []
   for (let x = 0; x <= east; x += step) {
     if (x <= court0[0] || x >= court1[0]) bars.push(line([x, 0], [x, north], 'BARS'))
@@ -130,7 +146,13 @@ function court(): string {
 
 /** The square bays as closed polylines in millimetres. */
 function panelsInMillimetres(): string {
-  const outlines = square.faces.map((face) => polyline(face.map((node) => square.points[node]!.map((value) => 1000 * value)), true, 'GLASS'))
+  const outlines = square.faces.map((face) =>
+    polyline(
+      face.map((node) => square.points[node]!.map((value) => 1000 * value)),
+      true,
+      'GLASS',
+    ),
+  )
   return dxfText({ units: 4, layers: [{ name: 'GLASS' }], entities: outlines })
 }
 
@@ -141,70 +163,110 @@ export function samples(): readonly Sample[] {
   const staggered = bond()
   return [
     {
-      name: 'tern-yard-bays.obj', brief: null, options: {},
+      name: 'tern-yard-bays.obj',
+      brief: null,
+      options: {},
       text: obj('hall of 12 by 8 square bays', square.points, square.faces),
       why: '96 square bays with the rim free: every joint can fold, and 18 adjustments are left to shape the roof with.',
       expected: { verdict: 'lifts', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 21, frozen: 0, reasonKind: null },
     },
     {
-      name: 'tern-yard-cells.obj', brief: null, options: {},
+      name: 'tern-yard-cells.obj',
+      brief: null,
+      options: {},
       text: obj('roof of 73 cells', plain.points, plain.faces, { decimals: 6 }),
       why: '73 cells of a power diagram, written to the micrometre: it lifts in one way only, whose one figure is the rise.',
       expected: { verdict: 'lifts', panels: 73, voids: 0, freedom: 1, count: -42, freedomLeft: 4, frozen: 0, reasonKind: null },
     },
     {
-      name: 'tern-yard-cells-mm.obj', brief: null, options: {},
+      name: 'tern-yard-cells-mm.obj',
+      brief: null,
+      options: {},
       text: obj('roof of 73 cells', plain.points, plain.faces),
-      why: 'The same cells written to the millimetre: the rounding is enough to take the one lift away, and the nearest roof is flat to the tolerance.',
-      expected: { verdict: 'lifts within tolerance', panels: 73, voids: 0, freedom: 0, count: -42, freedomLeft: 3, frozen: 186, reasonKind: 'rank' },
+      why: 'The same cells to the millimetre: rounding takes the one lift away, and the nearest roof is flat to the tolerance.',
+      expected: {
+        verdict: 'lifts within tolerance', panels: 73, voids: 0,
+        freedom: 0, count: -42, freedomLeft: 3, frozen: 186, reasonKind: 'rank',
+      },
     },
     {
-      name: 'tern-yard-cells-free-hand.obj', brief: null, options: {},
+      name: 'tern-yard-cells-free-hand.obj',
+      brief: null,
+      options: {},
       text: obj('roof of 73 cells drawn by eye', shifted(plain.points), plain.faces),
       why: 'The same cells with nodes moved by up to 100 mm: no joint can fold, and no roof near the dome is flat to a millimetre.',
       expected: { verdict: 'does not lift', panels: 73, voids: 0, freedom: 0, count: -42, freedomLeft: 3, frozen: 186, reasonKind: 'rank' },
     },
     {
-      name: 'tern-yard-bond.obj', brief: null, options: {},
+      name: 'tern-yard-bond.obj',
+      brief: null,
+      options: {},
       text: obj('square bays and a staggered bond', staggered.points, staggered.faces),
-      why: 'Square bays that end in a staggered bond: the short joints of the bond meet straight bars as Ts and stay unfolded, so it lifts in part.',
+      why: 'Square bays that end in a staggered bond: its short joints meet straight bars as Ts and stay unfolded.',
       expected: { verdict: 'lifts in part', panels: 92, voids: 0, freedom: 15, count: 0, freedomLeft: 18, frozen: 20, reasonKind: 'rank' },
     },
     {
-      name: 'tern-yard-court.dxf', options: {},
-      brief: brief({ voids: [[12, 9]], datum: 3.6, rise: 2, conditions: [{ name: 'post heads', kind: 'level', at: { nodes: [[0, 0], [24, 0]] } }] }),
+      name: 'tern-yard-court.dxf',
+      options: {},
+      brief: brief({
+        voids: [[12, 9]],
+        datum: 3.6,
+        rise: 2,
+        conditions: [{ name: 'post heads', kind: 'level', at: { nodes: [[0, 0], [24, 0]] } }],
+      }),
       text: court(),
       why: 'Bar lines in metres round a court of 8 by 6 m that the brief calls a void, with two corner posts at +3.600.',
       expected: { verdict: 'lifts', panels: 96, voids: 1, freedom: 25, count: 25, freedomLeft: 26, frozen: 0, reasonKind: null },
     },
     {
-      name: 'tern-yard-level-rim.obj', options: {}, brief: brief({ conditions: [levelRim] }),
+      name: 'tern-yard-level-rim.obj',
+      options: {},
+      brief: brief({ conditions: [levelRim] }),
       text: obj('hall of 12 by 8 square bays on a level rim', square.points, square.faces),
       why: 'The square bays with all eaves at one level: the corner panels have two edges on the rim, and that makes every panel level.',
-      expected: { verdict: 'does not lift', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 0, frozen: 172, reasonKind: 'propagation' },
+      expected: {
+        verdict: 'does not lift', panels: 96, voids: 0,
+        freedom: 18, count: 18, freedomLeft: 0, frozen: 172, reasonKind: 'propagation',
+      },
     },
     {
-      name: 'tern-yard-hips.obj', options: {}, brief: brief({ shape: 'hipped', rise: 2.1, conditions: [levelRim] }),
+      name: 'tern-yard-hips.obj',
+      options: {},
+      brief: brief({ shape: 'hipped', rise: 2.1, conditions: [levelRim] }),
       text: obj('hall with divided corners on a level rim', hips.points, hips.faces),
       why: 'The same with 16 diagonals that run inwards from the corners along the hips: four ways are left, one for each ring.',
       expected: { verdict: 'lifts in part', panels: 112, voids: 0, freedom: 34, count: 34, freedomLeft: 4, frozen: 96, reasonKind: 'rank' },
     },
     {
-      name: 'tern-yard-target.obj', brief: null, options: {}, text: target(),
-      why: 'Square bays on a site that narrows, drawn as a warped surface: its heights are the target, and the flat-panelled roof nearest to them is found.',
+      name: 'tern-yard-target.obj',
+      brief: null,
+      options: {},
+      text: target(),
+      why: 'Bays on a site that narrows, drawn as a warped surface: its heights are the target to come near to.',
       expected: { verdict: 'lifts', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 21, frozen: 0, reasonKind: null },
     },
     {
-      name: 'tern-yard-barrel.dxf', options: {},
-      brief: brief({ conditions: [...eaves(0), { name: 'west gable', kind: 'profile', at: { run: [[0, 0], [0, depth]] }, section: { arc: { rise: 2.4 } } }] }),
+      name: 'tern-yard-barrel.dxf',
+      options: {},
+      brief: brief({
+        conditions: [
+          ...eaves(0),
+          { name: 'west gable', kind: 'profile', at: { run: [[0, 0], [0, depth]] }, section: { arc: { rise: 2.4 } } },
+        ],
+      }),
       text: panelsInMillimetres(),
-      why: 'Panels as closed polylines in millimetres, a brief in metres: an arc of rise 2.4 m at one gable and two level eaves leave one roof, a barrel.',
-      expected: { verdict: 'lifts in part', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 0, frozen: 88, reasonKind: 'propagation' },
+      why: 'Panels in millimetres, a brief in metres: an arc of rise 2.4 m at one gable and two level eaves leave one roof.',
+      expected: {
+        verdict: 'lifts in part', panels: 96, voids: 0,
+        freedom: 18, count: 18, freedomLeft: 0, frozen: 88, reasonKind: 'propagation',
+      },
     },
     {
-      name: 'tern-yard-pitched.obj', options: {},
+      name: 'tern-yard-pitched.obj',
+      options: {},
       brief: brief({
-        shape: 'pitched', rise: 2.4,
+        shape: 'pitched',
+        rise: 2.4,
         conditions: [
           ...eaves(0),
           { name: 'south slope', kind: 'coplanar', at: { panels: half((panel) => panel < 48) } },
@@ -212,16 +274,22 @@ export function samples(): readonly Sample[] {
         ],
       }),
       text: obj('two slopes', square.points, square.faces),
-      why: 'Each half of the bays in one plane from its level eaves: the ridge is the only joint line that folds, and its height is the one figure left.',
+      why: 'Each half of the bays in one plane from its level eaves: only the ridge folds, and its height is the one figure left.',
       expected: { verdict: 'lifts in part', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 1, frozen: 160, reasonKind: 'rank' },
     },
     {
-      name: 'tern-yard-court.geojson', text: null, brief: null, options: {},
+      name: 'tern-yard-court.geojson',
+      text: null,
+      brief: null,
+      options: {},
       why: 'A ring roof round a round court, from a site map in metres.',
       expected: { verdict: 'lifts', panels: 36, voids: 1, freedom: 15, count: 15, freedomLeft: 18, frozen: 0, reasonKind: null },
     },
     {
-      name: 'tern-yard-hall.svg', text: null, brief: null, options: { scale: 100 },
+      name: 'tern-yard-hall.svg',
+      text: null,
+      brief: null,
+      options: { scale: 100 },
       why: 'Glass strips of the nave as paths on paper, 1:100: read it with `--scale 1:100`.',
       expected: { verdict: 'lifts', panels: 52, voids: 0, freedom: 16, count: 16, freedomLeft: 19, frozen: 0, reasonKind: null },
     },
@@ -236,21 +304,33 @@ export function sampleFiles(): ReadonlyMap<string, string> {
   const files = new Map<string, string>()
   for (const { name, text, brief: wishes } of samples()) {
     if (text !== null) files.set(name, text)
-    if (wishes !== null) files.set(briefName(name), `${JSON.stringify(wishes, null, 2)}\n`)
+    if (wishes !== null) files.set(briefName(name), `${onFewLines(JSON.stringify(wishes, null, 2))}\n`)
   }
   files.set('README.md', readme())
   return files
 }
 
+/** Lists of numbers and of names on one line each. */
+const onFewLines = (json: string): string =>
+  json.replace(/\[[^[\]{}]*\]/g, (list) => list.replace(/\s+/g, ' ').replace(/^\[ | \]$/g, (end) => end.trim()))
+
 function readme(): string {
   const line = ({ name, brief: wishes, why, expected }: Sample): string =>
     `| \`${name}\`${wishes === null ? '' : ' with its brief'} | ${expected.panels} | ${why} | ${expected.verdict} |`
   return [
-    '# Samples', '',
-    'Plans of Tern Yard, an invented market hall with a glazed roof, in several variants. Where conditions are needed they stand in `NAME.brief.json` beside the plan:', '',
-    '    panewise check samples/tern-yard-barrel.dxf --brief samples/tern-yard-barrel.brief.json', '',
-    '| plan | panels | why it is here | verdict |', '| --- | --- | --- | --- |',
-    ...samples().map(line), '',
-    'The files are made by `test/make/samples.ts` (`node test/make/write-samples.mjs` writes them again), the SVG and the GeoJSON plan are drawn by hand; `test/samples.test.ts` holds every line above.', '',
+    '# Samples',
+    '',
+    'Plans of Tern Yard, an invented market hall with a glazed roof, in several variants.',
+    'Where conditions are needed they stand in `NAME.brief.json` beside the plan:',
+    '',
+    '    panewise check samples/tern-yard-barrel.dxf --brief samples/tern-yard-barrel.brief.json',
+    '',
+    '| plan | panels | why it is here | verdict |',
+    '| --- | --- | --- | --- |',
+    ...samples().map(line),
+    '',
+    'The files are made by `test/make/samples.ts` (`node test/make/write-samples.mjs` writes them again); the SVG and the',
+    'GeoJSON plan are drawn by hand. `test/samples.test.ts` holds every line above.',
+    '',
   ].join('\n')
 }

@@ -46,7 +46,8 @@ const affine: readonly Change[] = [
   { name: 'sheared, mirrored and turned', linear: [0.3, -1.1, -0.9, 0.4], shift: [10, 20] },
 ]
 
-const changed = (points: Points, { linear: [a, b, c, d], shift: [u, v] }: Change): [number, number][] => points.map(([x, y]) => [a * x + b * y + u, c * x + d * y + v])
+const changed = (points: Points, { linear: [a, b, c, d], shift: [u, v] }: Change): [number, number][] =>
+  points.map(([x, y]) => [a * x + b * y + u, c * x + d * y + v])
 
 /** The same drawing with points, faces and the beginnings of faces in another order; `point[k]` is where point k has gone. */
 function renumbered({ points, faces }: Drawn, seed: number): { drawn: Drawn; point: number[]; face: number[] } {
@@ -59,7 +60,8 @@ function renumbered({ points, faces }: Drawn, seed: number): { drawn: Drawn; poi
     }
     return order
   }
-  const point = shuffled(points.length), face = shuffled(faces.length)
+  const point = shuffled(points.length),
+    face = shuffled(faces.length)
   const moved: [number, number][] = []
   points.forEach(([x, y], k) => (moved[point[k]!] = [x, y]))
   const turnedFaces: number[][] = []
@@ -110,7 +112,10 @@ describe.each(cases)('%s, seed %d', (kind, seed) => {
   const drawn = randomPlan(kind, seed)
   const of = plan(drawn.points, drawn.faces)
   const { space, freedom, frozen } = finish(freeRim(of))
-  const heights = projected(space, Float64Array.from({ length: of.nodeCount }, (_, i) => Math.sin(5 * i + seed)))
+  const heights = projected(
+    space,
+    Float64Array.from({ length: of.nodeCount }, (_, i) => Math.sin(5 * i + seed)),
+  )
   const stress = stressOf(of, heights)
 
   test.each(affine)('$name: same facts, same frozen joints; the heights stay a lift and stresses divide by |det|', (change) => {
@@ -133,7 +138,12 @@ describe.each(cases)('%s, seed %d', (kind, seed) => {
     const theirs = stressOf(image, moved)
     joint.forEach((j, k) => expect(Math.abs(theirs[j]! * scale - stress[k]!)).toBeLessThan(1e-9 * largest))
     // The stresses of the first plan balance in the second as they are.
-    expect(imbalance(image, Float64Array.from({ length: image.jointCount }, (_, j) => stress[joint.indexOf(j)]!))).toBeLessThan(1e-10)
+    expect(
+      imbalance(
+        image,
+        Float64Array.from({ length: image.jointCount }, (_, j) => stress[joint.indexOf(j)]!),
+      ),
+    ).toBeLessThan(1e-10)
   })
 
   test('renumbered: same facts, same frozen joints, same nearest roof', () => {
@@ -174,8 +184,10 @@ describe.each(cases)('%s, seed %d', (kind, seed) => {
 /** Largest sum of a closure row over the sum of its terms' sizes, terms below 1e-9 of the largest force's left out. */
 function imbalance(of: Plan, stress: Float64Array): number {
   const { start, joint, value } = closure(of)
-  let worst = 0, most = 0
-  for (let r = 0; r + 1 < start.length; r += 1) for (let k = start[r]!; k < start[r + 1]!; k += 1) most = Math.max(most, Math.abs(value[k]! * stress[joint[k]!]!))
+  let worst = 0,
+    most = 0
+  for (let r = 0; r + 1 < start.length; r += 1)
+    for (let k = start[r]!; k < start[r + 1]!; k += 1) most = Math.max(most, Math.abs(value[k]! * stress[joint[k]!]!))
   for (let r = 0; r + 1 < start.length; r += 1) {
     let sum = 0
     for (let k = start[r]!; k < start[r + 1]!; k += 1) sum += value[k]! * stress[joint[k]!]!
@@ -197,40 +209,62 @@ describe('survey coordinates, through the job', () => {
       const all = (text < 0n ? -text : text).toString().padStart(7, '0')
       return `${sign}${all.slice(0, -6)}.${all.slice(-6).slice(0, decimals)}`
     }
-    return `${[...cells.x].map((x, i) => `v ${digits(x)} ${digits(cells.y[i]!)} 0`).join('\n')}\n${faces.map((f) => `f ${f.map((n) => n + 1).join(' ')}`).join('\n')}\n`
+    const nodes = [...cells.x].map((x, i) => `v ${digits(x)} ${digits(cells.y[i]!)} 0`)
+    return [...nodes, ...faces.map((face) => `f ${face.map((node) => node + 1).join(' ')}`), ''].join('\n')
   }
   const conditions = { shape: 'dome', conditions: [{ name: 'corner', kind: 'level', at: { nodes: ['N1', 'N3'] }, level: 0 }] } as const
 
-  test.each([[5_700_000, 'm'], [5_700_000, 'mm'], [0, 'mm'], [-32_400_000, 'm']] as const)('origin %d m away, in %s: facts, verdict and heights as at the origin in metres', async (offset, unit) => {
+  test.each([
+    [5_700_000, 'm'],
+    [5_700_000, 'mm'],
+    [0, 'mm'],
+    [-32_400_000, 'm'],
+  ] as const)('origin %d m away, in %s: as at the origin in metres', async (offset, unit) => {
     const options = { unit } as const
     const home = await ask({ text: file(0, 'm'), brief: conditions, options: { unit: 'm' } })
     const away = await ask({ text: file(offset, unit), brief: conditions, options })
     const [first, second] = [home.answer.summary, away.answer.summary]
     expect(second.verdict).toBe('lifts')
-    for (const key of ['verdict', 'plan'] as const) expect({ ...(second[key] as object), unit: '' }).toEqual({ ...(first[key] as object), unit: '' })
-    expect([second.stress.freedom, second.stress.freedomLeft, second.stress.count]).toEqual([first.stress.freedom, first.stress.freedomLeft, first.stress.count])
+    for (const key of ['verdict', 'plan'] as const)
+      expect({ ...(second[key] as object), unit: '' }).toEqual({ ...(first[key] as object), unit: '' })
+    expect([second.stress.freedom, second.stress.freedomLeft, second.stress.count]).toEqual([
+      first.stress.freedom,
+      first.stress.freedomLeft,
+      first.stress.count,
+    ])
     expect(second.stress.freedom).toBe(1)
     const per = unit === 'mm' ? 1000 : 1
     away.answer.roof!.heights.forEach((z, i) => expect(Math.abs(z / per - home.answer.roof!.heights[i]!)).toBeLessThan(2e-6))
     // x and y leave as they came, digit by digit but for trailing zeros; the panels as written are flat.
     const obj = readObj((await written(away))['roof.obj']!)
-    const given = file(offset, unit).split('\n').slice(0, cells.nodeCount).map((line) => line.split(' ').slice(1, 3).map((digits) => digits.replace(/\.?0+$/, '')))
+    const given = file(offset, unit)
+      .split('\n')
+      .slice(0, cells.nodeCount)
+      .map((line) =>
+        line
+          .split(' ')
+          .slice(1, 3)
+          .map((digits) => digits.replace(/\.?0+$/, '')),
+      )
     expect(obj.digits.map(([x, y]) => [x, y])).toEqual(given)
     expect(flatness(obj).zone / per).toBeLessThan(2e-6)
   })
 })
 
 describe('written files, read by the second reader', () => {
-  test.each(kinds.map((kind): [Kind, number] => [kind, 71]))('%s, seed %d: flatness and rise are those of the summary', async (kind, seed) => {
-    const { points, faces } = randomPlan(kind, seed)
-    const checked = await ask({ text: objText(points, faces), options: { near: true, rise: 0.5 } })
-    const { roof, plan: planFacts } = checked.answer.summary
-    const obj = readObj((await written(checked))['roof.obj']!)
-    expect(obj.panels).toHaveLength(planFacts.panels)
-    const measured = flatness(obj)
-    expect(Math.abs(1000 * measured.zone - roof!.flatnessMax_mm)).toBeLessThan(1e-9 + 1e-9 * roof!.flatnessMax_mm)
-    expect(Math.abs(1000 * measured.corner - roof!.cornerMax_mm)).toBeLessThan(1e-8 + 1e-8 * roof!.cornerMax_mm)
-    const z = obj.nodes.map(([, , height]) => height)
-    expect(Math.max(...z) - Math.min(...z)).toBeGreaterThanOrEqual(roof!.rise)
-  })
+  test.each(kinds.map((kind): [Kind, number] => [kind, 71]))(
+    '%s, seed %d: flatness and rise are those of the summary',
+    async (kind, seed) => {
+      const { points, faces } = randomPlan(kind, seed)
+      const checked = await ask({ text: objText(points, faces), options: { near: true, rise: 0.5 } })
+      const { roof, plan: planFacts } = checked.answer.summary
+      const obj = readObj((await written(checked))['roof.obj']!)
+      expect(obj.panels).toHaveLength(planFacts.panels)
+      const measured = flatness(obj)
+      expect(Math.abs(1000 * measured.zone - roof!.flatnessMax_mm)).toBeLessThan(1e-9 + 1e-9 * roof!.flatnessMax_mm)
+      expect(Math.abs(1000 * measured.corner - roof!.cornerMax_mm)).toBeLessThan(1e-8 + 1e-8 * roof!.cornerMax_mm)
+      const z = obj.nodes.map(([, , height]) => height)
+      expect(Math.max(...z) - Math.min(...z)).toBeGreaterThanOrEqual(roof!.rise)
+    },
+  )
 })

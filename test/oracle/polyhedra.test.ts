@@ -39,14 +39,46 @@ interface Body {
 
 const arccos = (value: number): number => Math.acos(value) * degrees
 const bodies: readonly Body[] = [
-  { name: 'cube, vertex up', vertices: cube, up: [1, 1, 1], nodes: 7, joints: 3, interior: 1, dim: 4, countSays: 4, dihedral: [90], tabulated: [90], rings: 2 },
-  { name: 'cuboctahedron, square up', vertices: signed(...permuted([1, 1, 0])), up: [0, 0, 1], nodes: 8, joints: 4, interior: 0, dim: 7, countSays: 7, dihedral: [arccos(-1 / Math.sqrt(3))], tabulated: [125.2644], rings: 2 },
-  { name: 'truncated octahedron, square up', vertices: signed(...permuted([0, 1, 2])), up: [0, 0, 1], nodes: 16, joints: 8, interior: 4, dim: 4, countSays: 3, dihedral: [arccos(-1 / 3), arccos(-1 / Math.sqrt(3))], tabulated: [109.4712, 125.2644], rings: 2 },
-  { name: 'dodecahedron, 2-fold axis up', vertices: dodecahedron, up: [0, 0, 1], nodes: 12, joints: 5, interior: 2, dim: 4, countSays: 4, dihedral: [arccos(-1 / Math.sqrt(5))], tabulated: [116.5651], rings: 2 },
-  { name: 'dodecahedron, face up', vertices: dodecahedron, up: [0, 1, golden], nodes: 15, joints: 10, interior: 5, dim: 4, countSays: 3, dihedral: [arccos(-1 / Math.sqrt(5))], tabulated: [116.5651], rings: 2 },
-  { name: 'icosahedron, 2-fold axis up', vertices: icosahedron, up: [0, 0, 1], nodes: 8, joints: 9, interior: 2, dim: 8, countSays: 8, dihedral: [arccos(-Math.sqrt(5) / 3)], tabulated: [138.1897], rings: 3 },
-  { name: 'rhombic dodecahedron, 4-fold axis up', vertices: [...cube, ...signed(...cyclic([2, 0, 0]))], up: [0, 0, 1], nodes: 9, joints: 4, interior: 1, dim: 5, countSays: 5, dihedral: [120], tabulated: [120], rings: 2 },
-  { name: 'rhombic triacontahedron, 2-fold axis up', vertices: [...dodecahedron, ...icosahedron], up: [0, 0, 1], nodes: 20, joints: 20, interior: 8, dim: 7, countSays: 7, dihedral: [144], tabulated: [144], rings: 3 },
+  {
+    name: 'cube, vertex up', vertices: cube, up: [1, 1, 1],
+    nodes: 7, joints: 3, interior: 1, dim: 4, countSays: 4,
+    dihedral: [90], tabulated: [90], rings: 2,
+  },
+  {
+    name: 'cuboctahedron, square up', vertices: signed(...permuted([1, 1, 0])), up: [0, 0, 1],
+    nodes: 8, joints: 4, interior: 0, dim: 7, countSays: 7,
+    dihedral: [arccos(-1 / Math.sqrt(3))], tabulated: [125.2644], rings: 2,
+  },
+  {
+    name: 'truncated octahedron, square up', vertices: signed(...permuted([0, 1, 2])), up: [0, 0, 1],
+    nodes: 16, joints: 8, interior: 4, dim: 4, countSays: 3,
+    dihedral: [arccos(-1 / 3), arccos(-1 / Math.sqrt(3))], tabulated: [109.4712, 125.2644], rings: 2,
+  },
+  {
+    name: 'dodecahedron, 2-fold axis up', vertices: dodecahedron, up: [0, 0, 1],
+    nodes: 12, joints: 5, interior: 2, dim: 4, countSays: 4,
+    dihedral: [arccos(-1 / Math.sqrt(5))], tabulated: [116.5651], rings: 2,
+  },
+  {
+    name: 'dodecahedron, face up', vertices: dodecahedron, up: [0, 1, golden],
+    nodes: 15, joints: 10, interior: 5, dim: 4, countSays: 3,
+    dihedral: [arccos(-1 / Math.sqrt(5))], tabulated: [116.5651], rings: 2,
+  },
+  {
+    name: 'icosahedron, 2-fold axis up', vertices: icosahedron, up: [0, 0, 1],
+    nodes: 8, joints: 9, interior: 2, dim: 8, countSays: 8,
+    dihedral: [arccos(-Math.sqrt(5) / 3)], tabulated: [138.1897], rings: 3,
+  },
+  {
+    name: 'rhombic dodecahedron, 4-fold axis up', vertices: [...cube, ...signed(...cyclic([2, 0, 0]))], up: [0, 0, 1],
+    nodes: 9, joints: 4, interior: 1, dim: 5, countSays: 5,
+    dihedral: [120], tabulated: [120], rings: 2,
+  },
+  {
+    name: 'rhombic triacontahedron, 2-fold axis up', vertices: [...dodecahedron, ...icosahedron], up: [0, 0, 1],
+    nodes: 20, joints: 20, interior: 8, dim: 7, countSays: 7,
+    dihedral: [144], tabulated: [144], rings: 3,
+  },
 ]
 
 /** Dihedral angles of all joints in degrees, ridges counted from the inside. */
@@ -60,7 +92,8 @@ function expectDihedrals(found: readonly number[], known: readonly number[]): vo
 
 describe.each(bodies)('$name', ({ vertices, up, nodes, joints, interior, dim, countSays, dihedral, tabulated, rings }) => {
   const { plan: of, height } = seenFrom(vertices, up)
-  const names = (at: number): string[] => [...height.keys()].filter((node) => Math.abs(height[node]! - at) < 1e-9).map((node) => `N${node + 1}`)
+  const names = (at: number): string[] =>
+    [...height.keys()].filter((node) => Math.abs(height[node]! - at) < 1e-9).map((node) => `N${node + 1}`)
   const levels = [...new Set(Array.from(height, (z) => Number(z.toFixed(9))))].sort((a, b) => b - a)
 
   test(`${nodes} nodes, ${joints} joints, ${interior} inside; dim ${dim}, and the bare count says ${countSays}`, () => {
@@ -81,7 +114,9 @@ describe.each(bodies)('$name', ({ vertices, up, nodes, joints, interior, dim, co
   // What lies level in the body lies level in the roof, the lowest at 0: then each further level is one number.
   test(`from the plan, its symmetry and ${rings - 1} height${rings > 2 ? 's' : ''} the dihedral angles come back`, () => {
     const lowest = levels[levels.length - 1]!
-    const equal: Condition[] = levels.filter((at) => names(at).length > 1).map((at) => ({ kind: 'equal', name: `ring ${at}`, at: { nodes: names(at) }, soft: null }))
+    const equal: Condition[] = levels
+      .filter((at) => names(at).length > 1)
+      .map((at) => ({ kind: 'equal', name: `ring ${at}`, at: { nodes: names(at) }, soft: null }))
     const ground = level('ground', { nodes: names(lowest) }, 0)
     expect(raise(of, { conditions: [...equal, ground] }).under.freedomLeft).toBe(rings - 1)
     const given = levels.slice(0, rings - 1).map((at) => level(`height ${at}`, { nodes: names(at).slice(0, 1) }, at - lowest))
@@ -95,11 +130,15 @@ describe.each(bodies)('$name', ({ vertices, up, nodes, joints, interior, dim, co
 test('dodecahedron, face up: heights 0, -1, -phi, slopes 2, stresses -1.701302 and -3.804226, areas 1.063314 and 2.377641', () => {
   // Exact: inner pentagon of radius 1 at 90 + 72 k degrees, next five at radius phi there, five more halfway between.
   const at = (radius: number, angle: number): [number, number] => [radius * Math.cos(angle / degrees), radius * Math.sin(angle / degrees)]
-  const points: Points = [0, 1, 2].flatMap((ring) => [0, 1, 2, 3, 4].map((k) => at(ring === 0 ? 1 : golden, (ring === 2 ? 126 : 90) + 72 * k)))
+  const points: Points = [0, 1, 2].flatMap((ring) =>
+    [0, 1, 2, 3, 4].map((k) => at(ring === 0 ? 1 : golden, (ring === 2 ? 126 : 90) + 72 * k)),
+  )
   const side = (k: number): number[] => [k, 5 + k, 10 + k, 5 + ((k + 1) % 5), (k + 1) % 5]
   const of = plan(points, [[0, 1, 2, 3, 4], ...[0, 1, 2, 3, 4].map(side)])
   const inner = ['N1', 'N2', 'N3', 'N4', 'N5']
-  const { under, verdict, roof, z } = raise(of, { conditions: [level('top', { nodes: inner }, 0), level('one height', { nodes: [points[5]!] }, -1)] })
+  const { under, verdict, roof, z } = raise(of, {
+    conditions: [level('top', { nodes: inner }, 0), level('one height', { nodes: [points[5]!] }, -1)],
+  })
   expect([under.freedomLeft, verdict]).toEqual([0, 'lifts'])
   z.forEach((value, node) => {
     const radius = Math.hypot(of.x[node]!, of.y[node]!)
@@ -119,20 +158,31 @@ test('dodecahedron, face up: heights 0, -1, -phi, slopes 2, stresses -1.701302 a
 
 // Exact: cos(fold) = cos^2 a + sin^2 a cos(turn) for two planes of slope a whose level eaves turn by that angle.
 describe.each([
-  [45, 90, 120, 35.2644], [30, 90, 138.5904, 22.2077], [35, 90, 132.1451, 26.341], [15, 90, 158.9094, 10.7286],
-  [30, 60, 151.045, 26.5651], [30, 120, 128.6822, 16.1021],
+  [45, 90, 120, 35.2644],
+  [30, 90, 138.5904, 22.2077],
+  [35, 90, 132.1451, 26.341],
+  [15, 90, 158.9094, 10.7286],
+  [30, 60, 151.045, 26.5651],
+  [30, 120, 128.6822, 16.1021],
 ])('hip of two %d degree slopes where the eaves turn by %d degrees', (slope, turn, dihedral, hipSlope) => {
   test(`dihedral ${dihedral}, hip slope ${hipSlope}`, () => {
     const half = (180 - turn) / 2 / degrees
     // Corner at the origin, the hip along +x, eaves of length 10 to both sides, a panel of depth 3 on each.
     const depth = 3
     const hip = depth / Math.sin(half)
-    const eave = (sign: number, along: number, inwards: number): [number, number] =>
-      [along * Math.cos(half) + inwards * Math.sin(half), sign * (along * Math.sin(half) - inwards * Math.cos(half))]
+    const eave = (sign: number, along: number, inwards: number): [number, number] => [
+      along * Math.cos(half) + inwards * Math.sin(half),
+      sign * (along * Math.sin(half) - inwards * Math.cos(half)),
+    ]
     const points: Points = [[0, 0], eave(-1, 10, 0), eave(-1, 10, depth), [hip, 0], eave(1, 10, depth), eave(1, 10, 0)]
-    const of = plan(points, [[0, 1, 2, 3], [0, 3, 4, 5]])
+    const of = plan(points, [
+      [0, 1, 2, 3],
+      [0, 3, 4, 5],
+    ])
     const rise = depth * Math.tan(slope / degrees)
-    const { under, verdict, z } = raise(of, { conditions: [level('eaves', { nodes: [points[0]!, points[1]!, points[5]!] }), level('one height', { nodes: [points[3]!] }, rise)] })
+    const { under, verdict, z } = raise(of, {
+      conditions: [level('eaves', { nodes: [points[0]!, points[1]!, points[5]!] }), level('one height', { nodes: [points[3]!] }, rise)],
+    })
     expect([under.freedomLeft, verdict]).toEqual([0, 'lifts'])
     const fold = Math.cos(slope / degrees) ** 2 + Math.sin(slope / degrees) ** 2 * Math.cos(turn / degrees)
     expect(dihedrals(of, z)[0]! + arccos(fold)).toBeCloseTo(180, 7)

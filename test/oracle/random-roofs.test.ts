@@ -20,7 +20,8 @@ import { kinds, randomPlan, type Kind } from '../make/random-plans.ts'
 /** Forces of frozen joints are rounding (at most 7e-13 in 1,500 cases), live ones are not (at least 1e-3). */
 const frozenForce = 1e-10
 
-const seeds = (from: number, count: number): [Kind, number][] => kinds.flatMap((kind) => Array.from({ length: count }, (_, k): [Kind, number] => [kind, from + k]))
+const seeds = (from: number, count: number): [Kind, number][] =>
+  kinds.flatMap((kind) => Array.from({ length: count }, (_, k): [Kind, number] => [kind, from + k]))
 
 function planOf(kind: Kind, seed: number): Plan {
   const { points, faces } = randomPlan(kind, seed)
@@ -43,7 +44,7 @@ describe('with the rim free', () => {
 /** Panels in how many groups when those across joints that do not fold are one. */
 function groupsAcross(of: Plan, live: readonly boolean[]): number {
   const group = Array.from({ length: of.panelCount }, (_, p) => p)
-  for (let joined = true; joined; ) {
+  for (let joined = true; joined;) {
     joined = false
     for (let j = 0; j < of.jointCount; j += 1) {
       const [a, b] = [group[of.panelOf[2 * j]!]!, group[of.panelOf[2 * j + 1]!]!]
@@ -74,15 +75,24 @@ function caseOf(kind: Kind, seed: number): Case {
   }
   const agrees = next() < 0.6
   const count = Math.floor(next() * 4)
-  const drawn = Array.from({ length: count }, (_, k) => randomCondition(of, next, `condition ${k}`, agrees ? lift : null, next() < 0.25 ? 0.5 + next() : null))
+  const drawn = Array.from({ length: count }, (_, k) =>
+    randomCondition(of, next, `condition ${k}`, agrees ? lift : null, next() < 0.25 ? 0.5 + next() : null),
+  )
   const hard = drawn.filter(({ condition }) => condition.soft === null)
-  const target = Float64Array.from({ length: of.nodeCount }, (_, i) => 0.2 * Math.cos(2 * of.work[2 * i]! + 1) * Math.cos(3 * of.work[2 * i + 1]!) + 0.02 * next())
+  const target = Float64Array.from(
+    { length: of.nodeCount },
+    (_, i) => 0.2 * Math.cos(2 * of.work[2 * i]! + 1) * Math.cos(3 * of.work[2 * i + 1]!) + 0.02 * next(),
+  )
   return { of, drawn, rows: hard.flatMap(({ rows }) => rows), values: hard.flatMap(({ values }) => values), target }
 }
 
 /** Soft rows as the program scales them, which the definition leaves to it: weight times nodes, shared among a condition's rows. */
 function softOf(of: Plan, drawn: readonly Drawn[]): Soft {
-  const made = conditionRows(of, drawn.map(({ condition }) => condition), 0)
+  const made = conditionRows(
+    of,
+    drawn.map(({ condition }) => condition),
+    0,
+  )
   if (!made.ok) throw new Error(made.problem.message)
   const { start, node, weight, value, condition } = made.value.soft
   const rows = Array.from(value, (_, r) => {
@@ -90,7 +100,9 @@ function softOf(of: Plan, drawn: readonly Drawn[]): Soft {
     for (let k = start[r]!; k < start[r + 1]!; k += 1) row[node[k]!]! += weight[k]!
     return row
   })
-  const weights = rows.map((_, r) => (drawn[condition[r]!]!.condition.soft! * of.nodeCount) / condition.filter((index) => index === condition[r]).length)
+  const weights = rows.map(
+    (_, r) => (drawn[condition[r]!]!.condition.soft! * of.nodeCount) / condition.filter((index) => index === condition[r]).length,
+  )
   return { rows, values: [...value], weights }
 }
 
@@ -116,14 +128,25 @@ describe('under random conditions', () => {
 })
 
 /** Conditions met to 1e-9 of the span, panels flat to rounding, and the nearest of all such roofs. */
-function expectRoofOfChoice(of: Plan, rows: readonly number[][], values: readonly number[], heights: Float64Array, right: readonly number[]): void {
+function expectRoofOfChoice(
+  of: Plan,
+  rows: readonly number[][],
+  values: readonly number[],
+  heights: Float64Array,
+  right: readonly number[],
+): void {
   rows.forEach((row, r) => expect(Math.abs(dot(row, heights) - values[r]!)).toBeLessThan(1e-9))
   expect(largestZone(of, heights)).toBeLessThan(1e-14)
   heights.forEach((height, i) => expect(Math.abs(height - right[i]!)).toBeLessThan(1e-8))
 }
 
 /** Of mu = 1 .. 1e8 by decades the least that brings every panel within 1 mm (plans are in metres), else 1e8. */
-function nearRoof(of: Plan, rows: readonly number[][], values: readonly number[], target: readonly number[]): { heights: number[]; isWithin: boolean } {
+function nearRoof(
+  of: Plan,
+  rows: readonly number[][],
+  values: readonly number[],
+  target: readonly number[],
+): { heights: number[]; isWithin: boolean } {
   const areas = areaShares(of)
   let heights: number[] = []
   for (let power = 0; power <= 8; power += 1) {
@@ -149,29 +172,40 @@ describe('asked for a rise', () => {
     roof!.heights.forEach((height, i) => expect(Math.abs(height - scale * near[i]!)).toBeLessThan(1e-8))
   })
 
-  test.each(seeds(51, 3))('%s, seed %d: with two nodes at heights of their own the wish is amplified until the rise is there', (kind, seed) => {
-    const of = planOf(kind, seed)
-    const [a, b] = [rim(of)[0]!, rim(of)[1]!]
-    const at = (node: number, height: number) => ({ kind: 'level', name: `at ${node}`, soft: null, at: { nodes: [`N${node + 1}`] }, level: height * of.frame.span }) as const
-    const wish = Array.from({ length: of.nodeCount }, (_, i) => 1 - 2 * of.work[2 * i]! ** 2 - 2 * of.work[2 * i + 1]! ** 2)
-    const asked = 0.3
-    const { roof, verdict } = raise(of, { conditions: [at(a, 0), at(b, 0.01)], target: Float64Array.from(wish), rise: asked })
-    const unit = (node: number): number[] => wish.map((_, i) => (i === node ? 1 : 0))
-    const set = roofs(of, [unit(a), unit(b)], [0, 0.01])
-    const isLift = foldSizes(of, set).some((force) => force > frozenForce)
-    expect(verdict === 'lifts' || verdict === 'lifts in part').toBe(isLift)
-    if (!isLift) return
-    const outer = outerRim(of)
-    const rise = (h: ArrayLike<number>): number => Math.max(...Array.from(h)) - Math.min(...outer.map((node) => h[node]!))
-    expect(rise(roof!.heights)).toBeCloseTo(asked, 9)
-    // h(a) = nearest to a * wish, with the a that gives this roof: from one node, held to all.
-    const areas = areaShares(of)
-    const [rest, one] = [nearest(set, wish.map(() => 0), areas), nearest(set, wish, areas)]
-    const way = one.map((height, i) => height - rest[i]!)
-    const most = way.reduce((best, value, i) => (Math.abs(value) > Math.abs(way[best]!) ? i : best), 0)
-    const amplitude = (roof!.heights[most]! - rest[most]!) / way[most]!
-    roof!.heights.forEach((height, i) => expect(Math.abs(height - rest[i]! - amplitude * way[i]!)).toBeLessThan(1e-8))
-  })
+  test.each(seeds(51, 3))(
+    '%s, seed %d: with two nodes at heights of their own the wish is amplified until the rise is there',
+    (kind, seed) => {
+      const of = planOf(kind, seed)
+      const [a, b] = [rim(of)[0]!, rim(of)[1]!]
+      const at = (node: number, height: number) =>
+        ({ kind: 'level', name: `at ${node}`, soft: null, at: { nodes: [`N${node + 1}`] }, level: height * of.frame.span }) as const
+      const wish = Array.from({ length: of.nodeCount }, (_, i) => 1 - 2 * of.work[2 * i]! ** 2 - 2 * of.work[2 * i + 1]! ** 2)
+      const asked = 0.3
+      const { roof, verdict } = raise(of, { conditions: [at(a, 0), at(b, 0.01)], target: Float64Array.from(wish), rise: asked })
+      const unit = (node: number): number[] => wish.map((_, i) => (i === node ? 1 : 0))
+      const set = roofs(of, [unit(a), unit(b)], [0, 0.01])
+      const isLift = foldSizes(of, set).some((force) => force > frozenForce)
+      expect(verdict === 'lifts' || verdict === 'lifts in part').toBe(isLift)
+      if (!isLift) return
+      const outer = outerRim(of)
+      const rise = (h: ArrayLike<number>): number => Math.max(...Array.from(h)) - Math.min(...outer.map((node) => h[node]!))
+      expect(rise(roof!.heights)).toBeCloseTo(asked, 9)
+      // h(a) = nearest to a * wish, with the a that gives this roof: from one node, held to all.
+      const areas = areaShares(of)
+      const [rest, one] = [
+        nearest(
+          set,
+          wish.map(() => 0),
+          areas,
+        ),
+        nearest(set, wish, areas),
+      ]
+      const way = one.map((height, i) => height - rest[i]!)
+      const most = way.reduce((best, value, i) => (Math.abs(value) > Math.abs(way[best]!) ? i : best), 0)
+      const amplitude = (roof!.heights[most]! - rest[most]!) / way[most]!
+      roof!.heights.forEach((height, i) => expect(Math.abs(height - rest[i]! - amplitude * way[i]!)).toBeLessThan(1e-8))
+    },
+  )
 })
 
 /** Nodes on rim loops that run clockwise. */

@@ -42,9 +42,39 @@ describe('barrel by profile: 18 x 12 m in bays of 1.5 m, section an arc of chord
     roof = await handed(bays(12, 8, 1.5), {
       unit: 'm',
       conditions: [
-        { name: 'south side', kind: 'level', at: { run: [[0, 0], [18, 0]] }, level: 0 },
-        { name: 'north side', kind: 'level', at: { run: [[0, 12], [18, 12]] }, level: 0 },
-        { name: 'west gable', kind: 'profile', at: { run: [[0, 0], [0, 12]] }, section: { arc: { rise: 2.4 } } },
+        {
+          name: 'south side',
+          kind: 'level',
+          at: {
+            run: [
+              [0, 0],
+              [18, 0],
+            ],
+          },
+          level: 0,
+        },
+        {
+          name: 'north side',
+          kind: 'level',
+          at: {
+            run: [
+              [0, 12],
+              [18, 12],
+            ],
+          },
+          level: 0,
+        },
+        {
+          name: 'west gable',
+          kind: 'profile',
+          at: {
+            run: [
+              [0, 0],
+              [0, 12],
+            ],
+          },
+          section: { arc: { rise: 2.4 } },
+        },
       ],
     })
   })
@@ -67,7 +97,12 @@ describe('barrel by profile: 18 x 12 m in bays of 1.5 m, section an arc of chord
   test('true panel widths 1887.6, 1664.1, 1553.3, 1505.6 mm, four types of 24; slopes 37.4, 25.7, 15.0, 4.96', () => {
     const widths = roof.numbers('panels.csv', 'area_m2').map((area) => (1000 * area) / 1.5)
     const slopes = roof.numbers('panels.csv', 'slope_deg')
-    const types = [[1887.6, 37.4, 1], [1664.1, 25.7, 1], [1553.3, 15, 1], [1505.6, 4.96, 2]] as const
+    const types = [
+      [1887.6, 37.4, 1],
+      [1664.1, 25.7, 1],
+      [1553.3, 15, 1],
+      [1505.6, 4.96, 2],
+    ] as const
     for (const [width, slope, digits] of types) {
       const same = [...widths.keys()].filter((panel) => Math.abs(widths[panel]! - width) < 0.05)
       expect(same).toHaveLength(24)
@@ -89,10 +124,30 @@ describe('barrel by profile: 18 x 12 m in bays of 1.5 m, section an arc of chord
 })
 
 describe('hipped roof: 18 x 12 m at 20 degrees, hips and ridge as joints', () => {
-  const text = objText([[0, 0], [18, 0], [18, 12], [0, 12], [6, 6], [12, 6]], [[0, 1, 5, 4], [1, 2, 5], [2, 3, 4, 5], [3, 0, 4]])
+  const text = objText(
+    [
+      [0, 0],
+      [18, 0],
+      [18, 12],
+      [0, 12],
+      [6, 6],
+      [12, 6],
+    ],
+    [
+      [0, 1, 5, 4],
+      [1, 2, 5],
+      [2, 3, 4, 5],
+      [3, 0, 4],
+    ],
+  )
   let roof: Handed
   beforeAll(async () => {
-    roof = await handed(text, { unit: 'm', shape: 'hipped', rise: 6 * Math.tan(20 / degrees), conditions: [{ name: 'eaves', kind: 'level', at: { rim: 'outer' }, level: 0 }] })
+    roof = await handed(text, {
+      unit: 'm',
+      shape: 'hipped',
+      rise: 6 * Math.tan(20 / degrees),
+      conditions: [{ name: 'eaves', kind: 'level', at: { rim: 'outer' }, level: 0 }],
+    })
   })
   test('one roof but for its rise; the ridge is level at +2.184 m', () => {
     const { stress, verdict, roof: facts } = roof.checked.answer.summary
@@ -115,7 +170,12 @@ describe('hipped roof: 18 x 12 m at 20 degrees, hips and ridge as joints', () =>
   })
   test('area 229.86 m2; catchments 72, 72, 36, 36 m2', () => {
     expect(sum(roof.numbers('panels.csv', 'area_m2'))).toBeCloseTo(229.86, 2)
-    expect(roof.numbers('panels.csv', 'plan_area_m2').sort((a, b) => b - a).map((area) => Number(area.toFixed(3)))).toEqual([72, 72, 36, 36])
+    expect(
+      roof
+        .numbers('panels.csv', 'plan_area_m2')
+        .sort((a, b) => b - a)
+        .map((area) => Number(area.toFixed(3))),
+    ).toEqual([72, 72, 36, 36])
   })
 })
 
@@ -135,7 +195,22 @@ describe('12 x 8 quads of 1.5 m under conditions', () => {
     expect(reason).toMatch(/all 96 panels level$/)
   })
   test('both long sides at level 0: 7 (every lift is f(x) + g(y), f constant, g zero at both ends)', () => {
-    const { under, verdict } = raise(grid(12, 8, { bay: 1.5 }), { conditions: [level('south', { run: [[0, 0], [18, 0]] }), level('north', { run: [[0, 12], [18, 12]] })] })
+    const { under, verdict } = raise(grid(12, 8, { bay: 1.5 }), {
+      conditions: [
+        level('south', {
+          run: [
+            [0, 0],
+            [18, 0],
+          ],
+        }),
+        level('north', {
+          run: [
+            [0, 12],
+            [18, 12],
+          ],
+        }),
+      ],
+    })
     expect([under.freedomLeft, verdict]).toEqual([7, 'lifts in part'])
   })
 
@@ -143,14 +218,21 @@ describe('12 x 8 quads of 1.5 m under conditions', () => {
   const counts = (rings: number, place?: Placed): [number, number | null, number] => {
     const of = hipGrid(rings, place)
     const { free, under } = raise(of, { conditions: [level('rim', { rim: 'outer' })] })
-    const held = [...of.rimPasses.keys()].filter((node) => of.rimPasses[node]! > 0).map((node) => {
-      const row = new Array<number>(of.nodeCount).fill(0)
-      row[node] = 1
-      return row
-    })
+    const held = [...of.rimPasses.keys()]
+      .filter((node) => of.rimPasses[node]! > 0)
+      .map((node) => {
+        const row = new Array<number>(of.nodeCount).fill(0)
+        row[node] = 1
+        return row
+      })
     return [free.freedom, under.freedomLeft, of.nodeCount - rank([...flatnessRows(of), ...held], of.nodeCount)]
   }
-  test.each([[1, 22], [2, 26], [3, 30], [4, 34]])('diagonals along the hips, %d at each corner: free rim %d, and so many ways left', (rings, free) => {
+  test.each([
+    [1, 22],
+    [2, 26],
+    [3, 30],
+    [4, 34],
+  ])('diagonals along the hips, %d at each corner: free rim %d, and so many ways left', (rings, free) => {
     expect(counts(rings)).toEqual([free, rings, rings])
   })
 
@@ -166,14 +248,25 @@ describe('12 x 8 quads of 1.5 m under conditions', () => {
     ['tapered one way: the ratios still cancel in pairs', (i, j) => [bay * i, bay * j * (1 + 0.02 * i)]],
   ]
   test.each(parallel)('%s: as many ways left as on square bays', (_, place) => {
-    expect([counts(1, place), counts(3, place)]).toEqual([[22, 1, 1], [30, 3, 3]])
+    expect([counts(1, place), counts(3, place)]).toEqual([
+      [22, 1, 1],
+      [30, 3, 3],
+    ])
   })
   const inside = (i: number, j: number): number => (i > 0 && i < 12 && j > 0 && j < 8 ? 0.1 : 0)
   const skewed: [string, Placed][] = [
     ['tapered both ways', (i, j) => [bay * i * (1 + 0.03 * j), bay * j * (1 + 0.02 * i)]],
-    ['straight rim, nodes inside moved by up to 0.1 m', (i, j) => [bay * i + inside(i, j) * Math.sin(7 * i + 3 * j), bay * j + inside(i, j) * Math.sin(5 * i - 2 * j)]],
+    [
+      'straight rim, nodes inside moved by up to 0.1 m',
+      (i, j) => [bay * i + inside(i, j) * Math.sin(7 * i + 3 * j), bay * j + inside(i, j) * Math.sin(5 * i - 2 * j)],
+    ],
   ]
   test.each(skewed)('%s: the same diagonals leave nothing', (_, place) => {
-    expect([1, 2, 3, 4].map((rings) => counts(rings, place))).toEqual([[22, 0, 0], [26, 0, 0], [30, 0, 0], [34, 0, 0]])
+    expect([1, 2, 3, 4].map((rings) => counts(rings, place))).toEqual([
+      [22, 0, 0],
+      [26, 0, 0],
+      [30, 0, 0],
+      [34, 0, 0],
+    ])
   })
 })
