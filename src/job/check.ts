@@ -27,6 +27,7 @@ import { flatnessFacts, writtenCoordinates, type Written } from './written.ts'
 export interface Checked {
   readonly answer: Answer
   readonly wishes: Wishes
+  readonly rows: ConditionRows
   /** For the next question about the same plan. */
   readonly free: FreeRim
   readonly under: UnderConditions
@@ -73,7 +74,7 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
   const free = known ?? (yield* freeRim(plan))
   const result = yield* raised(plan, free, nodeAreas(plan), questionOf(plan, wishes.value, rows.value, target.value.heights))
   const answer = yield* answerOf({ request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, notices: target.value.notices })
-  return ok({ answer, wishes: wishes.value, free, under: result.under })
+  return ok({ answer, wishes: wishes.value, rows: rows.value, free, under: result.under })
 }
 
 export function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {
@@ -116,7 +117,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
   const mm = conversion(plan.unit, 'mm')
   const heights = result.roof === null ? null : result.roof.heights.map((h) => h * span + (wishes.datum ?? 0))
   const written = heights === null ? null : yield* writtenCoordinates(plan, heights, wishes.decimals)
-  const { reason, reasonKind } = reasonFor(plan, result, rows, wishes.datum ?? 0)
+  const { reason, reasonKind } = reasonFor(plan, free, result, rows, wishes.datum ?? 0)
   const isNear = result.roof !== null && !result.roof.exact
   const summary: Summary = {
     version: pieces.version,

@@ -6,15 +6,19 @@ import type { Summary } from '../roof/answer/answer.ts'
 import type { ConditionRows } from '../roof/conditions/condition-rows.ts'
 import { propagation } from '../roof/conditions/propagation.ts'
 import { contradictionReason, forcedReason, words, worstContradiction } from '../roof/conditions/reason.ts'
-import { rowCount } from '../roof/conditions/rows.ts'
+import { joined, rowCount, rowList, type Rows } from '../roof/conditions/rows.ts'
 import type { Raised } from '../roof/raise/raise.ts'
+import type { FreeRim } from '../roof/stress/free-rim.ts'
+import { byConditions, byPlan } from './why-frozen.ts'
 
 type Reason = Pick<Summary, 'reason' | 'reasonKind'>
 
 /** The reason as a clause without a full stop; null for a plan that lifts. `datum` in the plan's unit. */
-export function reasonFor(plan: Plan, result: Raised, rows: ConditionRows, datum: number): Reason {
+export function reasonFor(plan: Plan, free: FreeRim, result: Raised, rows: ConditionRows, datum: number): Reason {
   if (result.verdict === 'lifts') return { reason: null, reasonKind: null }
-  if (rowCount(rows.hard) > 0) {
+  const unfolding = unfoldingWords(plan, free, result, rows)
+  if (unfolding !== null) return { reason: unfolding, reasonKind: 'clash' }
+  if (rowCount(rows.hard) + rowCount(rows.signed) > 0) {
     const found = propagation(plan, rows.hard)
     const worst = worstContradiction(found)
     if (worst !== null) return { reason: contradictionReason(plan, rows.held, found, worst, datum), reasonKind: 'clash' }
@@ -23,6 +27,25 @@ export function reasonFor(plan: Plan, result: Raised, rows: ConditionRows, datum
     if (forced !== null) return { reason: forced, reasonKind: 'propagation' }
   }
   return { reason: countWords(plan, result), reasonKind: 'rank' }
+}
+
+/** A form force asked of a joint that cannot fold, which says more than the clash that it makes; null: there is none. */
+function unfoldingWords(plan: Plan, free: FreeRim, result: Raised, rows: ConditionRows): string | null {
+  for (const { conditions } of result.clashes) {
+    for (const [index, { name, kind, joints }] of rows.held.entries()) {
+      if (kind !== 'form-force' || joints === null || !conditions.includes(name)) continue
+      const others = rowsOf(rows.hard, (condition) => condition !== index && conditions.includes(rows.held[condition].name))
+      for (const joint of joints) {
+        const why = free.frozen[joint] === 1 ? byPlan(plan, free, joint) : byConditions(plan, others, rows, joint)
+        if (why !== null) return `"${name}" cannot be met, since ${why.words}`
+      }
+    }
+  }
+  return null
+}
+
+function rowsOf(rows: Rows, takes: (condition: number) => boolean): Rows {
+  return joined(rowList().rows(), rows, Array.from(rows.condition.keys()).filter((row) => takes(rows.condition[row])))
 }
 
 function clashWords(plan: Plan, result: Raised): string {

@@ -8,18 +8,15 @@ import { emptyBrief, type Brief } from '../plan/project/brief.ts'
 import { noOptions, type NamedFile, type Options } from '../plan/project/options.ts'
 import { wishesOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
-import { nodeAreas } from '../roof/raise/nearest.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
-import { smoothestLifts } from '../roof/stress/smoothest-lifts.ts'
 import { answerTo, type Checked } from './check.ts'
 import { filesOf, type OutputFile } from './files.ts'
 import { targetOf } from './target.ts'
 import { version } from './run.ts'
+import { waysOf, type Way } from './ways.ts'
+import { whyFrozen, type FrozenReason } from './why-frozen.ts'
 
-/** One independent way in which the roof can still move: heights per node, 1 at its peak over its mean plane. */
-export interface Way {
-  readonly heights: Float64Array
-}
+export type { FrozenReason, Way }
 
 export class Session {
   private free: FreeRim | null = null
@@ -53,9 +50,12 @@ export class Session {
   /** The ways left under the conditions of the last answer, smoothest first, at most `count`. */
   ways(count: number): Result<readonly Way[]> {
     if (this.last === null) return fail('no-answer', 'there is no answer yet')
-    const { under, answer } = this.last
-    if (under.freedomLeft === null) return ok([])
-    return ok(smoothestLifts(under.space, under.tilts, nodeAreas(answer.plan), count).map((heights) => ({ heights })))
+    return ok(waysOf(this.last, count))
+  }
+
+  /** Why a joint cannot fold in any roof of the last answer; null: it can. */
+  whyFrozen(joint: number): Result<FrozenReason | null> {
+    return this.last === null ? fail('no-answer', 'there is no answer yet') : ok(whyFrozen(this.last, joint))
   }
 
   /** Heights of a second surface over every node; fails where it does not lie over the plan. */

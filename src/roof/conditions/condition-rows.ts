@@ -9,6 +9,7 @@ import { fallRows } from './fall.ts'
 import { flushRows } from './flush.ts'
 import { formForceRows } from './form-force.ts'
 import { levelRows } from './level.ts'
+import { jointsAt } from './places.ts'
 import { planeRows } from './plane.ts'
 import { profileRows } from './profile.ts'
 import { rowList, type Emit, type Rows } from './rows.ts'
@@ -26,6 +27,8 @@ export interface Held {
   readonly kind: string
   readonly soft: boolean
   readonly nodes: Int32Array
+  /** Joints that it names; null: its kind holds no joints. */
+  readonly joints: Int32Array | null
 }
 
 export interface ConditionRows {
@@ -50,7 +53,10 @@ export function conditionRows(plan: Plan, conditions: readonly Condition[], datu
   for (const [index, condition] of conditions.entries()) {
     const nodes = rowsOf(site, condition, (condition.soft === null ? hard : soft).emit(index), signed.emit(index))
     if (!nodes.ok) return { ok: false, problem: placed(nodes.problem, { entity: `condition "${condition.name}"` }) }
-    held.push({ name: condition.name, kind: condition.kind, soft: condition.soft !== null, nodes: nodes.value })
+    const joints = 'joints' in condition.at ? jointsAt(plan, condition.at) : null
+    held.push({
+      name: condition.name, kind: condition.kind, soft: condition.soft !== null, nodes: nodes.value, joints: joints?.ok === true ? joints.value : null,
+    })
   }
   const weighted = (rows: Rows): SoftRows => ({ ...rows, softWeight: Float64Array.from(rows.condition, (index) => conditions[index].soft ?? Infinity) })
   return ok({ hard: hard.rows(), soft: weighted(soft.rows()), signed: weighted(signed.rows()), held })

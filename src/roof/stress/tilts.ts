@@ -8,6 +8,34 @@ import type { Rows } from '../conditions/rows.ts'
 
 /** Dimension of the tilts that keep the rows with all values zero; `rows` null: nothing is held. */
 export function tiltDimension(plan: Plan, rows: Rows | null): number {
+  return 3 * plan.partCount - boundTilts(plan, rows).length
+}
+
+/** Most parts for which tilts are written out: their basis is (3 parts)^2 numbers. */
+const mostParts = 100
+
+/**
+ * Heights (length nodeCount) of independent tilts that keep the rows with all values zero, as many as `tiltDimension`
+ * says; none for plans of more than a hundred parts.
+ */
+export function freeTilts(plan: Plan, rows: Rows | null): Float64Array[] {
+  if (plan.partCount > mostParts) return []
+  const basis = boundTilts(plan, rows)
+  const bound = basis.length
+  const partOfNode = nodeParts(plan)
+  for (let k = 0; k < 3 * plan.partCount; k += 1) {
+    const unit = new Float64Array(3 * plan.partCount)
+    unit[k] = 1
+    addIndependent(basis, unit)
+  }
+  return basis.slice(bound).map((tilt) => Float64Array.from({ length: plan.nodeCount }, (_, node) => {
+    const at = 3 * partOfNode[node]
+    return tilt[at] + tilt[at + 1] * plan.work[2 * node] + tilt[at + 2] * plan.work[2 * node + 1]
+  }))
+}
+
+/** Orthonormal rows on the tilts (three numbers a part) that ties between parts and conditions are made of. */
+function boundTilts(plan: Plan, rows: Rows | null): Float64Array[] {
   const full = 3 * plan.partCount
   const basis: Float64Array[] = []
   for (const tie of tiesBetweenParts(plan)) addIndependent(basis, tie)
@@ -19,7 +47,7 @@ export function tiltDimension(plan: Plan, rows: Rows | null): number {
       addIndependent(basis, row)
     }
   }
-  return full - basis.length
+  return basis
 }
 
 /** Adds weight times the affine coordinates (1, x, y) of a node, seen from its part. */
