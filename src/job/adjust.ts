@@ -35,7 +35,8 @@ const counted_mm = 1
 export function* adjust(request: Request, version: string, sha256: string): Steps<Result<AdjustAnswer>> {
   const options = yield* withLevels(request)
   if (!options.ok) return options
-  const asked = { ...request, options: options.value }
+  // The tolerance is asked of the plan that is found, not of the one as drawn.
+  const asked = { ...request, options: { ...options.value, planTolerance_mm: 0 } }
   const made = yield* reading(asked)
   if (!made.ok) return made
   const { read, brief, target } = made.value

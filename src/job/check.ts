@@ -18,6 +18,7 @@ import type { UnderConditions } from '../roof/raise/under-conditions.ts'
 import { freeRim, type FreeRim } from '../roof/stress/free-rim.ts'
 import { conversion } from '../base/length.ts'
 import { withLevels } from './levels.ts'
+import { withinPlan, type WithinPlan } from './plan-tolerance.ts'
 import { reading } from './reading.ts'
 import { reasonFor } from './reason.ts'
 import type { Request } from './request.ts'
@@ -72,8 +73,13 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
   if (!rows.ok) return rows
 
   const free = known ?? (yield* freeRim(plan))
-  const result = yield* raised(plan, free, nodeAreas(plan), questionOf(plan, wishes.value, rows.value, target.value.heights))
-  const answer = yield* answerOf({ request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, notices: target.value.notices })
+  const question = questionOf(plan, wishes.value, rows.value, target.value.heights)
+  const result = yield* raised(plan, free, nodeAreas(plan), question)
+  const within = yield* withinPlan(plan, result, wishes.value, rows.value, question, request.options)
+  if (!within.ok) return within
+  const answer = yield* answerOf({
+    request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, within: within.value, notices: target.value.notices,
+  })
   return ok({ answer, wishes: wishes.value, rows: rows.value, free, under: result.under })
 }
 
@@ -107,6 +113,8 @@ interface Pieces {
   readonly rows: ConditionRows
   readonly free: FreeRim
   readonly result: Raised
+  /** The shift by which the plan lifts within its tolerance; null: it does not, or need not. */
+  readonly within: WithinPlan | null
   readonly notices: readonly string[]
 }
 
@@ -135,7 +143,8 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
       flatGroups: result.under.groupCount,
       clashes: result.clashes.map(({ conditions, misfit }) => ({ conditions, misfit_mm: misfit * span * mm })),
     },
-    verdict: result.verdict,
+    verdict: pieces.within === null ? result.verdict : 'lifts within plan tolerance',
+    ...(pieces.within === null ? {} : { planShift: pieces.within }),
     reason,
     reasonKind,
     roof: result.roof === null || written === null ? null : roofFacts(plan, wishes, result, written),

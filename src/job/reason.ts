@@ -64,7 +64,7 @@ function countWords(plan: Plan, result: Raised): string {
   if (groupCount === 1) return `no stress balances at every node${under}, so all ${plan.jointCount} joints stay unfolded and all ${plan.panelCount} panels share one plane`
   const size = new Int32Array(groupCount)
   for (const group of groupOf) size[group] += 1
-  const largest = size.indexOf(Math.max(...size))
+  const largest = size.indexOf(size.reduce((most, count) => Math.max(most, count), 0))
   const members = [...groupOf.keys()].filter((panel) => groupOf[panel] === largest).map(panelName)
   const joints = stuck.length === 1 ? `${jointName(stuck[0])} cannot fold` : `${stuck.length} of ${plan.jointCount} joints cannot fold (${words(stuck.map(jointName))})`
   return `${joints}${under}; the largest flat group has ${members.length} panels (${words(members)})`

@@ -55,7 +55,9 @@ export class Session {
 
   /** Why a joint cannot fold in any roof of the last answer; null: it can. */
   whyFrozen(joint: number): Result<FrozenReason | null> {
-    return this.last === null ? fail('no-answer', 'there is no answer yet') : ok(whyFrozen(this.last, joint))
+    if (this.last === null) return fail('no-answer', 'there is no answer yet')
+    const { answer, free, under, rows } = this.last
+    return ok(whyFrozen(answer.plan, free, under, rows, joint))
   }
 
   /** Heights of a second surface over every node; fails where it does not lie over the plan. */

@@ -23,8 +23,18 @@ export function waysOf({ answer, wishes, under, rows }: Checked, count: number):
     if (roof === null) return { ...way, riseUp: 0, riseDown: 0 }
     const { heights } = roof
     const rise = riseOf(heights, rim, rule)
-    const amount = step * (Math.max(...heights) - Math.min(...heights) || plan.frame.span)
+    const amount = step * (range(heights) || plan.frame.span)
     const moved = (by: number): number => (riseOf(heights.map((height, node) => height + by * way.heights[node]), rim, rule) - rise) / amount
     return { ...way, riseUp: moved(amount), riseDown: moved(-amount) }
   })
+}
+
+/** Highest less lowest. */
+function range(heights: Float64Array): number {
+  let low = Infinity, high = -Infinity
+  for (const height of heights) {
+    low = Math.min(low, height)
+    high = Math.max(high, height)
+  }
+  return high - low
 }

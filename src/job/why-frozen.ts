@@ -12,7 +12,6 @@ import type { Rows } from '../roof/conditions/rows.ts'
 import type { UnderConditions } from '../roof/raise/under-conditions.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
 import { zeroForceJoints, type ZeroForce } from '../roof/stress/zero-force-joints.ts'
-import type { Checked } from './check.ts'
 
 export interface FrozenReason {
   /** plan: with the rim free too; conditions: these freeze it. */
@@ -29,13 +28,8 @@ export interface FrozenReason {
   readonly words: string
 }
 
-/** The reason in an answer; null where the joint can fold. */
-export function whyFrozen({ answer, free, under, rows }: Checked, joint: number): FrozenReason | null {
-  return frozenReason(answer.plan, free, under, rows, joint)
-}
-
-/** The same from its parts. Where the conditions clash only what the plan itself freezes is frozen. */
-export function frozenReason(plan: Plan, free: FreeRim, under: UnderConditions, rows: ConditionRows, joint: number): FrozenReason | null {
+/** The reason; null where the joint can fold. Where the conditions clash only what the plan itself freezes is frozen. */
+export function whyFrozen(plan: Plan, free: FreeRim, under: UnderConditions, rows: ConditionRows, joint: number): FrozenReason | null {
   if (free.frozen[joint] === 1) return byPlan(plan, free, joint)
   if (under.start === null || under.frozen[joint] === 0) return null
   return byConditions(plan, rows.hard, rows, joint) ?? byGroup(plan, under.groupOf, joint, namesTouching(plan, rows, under.groupOf, joint))

@@ -1,11 +1,13 @@
 /** Why joints cannot fold, in words; and a form force asked of one. */
 import { describe, expect, test } from 'vitest'
 import type { Checked } from '../../src/job/check.ts'
-import { frozenReason, whyFrozen } from '../../src/job/why-frozen.ts'
+import { whyFrozen as reasonOf } from '../../src/job/why-frozen.ts'
 import { heldForce } from '../../src/plan/project/edits.ts'
 import { ask, objText } from '../make/ask.ts'
 import { grid } from '../make/plans.ts'
 import type { Plan } from '../../src/plan/plan.ts'
+
+const whyFrozen = ({ answer, free, under, rows }: Checked, joint: number) => reasonOf(answer.plan, free, under, rows, joint)
 
 const bond = objText(
   [[0, 0], [3, 0], [6, 0], [0, 1], [2, 1], [3, 1], [4, 1], [6, 1], [0, 2], [2, 2], [4, 2], [6, 2]],
@@ -91,7 +93,6 @@ describe('the conditions', () => {
   })
   test('where they clash only what the plan freezes is frozen', async () => {
     const made = await ask({ text: quads, brief: { conditions: [rim, { name: 'up', kind: 'level', at: { nodes: ['N1'] }, level: 1 }] } })
-    const { answer, free, under, rows } = made
-    for (let joint = 0; joint < answer.plan.jointCount; joint += 1) expect(frozenReason(answer.plan, free, under, rows, joint)).toBeNull()
+    for (let joint = 0; joint < made.answer.plan.jointCount; joint += 1) expect(whyFrozen(made, joint)).toBeNull()
   })
 })
