@@ -194,6 +194,18 @@ describe('12 x 8 quads of 1.5 m under conditions', () => {
     expect([stress.freedomLeft, held.frozenJoints, held.flatGroups, verdict]).toEqual([0, 172, 1, 'does not lift'])
     expect(reason).toMatch(/all 96 panels level$/)
   })
+  test.each([
+    ['dome', false],
+    ['pitched', false],
+    ['barrel', true],
+  ] as const)('nothing held, a datum of 1.5 and a rise of 0.7: a %s stands on the datum (hangs: %s)', async (shape, down) => {
+    const { answer } = await ask({ text: bays(12, 8, 1.5), options: { datum: 1.5, rise: 0.7, shape, down } })
+    const { plan, roof, summary } = answer
+    const rim = [...roof!.written].filter((_, node) => plan.rimPasses[node]! > 0)
+    expect(summary.roof!.rise).toBeCloseTo(0.7, 6)
+    expect(down ? Math.max(...rim) : Math.min(...rim)).toBeCloseTo(1.5, 6)
+    expect(down ? 1.5 - Math.min(...roof!.written) : Math.max(...roof!.written) - 1.5).toBeCloseTo(0.7, 6)
+  })
   test('both long sides at level 0: 7 (every lift is f(x) + g(y), f constant, g zero at both ends)', () => {
     const { under, verdict } = raise(grid(12, 8, { bay: 1.5 }), {
       conditions: [

@@ -58,11 +58,12 @@ export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): 
   if (ground.scaleFree) {
     const nearest = yield* nearestLift(space, start, metric, wish.heights, false)
     const kept = keptOf(ground, nearest, wish.heights)
-    const shape = kept >= keptShare ? nearest : smoothest(ground, wish)
+    const chosen = kept >= keptShare ? nearest : smoothest(ground, wish)
+    // Settled first: a rise from a stated datum changes when the roof is moved.
+    const shape = chosen === null ? null : settled(ground, chosen, wish)
     const rise = shape === null ? 0 : riseOf(shape, rim, wish.rule)
-    if (shape === null || rise === 0) return { heights: nearest, notice: null, kept }
-    const scaled = shape.map((height) => (height * (wish.rise ?? 0)) / rise)
-    return { heights: settled(ground, scaled, wish), notice: kept >= keptShare ? null : smoothestSaid, kept }
+    if (shape === null || rise === 0) return { heights: settled(ground, nearest, wish), notice: null, kept }
+    return { heights: shape.map((height) => (height * (wish.rise ?? 0)) / rise), notice: kept >= keptShare ? null : smoothestSaid, kept }
   }
   return yield* byAmplitude(ground, start, wish, wish.rise)
 }
@@ -84,15 +85,17 @@ function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: nu
       notice = smoothestSaid
     }
   }
-  const at = (a: number): Steps<Float64Array> => onSides(ground, rest.map((height, i) => height + a * direction[i]))
+  function* at(a: number): Steps<Float64Array> {
+    return settled(ground, yield* onSides(ground, rest.map((height, i) => height + a * direction[i])), wish)
+  }
   function* riseAt(a: number): Steps<number> {
     return riseOf(yield* at(a), rim, wish.rule)
   }
   const scale = riseOf(direction, rim, { ...wish.rule, datum: null }) + spread(direction)
-  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: settled(ground, yield* at(0), wish), notice, kept }
+  if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: yield* at(0), notice, kept }
   const unit = asked / scale
   const a = yield* amplitudeFor(riseAt, asked, unit)
-  return { heights: settled(ground, yield* at(a), wish), notice, kept }
+  return { heights: yield* at(a), notice, kept }
 }
 
 /** The nearest roof that keeps the one-sided conditions too. */
