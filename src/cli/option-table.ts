@@ -58,5 +58,5 @@ const forReading: readonly string[] = ['unit', 'scale', 'layer', 'snap', 'sagitt
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {
   if (command === 'read') return optionTable.filter(({ name }) => forReading.includes(name))
-  return command === 'adjust' ? optionTable.filter(({ name }) => name !== 'near') : optionTable.filter((entry) => entry.group !== 'What the plan keeps')
+  return command === 'adjust' ? optionTable.filter(({ name }) => name !== 'near') : optionTable.filter(({ name, group }) => name === 'plan-tolerance' || group !== 'What the plan keeps')
 }

@@ -16,6 +16,7 @@ import { raised, type Raised } from '../roof/raise/raise.ts'
 import { outerRimNodes, rimVariation, riseOf, type RiseRule } from '../roof/raise/rise.ts'
 import type { UnderConditions } from '../roof/raise/under-conditions.ts'
 import { freeRim, type FreeRim } from '../roof/stress/free-rim.ts'
+import type { LiftSpace } from '../roof/stress/lift-space.ts'
 import { conversion } from '../base/length.ts'
 import { withLevels } from './levels.ts'
 import { withinPlan, type WithinPlan } from './plan-tolerance.ts'
@@ -50,7 +51,7 @@ export function* check(request: Request, version: string, sha256: string): Steps
   return yield* answerTo({ request: { ...request, options: options.value }, version, sha256, read, brief, target, free: null })
 }
 
-/** A plan that has been read and what is asked of it; `free`: of the same plan, from an earlier answer (null: not known). */
+/** A plan that has been read and what is asked of it; `free` and `space`: of the same plan, from an earlier answer (null or absent: not known). */
 export interface PlanQuestion {
   readonly request: Request
   readonly version: string
@@ -60,10 +61,11 @@ export interface PlanQuestion {
   /** Heights set by hand (length nodeCount, NaN: none), in the place of the drawing's and of the brief's shape; null: none. */
   readonly target: Float64Array | null
   readonly free: FreeRim | null
+  readonly space?: LiftSpace | null
 }
 
 /** The second half of the job, which every edit of the brief repeats; the factor of the plan is found once and kept. */
-export function* answerTo({ request, version, sha256, read, brief, target: byHand, free: known }: PlanQuestion): Steps<Result<Checked>> {
+export function* answerTo({ request, version, sha256, read, brief, target: byHand, free: known, space }: PlanQuestion): Steps<Result<Checked>> {
   const { plan } = read
   const wishes = wishesOf(brief, request.options, plan.unit)
   if (!wishes.ok) return wishes
@@ -74,7 +76,7 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
 
   const free = known ?? (yield* freeRim(plan))
   const question = questionOf(plan, wishes.value, rows.value, target.value.heights)
-  const result = yield* raised(plan, free, nodeAreas(plan), question)
+  const result = yield* raised(plan, free, nodeAreas(plan), question, space ?? null)
   const within = yield* withinPlan(plan, result, wishes.value, rows.value, question, request.options)
   if (!within.ok) return within
   const answer = yield* answerOf({

@@ -13,8 +13,11 @@ export function headline(answer: Answer): string {
       return `${all} can be flat; ${leftClause(answer)}${rimClause(answer)}.`
     case 'lifts in part':
       return `${all} can be flat, but ${partClause(answer)}; ${leftClause(answer)}${rimClause(answer)}.`
-    case 'lifts within plan tolerance':
-      return `${all} can be flat once nodes move within the plan tolerance.`
+    case 'lifts within plan tolerance': {
+      const shift = answer.summary.planShift
+      const largest = shift === undefined ? '' : ` (largest shift ${shift.largest_mm < 0.01 ? 'less than 0.01' : String(Number(shift.largest_mm.toPrecision(2)))} mm)`
+      return `${all} can be flat once nodes move within the plan tolerance${largest}.`
+    }
     case 'lifts within tolerance': {
       const worst = roof === null ? '' : ` (worst ${flatnessWords(roof.flatnessMax_mm)})`
       return `The ${counted(panels, 'panel')} cannot be exactly flat, but the nearest roof keeps every panel within the tolerance${worst}.`

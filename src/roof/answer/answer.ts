@@ -78,6 +78,8 @@ export interface Summary {
   readonly stress: StressFacts
   readonly held: HeldFacts
   readonly verdict: Verdict
+  /** With the verdict `lifts within plan tolerance`: how far nodes have to move. */
+  readonly planShift?: { readonly largest_mm: number; readonly rms_mm: number }
   readonly reason: string | null
   readonly reasonKind: 'propagation' | 'clash' | 'rank' | null
   readonly roof: RoofFacts | null

@@ -20,8 +20,15 @@ export interface Bounds {
    * the way is seen.
    */
   slack(bound: number, work: Float64Array, from: Float64Array): number
-  /** Derivatives of the slack by the nodes' x and y, into `out`. */
-  gradient(bound: number, work: Float64Array, out: Float64Array): void
+  /**
+   * Derivatives of the slack by the nodes' x and y, into `out`; returns the slack itself. A shift is measured along the way to
+   * `toward`, where the node is about to go: it has no direction of its own while it stands where it was drawn.
+   */
+  gradient(bound: number, work: Float64Array, toward: Float64Array, out: Float64Array): number
+  /** Whether a plan may not be given out like this. */
+  broken(bound: number, work: Float64Array): boolean
+  /** The slack below which the next try of a step aims further inside. */
+  aim(bound: number): number
   /** The slack below which no step goes, not even for a moment: the panel would turn inside out. */
   floor(bound: number): number
 }
@@ -40,6 +47,8 @@ const leastTurn = 1e-3
 /** Shares of an edge and of a corner that are kept where nobody says otherwise. */
 const edgeShare = 0.25
 const angleShare = 0.5
+/** Bounds give a little, so a step aims inside what was given by this share, and what it gives out keeps it. */
+const inside = 0.01
 /** Share of a bound's margin that a step on the way may use up: the next step brings it back. */
 const passable = 0.8
 /** Edges shorter than this (in spans) are one point: their directions say nothing. */
@@ -64,14 +73,24 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
   const edges = edgeCount
   const shifts = options.largestShift === null ? 0 : nodeCount
   const mostAngle = Float64Array.from(least, (angle) => (Math.PI - angle > straight ? Math.PI - Math.min(leastTurn, (Math.PI - angle) / 10) : Infinity))
-  const leastAngle = Float64Array.from(least, (angle) => Math.min(angle, Math.max(angleShare * angle, options.leastAngle ?? 0)))
+  const leastAngle = Float64Array.from(least, (angle) => Math.min(angle, Math.max(angleShare * angle, (1 + inside) * (options.leastAngle ?? 0))))
   const leastLength = new Float64Array(edges)
   for (let e = 0; e < edges; e += 1) {
     const length = between(drawn, origin[2 * e], origin[2 * e + 1])
-    leastLength[e] = Math.min(length, Math.max(edgeShare * length, options.leastEdge ?? 0))
+    leastLength[e] = Math.min(length, Math.max(edgeShare * length, (1 + inside) * (options.leastEdge ?? 0)))
   }
+  const mostShift = (options.largestShift ?? Infinity) * (1 - inside)
   const edgeFrom = 2 * corners, shiftFrom = edgeFrom + edges
   const kindOf = (bound: number): BoundKind => (bound < corners ? 'convex' : bound < edgeFrom ? 'sharp' : bound < shiftFrom ? 'edge' : 'shift')
+  /** What somebody gave is kept to the last; what we chose ourselves only guards against panels that turn over. */
+  const isGiven = (bound: number): boolean => {
+    switch (kindOf(bound)) {
+      case 'convex': return false
+      case 'sharp': return options.leastAngle !== null
+      case 'edge': return options.leastEdge !== null
+      case 'shift': return true
+    }
+  }
   return {
     count: shiftFrom + shifts,
     cornersEnd: edgeFrom,
@@ -86,6 +105,9 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
         case 'edge': return [origin[2 * (bound - edgeFrom)], origin[2 * (bound - edgeFrom) + 1]]
         case 'shift': return [bound - shiftFrom]
       }
+    },
+    aim(bound) {
+      return isGiven(bound) ? -inside / 2 : this.floor(bound)
     },
     floor(bound) {
       switch (kindOf(bound)) {
@@ -111,14 +133,16 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
         return (along - leastLength[e]) / leastLength[e]
       }
       const n = bound - shiftFrom
-      return 1 - Math.hypot(work[2 * n] - drawn[2 * n], work[2 * n + 1] - drawn[2 * n + 1]) / (options.largestShift ?? 1)
+      return 1 - Math.hypot(work[2 * n] - drawn[2 * n], work[2 * n + 1] - drawn[2 * n + 1]) / mostShift
     },
-    gradient(bound, work, out) {
+    gradient(bound, work, toward, out) {
       if (bound < edgeFrom) {
         const c = 3 * (bound < corners ? bound : bound - corners)
         const sign = bound < corners ? -1 : 1
         angleGradient(work, nodes[c], nodes[c + 1], nodes[c + 2], sign, out)
-      } else if (bound < shiftFrom) {
+        return this.slack(bound, work, work)
+      }
+      if (bound < shiftFrom) {
         const e = bound - edgeFrom
         const a = origin[2 * e], b = origin[2 * e + 1]
         const scale = 1 / (between(work, a, b) * leastLength[e])
@@ -126,12 +150,23 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
         out[1] = (work[2 * a + 1] - work[2 * b + 1]) * scale
         out[2] = -out[0]
         out[3] = -out[1]
-      } else {
-        const n = bound - shiftFrom
-        const dx = work[2 * n] - drawn[2 * n], dy = work[2 * n + 1] - drawn[2 * n + 1]
-        const scale = -1 / (Math.max(Math.hypot(dx, dy), Number.MIN_VALUE) * (options.largestShift ?? 1))
-        out[0] = dx * scale
-        out[1] = dy * scale
+        return this.slack(bound, work, work)
+      }
+      const n = bound - shiftFrom
+      const dx = toward[2 * n] - drawn[2 * n], dy = toward[2 * n + 1] - drawn[2 * n + 1]
+      const scale = -1 / (Math.hypot(dx, dy) * mostShift)
+      out[0] = dx * scale
+      out[1] = dy * scale
+      return 1 + out[0] * (work[2 * n] - drawn[2 * n]) + out[1] * (work[2 * n + 1] - drawn[2 * n + 1])
+    },
+    broken(bound, work) {
+      const slack = this.slack(bound, work, work)
+      if (slack > 0) return false
+      switch (kindOf(bound)) {
+        case 'convex': return slack <= mostAngle[bound] - Math.PI
+        case 'sharp': return slack < -(isGiven(bound) ? inside : passable) * leastAngle[bound - corners]
+        case 'edge': return slack < -(isGiven(bound) ? inside : passable)
+        case 'shift': return slack < -inside
       }
     },
   }
@@ -170,7 +205,7 @@ const give = 1e-3
  * The bounds of the active set as rows that bring each to its limit, scaled to size 1, and beyond it by its `lead`: what the
  * straight step was seen to miss it by, since angles at short edges turn on the way.
  */
-export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], lead: ReadonlyMap<number, number>): RowBlock {
+export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], lead: ReadonlyMap<number, number>, toward: () => Float64Array): RowBlock {
   const lists = active.map((bound) => all.nodesOf(bound))
   const gradient = new Float64Array(6)
   return {
@@ -185,7 +220,7 @@ export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], l
       let e = firstEntry
       active.forEach((bound, i) => {
         const count = lists[i].length
-        all.gradient(bound, work, gradient)
+        const slack = all.gradient(bound, work, toward(), gradient)
         let squares = 0
         for (let k = 0; k < 2 * count; k += 1) squares += gradient[k] ** 2
         const scale = 1 / Math.sqrt(squares)
@@ -194,7 +229,7 @@ export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], l
           cy[e] = gradient[2 * k + 1] * scale
           e += 1
         }
-        right[firstRow + i] = ((lead.get(bound) ?? 0) - all.slack(bound, work, work)) * scale
+        right[firstRow + i] = ((lead.get(bound) ?? 0) - slack) * scale
       })
     },
   }

@@ -22,6 +22,8 @@ export interface SignClash {
 const localShare = 0.15
 /** .. and of the median of the larger ones of all panels. */
 const globalShare = 0.05
+/** A panel's smaller curvature below this share of its larger one is none. */
+const straightBelow = 0.05
 /** Each sign has to be found on this share of the panels of the part, so that a rough target does not trip the rule. */
 const leastShare = 0.02
 
@@ -48,6 +50,23 @@ export function signClash(plan: Plan, heights: Float64Array): SignClash | null {
     return { panels: sideBySide(plan, valleys, ridges), valleys: valleys.length, ridges: ridges.length, of: list.length }
   }
   return null
+}
+
+/**
+ * Share of the panels of one-sign parts over which the target is straight one way (0 to 1): barrels and cones are limits of
+ * domes, approached by ever longer panels and never reached.
+ */
+export function straightShare(plan: Plan, heights: Float64Array): number {
+  const part = oneSignParts(plan)
+  const curvature = principalCurvatures(plan, heights)
+  let straight = 0, of = 0
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    const [a, b] = [Math.abs(curvature[2 * p]), Math.abs(curvature[2 * p + 1])]
+    if (part[p] < 0 || Math.max(a, b) === 0) continue
+    of += 1
+    if (Math.min(a, b) < straightBelow * Math.max(a, b)) straight += 1
+  }
+  return of === 0 ? 0 : straight / of
 }
 
 /** One of each, the same panel or neighbours where possible. */

@@ -65,6 +65,8 @@ export interface Adjustment {
   readonly straightCount: number
   /** Bounds that hold at the end, by kind: how many, and the first corners or edges in question as nodes. */
   readonly active: readonly { readonly kind: BoundKind; readonly nodes: readonly number[] }[]
+  /** Bounds that it passes: the plan may not be given out. */
+  readonly broken: readonly { readonly kind: BoundKind; readonly nodes: readonly number[] }[]
 }
 
 /** Relative change of the shifts at which they count as settled; their sum of squares is then right to about its square. */
@@ -95,10 +97,12 @@ export function* adjusted(question: AdjustQuestion): Steps<Adjustment> {
   const run = new Run(plan, anchor, rise, mobile, all, fixedBlocks, shapeWeight, areas)
   const ended = yield* run.settle(question.settle ?? settled, question.farBeyond ?? null)
   if (ended !== 'far') yield* run.polish()
+  const named = (bound: number): Adjustment['active'][number] => ({ kind: all.kindOf(bound), nodes: all.nodesOf(bound) })
   return {
     state: run.state, ended, iterations: run.iterations, unflat: unflatness(plan, run.state.work, run.state.heights).largest,
     fixedCount: mobile.fixedCount, slidingCount: mobile.slidingCount, straightCount: passes.length / 3,
-    active: run.active.map((bound) => ({ kind: all.kindOf(bound), nodes: all.nodesOf(bound) })),
+    active: run.active.map(named),
+    broken: Array.from({ length: all.count }, (_, bound) => bound).filter((bound) => all.broken(bound, run.state.work)).map(named),
   }
 }
 
@@ -108,6 +112,8 @@ class Run {
   active: number[] = []
   private system: MoveSystem | null = null
   private builtFor = ''
+  /** Where the last step would have gone. */
+  private toward: Float64Array
   /** By bound: how far beyond its limit the step at hand aims (see `boundBlock`). */
   private readonly lead = new Map<number, number>()
   private penalty = 0
@@ -132,6 +138,7 @@ class Run {
     this.blocks = blocks
     this.heightCost = areas.map((area) => shapeWeight * area)
     this.first = all.cornersEnd
+    this.toward = anchor.work
     this.state = { work: anchor.work.slice(), heights: anchor.heights.slice() }
   }
 
@@ -141,7 +148,7 @@ class Run {
    */
   *settle(share: number, farBeyond: number | null): Steps<Adjustment['ended']> {
     const ended = yield* this.walk(share, farBeyond)
-    if (ended !== 'settled' || !this.turnsCorners()) return ended
+    if (ended === 'far' || ended === 'stuck' || !this.turnsCorners()) return ended
     this.first = 0
     return yield* this.walk(share, farBeyond)
   }
@@ -217,6 +224,7 @@ class Run {
       if (round === mostRounds) return move
       const first = system.stack.firstRow[this.blocks.length]
       const { work } = moved(this.state, move, 1)
+      this.toward = work
       // A bound that pulls the wrong way is let go, once a step; what the step would pass is held, or aimed at with a lead.
       const kept = this.active.filter((bound, i) => round > 0 || total.multipliers[first + i] >= 0 || this.all.slack(bound, this.state.work, this.state.work) < 0)
       const held = new Set(kept)
@@ -226,7 +234,7 @@ class Run {
         const slack = this.all.slack(bound, work, this.state.work)
         if (slack >= 0) continue
         if (!held.has(bound)) passed.push(bound)
-        else if (slack < this.all.floor(bound)) {
+        else if (slack < this.all.aim(bound)) {
           this.lead.set(bound, (this.lead.get(bound) ?? 0) - slack)
           isMissed = true
         }
@@ -240,7 +248,7 @@ class Run {
   private *prepared(fresh: boolean): Steps<MoveSystem> {
     const key = this.active.join()
     if (this.system === null || key !== this.builtFor) {
-      const stack = stacked([...this.blocks, boundBlock(this.plan, this.all, this.active, this.lead)])
+      const stack = stacked([...this.blocks, boundBlock(this.plan, this.all, this.active, this.lead, () => this.toward)])
       filled(stack, this.state)
       this.system = yield* moveSystem(stack, this.plan.nodeCount, this.mobile)
       this.builtFor = key

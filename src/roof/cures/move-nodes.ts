@@ -13,6 +13,7 @@ import { wishOf, type RaiseQuestion } from '../raise/raise.ts'
 import type { UnderConditions } from '../raise/under-conditions.ts'
 import { lessTilt } from '../stress/tilt-part.ts'
 import { adjusted, type Adjustment, type PlanKeeps } from './adjust.ts'
+import { straightShare } from './adjust-one-sign.ts'
 import { levelRefusal, oneSignRefusal, type Refusal } from './adjust-refusal.ts'
 import { coordinatesOf, movedPlan } from './moved-plan.ts'
 
@@ -82,7 +83,8 @@ export function* movedNodes(question: MoveQuestion): Steps<MoveOutcome> {
   for (let attempt = 0, shapeWeight = wish.target === null ? shapeOnlyWeight : targetWeight; attempt < mostTries; attempt += 1, shapeWeight *= 100) {
     const adjustment = yield* adjusted({ plan, target, riseWeight, elimination: under.space.elimination, areas, shapeWeight, keeps, farBeyond: question.farBeyond ?? null })
     if (adjustment.ended === 'far') return failed('too-far', 'nodes would have to move further than the plan tolerance', 'adjust the plan')
-    const outcome = outcomeOf(question, adjustment, target, range, placed.length)
+    let outcome = outcomeOf(question, adjustment, target, range, placed.length)
+    if (outcome.kind === 'failed') outcome = withCurvature(plan, target, outcome)
     if (outcome.kind !== 'failed' || outcome.code !== 'another-roof') return outcome
     last = outcome
   }
@@ -94,6 +96,9 @@ function outcomeOf({ plan, areas }: MoveQuestion, adjustment: Adjustment, target
   if (!(unflat <= flatBelow)) {
     const stop = adjustment.active.length === 0 ? '' : `, where corners or edges came to their limit (${limits(adjustment)})`
     return failed('not-found', `no plan near by was found that lifts: the panels stay ${(unflat * plan.frame.span).toPrecision(2)} ${plan.unit} out of flat${stop}`, 'release a condition, let rim nodes move, or divide panels')
+  }
+  if (adjustment.broken.length > 0) {
+    return failed('out-of-bounds', `the nearest plan that lifts ${brokenWords(adjustment)}`, 'allow more, or ask for a roof that is nearer to this plan')
   }
   let weight = 0, distance = 0
   for (let n = 0; n < plan.nodeCount; n += 1) {
@@ -111,7 +116,29 @@ function outcomeOf({ plan, areas }: MoveQuestion, adjustment: Adjustment, target
   return { kind: 'moved', moved: { plan: made.value, adjustment, target, heightError, targetRange: range, placed } }
 }
 
+/** Above this share of straight panels the target's zero curvature is named as the likely cause. */
+const mostlyStraight = 0.3
+
+function withCurvature(plan: Plan, target: Float64Array, outcome: Extract<MoveOutcome, { kind: 'failed' }>): MoveOutcome {
+  if (straightShare(plan, target) < mostlyStraight) return outcome
+  return {
+    ...outcome,
+    message: `${outcome.message}; the target has zero curvature (it is straight one way), and over panels with three joints at every node that is a limit which domes come near to and never reach`,
+    cure: 'give the target a little curvature along its straight way, or use panels with four joints at a node',
+  }
+}
+
 const failed = (code: string, message: string, cure: string): MoveOutcome => ({ kind: 'failed', code, message, cure })
+
+/** What the plan would break, by kind, the first nodes named. */
+function brokenWords({ broken }: Adjustment): string {
+  const words = { convex: 'turns corners inside out', sharp: 'makes corners too sharp', edge: 'makes edges too short', shift: 'moves nodes too far' }
+  const kinds = (['convex', 'sharp', 'edge', 'shift'] as const).map((kind) => broken.filter((each) => each.kind === kind)).filter((list) => list.length > 0)
+  return kinds.map((list) => {
+    const names = list.slice(0, 4).map(({ nodes }) => nodeName(nodes[nodes.length === 3 ? 1 : 0]))
+    return `${words[list[0].kind]} (${list.length}: at ${names.join(', ')}${list.length > names.length ? ' and more' : ''})`
+  }).join(' and ')
+}
 
 function limits({ active }: Adjustment): string {
   const names = active.slice(0, 3).map(({ nodes }) => nodes.map(nodeName).join('-'))
