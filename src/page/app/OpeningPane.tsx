@@ -1,6 +1,6 @@
 /** A drawing that is read and not accepted: the plan as read, and the reader's report beside it. */
 import { useCallback, useRef, useState, type PointerEvent } from 'react'
-import { figure } from '../../paper/drawing/figures.ts'
+import { counted, figure } from '../../paper/drawing/figures.ts'
 import { readDrawing, readWindow } from '../../paper/drawing/read-drawing.ts'
 import { panned, toPlan, toSheet, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import { sentence } from '../../base/result.ts'
@@ -58,7 +58,7 @@ export function OpeningPlan() {
       <header>
         <h2 id="opening-title">Plan as read</h2>
         <span className="note">click a face: panel or void</span>
-        <span className="note right">{plan === null ? '' : `${figure(plan.panelCount)} panels, ${figure(plan.rimIsVoid.reduce((s, v) => s + v, 0))} voids, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges`}</span>
+        <span className="note right">{plan === null ? '' : `${counted(plan.panelCount, 'panel')}, ${counted(plan.rimIsVoid.reduce((s, v) => s + v, 0), 'void')}, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges`}</span>
       </header>
       <div className="stage">
         <ListCanvas draw={draw} label="Plan as read; click a face to make it a panel or a void" onWheel={(factor, x, y) => shown.current !== null && setWindow(zoomed(shown.current, factor, x, y))}

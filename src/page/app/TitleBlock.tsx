@@ -62,6 +62,7 @@ function Verdict() {
   const problem = useDeskState((state) => state.problem)
   const opening = useDeskState((state) => state.opening)
   const busy = useDeskState((state) => state.busy)
+  const hasDoc = useDeskState((state) => state.doc !== null)
   const { leastSlope, flat_mm } = useLimits()
   const said = useMemo((): { sign: Sign; first: Piece[]; second: Piece[] } => {
     if (problem !== null) return { sign: 'not', first: [sentence(problem)], second: ['Nothing was replaced.'] }
@@ -75,9 +76,10 @@ function Verdict() {
         second: questions.length > 0 ? questions.map((question) => `${question.message}. `) : ['The plan is drawn as it was read; click a face to make it a void or a panel.'],
       }
     }
+    if (answer === null && hasDoc) return { sign: 'open', first: ['Working out the answer.'], second: ['Your drawing stays on this computer.'] }
     if (answer === null) return { sign: 'open', first: ['Drop a drawing anywhere, or open one.'], second: ['Your drawing stays on this computer.'] }
     return { sign: signOf(answer), first: firstSentence(answer), second: secondSentence(answer, readingFor(answer, 'slope', leastSlope, flat_mm), leastSlope, flat_mm) }
-  }, [answer, problem, opening, leastSlope, flat_mm])
+  }, [answer, hasDoc, problem, opening, leastSlope, flat_mm])
   const go = (to: Target): void => {
     if (to.kind === 'panel') desk.select({ kind: 'panel', index: to.index })
     else if (to.kind === 'flagged') desk.set({ filter: 'flagged', reading: 'slope', pane: 'list' })

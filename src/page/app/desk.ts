@@ -1,4 +1,5 @@
 /** The page's one object: its state, the worker it asks, and every command as a method that components and keys call. */
+import { counted } from '../../paper/drawing/figures.ts'
 import { isUnit } from '../../base/length.ts'
 import { fail, type Problem, type Result } from '../../base/result.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
@@ -21,6 +22,8 @@ export class Desk {
   private readonly engine: Engine
   private asked: Doc | null = null
   private question = 0
+  /** A newer document waits for the running question to end. */
+  private behind = false
   private readonly answers = new WeakMap<Doc, Answer>()
 
   constructor(engine: Engine, initial: Partial<State> = {}) {
@@ -178,7 +181,7 @@ export class Desk {
     const brief = opening.brief === null ? undefined : briefInUnit(opening.brief, opening.read.plan.unit)
     const doc = newDoc(opening.file.name, opening.read, brief)
     const { panels, repairs } = { panels: opening.read.plan.panelCount, repairs: opening.read.repairs.length }
-    this.begin(doc, 'Opened', `${panels} panels, ${repairs} repairs`)
+    this.begin(doc, 'Opened', `${counted(panels, 'panel')}, ${counted(repairs, 'repair')}`)
   }
 
   /** Starts anew with a document: its first step. */
@@ -256,15 +259,31 @@ export class Desk {
 
   // Answers
 
-  /** Asks the worker about the document in force; the last question wins, stale answers are dropped. */
+  /**
+   * Asks the worker about the document in force; the last question wins, stale answers are dropped. While something is in
+   * hand a running question is let finish and the newest follows it: cancelling each for the next would show none at all.
+   */
   async ask(): Promise<void> {
-    const { doc } = this.state
+    const { doc, inHand } = this.state
     if (doc === null || this.asked === doc) return
+    if (this.asked !== null && inHand !== null) {
+      this.behind = true
+      return
+    }
     this.asked = doc
+    this.behind = false
     const started = performance.now()
     const result = await this.working((onProgress) => this.engine.answer(doc, onProgress))
-    if (result === null || this.state.doc !== doc) return
-    this.asked = null
+    if (this.asked === doc) this.asked = null
+    const isNow = this.state.doc === doc
+    if (result !== null && (isNow || this.state.inHand !== null)) this.show(doc, result, isNow, performance.now() - started)
+    if (this.behind && this.asked === null) {
+      this.behind = false
+      void this.ask()
+    }
+  }
+
+  private show(doc: Doc, result: Result<Omit<Answer, 'plan'>>, isNow: boolean, answerMs: number): void {
     if (!result.ok) {
       this.set({ problem: result.problem, fresh: true })
       return
@@ -272,9 +291,9 @@ export class Desk {
     // The plan stays here: it does not come back with every answer.
     const answer = { ...result.value, plan: doc.plan }
     this.answers.set(doc, answer)
-    this.set({ answer, fresh: true, problem: null, answerMs: performance.now() - started })
+    this.set({ answer, fresh: isNow, problem: null, answerMs })
     if (this.state.inHand === null && this.state.desk === 'ways') void this.askWays()
-    else this.set({ ways: null })
+    else this.set({ ways: this.state.inHand === null ? null : this.state.ways })
   }
 
   /** Asks for the ways left; they are shown only on the desk that lists them. */
