@@ -38,7 +38,7 @@ export class Session {
     // Heights set by hand are the target whatever the options say of the drawing's.
     const asked = target === null ? options : { ...options, target: null, shape: null }
     const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options: asked, brief: null, levels: null, given: {} } as const
-    const made = await drive(answerTo({ request, version, sha256: '', read: this.read, brief, target, free: this.free }), driven)
+    const made = await drive(answerTo({ request, version, sha256: '', read: this.read, brief, target, free: this.free, space: this.last?.under.space ?? null }), driven)
     if (made === cancelled) return fail('cancelled', 'stopped before the end')
     if (made.ok) {
       this.free = made.value.free

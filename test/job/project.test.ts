@@ -42,8 +42,12 @@ function saved(source: Source, options: Partial<Options> = {}, brief: Brief = em
 }
 const fileOf = (project: Project): Source => encoded('hall.panewise.json', projectText(project))
 
-/** Everything that an answer says but where it came from, and every array of its plan and roof. */
-const said = ({ answer }: Checked): unknown => ({ ...answer, summary: { ...answer.summary, input: null } })
+/** Everything that an answer says but where it came from and what it offers, and every array of its plan and roof. */
+const said = ({ answer }: Checked): unknown => {
+  // What was offered and not taken stays behind with the drawing.
+  const repairs = answer.summary.repairs.filter(({ state }) => state !== 'proposed')
+  return { ...answer, summary: { ...answer.summary, input: null, repairs } }
+}
 
 /** What answers the questions that a drawing raises: the unit or scale that the reader itself proposes. */
 function answers(source: Source): Partial<Options> | null {

@@ -10,6 +10,7 @@ import { dualWalk } from '../stress/dual-walk.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
 import { flatGroups } from '../stress/frozen-joints.ts'
 import { stressOfGradients } from '../stress/forces.ts'
+import type { LiftSpace } from '../stress/lift-space.ts'
 import { panelPlanes, squaredResidual } from '../stress/panel-bases.ts'
 import { clashOf, type FoundClash } from './clash.ts'
 import { integrate } from './integrate.ts'
@@ -60,11 +61,12 @@ export interface Raised {
   readonly notices: readonly string[]
 }
 
-export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion): Steps<Raised> {
+/** `known`: the space of an earlier answer about the same plan, see `underConditions`. */
+export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, known: LiftSpace | null = null): Steps<Raised> {
   const { rows, rule } = question
   const { wish, rise } = wishOf(plan, question)
   const metric = metricOf(areas, rows.soft)
-  const { under, sides, clashes } = yield* keptBy(plan, free, areas, question, wish, metric)
+  const { under, sides, clashes } = yield* keptBy(plan, free, areas, question, wish, metric, known)
 
   const folding = plan.jointCount - under.frozen.reduce((sum, value) => sum + value, 0)
   const lifts = under.start !== null && (folding === plan.jointCount || question.pitched)
@@ -106,9 +108,11 @@ interface Kept {
 }
 
 /** What the hard conditions leave, equalities first and then what bounds one side; or the clash among them. */
-function* keptBy(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, wish: Float64Array, metric: Metric): Steps<Kept> {
+function* keptBy(
+  plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, wish: Float64Array, metric: Metric, known: LiftSpace | null,
+): Steps<Kept> {
   const { rows, names } = question
-  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas)
+  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas, known)
   if (under.rowClashes.length > 0) return { under, sides: null, clashes: under.rowClashes }
   if (under.start === null) return { under, sides: null, clashes: [yield* clashOf(plan, free, rows.hard, names, areas)] }
   if (rowCount(rows.signed) === 0) return { under, sides: null, clashes: [] }

@@ -6,7 +6,7 @@
 import { clashHeight, tau } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
-import { eliminate, type RowClash } from '../conditions/eliminate.ts'
+import { eliminate, type Elimination, type RowClash } from '../conditions/eliminate.ts'
 import { homogeneous } from '../conditions/homogeneous.ts'
 import { rowCount, type Rows } from '../conditions/rows.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
@@ -33,11 +33,15 @@ export interface UnderConditions {
   readonly groupCount: number
 }
 
-/** The roofs left by the hard rows; `names` are the conditions', `wish` heights in working measure (length nodeCount). */
+/**
+ * The roofs left by the hard rows; `names` are the conditions', `wish` heights in working measure (length nodeCount). `known`:
+ * a space of the same plan, whose factor serves again where the rows differ from its own in their values alone, as they do
+ * while a height or a force is dragged; null: there is none.
+ */
 export function* underConditions(
-  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array,
+  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array, known: LiftSpace | null = null,
 ): Steps<UnderConditions> {
-  const { start, space, rowClashes } = yield* feasibleRoof(plan, free, hard, names, wish, areas)
+  const { start, space, rowClashes } = yield* feasibleRoof(plan, free, hard, names, wish, areas, known)
   if (rowCount(hard) === 0) {
     const { tilts, frozen, groupOf, groupCount } = free
     return { space, rowClashes, start, freedomLeft: space.dimension, tilts, scaleFree: true, shiftFree: true, frozen, groupOf, groupCount }
@@ -53,15 +57,28 @@ export function* underConditions(
 
 /** The lift space of the rows and a roof in it that meets them, null when there is none. */
 export function* feasibleRoof(
-  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array,
+  plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], wish: Float64Array, areas: Float64Array, known: LiftSpace | null = null,
 ): Steps<{ space: LiftSpace; start: Float64Array | null; rowClashes: readonly RowClash[] }> {
   // With nothing held the flat roof is one.
   if (rowCount(hard) === 0) return { space: free.space, start: new Float64Array(plan.nodeCount), rowClashes: [] }
   const { elimination, clashes } = eliminate(hard, plan.nodeCount, names)
-  const space = yield* liftSpace(plan, free.bases, elimination)
+  const space = known !== null && sameSolution(known, free, elimination) ? { ...known, elimination } : yield* liftSpace(plan, free.bases, elimination)
   if (clashes.length > 0) return { space, start: null, rowClashes: clashes }
   const roof = yield* roofUnderConditions(space, wish)
   return { space, start: isLift(space, roof, areas) ? roof : null, rowClashes: [] }
+}
+
+/** Whether the space is of the same plan, with rows solved in the same way: T is what the factor is made of. */
+function sameSolution(known: LiftSpace, free: FreeRim, { free: unknowns, start, unknown, weight }: Elimination): boolean {
+  const { elimination } = known
+  return known.bases === free.bases && same(elimination.free, unknowns) && same(elimination.start, start) &&
+    same(elimination.unknown, unknown) && same(elimination.weight, weight)
+}
+
+function same(a: Int32Array | Float64Array, b: Int32Array | Float64Array): boolean {
+  if (a.length !== b.length) return false
+  for (let i = 0; i < a.length; i += 1) if (a[i] !== b[i]) return false
+  return true
 }
 
 /**

@@ -1,0 +1,43 @@
+/** A session keeps factors between edits: whatever was asked before, an answer is the one that a new session gives. */
+import { expect, test } from 'vitest'
+import { random } from '../../src/base/random.ts'
+import { sentence, type Result } from '../../src/base/result.ts'
+import { Session } from '../../src/job/session.ts'
+import { emptyBrief, type Brief } from '../../src/plan/project/brief.ts'
+import type { Condition } from '../../src/plan/project/condition.ts'
+import { heldForce, heldNode, heldPlane } from '../../src/plan/project/edits.ts'
+import { noOptions } from '../../src/plan/project/options.ts'
+import { grid } from '../make/plans.ts'
+import { level } from '../make/raise.ts'
+
+const value = <T>(made: Result<T>): T => {
+  if (!made.ok) throw new Error(sentence(made.problem))
+  return made.value
+}
+
+test.each([1, 2, 3])('drags, switches and clashes in any order, seed %i', async (seed) => {
+  const next = random(seed)
+  const on = grid(7, 5, { loose: 0.1, seed })
+  const read = { plan: on, heights: null, marks: { points: new Float64Array(), layer: new Int32Array(), layers: [] }, repairs: [], questions: [], leftOut: [], notices: [] }
+  const kept = new Session(read, 'it')
+  const pick = (n: number): number => Math.floor(next() * n)
+  let conditions: readonly Condition[] = []
+  let reused = 0
+  let space: unknown = null
+  for (let edit = 0; edit < 25; edit += 1) {
+    // Mostly the value of what is held already, as a drag asks; now and then another condition, or all of them gone.
+    const make = [
+      () => heldNode(3, next()), () => heldForce(20, next() - 0.5), () => heldPlane(9, 20 * next(), 360 * next()), () => heldForce(31, next() < 0.5 ? 'ridge' : 'valley'),
+      () => level('two', { nodes: ['N1', 'N40'] }, next()), () => heldNode(pick(on.nodeCount), next()),
+    ]
+    const made = make[next() < 0.6 ? pick(2) : pick(make.length)]!()
+    conditions = next() < 0.06 ? [] : [...conditions.filter(({ name }) => name !== made.name), made].slice(-4).sort((a, b) => (a.name < b.name ? -1 : 1))
+    const brief: Brief = { ...emptyBrief, rise: 1, conditions }
+    const here = value(await kept.answer(brief, noOptions, null))
+    const fresh = value(await new Session(read, 'it').answer(brief, noOptions, null))
+    expect(here.answer).toEqual(fresh.answer)
+    if (conditions.length > 0 && here.under.space.factor === space) reused += 1
+    space = here.under.space.factor
+  }
+  expect(reused).toBeGreaterThan(3)
+})
