@@ -8,7 +8,7 @@ import { gaussians, random } from '../../../src/base/random.ts'
 import { analyse } from '../../../src/base/sparse/analyse.ts'
 import { cliquePattern } from '../../../src/base/sparse/cliques.ts'
 import { factor, refactor, type Factor } from '../../../src/base/sparse/factor.ts'
-import { inertia } from '../../../src/base/sparse/inertia.ts'
+import { inertia, type Inertia } from '../../../src/base/sparse/inertia.ts'
 import type { SymmetricMatrix } from '../../../src/base/sparse/matrix.ts'
 import { multiply, residual } from '../../../src/base/sparse/multiply.ts'
 import { dissection } from '../../../src/base/sparse/order.ts'
@@ -316,6 +316,22 @@ describe('inertia', () => {
     const g = factorOf(swap, line)
     expect(inertia(g).zero).toBe(2)
     expect(residual(swap, refined(g, swap, load), load)).toBeLessThan(rounding)
+  })
+
+  test('a pivot lost in rounding counts as zero, one of 1e-13 does not', () => {
+    // [a b; b b^2 / a] is singular; its last number rounded to either neighbour leaves one unit in the last place, at most 2^-52 of it.
+    const { pattern } = cliquePattern(2, Int32Array.of(0, 2), Int32Array.of(0, 1))
+    let rounded = 0
+    for (let k = 1; k <= 60; k++) {
+      const [a, b] = [0.7 + k / 13, 0.3 + k / 17]
+      const corner = (b / a) * b
+      const near = corner + ((k % 3) - 1) * 0.7 * 2 ** -52 * corner
+      if (near !== corner) rounded++
+      const count = (last: number): Inertia => inertia(factorOf({ pattern, values: Float64Array.of(a, b, last) }, Float64Array.of(0, 0, 1, 0)))
+      expect(count(near)).toEqual({ negative: 0, zero: 1, positive: 1 })
+      expect(count(corner - 1e-13)).toEqual({ negative: 1, zero: 0, positive: 1 })
+    }
+    expect(rounded).toBe(40)
   })
 
   test('values that are not finite are refused', () => {
