@@ -327,7 +327,8 @@ describe('inertia', () => {
       const corner = (b / a) * b
       const near = corner + ((k % 3) - 1) * 0.7 * 2 ** -52 * corner
       if (near !== corner) rounded++
-      const count = (last: number): Inertia => inertia(factorOf({ pattern, values: Float64Array.of(a, b, last) }, Float64Array.of(0, 0, 1, 0)))
+      const count = (last: number): Inertia =>
+        inertia(factorOf({ pattern, values: Float64Array.of(a, b, last) }, Float64Array.of(0, 0, 1, 0)))
       expect(count(near)).toEqual({ negative: 0, zero: 1, positive: 1 })
       expect(count(corner - 1e-13)).toEqual({ negative: 1, zero: 0, positive: 1 })
     }
