@@ -5,6 +5,7 @@ import { sentence } from '../../../src/base/result.ts'
 import { briefSchema } from '../../../src/plan/project/brief-schema.ts'
 import { briefOf, readBrief } from '../../../src/plan/project/brief.ts'
 import { misfit } from '../../../src/plan/project/schema.ts'
+import { mutated } from './mutated.ts'
 import { valid } from './standard-schema.ts'
 
 /** One condition of each kind, and every field of a brief. */
@@ -135,28 +136,6 @@ describe('schema', () => {
       if (field !== 'panewise' && field !== 'version' && field !== 'conditions') expect(schema).toHaveProperty('description')
     }
   })
-
-  /** A copy of the value with one thing in it changed at random. */
-  function mutated(value: unknown, next: () => number): unknown {
-    const junk = [null, true, -1, 0, 95, 'N7', 'all', 'level', 'outer', [], {}, [[0, 0], [1, 1]], { rim: 'outer' }, { run: [[0, 0], [1, 1]] }, 'void:1,2']
-    const pick = <T>(list: readonly T[]): T => list[Math.floor(next() * list.length)]!
-    if (next() < 0.12 || typeof value !== 'object' || value === null) return structuredClone(pick(junk))
-    if (Array.isArray(value)) {
-      const list: unknown[] = [...(value as unknown[])]
-      const i = Math.floor(next() * list.length)
-      if (next() < 0.2) list.splice(i, 1)
-      else if (next() < 0.2) list.push(list[i])
-      else list[i] = mutated(list[i], next)
-      return list
-    }
-    const entries = Object.entries(value)
-    if (entries.length === 0) return { kind: 'equal' }
-    const i = Math.floor(next() * entries.length)
-    if (next() < 0.15) entries.splice(i, 1)
-    else if (next() < 0.2) entries.push([pick(['level', 'at', 'name', 'soft', 'section', 'rim', 'nodes', 'x']), pick(junk)])
-    else entries[i] = [entries[i]![0], mutated(entries[i]![1], next)]
-    return Object.fromEntries(entries)
-  }
 
   test('agrees with the standard reading of it on 20,000 changed briefs, seed 1', () => {
     const next = random(1)
