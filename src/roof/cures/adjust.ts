@@ -73,8 +73,11 @@ export interface Adjustment {
 export const settled = 1e-3
 
 const mostSteps = 60
-/** What creeps is ended: the merit has to fall by this share in so many steps. */
+/** Steps below this share of the shifts change the merit, a sum of squares, by less than its rounding shows. */
+const unresolved = 1e-6
+/** What creeps is ended: in so many steps the merit has to fall by the first share, or the step by the second. */
 const leastGain = 0.02
+const leastSettling = 0.3
 const patience = 8
 /** So many times `farBeyond` is out of reach. */
 const outOfReach = 3
@@ -160,25 +163,30 @@ class Run {
 
   private *walk(share: number, farBeyond: number | null): Steps<Adjustment['ended']> {
     let merits: number[] = []
+    let changes: number[] = []
     let penalty = this.penalty
     for (let step = 0; step < mostSteps; step += 1) {
       yield { stage: 'Adjusting', done: 1 - 0.8 ** step }
       this.iterations += 1
       const to = yield* this.proposed()
       const taken = this.searched(to)
-      if (taken === null) return 'stuck'
       const size = rootMeanSquare(difference(this.state.work, this.anchor.work))
+      if (taken === null) return rootMeanSquare(to.plan) <= unresolved * size + flatEnough ? 'settled' : 'stuck'
       const change = rootMeanSquare(difference(taken.work, this.state.work))
       const lift = rootMeanSquare(difference(taken.heights, this.state.heights))
       this.state = taken
       if (farBeyond !== null && largest(difference(taken.work, this.anchor.work)) > outOfReach * farBeyond) return 'far'
       if (change <= share * size + flatEnough && lift <= share * size + flatEnough) return 'settled'
       // Merits of different penalties do not compare.
-      if (this.penalty > penalty) merits = []
+      if (this.penalty > penalty) {
+        merits = []
+        changes = []
+      }
       penalty = this.penalty
       merits.push(this.merit(taken))
       const now = merits.length - 1
-      if (now >= patience && merits[now] > (1 - leastGain) * merits[now - patience]) return 'slow'
+      changes.push(change)
+      if (now >= patience && merits[now] > (1 - leastGain) * merits[now - patience] && change > leastSettling * changes[now - patience]) return 'slow'
     }
     return 'slow'
   }
