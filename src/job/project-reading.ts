@@ -2,11 +2,10 @@
 import { fail, ok, placed, type Result } from '../base/result.ts'
 import type { Source } from '../formats/format.ts'
 import { decodedText } from '../formats/text-encoding.ts'
-import { faceAt } from '../plan/drawn-faces.ts'
 import type { Options } from '../plan/project/options.ts'
 import type { Project } from '../plan/project/project-record.ts'
 import { documentKind, readProject } from '../plan/project/read-project.ts'
-import { turnedFace } from '../plan/project/turned-face.ts'
+import { withVoids } from '../plan/project/turned-face.ts'
 import { readOptionsOf } from '../plan/project/wishes.ts'
 
 /** Longest blank start of a document: what people put before the first brace. */
@@ -29,19 +28,12 @@ export function withOptions(project: Project, options: Options, file: string): R
   if (options.unit !== null && options.unit !== unit) {
     return fail('unit-settled', `the plan of this project is in ${unit}`, { file, field: '--unit' }, `leave --unit out, or read the drawing "${project.name}" anew`)
   }
-  let now = project
-  for (const [x, y] of readOptionsOf(project.brief, options, unit).voids) {
-    const face = faceAt(now.faces, x, y)
-    if (face < 0) return fail('void-nowhere', 'the void point lies in no bounded region', { file, at: [x, y] }, 'put it inside the void, clear of its lines')
-    if (now.faces.isVoid[face] === 1) continue
-    const next = turnedFace(now, face)
-    if (!next.ok) return { ok: false, problem: placed(next.problem, { file }) }
-    now = next.value.project
-  }
+  const made = withVoids(project, readOptionsOf(project.brief, options, unit).voids)
+  if (!made.ok) return { ok: false, problem: placed(made.problem, { file }) }
   const idle = [
     ...(options.scale === null ? [] : ['--scale']), ...(options.layers === null ? [] : ['--layer']), ...(options.snap_mm === null ? [] : ['--snap']),
     ...(options.sagitta_mm === null ? [] : ['--sagitta']), ...(options.accept.length === 0 ? [] : ['--accept']),
   ]
   const notices = idle.length === 0 ? [] : [`The plan of a project is as it was accepted: ${idle.join(', ')} ${idle.length === 1 ? 'changes' : 'change'} nothing.`]
-  return ok({ project: now, notices })
+  return ok({ project: made.value, notices })
 }

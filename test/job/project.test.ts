@@ -113,6 +113,13 @@ describe('what is asked of a project', () => {
     }
     expect(await run(request(fileOf(saved(bays!)), { voids: [[-50, 0]] }))).toMatchObject({ ok: false, problem: { code: 'void-nowhere', where: { at: [-50, 0] } } })
   })
+  test('a brief that names voids does so on a project as on its drawing', async () => {
+    const brief = value(briefOf({ panewise: 'brief', version: 1, voids: [[6.75, 5.25]] }))
+    const { panels } = (await answer(bays!, {}, briefText(brief))).answer.summary.plan
+    expect((await answer(fileOf(saved(bays!, {}, brief)))).answer.summary.plan.panels).toBe(panels)
+    expect((await answer(fileOf(saved(bays!)), {}, briefText(brief))).answer.summary.plan.panels).toBe(panels)
+    expect((await answer(fileOf(saved(bays!)))).answer.summary.plan.panels).toBe(panels + 1)
+  })
   test('a brief in the place of a plan is sent to its option', async () => {
     expect(await run(request(encoded('b.json', briefText(emptyBrief))))).toMatchObject({ ok: false, problem: { code: 'brief-as-plan', cure: 'give it with --brief, beside a plan' } })
   })

@@ -46,6 +46,13 @@ export interface KeepOptions {
 
 export const noKeeps: KeepOptions = { stay: [], rimNodes: 'slide', bend: false, largestShift: null, leastEdge: null, leastCorner_deg: null }
 
+/** In the drawing's own coordinates and unit; the length as typed. */
+export interface ScaleFrom {
+  readonly from: Point
+  readonly to: Point
+  readonly length: TypedLength
+}
+
 export interface Options {
   // How the drawing is read.
   /** The drawing's unit, whatever the file says. */
@@ -59,6 +66,10 @@ export interface Options {
   readonly voids: readonly Point[] | null
   /** Codes of proposals that the user takes, or "all". */
   readonly accept: readonly string[]
+  /** Codes of proposals that the user leaves, or "all": their questions are answered with no. */
+  readonly leave: readonly string[]
+  /** Two points of the drawing and how far apart they truly are. */
+  readonly scaleFrom: ScaleFrom | null
 
   // What must hold.
   /** free: the outer rim floats; level: it is level at the datum, or at this level. null: as the brief has it. */
@@ -92,7 +103,7 @@ export interface Options {
 }
 
 export const noOptions: Options = {
-  unit: null, scale: null, layers: null, snap_mm: null, sagitta_mm: null, voids: null, accept: [],
+  unit: null, scale: null, layers: null, snap_mm: null, sagitta_mm: null, voids: null, accept: [], leave: [], scaleFrom: null,
   rim: null, datum: null, levels: null, levelsWithin: null, pitch_deg: null, bearing_deg: null,
   rise: null, down: false, shape: null, target: null,
   keeps: noKeeps, planTolerance_mm: null,

@@ -2,8 +2,9 @@
  * The project: a plan as it was accepted and what is asked of its roof, as one readonly record. The page's steps are older
  * records, so undo is a look at one of them; edits (`edits.ts`) make new ones.
  */
+import { conversion } from '../../base/length.ts'
 import { ok, type Result } from '../../base/result.ts'
-import { drawnFaces, nodePoints, planOfFaces, type DrawnFaces } from '../drawn-faces.ts'
+import { drawnFaces, faceAt, nodePoints, planOfFaces, type DrawnFaces } from '../drawn-faces.ts'
 import type { ReadPlan } from '../read-plan.ts'
 import type { Brief } from './brief.ts'
 
@@ -15,7 +16,7 @@ export interface Project {
   readonly faces: DrawnFaces
   /** Plan, heights that the drawing gave, and what reading it did. */
   readonly read: ReadPlan
-  /** Its `voids` are null: the faces say which are. */
+  /** Its `voids` are those that the faces do not have yet; null: none. */
   readonly brief: Brief
   /**
    * Heights that the roof comes near to, set by hand (length nodeCount, NaN: none), in the place of shape and drawing.
@@ -32,10 +33,16 @@ export interface Project {
 /** What a project adds to a plan that was read. */
 export type Asked = Pick<Project, 'name' | 'sha256' | 'brief' | 'target' | 'leastSlope'>
 
-/** The project of a plan as it was read; proposals that were not taken are left behind with the drawing. */
+/**
+ * The project of a plan as it was read; proposals that were not taken are left behind with the drawing, and so are voids of
+ * the brief that the plan has.
+ */
 export function projectOf(read: ReadPlan, { name, sha256, brief, target, leastSlope }: Asked): Project {
   const kept: ReadPlan = { ...read, repairs: read.repairs.filter(({ state }) => state !== 'proposed'), questions: [] }
-  return { name, sha256, faces: drawnFaces(read.plan, read.heights), read: kept, brief: { ...brief, voids: null }, target, leastSlope }
+  const faces = drawnFaces(read.plan, read.heights)
+  const factor = conversion(brief.unit ?? faces.unit, faces.unit)
+  const voids = (brief.voids ?? []).filter(([x, y]) => faces.isVoid[faceAt(faces, x * factor, y * factor)] === 0)
+  return { name, sha256, faces, read: kept, brief: { ...brief, voids: voids.length === 0 ? null : voids }, target, leastSlope }
 }
 
 /** The plan of faces, read as a drawing of which reading had this to say. */

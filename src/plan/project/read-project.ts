@@ -1,5 +1,5 @@
 /** Reads a project file. */
-import { isUnit } from '../../base/length.ts'
+import { conversion, isUnit } from '../../base/length.ts'
 import { fail, ok, placed, type Problem, type Result } from '../../base/result.ts'
 import type { LeftOut, Repair } from '../../base/repair.ts'
 import { nodePoints, type DrawnFaces } from '../drawn-faces.ts'
@@ -8,6 +8,7 @@ import { placedIn, readJson } from './json-text.ts'
 import { atNodes, readFaces, type Project } from './project-record.ts'
 import { projectSchema, projectVersion } from './project-schema.ts'
 import { misfit } from './schema.ts'
+import { withVoids } from './turned-face.ts'
 
 /** Which document of ours a text is, judged by its head; null: none. */
 export function documentKind(text: string): 'project' | 'brief' | null {
@@ -80,10 +81,12 @@ function projectIn(written: WrittenProject): Result<Project> {
   const { repairs = [], leftOut = [], notices = [] } = written.reading ?? {}
   const read = readFaces(faces.value, { repairs, leftOut, notices })
   if (!read.ok) return read
-  return ok({
+  const project: Project = {
     name: written.source.name, sha256: written.source.sha256 ?? null, faces: faces.value, read: read.value, brief: { ...brief.value, voids: null },
     target: atNodes(numbersOf(written.target), nodePoints(faces.value)), leastSlope: written.least_slope_deg ?? null,
-  })
+  }
+  const factor = conversion(brief.value.unit ?? faces.value.unit, faces.value.unit)
+  return withVoids(project, (brief.value.voids ?? []).map(([x, y]) => [x * factor, y * factor]))
 }
 
 function facesIn({ unit, nodes, faces, voids = [], heights }: WrittenProject): Result<DrawnFaces> {

@@ -3,8 +3,8 @@
  * it move: those in the brief go with what they stand for.
  */
 import { conversion } from '../../base/length.ts'
-import { ok, type Result } from '../../base/result.ts'
-import { isInFace, nodePoints, turned, type DrawnFaces } from '../drawn-faces.ts'
+import { fail, ok, type Result } from '../../base/result.ts'
+import { faceAt, isInFace, nodePoints, turned, type DrawnFaces } from '../drawn-faces.ts'
 import { indexOfName, jointName, nodeName, panelName } from '../names.ts'
 import type { Plan } from '../plan.ts'
 import type { At, Condition, Point, Spot } from './condition.ts'
@@ -38,6 +38,30 @@ export function turnedFace(project: Project, face: number): Result<TurnedFace> {
     project: { ...project, faces: faces.value, read: read.value, brief: { ...project.brief, conditions }, target: atNodes(target, nodePoints(faces.value)) },
     released,
   })
+}
+
+/**
+ * The project with a void at each of these points, in the plan's unit; where one is already nothing changes. Fails with
+ * "void-nowhere" for a point beside the plan, else as `turnedFace` does.
+ */
+export function withVoids(project: Project, points: readonly Point[]): Result<Project> {
+  let now = project
+  for (const [x, y] of points) {
+    const { faces } = now
+    const face = faceAt(faces, x, y)
+    if (face < 0 && isBeside(faces, x, y)) return fail('void-nowhere', 'the void point lies in no bounded region', { at: [x, y] }, 'put it inside the void, clear of its lines')
+    // A region that touches the outside in a node is a void, and no face.
+    if (face < 0 || faces.isVoid[face] === 1) continue
+    const next = turnedFace(now, face)
+    if (!next.ok) return next
+    now = next.value.project
+  }
+  return ok(now)
+}
+
+function isBeside({ x, y }: DrawnFaces, px: number, py: number): boolean {
+  const within = (values: Float64Array, at: number): boolean => values.some((value) => value <= at) && values.some((value) => value >= at)
+  return !within(x, px) || !within(y, py)
 }
 
 type Letter = 'N' | 'P' | 'J'

@@ -40,6 +40,14 @@ describe('the file', () => {
     expect(read.value.read.repairs.map(({ code }) => code)).toEqual(['joined'])
     expect(documentKind(text)).toBe('project')
   })
+  test('voids that a brief names and the plan has not are made on opening', () => {
+    const of = whole()
+    const read = readProject(projectText({ ...of, brief: { ...of.brief, unit: 'mm', voids: [[500, 500], [1500, 1500]], conditions: [heldNode(5, 0.5)] } }), 'it')
+    if (!read.ok) throw new Error(sentence(read.problem))
+    expect(read.value.read.plan.panelCount).toBe(7)
+    expect(read.value.brief).toMatchObject({ voids: null, conditions: [{ name: 'height of N5' }] })
+    expect(readProject(projectText({ ...of, brief: { ...of.brief, voids: [[50, 50]] } }), 'it')).toMatchObject({ ok: false, problem: { code: 'void-nowhere', where: { at: [50, 50], file: 'it' } } })
+  })
   test('holds no results', () => {
     expect(Object.keys(JSON.parse(text) as object)).toEqual(
       ['panewise', 'version', 'source', 'unit', 'nodes', 'faces', 'voids', 'heights', 'reading', 'brief', 'target', 'least_slope_deg'])
