@@ -8,7 +8,7 @@ import { build } from 'vite'
 const here = import.meta.dirname
 const [name, ...words] = process.argv.slice(2)
 if (!/^[a-z-]+$/.test(name ?? '')) {
-  process.stderr.write('Name a bench: node test/bench/run.mjs counting-rule\n')
+  process.stderr.write('Name a bench: npm run bench -- solver | path | adjust | counting-rule\n')
   process.exit(2)
 }
 const outDir = mkdtempSync(join(tmpdir(), 'bench-'))

@@ -2,7 +2,7 @@
  * Times the sparse solver beside CHOLMOD (one thread) and scipy's splu on the same matrices, interleaved, each run in a
  * process of its own, and keeps the medians as rows of solver.csv. What is not installed is "missing".
  *
- *   node test/bench/solver.mjs [panels ...] [--runs 5] [--keep]
+ *   node test/bench/run.mjs solver [panels ...] [--runs 5] [--keep]
  *
  * Wall seconds say what one waits for; ratios are taken from processor seconds, which other work on the machine disturbs less
  * (they count what the engine's helper threads do as well).
