@@ -58,8 +58,8 @@ export interface PlanQuestion {
   readonly sha256: string
   readonly read: ReadPlan
   readonly brief: Brief
-  /** Heights set by hand (length nodeCount, NaN: none), in the place of the drawing's and of the brief's shape; null: none. */
-  readonly target: Float64Array | null
+  /** Heights set by hand (length nodeCount, NaN: none), in the place of the drawing's and of the brief's shape; null or absent: none. */
+  readonly target?: Float64Array | null
   readonly free: FreeRim | null
   readonly space?: LiftSpace | null
 }
@@ -69,7 +69,7 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
   const { plan } = read
   const wishes = wishesOf(brief, request.options, plan.unit)
   if (!wishes.ok) return wishes
-  const target = yield* targetOf(request, wishes.value, read, byHand)
+  const target = yield* targetOf(request, wishes.value, read, byHand ?? null)
   if (!target.ok) return target
   const rows = conditionRows(plan, wishes.value.conditions, wishes.value.datum ?? 0)
   if (!rows.ok) return rows

@@ -28,11 +28,15 @@ export function withOptions(project: Project, options: Options, file: string): R
   if (options.unit !== null && options.unit !== unit) {
     return fail('unit-settled', `the plan of this project is in ${unit}`, { file, field: '--unit' }, `leave --unit out, or read the drawing "${project.name}" anew`)
   }
+  if (options.scale !== null || options.scaleFrom !== null) {
+    const field = options.scale === null ? '--scale-from' : '--scale'
+    return fail('unit-settled', 'the plan of this project has its true size', { file, field }, `leave ${field} out, or read the drawing "${project.name}" anew`)
+  }
   const made = withVoids(project, readOptionsOf(project.brief, options, unit).voids)
   if (!made.ok) return { ok: false, problem: placed(made.problem, { file }) }
   const idle = [
-    ...(options.scale === null ? [] : ['--scale']), ...(options.layers === null ? [] : ['--layer']), ...(options.snap_mm === null ? [] : ['--snap']),
-    ...(options.sagitta_mm === null ? [] : ['--sagitta']), ...(options.accept.length === 0 ? [] : ['--accept']),
+    ...(options.layers === null ? [] : ['--layer']), ...(options.snap_mm === null ? [] : ['--snap']),
+    ...(options.sagitta_mm === null ? [] : ['--sagitta']), ...(options.accept.length === 0 ? [] : ['--accept']), ...(options.leave.length === 0 ? [] : ['--leave']),
   ]
   const notices = idle.length === 0 ? [] : [`The plan of a project is as it was accepted: ${idle.join(', ')} ${idle.length === 1 ? 'changes' : 'change'} nothing.`]
   return ok({ project: made.value, notices })

@@ -101,6 +101,7 @@ describe('what is asked of a project', () => {
     const { notices } = (await answer(file, { snap_mm: 5, layers: ['A'], unit: 'm' })).answer.summary
     expect(notices).toContain('The plan of a project is as it was accepted: --layer, --snap change nothing.')
     expect(await run(request(file, { unit: 'mm' }))).toMatchObject({ ok: false, problem: { code: 'unit-settled', message: 'the plan of this project is in m' } })
+    expect(await run(request(file, { scale: 100 }))).toMatchObject({ ok: false, problem: { code: 'unit-settled', where: { field: '--scale' } } })
   })
   test('voids that options name are voids, as in the drawing', async () => {
     // A panel inside the plan and one at its rim.
