@@ -258,7 +258,7 @@ test('names with markup stay text', async () => {
   await page.context().close()
 }, slow)
 
-test('a project from elsewhere: a newer version is refused with a sentence, a damaged one with its field', async () => {
+test('a project from elsewhere: a newer version is refused with a sentence, a damaged one with its line', async () => {
   const page = await opened()
   await accepted(page, grid(4, 3))
   const text = await downloaded(page, 'panewise.json')
@@ -266,8 +266,9 @@ test('a project from elsewhere: a newer version is refused with a sentence, a da
   await page.setInputFiles('#open-file', file(text.replace('"version": 1', '"version": 9')))
   await says(page, /version 9 and this program reads version 1/)
   await page.keyboard.press('Escape')
-  await page.setInputFiles('#open-file', file(text.replace('"N3"', '"N300"')))
-  await says(page, /panels.*lists of three or more/)
+  // Half of it: what a disk that fills up, or a mail that is cut, leaves.
+  await page.setInputFiles('#open-file', file(text.slice(0, text.length / 2)))
+  await says(page, /a\.panewise\.json, line \d+/)
   await page.keyboard.press('Escape')
   await page.setInputFiles('#open-file', file(text))
   await says(page, freeWords(5))
