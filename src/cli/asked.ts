@@ -1,5 +1,6 @@
 /** From the words of a command line to what the job asks for: every value read, every further file opened. */
 import nodeFs from 'node:fs'
+import { proposalCodes } from '../base/repair.ts'
 import { fail, ok, placed, type Result } from '../base/result.ts'
 import { mostDecimals } from '../base/decimal.ts'
 import { csvStyles } from '../formats/write-csv.ts'
@@ -10,7 +11,7 @@ import { shapes } from '../plan/project/brief.ts'
 import { noOptions, type Options } from '../plan/project/options.ts'
 import type { Arguments } from './arguments.ts'
 import { readInput } from './read-input.ts'
-import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedScale, typedUnit, typedWord } from './typed-values.ts'
+import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedScale, typedScaleFrom, typedUnit, typedWord } from './typed-values.ts'
 
 /** A request without its plan: the same for every plan of the run. */
 export type Asked = Omit<Request, 'source'>
@@ -51,6 +52,11 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     problems.push(value)
     return null
   }
+  const codes = (name: string): string[] => (values.get(name) ?? []).flatMap((text) => {
+    const code = typedWord(text, [...proposalCodes, 'all'], `--${name}`)
+    if (!code.ok) problems.push(code)
+    return code.ok ? [code.value] : []
+  })
   const has = (name: string): boolean => values.has(name)
   const voids: (readonly [number, number])[] = []
   for (const text of values.get('void') ?? []) {
@@ -66,7 +72,9 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     snap_mm: take('snap', (text, option) => typedMillimetres(text, option, false)),
     sagitta_mm: take('sagitta', (text, option) => typedMillimetres(text, option, true)),
     voids: voids.length > 0 ? voids : null,
-    accept: values.get('accept') ?? [],
+    accept: codes('accept'),
+    leave: codes('leave'),
+    scaleFrom: take('scale-from', typedScaleFrom),
     rim: take('rim', typedRim),
     datum: take('datum', typedLength),
     levelsWithin: take('levels-within', typedLength),
@@ -135,7 +143,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
     const recorded = ['brief', 'levels', 'target'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
-    record[name] = recorded.length === 0 ? true : ['layer', 'void', 'accept', 'stay'].includes(name) ? recorded : recorded[0]
+    record[name] = recorded.length === 0 ? true : ['layer', 'void', 'accept', 'leave', 'stay'].includes(name) ? recorded : recorded[0]
   }
   return record
 }

@@ -18,11 +18,13 @@ export interface OptionEntry {
 export const optionTable: readonly OptionEntry[] = [
   { name: 'unit', value: 'UNIT', group: 'Reading the plan', help: "the drawing's unit, whatever its file says: mm, cm, m, in, ft" },
   { name: 'scale', value: '1:N', group: 'Reading the plan', help: 'how a drawing on paper was drawn; without it 1:1' },
+  { name: 'scale-from', value: 'X1,Y1,X2,Y2,LENGTH', group: 'Reading the plan', help: 'two points of an unscaled drawing and how far apart they truly are' },
   { name: 'layer', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'take this layer only (repeatable; capitals do not matter)' },
   { name: 'snap', value: 'LENGTH', group: 'Reading the plan', help: 'line ends nearer than this are one node (bare: mm)' },
   { name: 'sagitta', value: 'LENGTH', group: 'Reading the plan', help: 'largest distance of a curve from its chords (bare: mm; default 5)' },
   { name: 'void', value: 'X,Y', repeatable: true, group: 'Reading the plan', help: 'the bounded face round this point is a void, no panel (repeatable)' },
   { name: 'accept', value: 'CODE', repeatable: true, group: 'Reading the plan', help: 'take a proposal of the reader, or "all" (repeatable)' },
+  { name: 'leave', value: 'CODE', repeatable: true, group: 'Reading the plan', help: 'leave a proposal, which answers its question with no (repeatable)' },
   { name: 'brief', value: 'FILE', group: 'What must hold', help: 'conditions and wishes as JSON (panewise help brief)' },
   { name: 'rim', value: 'free|level|level=H', group: 'What must hold', help: 'the outer rim floats, is level at the datum, or at H' },
   { name: 'datum', value: 'LEVEL', group: 'What must hold', help: 'the level from which rise and levels count' },
@@ -53,7 +55,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'help', value: null, group: 'This run', help: 'show this' },
 ]
 
-const forReading: readonly string[] = ['unit', 'scale', 'layer', 'snap', 'sagitta', 'void', 'accept', 'brief', 'json', 'quiet', 'help']
+const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'snap', 'sagitta', 'void', 'accept', 'leave', 'brief', 'json', 'quiet', 'help']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {

@@ -1,6 +1,7 @@
 /** The values of options as people type them, each with a sentence when it is none. */
 import { parseLength, units, isUnit, type Unit } from '../base/length.ts'
 import { fail, ok, placed, type Result } from '../base/result.ts'
+import type { ScaleFrom } from '../plan/project/options.ts'
 
 const decimal = String.raw`[+-]?(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?`
 
@@ -55,6 +56,16 @@ export function typedPoint(text: string, option: string): Result<readonly [numbe
   const [x, y] = parts.map((part) => typedNumber(part, option))
   if (parts.length === 2 && x.ok && y.ok) return ok([x.value, y.value])
   return fail('not-a-point', `"${text}" is not a point`, { field: option }, "write it like 3.2,-4.5, in the plan's unit")
+}
+
+/** "X1,Y1,X2,Y2,LENGTH": two points in the drawing's own numbers and their true distance; with decimal commas between semicolons. */
+export function typedScaleFrom(text: string, option: string): Result<ScaleFrom> {
+  const parts = text.includes(';') ? text.split(';') : text.split(',')
+  const numbers = parts.slice(0, 4).map((part) => typedNumber(part, option))
+  const [x1, y1, x2, y2] = numbers
+  const length = parts.length === 5 ? typedLength(parts[4].trim(), option) : null
+  if (length !== null && length.ok && x1.ok && y1.ok && x2.ok && y2.ok) return ok({ from: [x1.value, y1.value], to: [x2.value, y2.value], length: length.value })
+  return fail('not-a-scale', `"${text}" is not two points and a length`, { field: option }, 'write it like 0,0,250,0,12.5m')
 }
 
 /** A whole number from 0 to `most`. */

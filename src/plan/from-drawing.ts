@@ -6,7 +6,7 @@
  * drawn are written back exactly as they were drawn.
  */
 import { gap_mm } from '../base/geometry/tolerance.ts'
-import type { Question, Repair } from '../base/repair.ts'
+import type { Repair } from '../base/repair.ts'
 import { ok, placed, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
@@ -14,11 +14,12 @@ import { heightsOfNodes } from './height-of-nodes.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { panelFaces } from './line-work-panels.ts'
 import { counted, inMillimetres } from './line-work-words.ts'
+import { barWidths, centreLineFaces, doubleLineWords, leaves, takes } from './office-reduced.ts'
 import type { Plan } from './plan.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
 import { planFromFaces } from './subdivision.ts'
 import { millimetresPer, unitOfDrawing } from './unit-of-drawing.ts'
-import { scaleQuestion, unitQuestion } from './unit-question.ts'
+import { scaleQuestion, unitQuestion, type UnitDoubt } from './unit-question.ts'
 
 /**
  * The plan of a drawing, in the drawing's unit and coordinates (drawings on paper: in metres). Void points are given in
@@ -33,17 +34,36 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   const frame = lineFrame(drawing, read.value, options.snap_mm)
   if (!frame.ok) return frame
 
-  const faces = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
-  if (!faces.ok) return faces
-  const { start, corner, x, y, nodeOfPoint, lineOfPanel } = faces.value
+  const drawn = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
+  if (!drawn.ok) return drawn
+  const { doubles, problem } = drawn.value
+  const onCentres = doubles === null ? null : yield* centreLineFaces(doubles, drawing, frame.value, mmPerUnit)
+  if (problem !== null && onCentres === null) return { ok: false, problem }
   yield { stage: 'Building the plan', done: 0 }
-  const made = planFromFaces({ unit, x, y, start, corner })
+  const onCentrePlan = onCentres === null ? null : planFromFaces({ unit, ...onCentres })
+  const reduces = onCentrePlan !== null && onCentrePlan.ok
+  if (problem !== null && !reduces) return { ok: false, problem }
+  const state = problem !== null ? 'applied' : reduces && takes(options, 'double-lines') ? 'accepted' : 'proposed'
+  const isReduced = onCentres !== null && state !== 'proposed'
+  const faces = isReduced ? onCentres : drawn.value
+  const { start, corner, x, y, lineOfPanel } = faces
+  const nodeOfPoint = isReduced ? new Int32Array(0) : drawn.value.nodeOfPoint
+  const made = isReduced && onCentrePlan !== null ? onCentrePlan : planFromFaces({ unit, x, y, start, corner })
   if (!made.ok) {
     const name = /^P(\d+)$/.exec(made.problem.where?.names?.[0] ?? '')
     const line = name === null ? 0 : (lineOfPanel[Number(name[1]) - 1] ?? 0)
     return line > 0 ? { ok: false, problem: placed(made.problem, { line }) } : made
   }
   const { plan, pointOfNode } = made.value
+  const bars = doubles === null ? null
+    : doubleLineWords(doubles, state, drawn.value.start.length - 1, reduces, options, { mmPerUnit, centreX: frame.value.centreX, centreY: frame.value.centreY })
+
+  const doubt = unitDoubt(onCentrePlan !== null && onCentrePlan.ok ? onCentrePlan.value.plan : plan, drawing, options)
+  if (doubt !== null && takes(options, 'unit')) {
+    const again = yield* planFromDrawing(drawing, { ...options, ...doubt.answer })
+    const taken: Repair = { code: 'unit', state: 'accepted', count: 1, message: doubt.taken, where: [] }
+    return again.ok ? ok({ ...again.value, repairs: [taken, ...again.value.repairs] }) : again
+  }
 
   const planNode = new Int32Array(x.length).fill(-1)
   for (let index = 0; index < pointOfNode.length; index += 1) planNode[pointOfNode[index]] = index
@@ -57,15 +77,17 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   drawing.marks.forEach((point, k) => {
     for (let axis = 0; axis < 3; axis += 1) marks[3 * k + axis] = points[3 * point + axis] * factor
   })
-  const repairs: Repair[] = [...drawing.repairs, ...read.value.repairs, ...faces.value.repairs]
+  const repairs: Repair[] = [...drawing.repairs, ...read.value.repairs, ...drawn.value.repairs, ...(bars === null ? [] : [bars.repair])]
+  if (doubt !== null) repairs.push({ code: 'unit', state: 'proposed', count: 1, message: doubt.question.message.replace(' Which is it?', ''), where: [] })
   return ok({
     plan,
     heights,
     marks: { points: marks, layer: drawing.markLayer, layers: drawing.layers },
+    ...(isReduced && doubles !== null ? { barWidth: barWidths(plan, doubles, frame.value) } : {}),
     repairs,
-    questions: openQuestions(plan, drawing, options),
+    questions: [...(bars === null || bars.question === null ? [] : [bars.question]), ...(doubt === null || leaves(options, 'unit') ? [] : [doubt.question])],
     leftOut: drawing.leftOut,
-    notices: [...read.value.notices, ...faces.value.notices, ...notices, ...openGaps(plan, mmPerUnit)],
+    notices: [...read.value.notices, ...drawn.value.notices, ...notices, ...(bars === null ? openGaps(plan, mmPerUnit) : [])],
   })
 }
 
@@ -93,9 +115,9 @@ function openGaps({ work, frame, origin, rimStart, rimHalf, rimIsVoid }: Plan, m
   return [`${counted(count, 'gap', 'gaps')} between panels, up to ${inMillimetres(widest)} wide, ${count === 1 ? 'counts as a void' : 'count as voids'}; --snap closes gaps up to the distance it states.`]
 }
 
-/** What only the user can answer: so far the unit or scale, where the lengths make the one taken unlikely. */
-function openQuestions(plan: Plan, drawing: Drawing, options: ReadOptions): Question[] {
-  if (options.unit !== null || options.scale !== null) return []
+/** Whether the lengths make the unit or scale taken unlikely; null where the user has said which it is. */
+function unitDoubt(plan: Plan, drawing: Drawing, options: ReadOptions): UnitDoubt | null {
+  if (options.unit !== null || options.scale !== null || (options.scaleFrom ?? null) !== null) return null
   // Quantiles are wanted: of a large plan every so many edges will do.
   const stride = Math.ceil(plan.edgeCount / 10_000)
   const lengths = new Float64Array(Math.ceil(plan.edgeCount / stride))
@@ -104,6 +126,5 @@ function openQuestions(plan: Plan, drawing: Drawing, options: ReadOptions): Ques
     lengths[k] = Math.hypot(plan.x[b] - plan.x[a], plan.y[b] - plan.y[a])
   }
   lengths.sort()
-  const question = drawing.onPaper ? scaleQuestion(lengths) : unitQuestion(lengths, plan.unit)
-  return question === null ? [] : [question]
+  return drawing.onPaper ? scaleQuestion(lengths) : unitQuestion(lengths, plan.unit)
 }

@@ -1,7 +1,7 @@
 /** The panels of a drawing as clean faces: the closed outlines where they are the panels, else every region of its lines. */
 import { isStrip } from '../base/geometry/polygon-width.ts'
 import type { Repair } from '../base/repair.ts'
-import { fail, ok, type Result } from '../base/result.ts'
+import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
 import { arrangement, type Arrangement } from './line-work-arrangement.ts'
@@ -9,8 +9,9 @@ import type { LineFrame } from './line-work-frame.ts'
 import { joinedPoints } from './line-work-joined.ts'
 import { faceRepairs, lineRepairs } from './line-work-repairs.ts'
 import type { Traced } from './line-work-traced.ts'
+import { doubleLines, type DoubleLines } from './office-double-lines.ts'
 import { closedOutlines, type ClosedOutlines } from './outlines-closed.ts'
-import { outlineFaces } from './outlines-faces.ts'
+import { outlineFaces, type OutlineFaces } from './outlines-faces.ts'
 import { cyclesOf, type Cycles } from './trace-cycles.ts'
 import { Graph } from './trace-graph.ts'
 import { isOneFigure, nestedComponents, type Nested } from './trace-nesting.ts'
@@ -32,6 +33,10 @@ export interface PanelFaces {
   readonly lineOfPanel: Int32Array
   readonly repairs: readonly Repair[]
   readonly notices: readonly string[]
+  /** Bars drawn as double lines, if there are any. */
+  readonly doubles: DoubleLines | null
+  /** Why the lines as drawn make no plan, so that only their centre lines can; there are no panels then. */
+  readonly problem: Problem | null
 }
 
 type Points = readonly (readonly [x: number, y: number])[]
@@ -79,6 +84,8 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   const common = { x, y, nodeOfPoint }
 
   let notices: string[] = []
+  // Outlines that overlap make no panels, unless they are bars that cross.
+  let overlap: Problem | null = null
   if (loops.line.length > 0) {
     const outlines = closedOutlines(lines, loops, 0)
     yield { stage: 'Tracing panels', done: 0.6 }
@@ -90,9 +97,10 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
       drawing, lines, graph, outlines, onHole, isOne: isOneFigure(graph), figures, snap: frame.snap, rounding: frame.rounding, x: frame.x, y: frame.y,
       at: traced.at, pointAt: (point) => [frame.planX[point], frame.planY[point]],
     })
-    if (!judged.ok) return judged
+    if (!judged.ok && !(barsMayCross.includes(judged.problem.code) && drawing.format !== 'OBJ')) return judged
     yield { stage: 'Tracing panels', done: 0.8 }
-    if (judged.value.areFaces) {
+    if (!judged.ok) overlap = judged.problem
+    else if (judged.value.areFaces) {
       const voided = voidPanels(traced, figures, outlines, judged.value.panels, voids)
       if (!voided.ok) return voided
       const panels = judged.value.panels.filter((panel) => !voided.value.has(panel))
@@ -100,10 +108,10 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
       return ok({
         ...common, ...facesOf(graph, outlines, panels),
         lineOfPanel: Int32Array.from(panels, (panel) => loops.line[panel]),
-        repairs: faceRepairs(traced, judged.value, outlines), notices: [],
+        repairs: faceRepairs(traced, judged.value, outlines), notices: [], problem: null,
+        doubles: yield* doublesOfOutlines(graph, figures, outlines, panels, frame.snap),
       })
-    }
-    if (judged.value.notice !== null) notices = [judged.value.notice]
+    } else if (judged.value.notice !== null) notices = [judged.value.notice]
   }
 
   const trimmed = trim(graph, frame.snap)
@@ -119,11 +127,18 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
     if (region < 0) return voidNowhere(point)
     isVoid[region] = 1
   }
+  const doubles = yield* doubleLines({ graph, cycles, regions, isVoid, order: null, snap: frame.snap })
+  const onlyCentreLines = (problem: Problem): Result<PanelFaces> => ok({
+    ...common, start: new Int32Array(1), corner: new Int32Array(0), lineOfPanel: new Int32Array(0),
+    repairs: lineRepairs(traced, trimmed), notices: [], doubles, problem,
+  })
+  if (overlap !== null) return doubles === null ? { ok: false, problem: overlap } : onlyCentreLines(overlap)
   for (let f = 0; f < nested.within.length; f += 1) {
     const holder = nested.within[f] < 0 ? -1 : regions.of[cycles.half[cycles.start[nested.within[f]]]]
     if (holder >= 0 && isVoid[holder] === 0) {
-      return fail('island', 'the lines here are joined to nothing round them, so a panel would have a hole', { at: traced.at(nested.node[f]) },
+      const island = fail('island', 'the lines here are joined to nothing round them, so a panel would have a hole', { at: traced.at(nested.node[f]) },
         'join them to the lines outside, leave their layer out, or name the space round them as a void (--void X,Y)')
+      return doubles === null ? island : onlyCentreLines(island.problem)
     }
   }
   const kept = Array.from(regions.cycle).filter((_, region) => isVoid[region] === 0)
@@ -135,8 +150,36 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   const ordered = inRows(lines.x, lines.y, { start, node })
   return ok({
     ...common, start: ordered.start, corner: ordered.node, lineOfPanel: new Int32Array(kept.length),
-    repairs: lineRepairs(traced, trimmed), notices,
+    repairs: lineRepairs(traced, trimmed), notices, doubles, problem: null,
   })
+}
+
+/** What closed outlines of bars that cross are refused as. */
+const barsMayCross: readonly string[] = ['panels-overlap', 'three-panels']
+
+/**
+ * Double lines where the outlines are the panels: panes drawn apart from each other, or the outlines of the bars, so that
+ * the panes are what they leave open. Looked for where most edges have a panel on one side only.
+ */
+function* doublesOfOutlines(
+  graph: Graph, figures: () => Figures, outlines: ClosedOutlines, panels: OutlineFaces['panels'], snap: number,
+): Steps<DoubleLines | null> {
+  const isUsed = new Uint8Array(2 * graph.edgeCount)
+  for (const panel of panels) for (let k = outlines.start[panel]; k < outlines.start[panel + 1]; k += 1) isUsed[outlines.half[k]] = 1
+  let open = 0, edges = 0
+  for (let e = 0; e < graph.edgeCount; e += 1) {
+    const sides = isUsed[2 * e] + isUsed[2 * e + 1]
+    if (sides > 0) edges += 1
+    if (sides === 1) open += 1
+  }
+  if (2 * open < edges) return null
+  const { cycles, nested } = figures()
+  const regions = regionsOf(cycles, nested)
+  const regionOf = panels.map((panel) => regions.of[outlines.half[outlines.start[panel]]])
+  const isVoid = new Uint8Array(regions.cycle.length).fill(1)
+  for (const region of regionOf) isVoid[region] = 0
+  const apart = yield* doubleLines({ graph, cycles, regions, isVoid, order: regionOf, snap })
+  return apart ?? (yield* doubleLines({ graph, cycles, regions, isVoid: isVoid.fill(0), order: null, snap }))
 }
 
 /**

@@ -8,6 +8,8 @@ export interface ReadPlan {
   readonly heights: Float64Array | null
   /** Marks (single points) of the drawing as x y z triples in the plan's unit, with the index of their layer. */
   readonly marks: { readonly points: Float64Array; readonly layer: Int32Array; readonly layers: readonly string[] }
+  /** Width of the bar or gap that each edge was drawn with, per edge in the plan's unit, NaN for a single line; absent when no bars were reduced. */
+  readonly barWidth?: Float64Array
   readonly repairs: readonly Repair[]
   readonly questions: readonly Question[]
   readonly leftOut: readonly LeftOut[]
@@ -27,4 +29,8 @@ export interface ReadOptions {
   readonly voids: readonly (readonly [x: number, y: number])[]
   /** Proposals that the user takes: repair codes, or "all". */
   readonly accept: readonly string[]
+  /** Proposals that the user leaves: their questions are answered with no. */
+  readonly leave?: readonly string[]
+  /** Two points of the drawing, in its own coordinates, and their true distance: a number in the plan's unit, or as typed. */
+  readonly scaleFrom?: { readonly from: readonly [number, number]; readonly to: readonly [number, number]; readonly length: number | string } | null
 }

@@ -34,30 +34,48 @@ export function likelyUnit(lengths: Float64Array, unit: Unit): Unit | null {
   return factor === null ? null : (others.find((other) => conversion(other, unit) === factor) ?? null)
 }
 
-/** The question about a model's unit, if there is one. `lengths`: the edges of the plan in its unit, sorted. */
-export function unitQuestion(lengths: Float64Array, unit: Unit): Question | null {
+/** A question about unit or scale, and what reading would be told when its first option is taken. */
+export interface UnitDoubt {
+  readonly question: Question
+  readonly answer: { readonly unit: Unit } | { readonly scale: number }
+  /** What taking it says. */
+  readonly taken: string
+}
+
+/** The doubt about a model's unit, if there is one. `lengths`: the edges of the plan in its unit, sorted. */
+export function unitQuestion(lengths: Float64Array, unit: Unit): UnitDoubt | null {
   const likely = likelyUnit(lengths, unit)
   if (likely === null) return null
+  const as = range(lengths, conversion(likely, 'm'))
   return {
-    code: 'unit',
-    message: `Half of the edges are ${range(lengths, conversion(unit, 'm'))} long when the numbers are in ${unit}; in ${likely} they would be ${range(lengths, conversion(likely, 'm'))}. Which is it?`,
-    options: [`--unit ${likely}`, `--unit ${unit}`],
+    question: {
+      code: 'unit',
+      message: `With the numbers in ${unit} half of the edges would be ${range(lengths, conversion(unit, 'm'))} long, which is not plausible; in ${likely} they are ${as}. Which is it?`,
+      options: [`--unit ${likely}`, `--unit ${unit}`],
+    },
+    answer: { unit: likely },
+    taken: `The numbers are taken to be in ${likely}, not in ${unit}, so that half of the edges are ${as} long.`,
   }
 }
 
-/** The question about the scale of a drawing on paper that was read at 1:1. `lengths` in metres, sorted. */
-export function scaleQuestion(lengths: Float64Array): Question | null {
+/** The doubt about the scale of a drawing on paper that was read at 1:1. `lengths` in metres, sorted. */
+export function scaleQuestion(lengths: Float64Array): UnitDoubt | null {
   const likely = likelyFactor(lengths, scales)
   if (likely === null) return null
+  const as = range(lengths, likely)
   return {
-    code: 'unit',
-    message: `Half of the edges are ${range(lengths, 1)} long on paper; drawn at 1:${likely} they would be ${range(lengths, likely)}. Which is it?`,
-    options: [`--scale 1:${likely}`, '--scale 1:1'],
+    question: {
+      code: 'unit',
+      message: `On paper half of the edges are ${range(lengths, 1)} long, which is not plausible for the panels themselves; drawn at 1:${likely} they are ${as}. Which is it?`,
+      options: [`--scale 1:${likely}`, '--scale 1:1'],
+    },
+    answer: { scale: likely },
+    taken: `The drawing is taken to be at 1:${likely}, so that half of the edges are ${as} long.`,
   }
 }
 
 /** The middle half of the lengths: "1.2 to 3.4 m". */
 function range(lengths: Float64Array, toMetres: number): string {
-  const at = (share: number): string => significant(lengths[Math.min(lengths.length - 1, Math.floor(share * lengths.length))] * toMetres, 2)
-  return `${at(0.25)} to ${at(0.75)} m`
+  const at = (share: number): string => significant(lengths[Math.min(lengths.length - 1, Math.floor(share * lengths.length))] * toMetres, 3)
+  return at(0.25) === at(0.75) ? `${at(0.5)} m` : `${at(0.25)} to ${at(0.75)} m`
 }

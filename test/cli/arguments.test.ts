@@ -3,6 +3,7 @@ import { expect, test } from 'vitest'
 import { sentence, type Result } from '../../src/base/result.ts'
 import { parseWords } from '../../src/cli/arguments.ts'
 import { asked, type Asked } from '../../src/cli/asked.ts'
+import { noKeeps } from '../../src/plan/project/options.ts'
 
 async function read(...words: string[]): Promise<Result<Asked>> {
   const args = parseWords('check', ['plan.obj', ...words])
@@ -49,11 +50,19 @@ test('values as people type them', async () => {
   )
   if (!result.ok) throw new Error(sentence(result.problem))
   expect(result.value.options).toEqual({
-    unit: 'mm', scale: 50, layers: ['A,B', 'C'], snap_mm: 0, sagitta_mm: 10, voids: [[-3, 4], [1.5, -2]], accept: ['all'],
+    unit: 'mm', scale: 50, layers: ['A,B', 'C'], snap_mm: 0, sagitta_mm: 10, voids: [[-3, 4], [1.5, -2]], accept: ['all'], leave: [], scaleFrom: null,
     rim: { level: '+3.2m' }, datum: '-1.5', levels: null, levelsWithin: '10cm', pitch_deg: 12.5, bearing_deg: -90,
-    rise: '2,4 m', down: true, shape: 'barrel', target: 'none', flat_mm: expect.closeTo(1.27, 12) as number, decimals: 0, near: true, csv: 'semicolon', full: true,
+    rise: '2,4 m', down: true, shape: 'barrel', target: 'none', flat_mm: expect.closeTo(1.27, 12) as number, decimals: 0, near: true, csv: 'semicolon', full: true, keeps: noKeeps, planTolerance_mm: null,
   })
   expect(result.value.given).toMatchObject({ rise: '2,4 m', void: ['-3,4', '1,5;-2'], layer: ['A,B', 'C'], down: true })
+})
+
+test('two points and a length, and codes of proposals that are none', async () => {
+  const result = await read('--scale-from', '0,0,-100,0,7.5m', '--leave', 'Unit')
+  expect(result).toMatchObject({ ok: true, value: { options: { scaleFrom: { from: [0, 0], to: [-100, 0], length: '7.5m' }, leave: ['unit'] } } })
+  expect(await read('--scale-from', '0,5;0;10,5;0;7,5 m')).toMatchObject({ ok: true, value: { options: { scaleFrom: { from: [0.5, 0], to: [10.5, 0], length: '7,5 m' } } } })
+  expect(await read('--scale-from', '0,0,100,0')).toMatchObject({ ok: false, problem: { code: 'not-a-scale' } })
+  expect(await read('--accept', 'double-line')).toMatchObject({ ok: false, problem: { code: 'not-one-of', where: { field: '--accept' } } })
 })
 
 test('words after "--" are plans, whatever they begin with', () => {

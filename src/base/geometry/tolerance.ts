@@ -111,3 +111,18 @@ export const splitSine = 0.02
 
 /** A void whose mean width is below this, in mm, is a gap between outlines rather than an opening. */
 export const gap_mm = 20
+
+/** Strips are bars when the panes beside them are at least this much wider: 150 mm timber between panes of 600 mm is 3.3 times. */
+export const barShare = 2.5
+
+/** Share of the panes' edges that run along strips or gaps before the plan counts as drawn with bars: fewer may be narrow panels. */
+export const barsAlong = 0.5
+
+/** A strip or gap whose width changes by more than this share along itself is a wedge and no bar. */
+export const barTaper = 0.15
+
+/** Cosine of the angle up to which two edges face each other across a bar: 3 degrees, 1 mm of noise in 20 mm. */
+export const facingCosine = 0.9986
+
+/** Two centre lines that part at less than this sine (3 degrees) have no crossing that a drawing's digits could place. */
+export const bendSine = 0.05
