@@ -56,7 +56,7 @@ function planOf(kind: Kind, panels: number): Plan {
 /** Conditions by name; where values are asked they are those of a tilt, so that none clash. */
 function conditionsOf(plan: Plan): Record<string, readonly Condition[]> {
   const { x, y } = plan
-  const [left, right, bottom, top] = [Math.min(...x), Math.max(...x), Math.min(...y), Math.max(...y)]
+  const [left, right, bottom, top] = [...range(x), ...range(y)] as [number, number, number, number]
   const [width, depth] = [right - left, top - bottom]
   const bay = Math.sqrt((width * depth) / plan.panelCount)
   const rim = [...plan.rimPasses.keys()].filter((node) => plan.rimPasses[node]! > 0)
@@ -206,6 +206,11 @@ function measured(kind: Kind, plan: Plan, name: string, hard: Rows): string {
     right === unknowns ? '' : nearLowest(count, right).toExponential(1),
     right === 0 ? '' : (flat / size).toExponential(1),
   ].join()
+}
+
+/** The least and the greatest value. */
+function range(values: Float64Array): [number, number] {
+  return values.reduce<[number, number]>(([low, high], value) => [Math.min(low, value), Math.max(high, value)], [Infinity, -Infinity])
 }
 
 /** How many eigenvalues of (T^T Q T, T^T T) lie below a shift. */

@@ -2,6 +2,13 @@
  * What is left under the conditions: the set R of roofs that meet all hard ones, whether it is empty, how free it is, what
  * is frozen in it. Rows that contradict each other are found on the way; conditions that contradict the flatness of the
  * panels show as a roof that cannot be brought flat.
+ *
+ * The counting rule here, measured on 238 sets of conditions (cells, quads, hexagons of 100 to 100,000 panels: levels, equal
+ * and straight runs, falls, coplanar groups, flush joints, planes; test/bench/counting-rule.csv) by the eigenvalues of T^T Q T
+ * relative to T^T T: exact lifts sit at 6e-16 or less whatever is held, and no weight of T is above 7. Near lifts come lower
+ * than with a free rim: of N panels the lowest sits at about 2e-3 / N^2 (free rim of cells: 3 to 6 / N^2). tau = 1e-13 was
+ * right for every set up to 20,000 panels (lowest near lift 6e-12) and for 7 of 8 at 100,000: jittered quads whose long sides
+ * are each at one open level have a near lift at 8e-14 that is counted (freedom left 2; at 1e-14 it is 1, as it should be).
  */
 import { clashHeight, tau } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
