@@ -31,7 +31,7 @@ export const parallelSine = 1e-9
 export const collinearSine = 1e-6
 
 /** Relative change below which the iteration towards the nearest roof stops: past it the change is below the digits written. */
-export const nearestShare = 1e-11
+export const nearestShare = 1e-10
 
 /** If the roof keeps less than this share of the wish, the wish says nothing about the roof. */
 export const keptShare = 1e-3
@@ -126,3 +126,12 @@ export const facingCosine = 0.9986
 
 /** Two centre lines that part at less than this sine (3 degrees) have no crossing that a drawing's digits could place. */
 export const bendSine = 0.05
+
+/** Sine of the turn up to which two edges at a node go on along one run: 3 degrees, 26 mm at the end of half a metre. */
+export const runSine = 0.05
+
+/** Nodes off the line of their run by less than this, in mm, are as straight as coordinates are written. */
+export const straight_mm = 0.01
+
+/** A run is nearly straight when no node is farther off it than this many plan tolerances; beyond it is meant to bend. */
+export const nearlyStraight = 10

@@ -96,13 +96,14 @@ export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metri
   // The nearest in plain least squares is a good start: areas differ little.
   const begin = projected(space, wish.map((height, i) => height - roof[i]))
   const h = roof.map((height, i) => height + begin[i])
-  let residual = metric.apply(h).map((value, i) => pull[i] - value)
+  const kept = metric.apply(h)
+  let residual = kept.map((value, i) => pull[i] - value)
   let g = projected(space, residual)
   const direction = g.slice()
   let size = dot(residual, g)
-  const first = dot(pull, projected(space, pull))
+  const whole = dot(h, kept)
   const most = Math.min(2 * space.dimension + 10, mostSteps)
-  for (let step = 0; step < most && size > nearestShare ** 2 * first && isProjection(g, size); step += 1) {
+  for (let step = 0; step < most && size > nearestShare ** 2 * whole && isProjection(g, size); step += 1) {
     yield { stage: 'Raising', done: 0.5 + (0.5 * step) / most }
     const turned = metric.apply(direction)
     const curvature = dot(direction, turned)
