@@ -51,10 +51,10 @@ export function shiftDrawing({ before, after }: Shifts): DisplayList {
   return { width, height, items, title: 'Moved nodes', description: words }
 }
 
-/** 1, 2 or 5 times a power of ten, so that the longest move is about a third of a panel's width; null: nothing moved. */
+/** 1, 2 or 5 times a power of ten, so that the longest move is about half a panel wide; null: nothing moved. */
 function exaggeration(largestPx: number, panelPx: number): number | null {
   if (!(largestPx > 0)) return null
-  const wanted = panelPx / 3 / largestPx
+  const wanted = (0.6 * panelPx) / largestPx
   if (wanted <= 1) return 1
   const decade = 10 ** Math.floor(Math.log10(wanted))
   const step = wanted / decade
