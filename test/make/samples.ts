@@ -144,6 +144,28 @@ function court(): string {
   return dxfText({ units: 6, layers: [{ name: 'BARS' }], entities: bars })
 }
 
+/**
+ * The square bays as they come from a hurried hand: each bar bay by bay, ends off by up to 0.3 mm, some bars drawn twice, some
+ * running 20 mm past the rim, and a loose line inside a panel.
+ */
+function hurried(): string {
+  const next = random(7)
+  const off = (): number => 0.0003 * (2 * next() - 1)
+  const bars = []
+  const bar = (a: readonly [number, number], b: readonly [number, number]): void => {
+    const drawn = (): void => void bars.push(line([a[0] + off(), a[1] + off()], [b[0] + off(), b[1] + off()], 'BARS'))
+    drawn()
+    if (next() < 0.08) drawn()
+  }
+  const past = (): number => (next() < 0.2 ? 0.02 : 0)
+  for (let j = 0; j <= rows; j += 1) {
+    for (let i = 0; i < columns; i += 1) bar([i * bay - (i === 0 ? past() : 0), j * bay], [(i + 1) * bay + (i === columns - 1 ? past() : 0), j * bay])
+  }
+  for (let i = 0; i <= columns; i += 1) for (let j = 0; j < rows; j += 1) bar([i * bay, j * bay], [i * bay, (j + 1) * bay])
+  bars.push(line([4.9, 4.8], [5.6, 5.5], 'BARS'))
+  return dxfText({ units: 6, layers: [{ name: 'BARS' }], entities: bars })
+}
+
 /** The square bays as closed polylines in millimetres. */
 function panelsInMillimetres(): string {
   const outlines = square.faces.map((face) =>
@@ -228,6 +250,14 @@ export function samples(): readonly Sample[] {
       text: court(),
       why: 'Bar lines in metres round a court of 8 by 6 m that the brief calls a void, with two corner posts at +3.600.',
       expected: { verdict: 'lifts', panels: 96, voids: 1, freedom: 25, count: 25, freedomLeft: 26, frozen: 0, reasonKind: null },
+    },
+    {
+      name: 'tern-yard-hurried.dxf',
+      options: {},
+      brief: null,
+      text: hurried(),
+      why: 'The square bays drawn in a hurry: ends that miss, bars drawn twice or run past the rim, a loose line; every repair is counted and located.',
+      expected: { verdict: 'lifts', panels: 96, voids: 0, freedom: 18, count: 18, freedomLeft: 21, frozen: 0, reasonKind: null },
     },
     {
       name: 'tern-yard-level-rim.obj',
