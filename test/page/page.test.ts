@@ -277,7 +277,7 @@ test('a project from elsewhere: a newer version is refused with a sentence, a da
 
 test('long work shows its stage and stops when told to', async () => {
   const page = await opened()
-  await read(page, grid(110, 110))
+  await read(page, grid(200, 200))
   await page.click('.report .solid')
   await page.click('.verdict .word:text-is("Stop")')
   await page.waitForFunction(() => document.querySelector('.bar') === null)
