@@ -31,7 +31,7 @@ export const parallelSine = 1e-9
 export const collinearSine = 1e-6
 
 /** Relative change below which the iteration towards the nearest roof stops: past it the change is below the digits written. */
-export const nearestShare = 1e-10
+export const nearestShare = 1e-11
 
 /** If the roof keeps less than this share of the wish, the wish says nothing about the roof. */
 export const keptShare = 1e-3
@@ -135,3 +135,9 @@ export const straight_mm = 0.01
 
 /** A run is nearly straight when no node is farther off it than this many plan tolerances; beyond it is meant to bend. */
 export const nearlyStraight = 10
+
+/** Turns up to this many times `runSine` are looked at to see whether straight runs are meant .. */
+export const widerTurns = 4
+
+/** .. which they are not where turns beyond `runSine` are more than this many times those within: evenly spread turns are three times as many. */
+export const turnsByChance = 2
