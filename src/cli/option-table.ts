@@ -55,7 +55,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'help', value: null, group: 'This run', help: 'show this' },
 ]
 
-const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'snap', 'sagitta', 'void', 'accept', 'leave', 'brief', 'json', 'quiet', 'help']
+const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'snap', 'sagitta', 'void', 'accept', 'leave', 'plan-tolerance', 'brief', 'json', 'quiet', 'help']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {

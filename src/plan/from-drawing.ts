@@ -5,7 +5,7 @@
  * Coordinates are used less a centre (see `centreOf`), so that survey coordinates lose no digits, and nodes that were
  * drawn are written back exactly as they were drawn.
  */
-import { gap_mm } from '../base/geometry/tolerance.ts'
+import { gap_mm, snap_mm } from '../base/geometry/tolerance.ts'
 import type { Repair } from '../base/repair.ts'
 import { ok, placed, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
@@ -14,6 +14,7 @@ import { heightsOfNodes } from './height-of-nodes.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { panelFaces } from './line-work-panels.ts'
 import { counted, inMillimetres } from './line-work-words.ts'
+import { regular } from './office-regular.ts'
 import { barWidths, centreLineFaces, doubleLineWords, leaves, takes } from './office-reduced.ts'
 import type { Plan } from './plan.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
@@ -31,7 +32,8 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   if (!read.ok) return read
   const { unit, factor } = read.value
   const mmPerUnit = millimetresPer(unit)
-  const frame = lineFrame(drawing, read.value, options.snap_mm)
+  const tolerance_mm = planTolerance(options)
+  const frame = lineFrame(drawing, read.value, options.snap_mm, tolerance_mm)
   if (!frame.ok) return frame
 
   const drawn = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
@@ -54,17 +56,20 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
     const line = name === null ? 0 : (lineOfPanel[Number(name[1]) - 1] ?? 0)
     return line > 0 ? { ok: false, problem: placed(made.problem, { line }) } : made
   }
-  const { plan, pointOfNode } = made.value
+  const { plan: asDrawn, pointOfNode } = made.value
   const bars = doubles === null ? null
     : doubleLineWords(doubles, state, drawn.value.start.length - 1, reduces, options, { mmPerUnit, centreX: frame.value.centreX, centreY: frame.value.centreY })
 
-  const doubt = unitDoubt(onCentrePlan !== null && onCentrePlan.ok ? onCentrePlan.value.plan : plan, drawing, options)
+  const doubt = unitDoubt(onCentrePlan !== null && onCentrePlan.ok ? onCentrePlan.value.plan : asDrawn, drawing, options)
   if (doubt !== null && takes(options, 'unit')) {
     const again = yield* planFromDrawing(drawing, { ...options, ...doubt.answer })
     const taken: Repair = { code: 'unit', state: 'accepted', count: 1, message: doubt.taken, where: [] }
     return again.ok ? ok({ ...again.value, repairs: [taken, ...again.value.repairs] }) : again
   }
 
+  // Only a plan that is settled is worth making regular.
+  const isSettled = doubt === null && (bars === null || bars.question === null)
+  const { plan, repairs: offers } = isSettled ? yield* regular(asDrawn, tolerance_mm, mmPerUnit, options) : { plan: asDrawn, repairs: [] }
   const planNode = new Int32Array(x.length).fill(-1)
   for (let index = 0; index < pointOfNode.length; index += 1) planNode[pointOfNode[index]] = index
   const planNodes = new Int32Array(nodeOfPoint.length)
@@ -77,7 +82,7 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   drawing.marks.forEach((point, k) => {
     for (let axis = 0; axis < 3; axis += 1) marks[3 * k + axis] = points[3 * point + axis] * factor
   })
-  const repairs: Repair[] = [...drawing.repairs, ...read.value.repairs, ...drawn.value.repairs, ...(bars === null ? [] : [bars.repair])]
+  const repairs: Repair[] = [...drawing.repairs, ...read.value.repairs, ...drawn.value.repairs, ...(bars === null ? [] : [bars.repair]), ...offers]
   if (doubt !== null) repairs.push({ code: 'unit', state: 'proposed', count: 1, message: doubt.question.message.replace(' Which is it?', ''), where: [] })
   return ok({
     plan,
@@ -113,6 +118,11 @@ function openGaps({ work, frame, origin, rimStart, rimHalf, rimIsVoid }: Plan, m
   }
   if (count === 0) return []
   return [`${counted(count, 'gap', 'gaps')} between panels, up to ${inMillimetres(widest)} wide, ${count === 1 ? 'counts as a void' : 'count as voids'}; --snap closes gaps up to the distance it states.`]
+}
+
+/** What the drawing is exact to, in mm. 0 says nothing about how it was drawn, so that the default holds. */
+function planTolerance({ planTolerance_mm = null }: ReadOptions): number {
+  return planTolerance_mm !== null && planTolerance_mm > 0 ? planTolerance_mm : snap_mm
 }
 
 /** Whether the lengths make the unit or scale taken unlikely; null where the user has said which it is. */

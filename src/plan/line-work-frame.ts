@@ -1,10 +1,9 @@
 /** The points of a drawing in working position, and the distance within which they are joined. */
-import { epsilon, farthest_m, roundingSteps, silentShare, smallest_m, snap_mm as defaultSnap_mm, snapShare } from '../base/geometry/tolerance.ts'
+import { epsilon, farthest_m, roundingSteps, silentShare, smallest_m, snapShare } from '../base/geometry/tolerance.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
-import type { Unit } from '../base/length.ts'
 import type { Drawing, Loops } from './drawing.ts'
 import { millimetresPer, type DrawingUnit } from './unit-of-drawing.ts'
-import { likelyUnit } from './unit-question.ts'
+import { likelyUnit, longest_m } from './unit-question.ts'
 
 export interface LineFrame {
   /** Per point of the drawing: plan coordinates .. */
@@ -27,8 +26,9 @@ export interface LineFrame {
  * Fails with "not-a-number", "too-far", "no-extent", "bad-snap", or "no-panels" when there are no lines at all. Only
  * points that lines use are judged.
  */
-export function lineFrame(drawing: Drawing, { unit, factor, isAssumed }: DrawingUnit, snap_mm: number | null): Result<LineFrame> {
+export function lineFrame(drawing: Drawing, drawn: DrawingUnit, snap_mm: number | null, tolerance_mm: number): Result<LineFrame> {
   const { points, outlines, holes, segments } = drawing
+  const { unit, factor } = drawn
   const mmPerUnit = millimetresPer(unit)
   if (snap_mm !== null && !(snap_mm >= 0 && Number.isFinite(snap_mm))) {
     return fail('bad-snap', `a snap distance of ${snap_mm} mm cannot be`, null, 'give a length of 0 or more')
@@ -70,8 +70,9 @@ export function lineFrame(drawing: Drawing, { unit, factor, isAssumed }: Drawing
     x[i] = planX[i] - centreX
     y[i] = planY[i] - centreY
   }
+  const size = { extent: Math.max(right - left, high - low), lines: outlines.point.length + holes.point.length + segments.length / 2 }
   const rounding = roundingSteps * epsilon * Math.max(Math.abs(left), Math.abs(right), Math.abs(low), Math.abs(high))
-  const snap = Math.max(rounding, snap_mm === null ? defaultSnap(edgeLengths(drawing, x, y), unit, isAssumed) : snap_mm / mmPerUnit)
+  const snap = Math.max(rounding, snap_mm === null ? defaultSnap(edgeLengths(drawing, x, y), drawn, tolerance_mm, size) : snap_mm / mmPerUnit)
   return ok({ planX, planY, x, y, centreX, centreY, snap, silent: Math.max(rounding, silentShare * snap), rounding })
 }
 
@@ -85,13 +86,19 @@ function centreOf(low: number, high: number): number {
 }
 
 /**
- * The plan tolerance, but at most a share of the shorter edges. Where the file states no unit the tolerance is that of the
- * unit which its lengths suggest: ends that miss by 0.3 are 0.3 mm where edges are 1500 long.
+ * The plan tolerance, but at most a share of the shorter edges. Where the user states no unit the tolerance is that of the
+ * unit which the lengths suggest: ends that miss by 0.3 are 0.3 mm where edges are 1500 long. A file's own unit is only
+ * doubted when its lines would lie too far apart for panels even if half of them ran each way from end to end; their
+ * lengths alone say nothing, since bars may be drawn through.
  */
-function defaultSnap(lengths: Float64Array, unit: Unit, isAssumed: boolean): number {
-  const likely = isAssumed ? (likelyUnit(lengths, unit) ?? unit) : unit
+function defaultSnap(lengths: Float64Array, { unit, statedBy }: DrawingUnit, tolerance_mm: number, { extent, lines }: { extent: number; lines: number }): number {
+  const apart_m = ((2 * extent) / lines) * millimetresPer(unit) / 1000
+  const isOpen = statedBy === 'nobody' || (statedBy === 'file' && apart_m > longest_m)
+  const middle = lengths.subarray(lengths.length >> 1, (lengths.length >> 1) + 1)
+  // Where short mitres and ends of bars abound the middle length alone tells.
+  const likely = isOpen ? (likelyUnit(lengths, unit) ?? likelyUnit(middle, unit) ?? unit) : unit
   const short = lengths.length === 0 ? Infinity : lengths[Math.floor(lengths.length / 4)]
-  return Math.min(defaultSnap_mm / millimetresPer(likely), snapShare * short)
+  return Math.min(tolerance_mm / millimetresPer(likely), snapShare * short)
 }
 
 /** Lengths looked at, evenly through the file: enough for quantiles. */

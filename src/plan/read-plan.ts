@@ -31,6 +31,8 @@ export interface ReadOptions {
   readonly accept: readonly string[]
   /** Proposals that the user leaves: their questions are answered with no. */
   readonly leave?: readonly string[]
+  /** What the drawing is exact to: line ends nearer than this are one node unless `snap_mm` says otherwise, and no proposal moves a node farther; null: 1 mm. */
+  readonly planTolerance_mm?: number | null
   /** Two points of the drawing, in its own coordinates, and their true distance: a number in the plan's unit, or as typed. */
   readonly scaleFrom?: { readonly from: readonly [number, number]; readonly to: readonly [number, number]; readonly length: number | string } | null
 }

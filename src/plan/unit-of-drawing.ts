@@ -11,8 +11,8 @@ export interface DrawingUnit {
   readonly unit: Unit
   /** Plan coordinates = drawing coordinates * factor; 1 for models, so that their numbers stay as they are. */
   readonly factor: number
-  /** Whether neither the file nor the user states a unit. */
-  readonly isAssumed: boolean
+  /** Who states the unit: a file's header is often wrong, and without any statement metres are a guess. */
+  readonly statedBy: 'user' | 'file' | 'nobody'
   readonly repairs: readonly Repair[]
   readonly notices: readonly string[]
 }
@@ -32,18 +32,18 @@ export function unitOfDrawing(drawing: Drawing, options: ReadOptions): Result<Dr
     const factor = conversion(from, 'm') * (scale ?? 1)
     // A unit that the user states is the unit of the thing drawn, so no scale is missing then.
     const notices = scale === null && options.unit === null ? ['No scale is given, so the sizes on paper are taken as they are (1:1).'] : []
-    return ok({ unit: 'm', factor: from === 'mm' && scale !== null && scale % 1000 === 0 ? scale / 1000 : factor, isAssumed: false, repairs: [], notices })
+    return ok({ unit: 'm', factor: from === 'mm' && scale !== null && scale % 1000 === 0 ? scale / 1000 : factor, statedBy: 'user', repairs: [], notices })
   }
   if (scale !== null && scale !== 1) {
     return fail('scale-of-model', `a ${drawing.format} file holds true sizes, so a scale of 1:${scale} has no meaning`, null, 'leave --scale out, or state its unit with --unit')
   }
   const unit = options.unit ?? drawing.unit
-  if (unit !== null) return ok({ unit, factor: 1, isAssumed: false, repairs: [], notices: [] })
+  if (unit !== null) return ok({ unit, factor: 1, statedBy: options.unit === null ? 'file' : 'user', repairs: [], notices: [] })
   const assumed: Repair = {
     code: 'unit-assumed', state: 'applied', count: 1, where: [],
     message: 'The file states no unit: metres are assumed (--unit says otherwise).',
   }
-  return ok({ unit: 'm', factor: 1, isAssumed: true, repairs: [assumed], notices: [] })
+  return ok({ unit: 'm', factor: 1, statedBy: 'nobody', repairs: [assumed], notices: [] })
 }
 
 /** A length that agrees with a unit of the drawing to this share is that unit: four digits, more than a distance off a drawing has. */
@@ -66,8 +66,8 @@ function unitFromDistance(drawing: Drawing, options: ReadOptions, { from, to, le
   const inMetres = factor * metres[unit]
   const same = drawing.onPaper ? undefined : units.find((other) => Math.abs(inMetres / metres[other] - 1) <= unitShare)
   const one = `By the two points, ${significant(drawn, 6)} as drawn are ${significant(typed.value, 6)} ${unit}`
-  if (same !== undefined) return ok({ unit: same, factor: 1, isAssumed: false, repairs: [], notices: [`${one}: the drawing is in ${same}.`] })
-  return ok({ unit, factor, isAssumed: false, repairs: [], notices: [`${one}: every coordinate is multiplied by ${significant(factor, 6)}.`] })
+  if (same !== undefined) return ok({ unit: same, factor: 1, statedBy: 'user', repairs: [], notices: [`${one}: the drawing is in ${same}.`] })
+  return ok({ unit, factor, statedBy: 'user', repairs: [], notices: [`${one}: every coordinate is multiplied by ${significant(factor, 6)}.`] })
 }
 
 /** Millimetres in one unit of the plan. */

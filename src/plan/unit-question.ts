@@ -8,7 +8,7 @@ import type { Question } from '../base/repair.ts'
 
 /** Shortest and longest edge, and the usual one, in metres. */
 const shortest_m = 0.1
-const longest_m = 20
+export const longest_m = 20
 const usual_m = 1.5
 
 /** Scales that plans of roofs are drawn to. */

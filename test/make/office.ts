@@ -38,6 +38,19 @@ const drawn = (name: string, plan: Parameters<(typeof ways)[number]['draw']>[0],
   return way.draw(plan, random(seed))
 }
 
+/** Every node moved by up to 0.4 mm along x and y, the same in each outline that has it. */
+function shaken(sketch: Sketch, seed: number): Sketch {
+  const next = random(seed)
+  const shifts = new Map<string, Point>()
+  const shift = (p: readonly number[]): Point => {
+    const key = `${p[0]!.toFixed(6)} ${p[1]!.toFixed(6)}`
+    const known = shifts.get(key) ?? [4e-4 * (2 * next() - 1), 4e-4 * (2 * next() - 1)]
+    shifts.set(key, known)
+    return [p[0]! + known[0], p[1]! + known[1]]
+  }
+  return { outlines: (sketch.outlines ?? []).map((outline) => outline.map(shift)) }
+}
+
 /** Text by file name. */
 export function officeFiles(): ReadonlyMap<string, string> {
   return new Map([
@@ -46,6 +59,7 @@ export function officeFiles(): ReadonlyMap<string, string> {
     ['bars-acute-two-widths.dxf', dxf(drawn('double lines, two widths', skewGrid(5, 4, 35), 5), 1, 6)],
     ['bars-rectangles.dxf', dxf(drawn('bars as rectangles', skewGrid(4, 4, 90, true), 7), 1, 6)],
     ['panes-apart.dxf', dxf(drawn('panes apart', grid(6, 3, { bay: 1.5 }), 2), 1, 6)],
+    ['crooked.dxf', dxf(shaken(drawn('outlines', grid(7, 4, { bay: 1.2 }), 1), 11), 1000, 4)],
     ['unit-wrong.dxf', dxf(drawn('single lines', grid(5, 4, { bay: 1.5 }), 1), 1000, 6)],
     ['unscaled.dxf', dxf(drawn('single lines', grid(5, 4, { bay: 1.5 }), 1), 100 / 7.5, null)],
   ])

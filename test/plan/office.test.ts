@@ -83,6 +83,20 @@ describe('double lines', () => {
   })
 })
 
+test('crooked bars: the misfit of all 13 runs (exact: 8 + 5), straight once accepted', () => {
+  const r = readFile('crooked.dxf')
+  expect(repair(r, 'straighten')).toMatch(/^proposed: \d+ nodes of 13 runs are off straight by up to 0\.\d+ mm; straightening moves \d+ nodes by up to 0\.\d+ mm\.$/)
+  expect(r.questions).toEqual([])
+  const { plan } = readFile('crooked.dxf', { accept: ['straighten'] })
+  const clean = grid(7, 4, { bay: 1200 })
+  expect(isClean(clean, plan, 1)).toBe(true)
+  for (const column of [0, 1, 2, 3, 4, 5, 6, 7]) {
+    const own = Array.from(plan.x.keys()).filter((n) => Math.abs(plan.x[n]! - 1200 * column) < 10).sort((m, n) => plan.y[m]! - plan.y[n]!)
+    const [a, b] = [own[0]!, own[own.length - 1]!]
+    for (const n of own) expect(Math.abs((plan.x[n]! - plan.x[a]!) * (plan.y[b]! - plan.y[a]!) - (plan.y[n]! - plan.y[a]!) * (plan.x[b]! - plan.x[a]!)) / 4800).toBeLessThan(1e-9)
+  }
+})
+
 describe('units', () => {
   test('a wrong header raises the question with the unit that fits, and either answer goes', () => {
     const r = readFile('unit-wrong.dxf')

@@ -86,7 +86,7 @@ export function readOptionsOf(brief: Brief, options: Options, fileUnit: Unit | n
   const unit = options.unit ?? fileUnit ?? 'm'
   const factor = conversion(brief.unit ?? unit, unit)
   const voids = options.voids ?? (brief.voids ?? []).map(([x, y]): Point => [x * factor, y * factor])
-  return { unit: options.unit, scale: options.scale, snap_mm: options.snap_mm, voids, accept: options.accept, leave: options.leave, scaleFrom: options.scaleFrom }
+  return { unit: options.unit, scale: options.scale, snap_mm: options.snap_mm, voids, accept: options.accept, leave: options.leave, scaleFrom: options.scaleFrom, planTolerance_mm: options.planTolerance_mm }
 }
 
 const scaled = (value: number | null, factor: number): number | null => (value === null ? null : value * factor)
