@@ -14,6 +14,7 @@ import { heightsOfNodes } from './height-of-nodes.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { panelFaces } from './line-work-panels.ts'
 import { counted, inMillimetres } from './line-work-words.ts'
+import { digitOf, exactnessNotices, type Exactness } from './office-exactness.ts'
 import { regular } from './office-regular.ts'
 import { barWidths, centreLineFaces, doubleLineWords, leaves, takes } from './office-reduced.ts'
 import type { Plan } from './plan.ts'
@@ -69,7 +70,9 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
 
   // Only a plan that is settled is worth making regular.
   const isSettled = doubt === null && (bars === null || bars.question === null)
-  const { plan, repairs: offers } = isSettled ? yield* regular(asDrawn, tolerance_mm, mmPerUnit, options) : { plan: asDrawn, repairs: [] }
+  const { plan, repairs: offers, straight_mm } = isSettled ? yield* regular(asDrawn, tolerance_mm, mmPerUnit, options) : { plan: asDrawn, repairs: [], straight_mm: 0 }
+  const exactness: Exactness = { meets_mm: drawn.value.meets * mmPerUnit, straight_mm, digit_mm: digitOf(frame.value.planX, frame.value.planY, mmPerUnit) }
+  const isStated = options.planTolerance_mm !== undefined && options.planTolerance_mm !== null && options.planTolerance_mm > 0
   const planNode = new Int32Array(x.length).fill(-1)
   for (let index = 0; index < pointOfNode.length; index += 1) planNode[pointOfNode[index]] = index
   const planNodes = new Int32Array(nodeOfPoint.length)
@@ -92,7 +95,8 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
     repairs,
     questions: [...(bars === null || bars.question === null ? [] : [bars.question]), ...(doubt === null || leaves(options, 'unit') ? [] : [doubt.question])],
     leftOut: drawing.leftOut,
-    notices: [...read.value.notices, ...drawn.value.notices, ...notices, ...(bars === null ? openGaps(plan, mmPerUnit) : [])],
+    exactness,
+    notices: [...read.value.notices, ...exactnessNotices(exactness, tolerance_mm, { isStated, snaps: options.snap_mm !== null }), ...drawn.value.notices, ...notices, ...(bars === null ? openGaps(plan, mmPerUnit) : [])],
   })
 }
 

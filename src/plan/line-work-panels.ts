@@ -29,6 +29,8 @@ export interface PanelFaces {
   readonly corner: Int32Array
   /** Node of each point of the drawing, -1 for points that no line uses. */
   readonly nodeOfPoint: Int32Array
+  /** The largest distance at which ends were joined; 0 where all meet. */
+  readonly meets: number
   /** Line of the file behind each panel, 0 when there is no single one. */
   readonly lineOfPanel: Int32Array
   readonly repairs: readonly Repair[]
@@ -81,7 +83,9 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
   yield { stage: 'Tracing panels', done: 0.5 }
   const nodeOfPoint = new Int32Array(nodeOf.length)
   for (let i = 0; i < nodeOf.length; i += 1) nodeOfPoint[i] = nodeOf[i] < 0 ? -1 : lines.sameAs[nodeOf[i]]
-  const common = { x, y, nodeOfPoint }
+  let meets = points.joined.largest
+  for (const gap of lines.touchGap) if (gap > frame.silent) meets = Math.max(meets, gap)
+  const common = { x, y, nodeOfPoint, meets }
 
   let notices: string[] = []
   // Outlines that overlap make no panels, unless they are bars that cross.

@@ -1,5 +1,6 @@
 /** A drawing made into a plan, with everything the reader did and noticed on the way. */
 import type { LeftOut, Question, Repair } from '../base/repair.ts'
+import type { Exactness } from './office-exactness.ts'
 import type { Plan } from './plan.ts'
 
 export interface ReadPlan {
@@ -10,6 +11,8 @@ export interface ReadPlan {
   readonly marks: { readonly points: Float64Array; readonly layer: Int32Array; readonly layers: readonly string[] }
   /** Width of the bar or gap that each edge was drawn with, per edge in the plan's unit, NaN for a single line; absent when no bars were reduced. */
   readonly barWidth?: Float64Array
+  /** How exactly the drawing seems to be drawn. */
+  readonly exactness?: Exactness
   readonly repairs: readonly Repair[]
   readonly questions: readonly Question[]
   readonly leftOut: readonly LeftOut[]
