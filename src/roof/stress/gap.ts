@@ -2,14 +2,14 @@
  * The gap: square root of the smallest eigenvalue of the flatness form above tau, in a plan of span 1: how far the nearest
  * near lift is from being a lift.
  *
- * Block Krylov space of K^-1 Q K^-1, then Rayleigh-Ritz with Q itself (Golub, Underwood 1977; Parlett, "The Symmetric
- * Eigenvalue Problem"). K^-1 blows lifts up to 1/tau and near lifts to 1/lambda; Q takes the lifts out again, exactly but for
+ * Krylov space of K^-1 Q K^-1, then Rayleigh-Ritz with Q itself (Lanczos 1950 with full reorthogonalisation; Parlett, "The
+ * Symmetric Eigenvalue Problem"). K^-1 blows lifts up to 1/tau and near lifts to 1/lambda; Q takes the lifts out again, exactly but for
  * the rounding of what it leaves (see `applyForm`), and the second K^-1 restores the near lifts. Lifts of a plan with rounded
  * coordinates have residuals of their own: of those it takes lambda / tau only, and the answer is one of them. The question
  * is then asked again off another factor, of Q - sigma I with sigma = 1e-11, and more often: (K^-1 Q)^5 K^-1 leaves
  * (lambda / sigma)^5 / sigma of a lift, at most 10, beside 1 / lambda of a near lift.
  * Tried and dropped: K^-1 alone and filters I + tau K^-1 (each takes the lifts down by their rounding over tau, 1e-2 to 1e-3
- * only, so five of them are needed: three times the solves).
+ * only, so five of them are needed: three times the solves); blocks of four vectors (the same digits at twice the cost).
  * Only for the free rim (T = I), where the metric is the identity.
  */
 import { EigenvalueDecomposition, Matrix } from 'ml-matrix'
@@ -20,9 +20,9 @@ import type { Steps } from '../../base/steps.ts'
 import type { LiftSpace } from './lift-space.ts'
 import { applyForm } from './panel-bases.ts'
 
-/** Columns carried through one solve, and how many blocks make the space: enough for two digits of the figure. */
-const width = 4
-const mostBlocks = 6
+/** Largest dimension of the space; three to six are usual. */
+const mostSteps = 24
+/** The figure is reported to two digits. */
 const wantedShare = 5e-3
 
 /** Passes that a factor at `tauCoarse` needs where lifts are rounded. */
@@ -35,23 +35,17 @@ export const passesWhereRounded = 5
 export function* smallestNearLift(space: LiftSpace, off: Factor = space.factor, passes = 1): Steps<number | null> {
   const n = space.plan.nodeCount
   if (space.dimension >= n) return null
-  const columns = Math.min(width, n - space.dimension)
   const basis: Float64Array[] = []
   const formed: Float64Array[] = []
-  let block = gaussians(columns * n, 7)
+  let vector = gaussians(n, 7)
   let found = Infinity
-  for (let step = 0; step < mostBlocks; step += 1) {
-    yield { stage: 'Measuring the gap', done: step / mostBlocks }
-    block = filtered(space, off, passes, block, columns)
-    const before = basis.length
-    for (let k = 0; k < columns; k += 1) {
-      const direction = newDirection(basis, block.subarray(k * n, (k + 1) * n))
-      if (direction === null) continue
-      basis.push(direction)
-      formed.push(applyForm(space.plan, space.bases, direction))
-      block.set(direction, k * n)
-    }
-    if (basis.length === before) break
+  for (let step = 0; step < mostSteps; step += 1) {
+    yield { stage: 'Measuring the gap', done: step / mostSteps }
+    const direction = newDirection(basis, filtered(space, off, passes, vector))
+    if (direction === null) break
+    basis.push(direction)
+    formed.push(applyForm(space.plan, space.bases, direction))
+    vector = direction
     const next = ritz(basis, formed)
     const settled = Math.abs(next - found) < wantedShare * next
     found = next
@@ -60,14 +54,10 @@ export function* smallestNearLift(space: LiftSpace, off: Factor = space.factor, 
   return found
 }
 
-/** (K^-1 Q)^passes K^-1 of each column. */
-function filtered(space: LiftSpace, off: Factor, passes: number, block: Float64Array, columns: number): Float64Array {
-  const n = space.plan.nodeCount
-  let out = solve(off, block, columns)
-  for (let pass = 0; pass < passes; pass += 1) {
-    for (let k = 0; k < columns; k += 1) out.set(applyForm(space.plan, space.bases, out.subarray(k * n, (k + 1) * n)), k * n)
-    out = solve(off, out, columns)
-  }
+/** (K^-1 Q)^passes K^-1 of the vector. */
+function filtered(space: LiftSpace, off: Factor, passes: number, vector: Float64Array): Float64Array {
+  let out = solve(off, vector)
+  for (let pass = 0; pass < passes; pass += 1) out = solve(off, applyForm(space.plan, space.bases, out))
   return out
 }
 
