@@ -35,9 +35,9 @@ const counted_mm = 1
 export function* adjust(request: Request, version: string, sha256: string): Steps<Result<AdjustAnswer>> {
   const options = yield* withLevels(request)
   if (!options.ok) return options
-  // The tolerance is asked of the plan that is found, not of the one as drawn.
+  // The tolerance is asked of the plan that is found, not of the one as drawn; the drawing is read with it.
   const asked = { ...request, options: { ...options.value, planTolerance_mm: 0 } }
-  const made = yield* reading(asked)
+  const made = yield* reading({ ...request, options: options.value })
   if (!made.ok) return made
   const { read, brief, target } = made.value
   if (read.questions.length > 0) return openQuestion(request, read.questions)
