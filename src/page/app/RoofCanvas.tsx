@@ -4,7 +4,7 @@
  */
 import { Canvas, useFrame, useThree } from '@react-three/fiber'
 import { Component, useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
-import { MOUSE, TOUCH, type OrthographicCamera, type PerspectiveCamera } from 'three'
+import { MOUSE, TOUCH, WebGLRenderer, type OrthographicCamera, type PerspectiveCamera } from 'three'
 import { OrbitControls } from 'three/examples/jsm/controls/OrbitControls.js'
 import { metres } from '../../base/length.ts'
 import { fitted } from '../../paper/drawing/plan-window.ts'
@@ -22,6 +22,9 @@ import type { Size } from './useSize.ts'
 /** Above this many panels multisampling is left out where WebGL is software: it costs 70 of 100 ms a frame. */
 const manyPanels = 2500
 
+/** Canvases tried for a context that is not lost, before the painter takes over. */
+const mostTries = 5
+
 /** Height in px of the words under the roof. */
 const footRoom = 26
 
@@ -29,13 +32,29 @@ export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer
   const webgl = useDeskState((state) => state.webgl)
   const [lost, setLost] = useState(0)
   const [failed, setFailed] = useState(false)
+  const tries = useRef(0)
   const painter = webgl === 'none' || failed
   const smooth = webgl === 'hardware' || answer.plan.panelCount <= manyPanels
   if (size.width === 0 || size.height === 0) return null
+  /**
+   * A browser short of contexts gives one that is lost from the start, on which three throws: a fresh canvas is tried again
+   * shortly, a few times, then the painter takes over. Meanwhile a painter of nothing visible stands in.
+   */
+  const withWebGl = (canvas: HTMLCanvasElement): WebGLRenderer | PaperRenderer => {
+    const options: WebGLContextAttributes = { antialias: smooth, alpha: true, powerPreference: 'low-power' }
+    const context = canvas.getContext('webgl2', options) as WebGL2RenderingContext | null
+    if (context !== null && !context.isContextLost()) {
+      tries.current = 0
+      return new WebGLRenderer({ ...options, canvas, context })
+    }
+    tries.current += 1
+    setTimeout(() => (tries.current > mostTries ? setFailed(true) : setLost((count) => count + 1)), 300)
+    return new PaperRenderer(document.createElement('canvas'))
+  }
   const paint = (
     <Canvas
       key={`${painter ? 'paper' : 'webgl'} ${smooth} ${lost}`} frameloop="demand" flat dpr={webgl === 'hardware' ? [1, 2] : 1} orthographic
-      gl={painter ? (props) => new PaperRenderer(props.canvas as HTMLCanvasElement) as never : { antialias: smooth, alpha: true, powerPreference: 'low-power' }}
+      gl={(props) => (painter ? new PaperRenderer(props.canvas as HTMLCanvasElement) : withWebGl(props.canvas as HTMLCanvasElement)) as never}
       onCreated={({ gl }) => {
         gl.domElement.addEventListener('webglcontextlost', (event) => {
           event.preventDefault()
