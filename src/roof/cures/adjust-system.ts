@@ -7,6 +7,7 @@
  *
  * Tried and dropped: the system in positions, heights and planes (three times as many unknowns, indefinite, needs pivots).
  */
+import { dot } from '../../base/dot.ts'
 import { analyse } from '../../base/sparse/analyse.ts'
 import { cliquePattern, type CliquePattern } from '../../base/sparse/cliques.ts'
 import { factor, refactor, type Factor } from '../../base/sparse/factor.ts'
@@ -187,8 +188,3 @@ function missing(right: Float64Array, product: Float64Array): { vector: Float64A
   return { vector, size: Math.sqrt(dot(vector, vector)) }
 }
 
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0
-  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
-  return sum
-}

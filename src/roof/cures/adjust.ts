@@ -11,6 +11,7 @@
  * Without the held rise a flat roof is a solution, and one that small w finds. With it, "least shift" alone is still ill
  * posed (one corner panel folded off costs next to nothing), so w is kept.
  */
+import { dot } from '../../base/dot.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Elimination } from '../conditions/eliminate.ts'
@@ -361,8 +362,3 @@ function rootMeanSquare(values: Float64Array): number {
   return Math.sqrt(dot(values, values) / Math.max(1, values.length))
 }
 
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0
-  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
-  return sum
-}

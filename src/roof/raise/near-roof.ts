@@ -3,6 +3,7 @@
  * the product weighted by the node areas m as well (t' = the wish less its tilt, so no tilt helps: this holds the rise); of mu = 1, 10, .. 1e8 the least that brings every panel within the
  * tolerance, else 1e8. Pattern and ordering are those of the exact question, so each mu costs one factor.
  */
+import { dot } from '../../base/dot.ts'
 import { factor, refactor, type Factor } from '../../base/sparse/factor.ts'
 import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
@@ -67,8 +68,3 @@ function heldRise(space: LiftSpace, factored: Factor, wish: Float64Array, shape:
 /** An answer smaller than this is rounding: with mu Q over M the free heights answer by about 1 / (1 + mu lambda). */
 const smallestAnswer = (mu: number): number => 1 / (1 + mu)
 
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0
-  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
-  return sum
-}

@@ -7,6 +7,7 @@
  * J. Sci. Comput. 23 (2001)): at most dim(lifts) steps, in practice few, since node areas differ little.
  * Tried and dropped: a factor of Q - tau M (area in the shift): a second factor, and its count is wrong on graded plans.
  */
+import { dot } from '../../base/dot.ts'
 import { nearestShare, tau } from '../../base/geometry/tolerance.ts'
 import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
@@ -133,8 +134,3 @@ function isProjection(g: Float64Array, along: number): boolean {
 /** Node areas of a plan with panels of 1:1000 need some hundred steps; usual plans take under twenty. */
 const mostSteps = 400
 
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0
-  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
-  return sum
-}

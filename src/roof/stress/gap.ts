@@ -12,6 +12,7 @@
  * only, so five of them are needed: three times the solves); blocks of four vectors (the same digits at twice the cost).
  * Only for the free rim (T = I), where the metric is the identity.
  */
+import { dot } from '../../base/dot.ts'
 import { EigenvalueDecomposition, Matrix } from 'ml-matrix'
 import { gaussians } from '../../base/random.ts'
 import type { Factor } from '../../base/sparse/factor.ts'
@@ -82,8 +83,3 @@ function ritz(basis: readonly Float64Array[], formed: readonly Float64Array[]): 
   return Math.min(...new EigenvalueDecomposition(small, { assumeSymmetric: true }).realEigenvalues)
 }
 
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0
-  for (let i = 0; i < a.length; i += 1) sum += a[i] * b[i]
-  return sum
-}
