@@ -1,6 +1,7 @@
 /** Drawing 2: the slope chart. A point dragged asks its panel for that slope and fall. */
 import { useCallback, useRef, useState, type PointerEvent } from 'react'
 import { panelName } from '../../plan/names.ts'
+import { heldPlane } from '../../plan/project/edits.ts'
 import { fallBearing, gradientAt } from '../../paper/drawing/fall.ts'
 import { compassPoint, figure, slopeFigure, type SlopeUnit } from '../../paper/drawing/figures.ts'
 import { chartFit, panelAtChartPoint, ringCounts, slopeChart, type ChartWindow } from '../../paper/drawing/slope-chart.ts'
@@ -45,17 +46,13 @@ export function ChartPane() {
     desk.select({ kind: 'panel', index: panel })
   }
   const ask = (x: number, y: number): void => {
-    const { doc } = desk.state
-    if (doc === null || shown.current === null || dragged.current < 0) return
+    if (shown.current === null || dragged.current < 0) return
     const [gx, gy] = gradientAt((x - shown.current.middleX) / shown.current.scale, (shown.current.middleY - y) / shown.current.scale)
     const gradient = Float64Array.of(gx, gy)
     const pitch_deg = (Math.atan(Math.hypot(gx, gy)) * 180) / Math.PI
     const bearing_deg = Number.isNaN(fallBearing(gradient, 0)) ? 0 : fallBearing(gradient, 0)
-    const name = panelName(dragged.current)
-    const condition = { name: `slope of ${name}`, kind: 'plane', at: { panels: [name] }, pitch_deg, bearing_deg, soft: null } as const
-    const base = desk.state.steps[desk.state.at]?.doc ?? doc
-    const conditions = [...base.brief.conditions.filter((other) => other.name !== condition.name), condition]
-    desk.hold({ doc: { ...base, brief: { ...base.brief, conditions } }, what: `${name} ${slopeFigure(pitch_deg)} ${compassPoint(bearing_deg)}`, before: 'dragged in the chart' })
+    const condition = heldPlane(dragged.current, pitch_deg, bearing_deg)
+    desk.holdCondition(condition, `${panelName(dragged.current)} ${slopeFigure(pitch_deg)} ${compassPoint(bearing_deg)}`, 'dragged in the chart')
   }
   const moved = useRef(false)
   const onMove = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {

@@ -11,7 +11,7 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
   const doc = useDeskState((state) => state.doc)
   if (doc === null) return null
   const { conditions } = doc.brief
-  const mm = conversion(doc.plan.unit, 'mm')
+  const mm = conversion(doc.read.plan.unit, 'mm')
   const { freedomLeft } = answer.summary.stress
   const clashes = answer.summary.held.clashes
   return (
@@ -22,7 +22,7 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
           <thead><tr><th>Held</th><th>asked</th><th>how</th><th /></tr></thead>
           <tbody>
             {conditions.map((condition) => {
-              const off = doc.off.includes(condition.name)
+              const off = condition.off === true
               const clashing = clashes.some((clash) => clash.conditions.includes(condition.name))
               return (
                 <tr key={condition.name} className={off ? 'off' : clashing ? 'clash' : ''}>

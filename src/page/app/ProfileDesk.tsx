@@ -36,7 +36,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
     )
   }
   const section = runSection(answer, picked)
-  const mm = conversion(doc.plan.unit, 'mm')
+  const mm = conversion(doc.read.plan.unit, 'mm')
   const name = `${nodeName(first)} to ${nodeName(last)}`
   const existing = doc.brief.conditions.find((condition) => condition.name === name)
   const base = Math.min(section.level[0], section.level[section.level.length - 1])
@@ -104,7 +104,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
         <text x={width / 2} y={height - 5} textAnchor="middle">chord {figure(section.length * mm)} mm</text>
       </svg>
       <div className="entry fields">
-        {kind === 'arc' && <LengthField label="rise" bare="mm" to={doc.plan.unit} start={figure(rise * mm).replace(/\u202f/g, '')} onValue={(value) => take({ arc: { rise: value } })} />}
+        {kind === 'arc' && <LengthField label="rise" bare="mm" to={doc.read.plan.unit} start={figure(rise * mm).replace(/\u202f/g, '')} onValue={(value) => take({ arc: { rise: value } })} />}
         {kind === 'pitch' && <NumberField label="pitch °" start={figure(pitch, 1)} onValue={(value) => Math.abs(value) < 90 && take({ pitch_deg: value })} />}
         {kind === 'levels' && <label className="field wide"><span>levels, mm</span><input defaultValue={levels.map((level) => figure(level * mm).replace(/\u202f/g, '')).join(' ')} key={levels.join()} onKeyDown={(event) => {
           if (event.key !== 'Enter') return
@@ -115,7 +115,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
             take({ points: section.along.map((along, k) => [along, typed[k] / mm]) })
           }
         }} /><small>{picked.length} levels, Enter</small></label>}
-        {kind === 'level' && <LengthField label="level" bare="mm" to={doc.plan.unit} start={figure(base * mm).replace(/\u202f/g, '')} onValue={(level) => desk.condition({ name, kind: 'level', at: run, level, soft: null }, `${name} level at ${signed(level * mm)} mm`)} />}
+        {kind === 'level' && <LengthField label="level" bare="mm" to={doc.read.plan.unit} start={figure(base * mm).replace(/\u202f/g, '')} onValue={(level) => desk.condition({ name, kind: 'level', at: run, level, soft: null }, `${name} level at ${signed(level * mm)} mm`)} />}
         {kind === 'fall' && <NumberField label="fall \u2030" start="20" onValue={(per_mille) => desk.condition({ name, kind: 'fall', at: run, per_mille, level: null, soft: null }, `${name} falls ${figure(per_mille, 1)} \u2030`)} />}
         {kind === 'equal' && <button className="word" onClick={() => desk.condition({ name, kind: 'equal', at: run, soft: null }, `${name} at one level, wherever`)}>Hold at one level, wherever</button>}
         {kind === 'straight' && <button className="word" onClick={() => desk.condition({ name, kind: 'straight', at: run, soft: null }, `${name} straight`)}>Hold straight</button>}

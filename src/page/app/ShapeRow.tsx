@@ -29,7 +29,7 @@ export function ShapeRow() {
       }} />
       {shown === 'hand' && <button role="radio" aria-checked className="chosen">set by hand</button>}
       <button aria-pressed={down} className={down ? 'chosen' : ''} onClick={() => desk.brief({ down: !down }, down ? 'Rises' : 'Hangs', down ? 'hung' : 'rose')}>hanging</button>
-      {error !== undefined && <span className="note">{figure(error * conversion(doc.plan.unit, 'mm'), 1)} mm off it (RMS)</span>}
+      {error !== undefined && <span className="note">{figure(error * conversion(doc.read.plan.unit, 'mm'), 1)} mm off it (RMS)</span>}
     </p>
   )
 }

@@ -19,7 +19,7 @@ export function TitleBlock() {
   const inHand = useDeskState((state) => state.inHand !== null)
   const saved = useDeskState((state) => state.saved)
   const ms = useDeskState((state) => state.answerMs)
-  const unit = opening?.read?.plan.unit ?? doc?.plan.unit ?? 'm'
+  const unit = opening?.read?.plan.unit ?? doc?.read.plan.unit ?? 'm'
   const { flat_mm, leastSlope } = useLimits()
   const rise = answer?.summary.roof?.rise
   const mm = conversion(unit, 'mm')

@@ -2,11 +2,12 @@
 import { conversion, type Unit } from '../../base/length.ts'
 import { readBrief, type Brief } from '../../plan/project/brief.ts'
 import { inUnit } from '../../plan/project/condition.ts'
+import { documentKind } from '../../plan/project/read-project.ts'
 import type { Result } from '../../base/result.ts'
 
 /** null where the text is no brief of ours. */
 export function openBrief(name: string, text: string): Result<Brief> | null {
-  return /"panewise"\s*:\s*"brief"/.test(text.slice(0, 400)) ? readBrief(text, name) : null
+  return documentKind(text) === 'brief' ? readBrief(text, name) : null
 }
 
 export function briefInUnit(brief: Brief, unit: Unit): Brief {

@@ -1,21 +1,26 @@
 /** The page's one object: its state, the worker it asks, and every command as a method that components and keys call. */
-import { counted } from '../../paper/drawing/figures.ts'
-import { isUnit } from '../../base/length.ts'
-import { fail, type Problem, type Result } from '../../base/result.ts'
-import type { Answer } from '../../roof/answer/answer.ts'
-import { panelAt } from './picking.ts'
-import { openProject } from './project-file.ts'
-import type { Brief } from '../../plan/project/brief.ts'
-import { briefInUnit, openBrief } from './brief-file.ts'
-import type { Condition } from '../../plan/project/condition.ts'
+import { counted, figure } from '../../paper/drawing/figures.ts'
 import type { Selection } from '../../paper/drawing/plan-drawing.ts'
+import { fail, type Problem, type Result } from '../../base/result.ts'
+import { emptyBrief, type Brief } from '../../plan/project/brief.ts'
+import type { Condition } from '../../plan/project/condition.ts'
+import { softened, switched, withCondition, withoutConditions, withRise } from '../../plan/project/edits.ts'
+import { projectOf } from '../../plan/project/project-record.ts'
+import { withVoids } from '../../plan/project/turned-face.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
+import { briefInUnit, openBrief } from './brief-file.ts'
 import type { Engine, NamedBytes } from './engine.ts'
-import { initialState, newDoc, openingOptions, type Doc, type OpeningOptions, type State, type Step } from './state.ts'
+import { answered, switchedLayer, turnedVoid } from './opening.ts'
+import { openProject } from './project-file.ts'
+import { initialState, openingOptions, type Doc, type OpeningOptions, type State, type Step } from './state.ts'
 import { gone, held, putDown, taken } from './steps.ts'
 import { createStore, type Store } from './store.ts'
 
 /** After this long a question shows its bar. */
 const busyAfter = 1000
+
+/** Slope below which panels of a new plan are marked: where water is said to stay on glass, common practice, no source. */
+const usualLeastSlope_deg = 3
 
 export class Desk {
   readonly store: Store<State>
@@ -33,6 +38,11 @@ export class Desk {
 
   get state(): State {
     return this.store.state()
+  }
+
+  /** The document that an edit starts from: that of the last step, also while another edit is in hand. */
+  get standing(): Doc | null {
+    return this.state.steps[this.state.at]?.doc ?? null
   }
 
   set(change: Partial<State>): void {
@@ -92,8 +102,18 @@ export class Desk {
     const { doc, opening } = this.state
     if (!brief.ok) this.set({ problem: brief.problem })
     else if (opening !== null) void this.open(opening.file, opening.options, brief.value)
-    else if (doc !== null) this.take({ doc: { ...doc, brief: { ...briefInUnit(brief.value, doc.plan.unit), voids: null } }, what: name, before: 'brief laid over the plan' })
+    else if (doc !== null) this.layOver(doc, briefInUnit(brief.value, doc.read.plan.unit), name)
     else this.set({ problem: fail('no-drawing', 'a brief needs a drawing', { file: name }, 'open the drawing first').problem })
+  }
+
+  /** Voids that it names become voids of the plan; heights set by hand give way to what it asks. */
+  private layOver(doc: Doc, brief: Brief, name: string): void {
+    const made = withVoids({ ...doc, brief: { ...brief, voids: null }, target: null }, brief.voids ?? [])
+    if (!made.ok) return this.set({ problem: made.problem })
+    // The plan is another one where a face turned: what was picked on it is put down.
+    const isOther = made.value.read !== doc.read
+    if (isOther) this.set({ selection: null, picked: [], answer: null })
+    this.take({ doc: made.value, what: name, before: 'brief laid over the plan' })
   }
 
   /** A second surface for the roof to come near to. */
@@ -103,7 +123,7 @@ export class Desk {
     const made = await this.working(() => this.engine.surface(doc, file))
     if (made === null || this.state.doc !== doc) return
     if (!made.ok) this.set({ problem: made.problem })
-    else this.take({ doc: { ...doc, target: made.value, brief: { ...doc.brief, rise: null } }, what: `Near to ${file.name}`, before: 'was another shape' })
+    else this.take({ doc: { ...withRise(doc, null), target: made.value }, what: `Near to ${file.name}`, before: 'was another shape' })
   }
 
   chooseRepair(repair: number): void {
@@ -114,42 +134,26 @@ export class Desk {
   /** A face clicked turns from panel to void or back. */
   toggleVoid(x: number, y: number): void {
     const { opening } = this.state
-    if (opening === null || opening.read === null) return
-    const { voids } = opening.options
-    const { plan } = opening.read
-    if (panelAt(plan, x, y) >= 0) {
-      this.reopen({ voids: [...voids, [x, y]] })
-      return
-    }
-    // A point within the void that was clicked: take away the one that lies in the same face.
-    const nearest = voids.map(([vx, vy], i) => ({ i, d: Math.hypot(vx - x, vy - y) })).sort((a, b) => a.d - b.d)[0]
-    if (nearest !== undefined && nearest.d < plan.frame.span) this.reopen({ voids: voids.filter((_, i) => i !== nearest.i) })
+    const change = opening === null ? null : turnedVoid(opening, x, y)
+    if (change !== null) this.reopen(change)
   }
 
   switchLayer(layer: string): void {
     const { opening } = this.state
-    if (opening === null) return
-    const on = opening.options.layers ?? opening.layers
-    const layers = on.includes(layer) ? on.filter((name) => name !== layer) : [...on, layer]
-    this.reopen({ layers: layers.length === opening.layers.length ? null : layers })
+    if (opening !== null) this.reopen(switchedLayer(opening, layer))
   }
 
-  /** Answers a reader's question with one of the options it names, as typed on a command line. */
+  /** Answers a reader's question with one of the options it names. */
   answerQuestion(option: string): void {
-    const match = /^--([a-z-]+)[ =](.+)$/.exec(option)
-    if (match === null) return
-    const [, name, value] = match
-    if (name === 'unit' && isUnit(value)) this.reopen({ unit: value })
-    else if (name === 'scale') this.reopen({ scale: Number(value.replace(/^1:/, '')) })
-    else if (name === 'accept') this.reopen({ accept: [...(this.state.opening?.options.accept ?? []), value] })
-    else if (name === 'snap') this.reopen({ snap_mm: Number.parseFloat(value) })
-    else if (name === 'layers' || name === 'layer') this.reopen({ layers: value.split(',') })
+    const { opening } = this.state
+    const change = opening === null ? null : answered(opening.options, option)
+    if (change !== null) this.reopen(change)
   }
 
   async open(file: NamedBytes, options: OpeningOptions = openingOptions, brief: Brief | null = this.state.opening?.brief ?? null): Promise<void> {
     const started = performance.now()
     const before = this.state.opening
-    this.set({ problem: null, opening: { file, read: before?.read ?? null, problem: null, options, layers: before?.layers ?? [], chosenRepair: -1, brief, ms: 0 } })
+    this.set({ problem: null, opening: { file, read: before?.read ?? null, problem: null, options, layers: before?.layers ?? [], chosenRepair: -1, sha256: null, brief, ms: 0 } })
     const result = await this.working((onProgress) => this.engine.read(file, options, onProgress))
     if (result === null || this.state.opening?.file !== file || this.state.opening.options !== options) return
     const ms = performance.now() - started
@@ -159,7 +163,7 @@ export class Desk {
       else this.set({ opening: { ...this.state.opening, problem: result.problem, ms } })
       return
     }
-    const { read, layers } = result.value
+    const { read, layers, sha256 } = result.value
     const voids = brief === null ? null : briefInUnit(brief, read.plan.unit).voids
     if (voids !== null && before === null && options.voids.length === 0) {
       await this.open(file, { ...options, voids }, brief)
@@ -167,7 +171,7 @@ export class Desk {
     }
     // Switched off layers stay on the list.
     const known = before !== null && before.file === file ? before.layers : layers
-    this.set({ opening: { ...this.state.opening, read, layers: known, problem: null, ms } })
+    this.set({ opening: { ...this.state.opening, read, layers: known, sha256, problem: null, ms } })
   }
 
   reopen(change: Partial<OpeningOptions>): void {
@@ -178,14 +182,16 @@ export class Desk {
   accept(): void {
     const { opening } = this.state
     if (opening === null || opening.read === null || opening.problem !== null) return
-    const brief = opening.brief === null ? undefined : briefInUnit(opening.brief, opening.read.plan.unit)
-    const doc = newDoc(opening.file.name, opening.read, brief)
+    const brief = briefInUnit(opening.brief ?? emptyBrief, opening.read.plan.unit)
+    const doc = projectOf(opening.read, { name: opening.file.name, sha256: opening.sha256, brief: { ...brief, voids: null }, target: null, leastSlope: usualLeastSlope_deg })
     const { panels, repairs } = { panels: opening.read.plan.panelCount, repairs: opening.read.repairs.length }
     this.begin(doc, 'Opened', `${counted(panels, 'panel')}, ${counted(repairs, 'repair')}`)
   }
 
   /** Starts anew with a document: its first step. */
-  begin(doc: Doc, what: string, before: string): void {
+  begin(opened: Doc, what: string, before: string): void {
+    // Edits of the page are in the plan's unit.
+    const doc = { ...opened, brief: briefInUnit(opened.brief, opened.read.plan.unit) }
     this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, saved: '' }))
     void this.ask()
   }
@@ -236,25 +242,38 @@ export class Desk {
     if (doc !== null) this.take({ doc: { ...doc, brief: { ...doc.brief, ...change } }, what, before })
   }
 
+  /** Puts a condition down, in the place of the one of its name. */
   condition(condition: Condition, what: string): void {
-    const { doc } = this.state
-    if (doc === null) return
-    const others = doc.brief.conditions.filter(({ name }) => name !== condition.name)
-    const was = others.length === doc.brief.conditions.length ? 'was free' : 'was otherwise'
-    this.brief({ conditions: [...others, condition] }, what, was)
+    const doc = this.standing
+    if (doc !== null) this.take({ doc: withCondition(doc, condition), what, before: wasWords(doc, condition) })
+  }
+
+  /** The same while the hand still moves it. */
+  holdCondition(condition: Condition, what: string, before: string | null = null): void {
+    const doc = this.standing
+    if (doc !== null) this.hold({ doc: withCondition(doc, condition), what, before: before ?? wasWords(doc, condition) })
   }
 
   release(names: readonly string[]): void {
     const { doc } = this.state
     if (doc === null || names.length === 0) return
-    this.brief({ conditions: doc.brief.conditions.filter(({ name }) => !names.includes(name)) }, names.length === 1 ? `${names[0]} released` : `${names.length} conditions released`, 'was held')
+    this.take({ doc: withoutConditions(doc, names), what: names.length === 1 ? `${names[0]} released` : `${names.length} conditions released`, before: 'was held' })
   }
 
   switchCondition(name: string): void {
     const { doc } = this.state
-    if (doc === null) return
-    const isOff = doc.off.includes(name)
-    this.take({ doc: { ...doc, off: isOff ? doc.off.filter((n) => n !== name) : [...doc.off, name] }, what: `${name} ${isOff ? 'on' : 'off'}`, before: isOff ? 'was off' : 'was on' })
+    const condition = doc?.brief.conditions.find((other) => other.name === name)
+    if (doc === null || condition === undefined) return
+    const isOff = condition.off === true
+    this.take({ doc: switched(doc, name, !isOff), what: `${name} ${isOff ? 'on' : 'off'}`, before: isOff ? 'was off' : 'was on' })
+  }
+
+  /** Exact, or soft with a weight. */
+  soften(name: string, soft: number | null): void {
+    const { doc } = this.state
+    const was = doc?.brief.conditions.find((other) => other.name === name)
+    if (doc === null || was === undefined || was.soft === soft) return
+    this.take({ doc: softened(doc, name, soft), what: soft === null ? `${name} exactly` : `${name} softly, weight ${figure(soft, 2)}`, before: was.soft === null ? 'was exact' : `was soft, weight ${figure(was.soft, 2)}` })
   }
 
   // Answers
@@ -289,7 +308,7 @@ export class Desk {
       return
     }
     // The plan stays here: it does not come back with every answer.
-    const answer = { ...result.value, plan: doc.plan }
+    const answer = { ...result.value, plan: doc.read.plan }
     this.answers.set(doc, answer)
     this.set({ answer, fresh: isNow, problem: null, answerMs })
     if (this.state.inHand === null && this.state.desk === 'ways') void this.askWays()
@@ -334,6 +353,8 @@ export class Desk {
     }
   }
 }
+
+const wasWords = (doc: Doc, { name }: Condition): string => (doc.brief.conditions.some((other) => other.name === name) ? 'was otherwise' : 'was free')
 
 function bug(error: unknown): Problem {
   return { code: 'bug', message: `the program has made a mistake: ${error instanceof Error ? error.message : String(error)}`, where: null, cure: 'undo the last step and report it' }

@@ -14,6 +14,8 @@ export interface NamedBytes {
 export interface DrawingRead {
   readonly read: ReadPlan
   readonly layers: readonly string[]
+  /** Of the file's bytes; null: not known. */
+  readonly sha256: string | null
 }
 
 export interface Engine {

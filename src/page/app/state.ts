@@ -6,25 +6,13 @@ import type { Selection } from '../../paper/drawing/plan-drawing.ts'
 import type { ReadingName } from '../../paper/drawing/reading.ts'
 import type { SlopeUnit } from '../../paper/drawing/figures.ts'
 import type { ThemeName } from '../../paper/drawing/theme.ts'
-import type { Plan } from '../../plan/plan.ts'
-import { emptyBrief, type Brief } from '../../plan/project/brief.ts'
+import type { Brief } from '../../plan/project/brief.ts'
+import type { Project } from '../../plan/project/project-record.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 
-/** The plan in hand with what is asked of its roof: immutable, so that older ones are the undo. */
-export interface Doc {
-  readonly name: string
-  readonly plan: Plan
-  /** The plan as it was read, with the heights that the drawing had. */
-  readonly read: ReadPlan
-  /** Heights to come near to (length nodeCount), in the place of shape and drawing; null: none. */
-  readonly target: Float64Array | null
-  readonly brief: Brief
-  /** Names of conditions that are switched off. */
-  readonly off: readonly string[]
-  /** Degrees; null: none asked. */
-  readonly leastSlope: number | null
-}
+/** The project in hand: immutable, so that older ones are the undo. */
+export type Doc = Project
 
 /** A document and how it came about: the steps of the list at the left. */
 export interface Step {
@@ -41,6 +29,8 @@ export interface Opening {
   readonly options: OpeningOptions
   readonly layers: readonly string[]
   readonly chosenRepair: number
+  /** SHA-256 of the file's bytes; null: not known. */
+  readonly sha256: string | null
   /** A brief that came with the drawing; its voids are in the options once the unit is known. */
   readonly brief: Brief | null
   readonly ms: number
@@ -109,9 +99,4 @@ export const initialState: State = {
   doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
   selection: null, picked: [], reading: 'slope', side: 'south', turned: null, views: 0, exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
   desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
-}
-
-/** `brief`: in the plan's unit. Its voids are in the plan already. */
-export function newDoc(name: string, read: ReadPlan, brief: Brief = emptyBrief): Doc {
-  return { name, plan: read.plan, read, target: null, brief: { ...brief, unit: read.plan.unit, voids: null }, off: [], leastSlope: 3 }
 }

@@ -1,5 +1,5 @@
 /** Undo is an array of older documents: functions from state to state. */
-import type { Doc, State, Step } from './state.ts'
+import type { State, Step } from './state.ts'
 
 /** A step taken: undone steps after it are overwritten. */
 export function taken(state: State, step: Step): State {
@@ -27,8 +27,3 @@ export function gone(state: State, to: number): State {
 
 export const canUndo = (state: State): boolean => state.at > 0
 export const canRedo = (state: State): boolean => state.at < state.steps.length - 1
-
-/** The step of a change to the brief. */
-export function briefStep(doc: Doc, change: Partial<Doc['brief']>, what: string, before: string): Step {
-  return { doc: { ...doc, brief: { ...doc.brief, ...change } }, what, before }
-}

@@ -1,7 +1,7 @@
 /** The engine behind the page: the worker, told of each plan once and of each brief anew. */
 import type { Result } from '../../base/result.ts'
 import type { Progress } from '../../base/steps.ts'
-import { noOptions, type Options } from '../../plan/project/options.ts'
+import { noOptions } from '../../plan/project/options.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { WorkerClient, type Port } from '../../job/worker/client.ts'
@@ -21,13 +21,13 @@ export class WorkerEngine implements Engine {
     } as const
     const result = await this.client.ask('read', request, true, onProgress)
     if (result === null || !result.ok) return result
-    return { ok: true, value: { read: result.value.readPlan, layers: result.value.layers } }
+    const { readPlan, layers: found, summary: { input } } = result.value
+    return { ok: true, value: { read: readPlan, layers: found, sha256: input.sha256 === '' ? null : input.sha256 } }
   }
 
   async answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Omit<Answer, 'plan'>> | null> {
     const plan = this.base(doc)
-    const brief = { ...doc.brief, conditions: doc.brief.conditions.filter(({ name }) => !doc.off.includes(name)) }
-    return this.client.ask('answer', { plan, brief, options: optionsFor(doc), target: doc.target }, true, onProgress)
+    return this.client.ask('answer', { plan, brief: doc.brief, options: noOptions, target: doc.target }, true, onProgress)
   }
 
   ways(doc: Doc, count: number): ReturnType<Engine['ways']> {
@@ -54,9 +54,4 @@ export class WorkerEngine implements Engine {
     this.told = { read: doc.read, generation: this.client.generation, number: this.plans }
     return this.plans
   }
-}
-
-/** A shape that was chosen wins over heights in the drawing; heights set by hand win over both. */
-function optionsFor(doc: Doc): Options {
-  return { ...noOptions, target: doc.target !== null ? 'input' : doc.brief.shape !== null ? 'none' : null }
 }
