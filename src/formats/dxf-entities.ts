@@ -108,7 +108,8 @@ export function polyline(
 function circle(record: DxfRecords): Path {
   const m = plane(record)
   const arc = roundArc(record, m)
-  return { shape: 'path', ...head(record), points: pointAtDegrees(arc, 0), curves: [arc], closed: true, heights: tilted(m) }
+  const round = { centre: arc.centre, radius: record.number(40, 0) }
+  return { shape: 'path', ...head(record), points: pointAtDegrees(arc, 0), curves: [arc], closed: true, heights: tilted(m), round }
 }
 
 /** Counter-clockwise from 50 to 51 (degrees) about the centre, in its own plane. */

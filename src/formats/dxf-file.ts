@@ -7,9 +7,11 @@ import type { Unit } from '../base/length.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { shapeOf } from './dxf-entities.ts'
+import { colourOf, lineTypeOf } from './dxf-look.ts'
 import { polylineShapes } from './dxf-polyline.ts'
 import { damaged, DxfRecords } from './dxf-records.ts'
-import type { Block, Shape } from './dxf-shapes.ts'
+import type { Block, Insert, Shape } from './dxf-shapes.ts'
+import { textShape } from './dxf-words.ts'
 
 export interface DxfFile {
   /** Unit stated by $INSUNITS: null where there is none, a name for people where it is one that is not read. */
@@ -25,7 +27,14 @@ export interface Layer {
   readonly name: string
   readonly frozen: boolean
   readonly off: boolean
+  /** As looks have them. */
+  readonly colour: string
+  readonly lineType: string
 }
+
+/** What is drawn in no colour and no line type of its own, on a layer that the file does not describe. */
+export const plainColour = '7'
+export const plainLine = 'CONTINUOUS'
 
 const recordsPerStep = 5_000
 
@@ -39,6 +48,8 @@ export function* dxfFile(text: string): Steps<Result<DxfFile>> {
   let block: Block | null = null
   let entitiesMet = false
   let count = 0
+  // Attributes follow the block that they belong to.
+  let insert: Insert | null = null
   while (record.advance()) {
     if (++count % recordsPerStep === 0) yield { stage: 'Reading', done: record.share }
     switch (record.kind) {
@@ -63,7 +74,12 @@ export function* dxfFile(text: string): Steps<Result<DxfFile>> {
       if (record.kind === 'POLYLINE') {
         const found = yield* polylineShapes(record)
         for (const shape of found) into.push(shape)
-      } else if (record.kind !== 'SEQEND') into.push(shapeOf(record))
+      } else if (record.kind === 'TEXT' || record.kind === 'MTEXT' || record.kind === 'ATTRIB') into.push(textShape(record, insert))
+      else if (record.kind !== 'SEQEND') {
+        const shape = shapeOf(record)
+        insert = shape.shape === 'insert' ? shape : null
+        into.push(shape)
+      }
     }
   }
   if (record.problem !== null) return { ok: false, problem: record.problem }
@@ -94,7 +110,9 @@ function statedUnit(record: DxfRecords): DxfFile['unit'] {
 /** Bit 1 of code 70: frozen. A negative colour (62): off. */
 function addLayer(record: DxfRecords, layers: Map<string, Layer>): void {
   const name = record.word(2)
-  layers.set(name.toLowerCase(), { name, frozen: (record.integer(70, 0) & 1) !== 0, off: record.integer(62, 7) < 0 })
+  layers.set(name.toLowerCase(), {
+    name, frozen: (record.integer(70, 0) & 1) !== 0, off: record.integer(62, 7) < 0, colour: colourOf(record) ?? plainColour, lineType: lineTypeOf(record) ?? plainLine,
+  })
 }
 
 /** Bits 4 and 16 of code 70: its content is in another file. */

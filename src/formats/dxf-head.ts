@@ -1,5 +1,6 @@
 /** What every entity of a DXF has: where it stands, on which layer, and the plane it is drawn in. */
 import { inPlace, ownPlane, type Placing } from './dxf-placing.ts'
+import { colourOf, lineTypeOf } from './dxf-look.ts'
 import type { DxfRecords } from './dxf-records.ts'
 import type { Common } from './dxf-shapes.ts'
 
@@ -11,6 +12,8 @@ export function head(record: DxfRecords): Common {
     kind: record.kind,
     invisible: record.integer(60, 0) === 1,
     onPaper: record.integer(67, 0) === 1,
+    colour: colourOf(record),
+    lineType: lineTypeOf(record),
   }
 }
 

@@ -127,7 +127,7 @@ function union(group: readonly Face[]): number[] | null {
 
 /** The loops with some of them replaced by an outline, or dropped (null), in their order. */
 function withReplaced(loops: Loops, replaced: ReadonlyMap<number, readonly number[] | null>): Loops {
-  const [start, point, layer, line] = [new Integers(), new Integers(), new Integers(), new Integers()]
+  const [start, point, layer, line, look] = [new Integers(), new Integers(), new Integers(), new Integers(), new Integers()]
   start.push(0)
   for (let loop = 0; loop < loops.layer.length; loop += 1) {
     const outline = replaced.get(loop)
@@ -136,6 +136,7 @@ function withReplaced(loops: Loops, replaced: ReadonlyMap<number, readonly numbe
     start.push(point.length)
     layer.push(loops.layer[loop])
     line.push(loops.line[loop])
+    if (loops.look !== undefined) look.push(loops.look[loop])
   }
-  return { start: start.array(), point: point.array(), layer: layer.array(), line: line.array() }
+  return { start: start.array(), point: point.array(), layer: layer.array(), line: line.array(), ...(loops.look === undefined ? {} : { look: look.array() }) }
 }

@@ -7,10 +7,10 @@ import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { interiorPoints, mostChords } from './chords.ts'
 import { placedCurve, placedPoints } from './dxf-curves.ts'
-import type { DxfFile } from './dxf-file.ts'
+import { plainColour, plainLine, type DxfFile } from './dxf-file.ts'
 import { tilted } from './dxf-head.ts'
 import { after, inPlace, placedPoint, shift, type Placing } from './dxf-placing.ts'
-import type { Insert, Mesh, Path, Shape } from './dxf-shapes.ts'
+import type { Common, Insert, Mesh, Path, Shape, Text } from './dxf-shapes.ts'
 import { DxfSheet } from './dxf-sheet.ts'
 
 /** Entities that a drawing may come to once its blocks are unfolded. */
@@ -22,6 +22,9 @@ export const deepest = 32
 const shapesPerStep = 2_000
 const pointsPerStep = 50_000
 
+/** Share by which the scales along x and y of a placed circle may differ. */
+const sameScale = 1e-6
+
 /** Where shapes are being put: how, in which block, on which layer. */
 interface Surroundings {
   readonly placing: Placing
@@ -29,14 +32,24 @@ interface Surroundings {
   readonly layer: string | null
   /** Names (lower case) of the blocks that are open. */
   readonly open: readonly string[]
+  /** What "by block" means here. */
+  readonly look: Drawn
 }
+
+/** Colour and line type, settled. */
+interface Drawn {
+  readonly colour: string
+  readonly lineType: string
+}
+
+const plain: Drawn = { colour: plainColour, lineType: plainLine }
 
 /** Puts the whole model into the sheet. */
 export function* placeModel(file: DxfFile, sheet: DxfSheet): Steps<Result<null>> {
   // By the reference the entities of the model stand in ENTITIES; a few programs write them as its block instead.
   const model = file.blocks.get('*model_space')?.shapes ?? []
   const shapes = file.shapes.length > 0 ? file.shapes : model
-  const problem = yield* new Placer(file, sheet).shapes(shapes, { placing: inPlace, layer: null, open: [] })
+  const problem = yield* new Placer(file, sheet).shapes(shapes, { placing: inPlace, layer: null, open: [], look: plain })
   if (problem !== null) return { ok: false, problem }
   if (shapes !== model) for (const { kind, layer } of model) sheet.sketch.leaveOut(`${kind}, in the block *Model_Space`, layer)
   for (const block of file.blocks.values()) {
@@ -67,18 +80,46 @@ class Placer {
     return null
   }
 
-  private entity(shape: Exclude<Shape, Insert>, layer: string, { placing }: Surroundings): Problem | null {
+  private entity(shape: Exclude<Shape, Insert>, layer: string, { placing, look }: Surroundings): Problem | null {
     const { sheet } = this
     const reason = shape.onPaper ? 'paper space' : shape.invisible ? 'invisible' : sheet.hides(layer)
     if (reason !== null || shape.shape === 'other') {
       sheet.sketch.leaveOut(reason === null ? shape.kind : `${shape.kind}, ${reason}`, layer)
       return null
     }
+    if (shape.shape === 'text') {
+      // Words bound no panels: they are counted as left out, and kept for the names and levels among them.
+      sheet.sketch.leaveOut(shape.kind, layer)
+      this.text(shape, layer, placing)
+      return null
+    }
+    const drawn = this.drawn(shape, layer, look)
+    sheet.look = sheet.sketch.look(shape.kind, drawn.colour, drawn.lineType)
     switch (shape.shape) {
       case 'path': return this.path(shape, layer, placing)
       case 'mesh': return this.mesh(shape, layer, placing)
       case 'mark': return sheet.mark(placedPoint(placing, ...shape.point), layer, shape)
     }
+  }
+
+  /** Colour and line type of an entity, by its own word, its layer's or its block's. */
+  private drawn({ colour, lineType }: Common, layer: string, block: Drawn): Drawn {
+    const known = this.file.layers.get(layer.toLowerCase())
+    return {
+      colour: colour === null ? (known?.colour ?? plainColour) : colour === '0' ? block.colour : colour,
+      lineType: lineType === null ? (known?.lineType ?? plainLine) : lineType === 'BYBLOCK' ? block.lineType : lineType,
+    }
+  }
+
+  private text({ text, at, middle, height, tag, block, kind }: Text, layer: string, placing: Placing): void {
+    const inPlan = (p: readonly [number, number, number]): [number, number] => {
+      const [x, y] = placedPoint(placing, ...p)
+      return [x, y]
+    }
+    const size = Math.sqrt(Math.abs(placing[0] * placing[5] - placing[1] * placing[4]))
+    this.sheet.sketch.text({
+      text, at: inPlan(at), middle: inPlan(middle), height: height * size, layer, kind, tag, block: block === null ? null : inPlan(block),
+    })
   }
 
   private path(path: Path, layer: string, placing: Placing): Problem | null {
@@ -97,7 +138,16 @@ class Placer {
       chords += inner.length / 3 + 1
     }
     this.sheet.chorded(along, chords)
+    if (path.round !== undefined) this.circle(path.round, placing)
     return this.sheet.path(along, path.closed, heights, layer, path)
+  }
+
+  /** A circle that is still one in plan: its block is not drawn out one way, nor tilted. */
+  private circle({ centre, radius }: NonNullable<Path['round']>, m: Placing): void {
+    const [a, b] = [Math.hypot(m[0], m[4]), Math.hypot(m[1], m[5])]
+    if (Math.abs(a - b) > sameScale * a || tilted(m)) return
+    const [x, y] = placedPoint(m, ...centre)
+    this.sheet.sketch.circle({ point: this.sheet.sketch.pointCount, at: [x, y], radius: radius * a })
   }
 
   private mesh(mesh: Mesh, layer: string, placing: Placing): Problem | null {
@@ -121,13 +171,14 @@ class Placer {
     const { columns, rows, columnStep, rowStep } = insert
     if (columns * rows > mostEntities) return tooMany(insert)
     const open = [...around.open, key]
+    const look = this.drawn(insert, layer, around.look)
     const [x, y, z] = block.base
     for (let row = 0; row < rows; row += 1) {
       for (let column = 0; column < columns; column += 1) {
         this.count += 1
         const offset = [0, 1, 2].map((k) => column * columnStep[k] + row * rowStep[k])
         const placing = after(around.placing, after(shift(offset[0], offset[1], offset[2]), after(insert.placing, shift(-x, -y, -z))))
-        const problem = yield* this.shapes(block.shapes, { placing, layer, open })
+        const problem = yield* this.shapes(block.shapes, { placing, layer, open, look })
         if (problem !== null) return problem
         if (this.count > mostEntities) return tooMany(insert)
       }

@@ -6,7 +6,7 @@
 import type { Curve } from './chords.ts'
 import type { Placing } from './dxf-placing.ts'
 
-export type Shape = Path | Mesh | Mark | Insert | Other
+export type Shape = Path | Mesh | Mark | Insert | Text | Other
 
 export interface Common {
   /** Name of the layer as written; "0" inside a block means the layer of the insert. */
@@ -20,6 +20,10 @@ export interface Common {
   readonly invisible: boolean
   /** In paper space: on a sheet, not in the model. */
   readonly onPaper: boolean
+  /** "1" to "255" or "#rrggbb"; null: by its layer; "0": by the block it is in. */
+  readonly colour: string | null
+  /** In capitals; null: by its layer; "BYBLOCK": by the block it is in. */
+  readonly lineType: string | null
 }
 
 /** Straight and curved pieces, end to end. */
@@ -32,6 +36,8 @@ export interface Path extends Common {
   readonly closed: boolean
   /** Whether z is drawn as a height, or comes with the flat figure's own plane. */
   readonly heights: boolean
+  /** Set for whole circles of no other shape: centre in the entity's surroundings, and radius. */
+  readonly round?: { readonly centre: readonly [x: number, y: number, z: number]; readonly radius: number }
 }
 
 /** Faces on shared points. */
@@ -48,6 +54,18 @@ export interface Mesh extends Common {
 export interface Mark extends Common {
   readonly shape: 'mark'
   readonly point: readonly [x: number, y: number, z: number]
+}
+
+/** Words: TEXT, MTEXT, and attributes of a block that is put in place. */
+export interface Text extends Common {
+  readonly shape: 'text'
+  readonly text: string
+  readonly at: readonly [x: number, y: number, z: number]
+  readonly middle: readonly [x: number, y: number, z: number]
+  readonly height: number
+  /** Attributes: their name, and where their block stands. */
+  readonly tag: string | null
+  readonly block: readonly [x: number, y: number, z: number] | null
 }
 
 /** A block put in place, once or in columns and rows. */

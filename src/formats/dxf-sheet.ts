@@ -29,6 +29,8 @@ interface Level {
 
 export class DxfSheet {
   readonly sketch = new Sketch()
+  /** Look of the entity that is being put in place. */
+  look = 0
   private readonly met = new Map<string, string>()
   private curves = 0
   private chords = 0
@@ -76,8 +78,8 @@ export class DxfSheet {
     const first = this.sketch.pointCount
     for (let i = 0; i < kept.length; i += 3) this.sketch.point(kept[i], kept[i + 1], kept[i + 2], heights)
     const index = this.sketch.layer(layer)
-    if (loop && count > 2) this.sketch.outlines.add(Array.from({ length: count }, (_, i) => first + i), index, entity.line)
-    else for (let i = 1; i < count; i += 1) this.sketch.segment(first + i - 1, first + i, index, entity.line)
+    if (loop && count > 2) this.sketch.outlines.add(Array.from({ length: count }, (_, i) => first + i), index, entity.line, this.look)
+    else for (let i = 1; i < count; i += 1) this.sketch.segment(first + i - 1, first + i, index, entity.line, this.look)
     if (entity.kind === 'LINE') this.lineMet(first, heights)
     else if (!heights) this.levels.push({ z: kept[2], at: [kept[0], kept[1]] })
     return this.full(entity)
@@ -109,7 +111,7 @@ export class DxfSheet {
         continue
       }
       if (marks.includes(1)) this.hidden.set(this.sketch.outlines.length, marks)
-      this.sketch.outlines.add(face.map((point) => first + point), index, entity.line)
+      this.sketch.outlines.add(face.map((point) => first + point), index, entity.line, this.look)
     }
     return this.full(entity)
   }

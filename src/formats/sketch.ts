@@ -4,7 +4,7 @@
  */
 import type { Unit } from '../base/length.ts'
 import type { LeftOut, Repair } from '../base/repair.ts'
-import type { Drawing, Loops } from '../plan/drawing.ts'
+import type { DrawnCircle, DrawnText, Drawing, Look, Loops } from '../plan/drawing.ts'
 import { Doubles, Integers } from '../base/growing.ts'
 
 /** Closed polygons being collected; see Loops. */
@@ -13,6 +13,8 @@ class LoopList {
   private readonly point = new Integers()
   private readonly layer = new Integers()
   private readonly line = new Integers()
+  private readonly look = new Integers()
+  private seesLooks = false
 
   constructor() {
     this.start.push(0)
@@ -23,15 +25,17 @@ class LoopList {
   }
 
   /** Adds a list of point indices as one loop. */
-  add(points: readonly number[] | Int32Array, layer: number, line: number): void {
+  add(points: readonly number[] | Int32Array, layer: number, line: number, look = 0): void {
     for (let i = 0; i < points.length; i += 1) this.point.push(points[i])
     this.start.push(this.point.length)
     this.layer.push(layer)
     this.line.push(line)
+    this.look.push(look)
+    if (look > 0) this.seesLooks = true
   }
 
   loops(): Loops {
-    return { start: this.start.array(), point: this.point.array(), layer: this.layer.array(), line: this.line.array() }
+    return { start: this.start.array(), point: this.point.array(), layer: this.layer.array(), line: this.line.array(), ...(this.seesLooks ? { look: this.look.array() } : {}) }
   }
 }
 
@@ -43,6 +47,11 @@ export class Sketch {
   private readonly segmentEnds = new Integers()
   private readonly segmentLayer = new Integers()
   private readonly segmentLine = new Integers()
+  private readonly segmentLook = new Integers()
+  private readonly looks: Look[] = []
+  private readonly lookIndex = new Map<string, number>()
+  private readonly texts: DrawnText[] = []
+  private readonly circles: DrawnCircle[] = []
   private readonly markPoint = new Integers()
   private readonly markLayer = new Integers()
   private readonly leftOutCounts = new Map<string, { kind: string; layer: string; count: number }>()
@@ -94,11 +103,29 @@ export class Sketch {
     return this.coordinates.at(3 * point + 2)
   }
 
-  segment(from: number, to: number, layer: number, line: number): void {
+  segment(from: number, to: number, layer: number, line: number, look = 0): void {
     this.segmentEnds.push(from)
     this.segmentEnds.push(to)
     this.segmentLayer.push(layer)
     this.segmentLine.push(line)
+    this.segmentLook.push(look)
+  }
+
+  /** Index of the look; formats that say nothing of looks never ask. */
+  look(kind: string, colour: string, lineType: string): number {
+    const key = `${kind}\n${colour}\n${lineType}`
+    const known = this.lookIndex.get(key)
+    if (known !== undefined) return known
+    this.lookIndex.set(key, this.looks.length)
+    return this.looks.push({ kind, colour, lineType }) - 1
+  }
+
+  text(text: DrawnText): void {
+    this.texts.push(text)
+  }
+
+  circle(circle: DrawnCircle): void {
+    this.circles.push(circle)
   }
 
   mark(point: number, layer: number): void {
@@ -144,6 +171,9 @@ export class Sketch {
       segmentLine: this.segmentLine.array(),
       marks: this.markPoint.array(),
       markLayer: this.markLayer.array(),
+      ...(this.looks.length === 0 ? {} : { looks: this.looks, segmentLook: this.segmentLook.array() }),
+      ...(this.texts.length === 0 ? {} : { texts: this.texts }),
+      ...(this.circles.length === 0 ? {} : { circles: this.circles }),
       leftOut: this.leftOut,
       repairs: this.repairs,
     }

@@ -33,9 +33,49 @@ export interface Drawing {
   /** Single points (DXF POINT): indices into `points`, with their layers. Levels may be taken from them. */
   readonly marks: Int32Array
   readonly markLayer: Int32Array
+  /** How things are drawn, where the format says so: segments and loops refer to looks by index. */
+  readonly looks?: readonly Look[]
+  readonly segmentLook?: Int32Array
+  /** Texts and attributes of blocks, in the drawing's coordinates. */
+  readonly texts?: readonly DrawnText[]
+  /** Whole circles: each is an outline too, chorded. */
+  readonly circles?: readonly DrawnCircle[]
   readonly leftOut: readonly LeftOut[]
   /** What reading itself had to do: code "chords", "flattened". */
   readonly repairs: readonly Repair[]
+}
+
+/** How a thing is drawn. */
+export interface Look {
+  /** Kind of its entity, for counts: "LINE". */
+  readonly kind: string
+  /** "1" to "255", or "#rrggbb". */
+  readonly colour: string
+  /** Name of its line type; "CONTINUOUS" where none is said. */
+  readonly lineType: string
+}
+
+export interface DrawnText {
+  readonly text: string
+  /** Where it is anchored .. */
+  readonly at: readonly [x: number, y: number]
+  /** .. and its middle, by the usual width of letters. */
+  readonly middle: readonly [x: number, y: number]
+  readonly height: number
+  /** Name of its layer. */
+  readonly layer: string
+  /** Kind of its entity, for counts: "TEXT". */
+  readonly kind: string
+  /** Attributes of a block: the attribute's name, and where the block stands. */
+  readonly tag: string | null
+  readonly block: readonly [x: number, y: number] | null
+}
+
+export interface DrawnCircle {
+  /** First point of its outline. */
+  readonly point: number
+  readonly at: readonly [x: number, y: number]
+  readonly radius: number
 }
 
 /** Closed polygons as point indices: loop i is point[start[i] .. start[i + 1]), the first point not repeated. */
@@ -45,4 +85,6 @@ export interface Loops {
   readonly layer: Int32Array
   /** 1-based line of the file where the loop's entity starts; 0 when unknown. */
   readonly line: Int32Array
+  /** Index into the drawing's looks; absent where the format says nothing of them. */
+  readonly look?: Int32Array
 }
