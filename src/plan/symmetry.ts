@@ -1,155 +1,132 @@
 /**
- * Lines in which a plan is its own mirror image, or nearly. Every such line passes through the mean of the nodes, and maps a
- * node onto one that lies as far from it: one node whose distance few others share gives few lines to try. Each that fits
- * roughly is fitted to its pairs by least squares and tried again strictly, with edges and panels.
+ * Mirror lines of a plan: lines that take nodes, edges, panels and voids to their like, within the plan tolerance.
  *
- * Tried and dropped: axes of inertia as the only lines (a square has four), and all pairs of a distance (1,000 rim nodes of
- * a round roof make half a million).
+ * A mirror line passes through the centroid of the nodes and keeps distances from it, so it takes the nodes of one distance
+ * to one another. Of the distances that are far enough out to tell a direction, the one with fewest nodes is taken: each of
+ * its nodes, as the image of the first, gives one line to try. That finds every line, in O(n log n) for each tried.
  */
-import type { Steps } from '../base/steps.ts'
 import { NearPoints } from '../base/geometry/near-points.ts'
+import { conversion } from '../base/length.ts'
 import type { Plan } from './plan.ts'
 
 export interface MirrorLine {
-  /** A point of the line, in the plan's coordinates .. */
-  readonly point: readonly [x: number, y: number]
-  /** .. and its direction, a unit vector with x > 0, or x = 0 and y = 1. */
-  readonly direction: readonly [x: number, y: number]
-  /** Node that each node is mirrored onto; nodes on the line are their own. */
-  readonly image: Int32Array
-  /** The largest distance of a mirrored node from its image, in the plan's unit: making them meet moves each half as far. */
+  /** A point of the line in the plan's unit and place, and its direction, in radians from +x, 0 <= angle < pi. */
+  readonly x: number
+  readonly y: number
+  readonly angle: number
+  /** Image of each node, edge and panel (length nodeCount, edgeCount, panelCount); joints go to joints. */
+  readonly node: Int32Array
+  readonly edge: Int32Array
+  readonly panel: Int32Array
+  /** Largest distance of a node from the image of its image's place, in the plan's unit. */
   readonly misfit: number
 }
 
-/** Distance, in tolerances, within which images are looked for first: the line through the mean and one pair is that rough. */
-const roughly = 8
+/** Nodes nearer to the centroid than this share of the farthest tell a direction badly. */
+const farEnough = 0.4
 
-/** The node that lines are tried with lies at least this share of the farthest node's distance from the mean, so that it gives their direction. */
-const farShare = 0.5
+/** Lines tried at most: a regular polygon of so many corners has as many. */
+const mostTried = 64
 
-/** Nodes between two yields. */
-const nodesPerStep = 20_000
+/** A line from two nodes alone is off by their own misfit, magnified from their distance to the farthest node's. */
+const firstLook = 4
 
-/** All mirror lines whose misfit is at most `tolerance` (plan's unit), by the angle of their direction from -90 to 90 degrees. */
-export function* mirrorLines(plan: Plan, tolerance: number): Steps<MirrorLine[]> {
-  const { work, nodeCount, frame } = plan
-  const within = Math.max(tolerance / frame.span, 1e-12)
-  let cx = 0, cy = 0
-  for (let n = 0; n < nodeCount; n += 1) {
-    cx += work[2 * n] / nodeCount
-    cy += work[2 * n + 1] / nodeCount
+/** Mirror lines, by angle; none where the plan has none. */
+export function mirrorLines(plan: Plan, tolerance_mm: number): MirrorLine[] {
+  const tolerance = tolerance_mm * conversion('mm', plan.unit)
+  const n = plan.nodeCount
+  const [cx, cy] = [mean(plan.x), mean(plan.y)]
+  const radius = Float64Array.from(plan.x, (x, i) => Math.hypot(x - cx, plan.y[i] - cy))
+  const ring = smallestRing(radius, tolerance)
+  const points = new NearPoints(firstLook * tolerance, n)
+  for (let i = 0; i < n; i += 1) points.add(plan.x[i], plan.y[i])
+  const halves = halfEdges(plan)
+  const found: MirrorLine[] = []
+  const first = ring[0]
+  for (const other of ring.slice(0, mostTried)) {
+    const toward = (i: number): number => Math.atan2(plan.y[i] - cy, plan.x[i] - cx)
+    const line = lineNear(plan, points, halves, cx, cy, (toward(first) + toward(other)) / 2, tolerance)
+    if (line !== null && !found.some(({ angle }) => Math.abs(Math.sin(angle - line.angle)) < 1e-6)) found.push(line)
   }
-  const from = Float64Array.from({ length: nodeCount }, (_, n) => Math.hypot(work[2 * n] - cx, work[2 * n + 1] - cy))
-  const order = Int32Array.from(from.keys()).sort((m, n) => from[n] - from[m] || m - n)
-  yield { stage: 'Looking for symmetry', done: 0 }
-  const peers = fewestPeers(order, from, 3 * within)
-  const near = new NearPoints(roughly * within, nodeCount)
-  for (let n = 0; n < nodeCount; n += 1) near.add(work[2 * n], work[2 * n + 1])
-  let edges: EdgeOfEnds | null = null
-  const first = peers[0]
-  const found = new Map<number, MirrorLine>()
-  for (const [k, peer] of peers.entries()) {
-    yield { stage: 'Looking for symmetry', done: k / peers.length }
-    // The line through the mean that halves the angle between the two nodes.
-    const twice = Math.atan2(work[2 * first + 1] - cy, work[2 * first] - cx) + Math.atan2(work[2 * peer + 1] - cy, work[2 * peer] - cx)
-    const rough = yield* images(work, near, order, { cx, cy, twice }, roughly * within, false)
-    if (rough === null) continue
-    const line = fittedLine(work, rough, cx, cy)
-    const image = yield* images(work, near, order, line, within, true)
-    if (image === null || found.has(image[first])) continue
-    edges ??= edgesByEnds(plan)
-    if (!mirrorsPanels(plan, edges, image)) continue
-    found.set(image[first], mirrorLine(plan, line, image))
-  }
-  const angle = ({ direction: [x, y] }: MirrorLine): number => Math.atan2(y, x)
-  return [...found.values()].sort((p, q) => angle(p) - angle(q))
+  return found.sort((a, b) => a.angle - b.angle)
 }
 
-/** The line through (cx, cy) whose direction has the angle twice / 2. */
-interface Line {
-  readonly cx: number
-  readonly cy: number
-  readonly twice: number
-}
-
-/** Among nodes far from the mean, those of the distance that the fewest share, within `within`; the first is one that all the others are near. */
-function fewestPeers(order: Int32Array, from: Float64Array, within: number): number[] {
-  let best = 0, fewest = Infinity, low = 0, high = 0
-  for (let k = 0; k < order.length && from[order[k]] >= farShare * from[order[0]]; k += 1) {
-    while (from[order[low]] - from[order[k]] > within) low += 1
-    while (high < order.length && from[order[k]] - from[order[high]] <= within) high += 1
-    if (high - low < fewest) [best, fewest] = [k, high - low]
+/** Nodes of one distance from the centroid: of those far enough out the fewest, and of these the farthest. */
+function smallestRing(radius: Float64Array, tolerance: number): number[] {
+  const order = Array.from(radius.keys()).sort((a, b) => radius[b] - radius[a])
+  const least = farEnough * radius[order[0]]
+  let best: number[] = []
+  for (let from = 0; from < order.length && radius[order[from]] >= least; ) {
+    let to = from + 1
+    while (to < order.length && radius[order[to - 1]] - radius[order[to]] <= 2 * tolerance) to += 1
+    if (best.length === 0 || to - from < best.length) best = order.slice(from, to)
+    from = to
   }
-  const peers = [order[best]]
-  order.forEach((n) => { if (n !== order[best] && Math.abs(from[n] - from[order[best]]) <= within) peers.push(n) })
-  return peers
+  return best
 }
 
-/**
- * Node nearest to each mirrored node, in pairs when `strictly`; null as soon as one has none `within`. Farthest nodes first,
- * which fail soonest.
- */
-function* images(work: Float64Array, near: NearPoints, order: Int32Array, { cx, cy, twice }: Line, within: number, strictly: boolean): Steps<Int32Array | null> {
-  const c = Math.cos(twice), s = Math.sin(twice)
-  const image = new Int32Array(order.length).fill(-1)
-  for (let k = 0; k < order.length; k += 1) {
-    if (k % nodesPerStep === nodesPerStep - 1) yield { stage: 'Looking for symmetry', done: k / order.length }
-    const n = order[k]
-    const dx = work[2 * n] - cx, dy = work[2 * n + 1] - cy
-    const m = near.nearest(cx + c * dx + s * dy, cy + s * dx - c * dy, within)
-    if (m < 0 || (strictly && image[m] >= 0 && image[m] !== n)) return null
-    image[n] = m
-  }
-  if (strictly) for (let n = 0; n < image.length; n += 1) if (image[image[n]] !== n) return null
-  return image
-}
-
-/**
- * The line that mirrors nodes p nearest to their images q, by least squares: through the mean, at the angle a that makes
- * sum q . R(a) p greatest, R(a) = [[cos 2a, sin 2a], [sin 2a, -cos 2a]].
- */
-function fittedLine(work: Float64Array, image: Int32Array, cx: number, cy: number): Line {
-  let c = 0, s = 0
-  for (let n = 0; n < image.length; n += 1) {
-    const px = work[2 * n] - cx, py = work[2 * n + 1] - cy
-    const qx = work[2 * image[n]] - cx, qy = work[2 * image[n] + 1] - cy
-    c += qx * px - qy * py
-    s += qx * py + qy * px
-  }
-  return { cx, cy, twice: Math.atan2(s, c) }
-}
-
-function mirrorLine({ work, frame }: Plan, { cx, cy, twice }: Line, image: Int32Array): MirrorLine {
-  const c = Math.cos(twice), s = Math.sin(twice)
+/** The mirror line next to a line through the centroid; null: there is none. */
+function lineNear(
+  plan: Plan, points: NearPoints, halves: Map<number, number>, cx: number, cy: number, tried: number, tolerance: number,
+): MirrorLine | null {
+  const rough = images(plan, points, cx, cy, tried)
+  if (rough === null) return null
+  // Node and image make twice the line's angle: z_i z_j = r^2 e^(2 i angle), weighted by r^2.
+  let re = 0, im = 0
+  rough.forEach((j, i) => {
+    const [ax, ay, bx, by] = [plan.x[i] - cx, plan.y[i] - cy, plan.x[j] - cx, plan.y[j] - cy]
+    re += ax * bx - ay * by
+    im += ax * by + ay * bx
+  })
+  const angle = (((Math.atan2(im, re) / 2) % Math.PI) + Math.PI) % Math.PI
+  const [c, s] = [Math.cos(2 * angle), Math.sin(2 * angle)]
   let misfit = 0
-  for (let n = 0; n < image.length; n += 1) {
-    const dx = work[2 * n] - cx, dy = work[2 * n + 1] - cy, m = image[n]
-    misfit = Math.max(misfit, Math.hypot(cx + c * dx + s * dy - work[2 * m], cy + s * dx - c * dy - work[2 * m + 1]))
+  for (let i = 0; i < rough.length; i += 1) {
+    if (rough[rough[i]] !== i) return null
+    const [dx, dy] = [plan.x[i] - cx, plan.y[i] - cy]
+    misfit = Math.max(misfit, Math.hypot(cx + c * dx + s * dy - plan.x[rough[i]], cy + s * dx - c * dy - plan.y[rough[i]]))
   }
-  // cos and sin of the half angle, in (-90, 90] degrees; lines along an axis to the last digit where they are.
-  const [x, y] = [Math.cos(twice / 2), Math.sin(twice / 2)]
-  const sign = x > 1e-15 || (Math.abs(x) <= 1e-15 && y > 0) ? 1 : -1
-  return {
-    point: [frame.centreX + cx * frame.span, frame.centreY + cy * frame.span],
-    direction: [Math.abs(x) <= 1e-15 ? 0 : sign * x, Math.abs(y) <= 1e-15 ? 0 : sign * y],
-    image, misfit: misfit * frame.span,
-  }
+  if (misfit > tolerance) return null
+  const faces = imagesOfFaces(plan, rough, halves)
+  return faces === null ? null : { x: cx, y: cy, angle, node: rough, ...faces, misfit }
 }
 
-/** Half-edge from node a to node b by a * nodeCount + b. */
-type EdgeOfEnds = ReadonlyMap<number, number>
-
-function edgesByEnds({ origin, nodeCount }: Plan): EdgeOfEnds {
-  const edges = new Map<number, number>()
-  for (let h = 0; h < origin.length; h += 1) edges.set(origin[h] * nodeCount + origin[h ^ 1], h)
-  return edges
-}
-
-/** Whether every edge is mirrored onto an edge, with a panel where it has one: from b' to a' as from a to b. */
-function mirrorsPanels({ origin, panelOf, nodeCount }: Plan, edges: EdgeOfEnds, image: Int32Array): boolean {
-  for (let h = 0; h < origin.length; h += 1) {
-    const other = edges.get(image[origin[h ^ 1]] * nodeCount + image[origin[h]])
-    if (other === undefined || panelOf[h] < 0 !== panelOf[other] < 0) return false
+/** The node at the image of each; null where some image has none. */
+function images(plan: Plan, points: NearPoints, cx: number, cy: number, angle: number): Int32Array | null {
+  const [c, s] = [Math.cos(2 * angle), Math.sin(2 * angle)]
+  const out = new Int32Array(plan.nodeCount)
+  for (let i = 0; i < out.length; i += 1) {
+    const [dx, dy] = [plan.x[i] - cx, plan.y[i] - cy]
+    const image = points.nearest(cx + c * dx + s * dy, cy + s * dx - c * dy)
+    if (image < 0) return null
+    out[i] = image
   }
-  return true
+  return out
 }
+
+/** Half-edges by the nodes that they run between. */
+function halfEdges(plan: Plan): Map<number, number> {
+  const found = new Map<number, number>()
+  for (let h = 0; h < 2 * plan.edgeCount; h += 1) found.set(plan.origin[h] * plan.nodeCount + plan.origin[h ^ 1], h)
+  return found
+}
+
+/** A half-edge's image runs the other way round, so that what lay on its left lies on the image's left. */
+function imagesOfFaces(plan: Plan, node: Int32Array, halves: Map<number, number>): { edge: Int32Array; panel: Int32Array } | null {
+  const edge = new Int32Array(plan.edgeCount)
+  const panel = new Int32Array(plan.panelCount).fill(-1)
+  for (let h = 0; h < 2 * plan.edgeCount; h += 1) {
+    const image = halves.get(node[plan.origin[h ^ 1]] * plan.nodeCount + node[plan.origin[h]])
+    if (image === undefined) return null
+    const [of, to] = [plan.panelOf[h], plan.panelOf[image]]
+    if (of < 0 !== to < 0) return null
+    if (of >= 0) {
+      if (panel[of] >= 0 && panel[of] !== to) return null
+      panel[of] = to
+    }
+    edge[h >> 1] = image >> 1
+  }
+  return { edge, panel }
+}
+
+const mean = (values: Float64Array): number => values.reduce((sum, value) => sum + value, 0) / values.length
