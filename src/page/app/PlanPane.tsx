@@ -1,15 +1,20 @@
 /** Drawing 1: the plan, with zoom, pan, picking, and the readings it can be filled by. */
 import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
+import { axisBubbles } from '../../paper/drawing/axis-drawing.ts'
 import { planDetail, medianPanelWidth } from '../../paper/drawing/level-of-detail.ts'
 import { planArea, planDrawing } from '../../paper/drawing/plan-drawing.ts'
 import { fitted, panned, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import { readingNames, readingTitles } from '../../paper/drawing/reading.ts'
+import { runOfAxis, type Axis } from '../../plan/axes.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
+import { axesFor, looks, useLooks } from './looks.ts'
 import { neighbour, pick, runBetween } from './picking.ts'
 import { useReading } from './useReading.ts'
 import type { Size } from './useSize.ts'
 import { PlanHand } from './PlanHand.tsx'
+
+const none: readonly Axis[] = []
 
 /** `onSize`: told the size of the drawing, from which the roof below takes its scale. */
 export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) {
@@ -21,6 +26,9 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const picked = useDeskState((state) => state.picked)
   const made = useReading(answer)
   const plan = answer?.plan ?? null
+  const withAxes = useLooks((state) => state.axes)
+  const known = useMemo(() => (plan === null ? [] : axesFor(plan)), [plan])
+  const axes = withAxes ? known : none
   const [window_, setWindow] = useState<PlanWindow | null>(null)
   const shown = useRef<PlanWindow | null>(null)
   const [size, setSize] = useState({ width: 0, height: 0 })
@@ -31,8 +39,8 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
     setSize((old) => (old.width === width && old.height === height ? old : { width, height }))
     if (answer === null || made === null) return null
     shown.current = window_ ?? fitted(answer.plan, planArea(width, height, true))
-    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true })
-  }, [answer, made, window_, selection])
+    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true, axes })
+  }, [answer, made, window_, selection, axes])
 
   const zoom = useCallback((factor: number, x: number, y: number) => {
     setWindow((old) => (old ?? shown.current) === null ? null : zoomed(old ?? (shown.current as PlanWindow), factor, x, y))
@@ -61,6 +69,11 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const onUp = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
     pointers.current.delete(event.pointerId)
     if (travelled.current >= 4 || plan === null || shown.current === null || event.type === 'pointercancel') return
+    const bubble = axisBubbles(axes, shown.current, { width: size.width, height: size.height - 64 }).find((spot) => Math.hypot(spot.x - x, spot.y - y) <= (event.pointerType === 'touch' ? 20 : 11))
+    if (bubble !== undefined) {
+      desk.set({ selection: null, picked: runOfAxis(plan, bubble.axis), desk: 'profile' })
+      return
+    }
     const nodesShown = planDetail(medianPanelWidth(plan) * shown.current.scale).hatch
     const found = pick(plan, shown.current, x, y, event.pointerType === 'touch' ? 18 : 9, nodesShown)
     if (found?.kind === 'node' && event.shiftKey && selection?.kind === 'node') {
@@ -95,6 +108,7 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
       <div className="stage">
         <ListCanvas draw={draw} label={label} faded={!fresh} cursor={plan === null ? 'default' : 'crosshair'} onWheel={zoom} onDown={onDown} onMove={onMove} onUp={onUp} onKey={onKey} />
         {answer !== null && shown.current !== null && <PlanHand answer={answer} window={window_ ?? fitted(answer.plan, planArea(size.width, size.height, true))} picked={picked} size={size} />}
+        {known.length > 0 && <button className="word axes-switch" aria-pressed={withAxes} title="Building axes: click one to take the run along it" onClick={() => looks.update((state) => ({ axes: !state.axes }))}>axes</button>}
         {answer === null && <p className="will">The roof from above: panels by slope or flatness, joints by how they fold.</p>}
       </div>
     </section>

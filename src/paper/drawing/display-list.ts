@@ -14,7 +14,7 @@ export type Tone =
 
 export const lineNames = [
   'ridge', 'valley', 'flush', 'frozen', 'rim', 'casing', 'selected', 'held', 'heldSoft', 'before', 'hatch', 'water', 'hair', 'rule',
-  'thin', 'chain', 'tolerance', 'drop', 'weak1', 'weak2', 'weakValley', 'voidCross', 'moved',
+  'thin', 'chain', 'tolerance', 'drop', 'weak1', 'weak2', 'weakValley', 'voidCross', 'moved', 'axis',
 ] as const
 export type LineName = (typeof lineNames)[number]
 

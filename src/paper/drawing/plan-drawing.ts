@@ -2,9 +2,11 @@
  * The plan as a drawing: panels filled and hatched by the reading, joints by how they fold, rims, voids, what is held,
  * the selection, and around it scale bar, north point, legend and key.
  */
+import type { Axis } from '../../plan/axes.ts'
 import { jointName, nodeName, panelName } from '../../plan/names.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
+import { axisItems } from './axis-drawing.ts'
 import { Batch, dots, label, moved, type DisplayList, type Item, type LineName, type Tone } from './display-list.ts'
 import { figure } from './figures.ts'
 import { northPoint, scaleBar } from './furniture.ts'
@@ -34,13 +36,15 @@ export interface PlanDrawingOptions {
   readonly furniture: boolean
   /** The key of lines stands elsewhere. */
   readonly key?: boolean
+  /** Building axes to be named beside the plan. */
+  readonly axes?: readonly Axis[]
 }
 
 /** Where on the sheet the plan itself goes, between its furniture. */
 export function planArea(width: number, height: number, furniture: boolean): Area {
   if (!furniture) return { left: 4, top: 4, right: width - 4, bottom: height - 4 }
-  // Room above and below for the names of what is held along the rim.
-  return { left: 14, top: 26, right: width - (width > 480 ? 100 : 44), bottom: height - 90 }
+  // Room at the left and above for the bubbles of axes, above and below for the names of what is held along the rim.
+  return { left: 44, top: 46, right: width - (width > 480 ? 100 : 44), bottom: height - 92 }
 }
 
 export function planWindow(answer: Answer, options: Pick<PlanDrawingOptions, 'width' | 'height' | 'furniture' | 'window'>): PlanWindow {
@@ -66,6 +70,7 @@ export function planDrawing(answer: Answer, options: PlanDrawingOptions): Displa
     ...held(answer, px, detail, width),
     ...selected(plan, px, options.selection),
   ]
+  if (options.axes !== undefined) items.push(...axisItems(options.axes, window, { width, height: height - (options.furniture ? 64 : 0) }))
   if (options.furniture) items.push(...furniture(answer, options, window))
   const { summary } = answer
   return {

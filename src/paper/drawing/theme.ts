@@ -62,6 +62,7 @@ export const lineStyles: Readonly<Record<LineName, LineStyle>> = {
   weak2: solid('fold2', 1.6),
   weakValley: { tone: 'valley1', width: 0.8, dash: [8, 3.5], cap: 'butt' },
   moved: solid('hand', 0.8),
+  axis: { tone: 'ink2', width: 0.8, dash: [9, 3, 2, 3], cap: 'butt' },
 }
 
 /** Stacks of the two faces; the files are the project's own copies, nothing is asked of a network. */

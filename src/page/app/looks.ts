@@ -1,0 +1,25 @@
+/** How the drawings are looked at, beside what the desk knows: nothing here is asked of the roof or undone. */
+import type { Axis } from '../../plan/axes.ts'
+import { axesOfPlan } from '../../plan/axes.ts'
+import type { Plan } from '../../plan/plan.ts'
+import { createStore, useStore } from './store.ts'
+
+export interface Looks {
+  /** Building axes stand beside the plan. */
+  readonly axes: boolean
+}
+
+export const looks = createStore<Looks>({ axes: true })
+
+export const useLooks = <T>(pick: (state: Looks) => T): T => useStore(looks, pick)
+
+const axesKept = new WeakMap<Plan, readonly Axis[]>()
+
+/** The axes of a plan, worked out once. */
+export function axesFor(plan: Plan): readonly Axis[] {
+  const known = axesKept.get(plan)
+  if (known !== undefined) return known
+  const made = axesOfPlan(plan)
+  axesKept.set(plan, made)
+  return made
+}
