@@ -49,7 +49,7 @@ export function formForceRows(site: Site, condition: FormForceCondition, emit: E
  * The row of a joint with weights . heights = F lever: the corner farthest from the joint, by three corners of the panel
  * across, on the side where the weights are smaller; its largest weight is 1.
  */
-function cornerOverPlane(plan: Plan, joint: number): { nodes: number[]; weights: number[]; lever: number } {
+export function cornerOverPlane(plan: Plan, joint: number): { nodes: number[]; weights: number[]; lever: number } {
   const sides = [0, 1].map((side) => {
     const corner = farthestCorner(plan, plan.panelOf[2 * joint + side], joint)
     const carrier = anchors(plan, nodesOfPanels(plan, [plan.panelOf[2 * joint + 1 - side]]))
