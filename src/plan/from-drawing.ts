@@ -9,17 +9,18 @@ import { gap_mm, snap_mm } from '../base/geometry/tolerance.ts'
 import type { Repair } from '../base/repair.ts'
 import { ok, placed, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
+import { cleanMesh } from './clean-mesh.ts'
 import type { Drawing } from './drawing.ts'
 import { heightsOfNodes } from './height-of-nodes.ts'
-import { lineFrame } from './line-work-frame.ts'
-import { panelFaces } from './line-work-panels.ts'
+import { lineFrame, type LineFrame } from './line-work-frame.ts'
+import { panelFaces, type PanelFaces } from './line-work-panels.ts'
 import { counted, inMillimetres } from './line-work-words.ts'
 import { digitOf, exactnessNotices, type Exactness } from './office-exactness.ts'
 import { regular } from './office-regular.ts'
 import { barWidths, centreLineFaces, doubleLineWords, leaves, takes } from './office-reduced.ts'
 import type { Plan } from './plan.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
-import { planFromFaces } from './subdivision.ts'
+import { planFromFaces, type Subdivision } from './subdivision.ts'
 import { millimetresPer, unitOfDrawing } from './unit-of-drawing.ts'
 import { scaleQuestion, unitQuestion, type UnitDoubt } from './unit-question.ts'
 
@@ -37,7 +38,8 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   const frame = lineFrame(drawing, read.value, options.snap_mm, tolerance_mm)
   if (!frame.ok) return frame
 
-  const drawn = yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids)
+  const mesh = options.voids.length > 0 ? null : yield* cleanMesh(drawing, frame.value, unit)
+  const drawn = mesh === null ? yield* panelFaces(drawing, frame.value, mmPerUnit, options.voids) : ok(facesOfMesh(mesh, drawing, frame.value))
   if (!drawn.ok) return drawn
   const { doubles, problem } = drawn.value
   const onCentres = doubles === null ? null : yield* centreLineFaces(doubles, drawing, frame.value, mmPerUnit)
@@ -51,7 +53,7 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
   const faces = isReduced ? onCentres : drawn.value
   const { start, corner, x, y, lineOfPanel } = faces
   const nodeOfPoint = isReduced ? new Int32Array(0) : drawn.value.nodeOfPoint
-  const made = isReduced && onCentrePlan !== null ? onCentrePlan : planFromFaces({ unit, x, y, start, corner })
+  const made = mesh !== null ? ok(mesh) : isReduced && onCentrePlan !== null ? onCentrePlan : planFromFaces({ unit, x, y, start, corner })
   if (!made.ok) {
     const name = /^P(\d+)$/.exec(made.problem.where?.names?.[0] ?? '')
     const line = name === null ? 0 : (lineOfPanel[Number(name[1]) - 1] ?? 0)
@@ -98,6 +100,14 @@ export function* planFromDrawing(drawing: Drawing, options: ReadOptions): Steps<
     exactness,
     notices: [...read.value.notices, ...exactnessNotices(exactness, tolerance_mm, { isStated, snaps: options.snap_mm !== null }), ...drawn.value.notices, ...notices, ...(bars === null ? openGaps(plan, mmPerUnit) : [])],
   })
+}
+
+/** The faces of a clean mesh: as drawn, with nothing to say about them. */
+function facesOfMesh({ plan }: Subdivision, { outlines }: Drawing, { planX, planY }: LineFrame): PanelFaces {
+  return {
+    x: planX, y: planY, start: plan.panelStart, corner: outlines.point, nodeOfPoint: Int32Array.from(planX.keys()), meets: 0,
+    lineOfPanel: outlines.line, repairs: [], notices: [], doubles: null, problem: null,
+  }
 }
 
 /** Says when voids are so narrow that they can only be gaps between outlines. */
