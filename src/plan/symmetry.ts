@@ -7,6 +7,7 @@
  */
 import { NearPoints } from '../base/geometry/near-points.ts'
 import { conversion } from '../base/length.ts'
+import { finish, type Steps } from '../base/steps.ts'
 import type { Plan } from './plan.ts'
 
 export interface MirrorLine {
@@ -25,49 +26,52 @@ export interface MirrorLine {
 /** Nodes nearer to the centroid than this share of the farthest tell a direction badly. */
 const farEnough = 0.4
 
-/** Lines tried at most: a regular polygon of so many corners has as many. */
-const mostTried = 64
-
 /** A line from two nodes alone is off by their own misfit, magnified from their distance to the farthest node's. */
 const firstLook = 4
 
 /** Mirror lines, by angle; none where the plan has none. */
 export function mirrorLines(plan: Plan, tolerance_mm: number): MirrorLine[] {
+  return finish(mirrorLineSteps(plan, tolerance_mm))
+}
+
+/** The same as work that can be stopped: a large round roof has as many lines to try as rim nodes. */
+export function* mirrorLineSteps(plan: Plan, tolerance_mm: number): Steps<MirrorLine[]> {
   const tolerance = tolerance_mm * conversion('mm', plan.unit)
   const n = plan.nodeCount
   const [cx, cy] = [mean(plan.x), mean(plan.y)]
   const radius = Float64Array.from(plan.x, (x, i) => Math.hypot(x - cx, plan.y[i] - cy))
+  yield { stage: 'Looking for symmetry', done: 0 }
   const ring = smallestRing(radius, tolerance)
   const points = new NearPoints(firstLook * tolerance, n)
   for (let i = 0; i < n; i += 1) points.add(plan.x[i], plan.y[i])
-  const halves = halfEdges(plan)
+  yield { stage: 'Looking for symmetry', done: 0 }
+  let halves: Map<number, number> | null = null
   const found: MirrorLine[] = []
   const first = ring[0]
-  for (const other of ring.slice(0, mostTried)) {
+  for (const [k, other] of ring.entries()) {
+    yield { stage: 'Looking for symmetry', done: k / ring.length }
     const toward = (i: number): number => Math.atan2(plan.y[i] - cy, plan.x[i] - cx)
-    const line = lineNear(plan, points, halves, cx, cy, (toward(first) + toward(other)) / 2, tolerance)
+    const line = lineNear(plan, points, () => (halves ??= halfEdges(plan)), cx, cy, (toward(first) + toward(other)) / 2, tolerance)
     if (line !== null && !found.some(({ angle }) => Math.abs(Math.sin(angle - line.angle)) < 1e-6)) found.push(line)
   }
   return found.sort((a, b) => a.angle - b.angle)
 }
 
-/** Nodes of one distance from the centroid: of those far enough out the fewest, and of these the farthest. */
+/** A node, and the others at its distance from the centroid: of the distances far enough out that with the fewest, of these the farthest. */
 function smallestRing(radius: Float64Array, tolerance: number): number[] {
   const order = Array.from(radius.keys()).sort((a, b) => radius[b] - radius[a])
-  const least = farEnough * radius[order[0]]
-  let best: number[] = []
-  for (let from = 0; from < order.length && radius[order[from]] >= least; ) {
-    let to = from + 1
-    while (to < order.length && radius[order[to - 1]] - radius[order[to]] <= 2 * tolerance) to += 1
-    if (best.length === 0 || to - from < best.length) best = order.slice(from, to)
-    from = to
+  let best = 0, bestLow = 0, bestHigh = Infinity, low = 0, high = 0
+  for (let k = 0; k < order.length && radius[order[k]] >= farEnough * radius[order[0]]; k += 1) {
+    while (radius[order[low]] - radius[order[k]] > 2 * tolerance) low += 1
+    while (high < order.length && radius[order[k]] - radius[order[high]] <= 2 * tolerance) high += 1
+    if (high - low < bestHigh - bestLow) [best, bestLow, bestHigh] = [k, low, high]
   }
-  return best
+  return [order[best], ...order.slice(bestLow, best), ...order.slice(best + 1, bestHigh)]
 }
 
 /** The mirror line next to a line through the centroid; null: there is none. */
 function lineNear(
-  plan: Plan, points: NearPoints, halves: Map<number, number>, cx: number, cy: number, tried: number, tolerance: number,
+  plan: Plan, points: NearPoints, halves: () => Map<number, number>, cx: number, cy: number, tried: number, tolerance: number,
 ): MirrorLine | null {
   const rough = images(plan, points, cx, cy, tried)
   if (rough === null) return null
@@ -87,7 +91,7 @@ function lineNear(
     misfit = Math.max(misfit, Math.hypot(cx + c * dx + s * dy - plan.x[rough[i]], cy + s * dx - c * dy - plan.y[rough[i]]))
   }
   if (misfit > tolerance) return null
-  const faces = imagesOfFaces(plan, rough, halves)
+  const faces = imagesOfFaces(plan, rough, halves())
   return faces === null ? null : { x: cx, y: cy, angle, node: rough, ...faces, misfit }
 }
 
