@@ -1,13 +1,11 @@
-/**
- * Which conditions contradict each other: an irreducible set, found by leaving conditions out in shrinking blocks and
- * keeping them out while the rest still clash (delta debugging, Zeller and Hildebrandt 2002). Not always the smallest set:
- * none of its members can be spared.
- */
+/** Which conditions contradict each other: an irreducible set, see `irreducible.ts`. */
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { SoftRows } from '../conditions/condition-rows.ts'
 import { rowCount, type Rows } from '../conditions/rows.ts'
+import { eliminate, type RowClash } from '../conditions/eliminate.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
+import { irreducible } from './irreducible.ts'
 import { nearestLift } from './nearest.ts'
 import { metricOf } from './soft.ts'
 import { feasibleRoof } from './under-conditions.ts'
@@ -24,24 +22,38 @@ const mostTrials = 60
 /** The clash among hard rows that no roof meets. */
 export function* clashOf(plan: Plan, free: FreeRim, hard: Rows, names: readonly string[], areas: Float64Array): Steps<FoundClash> {
   const zero = new Float64Array(plan.nodeCount)
-  let kept = [...new Set(hard.condition)].sort((a, b) => a - b)
-  let trials = 0
-  for (let block = Math.ceil(kept.length / 2); block >= 1 && kept.length > 1; block = block > 1 ? Math.ceil(block / 2) : 0) {
-    for (let from = 0; from < kept.length && kept.length > 1 && trials < mostTrials; ) {
-      yield { stage: 'Looking for the clash', done: trials / mostTrials }
-      const rest = kept.filter((_, k) => k < from || k >= from + block)
-      trials += 1
-      const clashes = rest.length > 0 && (yield* feasibleRoof(plan, free, rowsOf(hard, new Set(rest)), names, zero, areas)).start === null
-      if (clashes) kept = rest
-      else from += block
-    }
+  const all = [...new Set(hard.condition)].sort((a, b) => a - b)
+  const clashes = function* (subset: readonly number[]): Steps<boolean> {
+    return (yield* feasibleRoof(plan, free, rowsOf(hard, new Set(subset)), names, zero, areas)).start === null
   }
+  const { kept } = yield* irreducible(all, clashes, mostTrials)
   const members = rowsOf(hard, new Set(kept))
   return { conditions: kept.map((index) => names[index]), misfit: yield* misfitOf(plan, free, members) }
 }
 
+/**
+ * Clashes among the rows themselves, each brought down to conditions of which none can be spared: elimination names all that
+ * it combined on the way. No factor is needed, so there is no end of trials.
+ */
+export function* sparedClashes(plan: Plan, hard: Rows, names: readonly string[], clashes: readonly RowClash[]): Steps<RowClash[]> {
+  const found = new Map<string, RowClash>()
+  const indexOf = new Map(names.map((name, index) => [name, index]))
+  for (const { conditions } of clashes) {
+    const contradicts = (subset: readonly number[]): readonly RowClash[] => eliminate(rowsOf(hard, new Set(subset)), plan.nodeCount, names).clashes
+    const all = conditions.flatMap((name) => indexOf.get(name) ?? [])
+    const { kept } = yield* irreducible(all, function* (subset) {
+      yield { stage: 'Looking for the clash', done: 0 }
+      return contradicts(subset).length > 0
+    }, Infinity)
+    const misfit = contradicts(kept).reduce((most, clash) => Math.max(most, clash.misfit), 0)
+    const key = kept.join()
+    if (!found.has(key)) found.set(key, { conditions: kept.map((index) => names[index]), misfit })
+  }
+  return [...found.values()]
+}
+
 /** Rows of the conditions in the set. */
-function rowsOf(rows: Rows, conditions: ReadonlySet<number>): Rows {
+export function rowsOf(rows: Rows, conditions: ReadonlySet<number>): Rows {
   const start = [0]
   const node: number[] = [], weight: number[] = [], value: number[] = [], condition: number[] = []
   for (let r = 0; r < rowCount(rows); r += 1) {

@@ -12,7 +12,7 @@ import { flatGroups } from '../stress/frozen-joints.ts'
 import { stressOfGradients } from '../stress/forces.ts'
 import type { LiftSpace } from '../stress/lift-space.ts'
 import { panelPlanes, squaredResidual } from '../stress/panel-bases.ts'
-import { clashOf, type FoundClash } from './clash.ts'
+import { clashOf, sparedClashes, type FoundClash } from './clash.ts'
 import { integrate } from './integrate.ts'
 import { broughtFlat } from './nearest.ts'
 import { nearRoof } from './near-roof.ts'
@@ -113,7 +113,7 @@ function* keptBy(
 ): Steps<Kept> {
   const { rows, names } = question
   const under = yield* underConditions(plan, free, rows.hard, names, wish, areas, known)
-  if (under.rowClashes.length > 0) return { under, sides: null, clashes: under.rowClashes }
+  if (under.rowClashes.length > 0) return { under, sides: null, clashes: yield* sparedClashes(plan, rows.hard, names, under.rowClashes) }
   if (under.start === null) return { under, sides: null, clashes: [yield* clashOf(plan, free, rows.hard, names, areas)] }
   if (rowCount(rows.signed) === 0) return { under, sides: null, clashes: [] }
   const sides = oneSided(under.space, metric, rows.signed)
@@ -122,7 +122,7 @@ function* keptBy(
   // The broken ones held at their bounds clash like any others, and the near roof comes near to them.
   const hard = joined(rows.hard, rows.signed, broken)
   const bound = yield* underConditions(plan, free, hard, names, wish, areas)
-  const clashes = bound.rowClashes.length > 0 ? bound.rowClashes : [yield* clashOf(plan, free, hard, names, areas)]
+  const clashes = bound.rowClashes.length > 0 ? yield* sparedClashes(plan, hard, names, bound.rowClashes) : [yield* clashOf(plan, free, hard, names, areas)]
   const frozen = new Uint8Array(plan.jointCount).fill(1)
   return { under: { ...bound, start: null, freedomLeft: null, frozen, ...flatGroups(plan, frozen) }, sides: null, clashes }
 }
