@@ -27,6 +27,7 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const made = useReading(answer)
   const plan = answer?.plan ?? null
   const withAxes = useLooks((state) => state.axes)
+  const chained = useLooks((state) => state.chained)
   const known = useMemo(() => (plan === null ? [] : axesFor(plan)), [plan])
   const axes = withAxes ? known : none
   const [window_, setWindow] = useState<PlanWindow | null>(null)
@@ -39,8 +40,8 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
     setSize((old) => (old.width === width && old.height === height ? old : { width, height }))
     if (answer === null || made === null) return null
     shown.current = window_ ?? fitted(answer.plan, planArea(width, height, true))
-    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true, axes })
-  }, [answer, made, window_, selection, axes])
+    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true, axes, chain: chained && window_ === null })
+  }, [answer, made, window_, selection, axes, chained])
 
   const zoom = useCallback((factor: number, x: number, y: number) => {
     setWindow((old) => (old ?? shown.current) === null ? null : zoomed(old ?? (shown.current as PlanWindow), factor, x, y))
@@ -80,7 +81,8 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
       desk.set({ picked: runBetween(plan, selection.index, found.index), desk: 'profile' })
       return
     }
-    desk.set({ selection: found, picked: [] })
+    if (found !== null && (event.ctrlKey || event.metaKey || event.shiftKey)) desk.gather(found)
+    else desk.set({ selection: found, picked: [], gathered: null })
   }
   const onKey = (event: KeyboardEvent): void => {
     if (event.key === '+' || event.key === '=') zoom(1.25, size.width / 2, size.height / 2)
@@ -89,7 +91,9 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
     else if (event.key.startsWith('Arrow') && plan !== null) {
       const from = selection?.kind === 'panel' ? selection.index : 0
       const [dx, dy] = ({ ArrowLeft: [-1, 0], ArrowRight: [1, 0], ArrowUp: [0, 1], ArrowDown: [0, -1] } as Record<string, [number, number]>)[event.key] ?? [0, 0]
-      desk.select({ kind: 'panel', index: selection?.kind === 'panel' ? neighbour(plan, from, dx, dy) : 0 })
+      const next = { kind: 'panel', index: selection?.kind === 'panel' ? neighbour(plan, from, dx, dy) : 0 } as const
+      if (event.shiftKey && next.index !== from) desk.gather(next)
+      else desk.select(next)
     } else return
     event.preventDefault()
   }
@@ -108,7 +112,7 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
       <div className="stage">
         <ListCanvas draw={draw} label={label} faded={!fresh} cursor={plan === null ? 'default' : 'crosshair'} onWheel={zoom} onDown={onDown} onMove={onMove} onUp={onUp} onKey={onKey} />
         {answer !== null && shown.current !== null && <PlanHand answer={answer} window={window_ ?? fitted(answer.plan, planArea(size.width, size.height, true))} picked={picked} size={size} />}
-        {known.length > 0 && <button className="word axes-switch" aria-pressed={withAxes} title="Building axes: click one to take the run along it" onClick={() => looks.update((state) => ({ axes: !state.axes }))}>axes</button>}
+        {known.length > 0 && <button className="word axes-switch" aria-pressed={withAxes} title="Building axes: click one to take the run along it" onClick={() => looks.update((state) => ({ ...state, axes: !state.axes }))}>axes</button>}
         {answer === null && <p className="will">The roof from above: panels by slope or flatness, joints by how they fold.</p>}
       </div>
     </section>

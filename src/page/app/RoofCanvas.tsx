@@ -17,6 +17,7 @@ import { PaperRenderer } from '../view/paper-renderer.ts'
 import { roofScene, type RoofScene } from '../view/roof-scene.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { useReading } from './useReading.ts'
+import type { OnCamera } from './RoofHand.tsx'
 import type { Size } from './useSize.ts'
 
 /** Above this many panels multisampling is left out where WebGL is software: it costs 70 of 100 ms a frame. */
@@ -28,7 +29,7 @@ const mostTries = 5
 /** Height in px of the words under the roof. */
 const footRoom = 26
 
-export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size }) {
+export function RoofCanvas({ answer, size, planSize, onCamera }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size; readonly onCamera: OnCamera }) {
   const webgl = useDeskState((state) => state.webgl)
   const [lost, setLost] = useState(0)
   const [failed, setFailed] = useState(false)
@@ -63,7 +64,7 @@ export function RoofCanvas({ answer, size, planSize }: { readonly answer: Answer
         }, { once: true })
       }}
     >
-      <Scene answer={answer} size={size} planSize={planSize} />
+      <Scene answer={answer} size={size} planSize={planSize} onCamera={onCamera} />
     </Canvas>
   )
   return (
@@ -108,7 +109,7 @@ function planHeight(answer: Answer): number {
   return high - low
 }
 
-function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size }) {
+function Scene({ answer, size, planSize, onCamera }: { readonly answer: Answer; readonly size: Size; readonly planSize: Size; readonly onCamera: OnCamera }) {
   const desk = useDesk()
   const themeName = useDeskState((state) => state.theme)
   const side = useDeskState((state) => state.side)
@@ -131,7 +132,16 @@ function Scene({ answer, size, planSize }: { readonly answer: Answer; readonly s
     scene?.select(selectedPanel)
     invalidate()
   }, [scene, selectedPanel, invalidate])
-  useFrame(({ camera }) => scene?.face(camera, size.height))
+  const before = useDeskState((state) => (state.inHand === null ? null : state.before))
+  const beforeHeights = before !== null && before.plan === answer.plan ? (before.roof?.heights ?? null) : null
+  useEffect(() => {
+    scene?.showBefore(beforeHeights)
+    invalidate()
+  }, [scene, beforeHeights, invalidate])
+  useFrame(({ camera }) => {
+    scene?.face(camera, size.height)
+    onCamera.current?.(camera)
+  })
   const down = useRef<readonly [number, number]>([0, 0])
   return (
     <>

@@ -4,10 +4,12 @@ import { figure } from '../../paper/drawing/figures.ts'
 import { sides, viewWords } from '../../paper/drawing/projection.ts'
 import { conversion } from '../../base/length.ts'
 import { useDesk, useDeskState } from './context.ts'
+import type { OnCamera } from './RoofHand.tsx'
 import { useSize, type Size } from './useSize.ts'
 
 // three is a third of the page: the sheet stands before it has come.
 const RoofCanvas = lazy(async () => ({ default: (await import('./RoofCanvas.tsx')).RoofCanvas }))
+const RoofHand = lazy(async () => ({ default: (await import('./RoofHand.tsx')).RoofHand }))
 
 export function RoofPane({ planSize }: { readonly planSize: Size }) {
   const desk = useDesk()
@@ -18,6 +20,7 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
   const fresh = useDeskState((state) => state.fresh || state.busy === null)
   const box = useRef<HTMLDivElement>(null)
   const size = useSize(box)
+  const onCamera: OnCamera = useRef(null)
   const roof = answer?.roof ?? null
   const near = answer?.summary.near === true
   const rise = answer?.summary.roof?.rise
@@ -37,8 +40,11 @@ export function RoofPane({ planSize }: { readonly planSize: Size }) {
       </header>
       <div className="stage">
         <div ref={box} className={fresh ? 'drawing' : 'drawing faded'} role="img" aria-label={roof === null ? 'Roof, empty' : `${near ? 'Nearest roof, not exact' : 'Roof'}, seen ${viewWords(side)}${rise === undefined ? '' : `, rise ${mm(rise)} mm`}`}>
-          {answer !== null && roof !== null && <Suspense fallback={null}><RoofCanvas answer={answer} size={size} planSize={planSize} /></Suspense>}
+          {answer !== null && roof !== null && <Suspense fallback={null}><RoofCanvas answer={answer} size={size} planSize={planSize} onCamera={onCamera} /></Suspense>}
         </div>
+        {answer !== null && roof !== null && size.width > 0 && (
+          <Suspense fallback={null}><RoofHand answer={answer} roof={roof} size={size} onCamera={onCamera} exaggeration={exaggeration} stands={side === 'south' && turned === null && planSize.width === size.width} /></Suspense>
+        )}
         {answer === null && <p className="will">The raised roof: drag to turn it, click a panel to find it everywhere.</p>}
         {answer !== null && roof === null && <p className="will">Not raised: no roof meets the conditions.</p>}
         {roof !== null && (

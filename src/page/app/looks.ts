@@ -7,9 +7,11 @@ import { createStore, useStore } from './store.ts'
 export interface Looks {
   /** Building axes stand beside the plan. */
   readonly axes: boolean
+  /** A chain line runs from the selected panel of the roof up into the plan. */
+  readonly chained: boolean
 }
 
-export const looks = createStore<Looks>({ axes: true })
+export const looks = createStore<Looks>({ axes: true, chained: false })
 
 export const useLooks = <T>(pick: (state: Looks) => T): T => useStore(looks, pick)
 

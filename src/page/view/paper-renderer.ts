@@ -131,6 +131,7 @@ export class PaperRenderer {
       for (let c = first; c < plan.panelStart[p + 1]; c += 1) edges.draw(plan.cornerHalf[c] >> 1)
     }
     this.outline(roof, at)
+    this.before(roof, matrix)
   }
 
   private curtain({ curtain, theme }: PaintedRoof, matrix: Matrix4): void {
@@ -180,6 +181,22 @@ export class PaperRenderer {
         }
       },
     }
+  }
+
+  private before({ before, theme }: PaintedRoof, matrix: Matrix4): void {
+    if (before === null) return
+    const { context } = this
+    const at = this.project(before, matrix)
+    context.strokeStyle = theme.ink2
+    context.lineWidth = 0.9
+    context.lineCap = 'butt'
+    context.beginPath()
+    for (let i = 0; i < at.length; i += 6) {
+      if (Number.isNaN(at[i + 2] + at[i + 5])) continue
+      context.moveTo(at[i], at[i + 1])
+      context.lineTo(at[i + 3], at[i + 4])
+    }
+    context.stroke()
   }
 
   private outline({ surface: { plan }, selected, theme }: PaintedRoof, at: Float32Array): void {

@@ -21,6 +21,8 @@ export interface PaintedRoof {
   readonly theme: Theme
   /** Selected panel, -1: none. Changes without a new scene. */
   selected: number
+  /** Ends x y z of the edges of the roof before the edit in hand; null: none. Changes without a new scene. */
+  before: Float32Array | null
 }
 
 export interface RoofScene {
@@ -32,6 +34,8 @@ export interface RoofScene {
   face(camera: Camera, height: number): void
   /** Outlines a panel, -1: none. */
   select(panel: number): void
+  /** Draws the edges of the roof before the edit in hand as thin lines; null: none. */
+  showBefore(heights: Float64Array | null): void
   dispose(): void
 }
 
@@ -62,7 +66,8 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
   const ribbons = ribbonMesh(strokes, theme, plan.frame.span)
   group.add(ribbons.mesh)
   let outline: Ribbons | null = null
-  const painted: PaintedRoof = { surface: shape, strokes, hatch, curtain, theme, selected: -1 }
+  let ghost: LineSegments | null = null
+  const painted: PaintedRoof = { surface: shape, strokes, hatch, curtain, theme, selected: -1, before: null }
   group.userData.roof = painted
   return {
     group, faces, panelOfTriangle: shape.panelOfTriangle, top: shape.top,
@@ -80,6 +85,23 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
       outline = selectedRibbons(shape, panel, theme)
       if (outline !== null) group.add(outline.mesh)
     },
+    showBefore(heights) {
+      if (ghost !== null) {
+        group.remove(ghost)
+        ghost.geometry.dispose()
+        ;(ghost.material as LineBasicMaterial).dispose()
+        ghost = null
+      }
+      painted.before = heights === null ? null : edgesBefore(answer, heights, exaggeration)
+      if (painted.before === null) return
+      const geometry = new BufferGeometry()
+      geometry.setAttribute('position', new BufferAttribute(painted.before, 3))
+      ghost = new LineSegments(geometry, new LineBasicMaterial({ color: theme.ink2 }))
+      // Over the roof even where it lies inside: it is a note, not a thing.
+      ;(ghost.material as LineBasicMaterial).depthTest = false
+      ghost.renderOrder = 2
+      group.add(ghost)
+    },
     dispose() {
       group.traverse((object) => {
         if (object instanceof Mesh || object instanceof LineSegments) {
@@ -89,6 +111,28 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
       })
     },
   }
+}
+
+/** Above this many panels only the rims before the edit are drawn: the rest would be a blot. */
+const manyPanels = 400
+
+/** Edges of a roof of other heights on the same plan, dashed by halves: x y z of both ends of each dash. */
+function edgesBefore({ plan, roof }: Answer, heights: Float64Array, exaggeration: number): Float32Array {
+  let datum = Infinity
+  for (const z of roof?.heights ?? []) if (z < datum) datum = z
+  const out: number[] = []
+  for (let e = plan.panelCount > manyPanels ? plan.jointCount : 0; e < plan.edgeCount; e += 1) {
+    const [a, b] = [plan.origin[2 * e], plan.origin[2 * e + 1]]
+    // Five dashes an edge: a full line would pass for a joint.
+    for (let k = 0; k < 10; k += 1) {
+      const t = k / 9
+      out.push(
+        plan.x[a] + t * (plan.x[b] - plan.x[a]) - plan.frame.centreX, plan.y[a] + t * (plan.y[b] - plan.y[a]) - plan.frame.centreY,
+        (heights[a] + t * (heights[b] - heights[a]) - datum) * exaggeration,
+      )
+    }
+  }
+  return Float32Array.from(out)
 }
 
 function faceMesh({ nodes, triangles, panelOfTriangle, colours }: Surface): Mesh {

@@ -7,7 +7,7 @@ import { jointName, nodeName, panelName } from '../../plan/names.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { axisItems } from './axis-drawing.ts'
-import { Batch, dots, label, moved, type DisplayList, type Item, type LineName, type Tone } from './display-list.ts'
+import { Batch, dots, label, moved, polyline, type DisplayList, type Item, type LineName, type Tone } from './display-list.ts'
 import { figure } from './figures.ts'
 import { northPoint, scaleBar } from './furniture.ts'
 import { hatchPolygon } from './hatch.ts'
@@ -17,7 +17,7 @@ import { legend, lineKey } from './legend.ts'
 import { medianPanelWidth, planDetail, type Detail } from './level-of-detail.ts'
 import { groupLetter } from './panel-readings.ts'
 import { fitted, type Area, type PlanWindow } from './plan-window.ts'
-import type { Reading } from './reading.ts'
+import type { Reading, ReadingName } from './reading.ts'
 
 export interface Selection {
   readonly kind: 'panel' | 'joint' | 'node'
@@ -38,6 +38,8 @@ export interface PlanDrawingOptions {
   readonly key?: boolean
   /** Building axes to be named beside the plan. */
   readonly axes?: readonly Axis[]
+  /** A chain line drops from the selected panel to the foot of the sheet, where the roof stands. */
+  readonly chain?: boolean
 }
 
 /** Where on the sheet the plan itself goes, between its furniture. */
@@ -70,6 +72,7 @@ export function planDrawing(answer: Answer, options: PlanDrawingOptions): Displa
     ...held(answer, px, detail, width),
     ...selected(plan, px, options.selection),
   ]
+  if (options.chain === true) items.push(...chain(plan, px, options.selection, height))
   if (options.axes !== undefined) items.push(...axisItems(options.axes, window, { width, height: height - (options.furniture ? 64 : 0) }))
   if (options.furniture) items.push(...furniture(answer, options, window))
   const { summary } = answer
@@ -396,6 +399,18 @@ function selected(plan: Plan, px: Float64Array, selection: Selection | null): It
   return []
 }
 
+function chain(plan: Plan, px: Float64Array, selection: Selection | null, height: number): Item[] {
+  if (selection === null || selection.kind !== 'panel' || selection.index >= plan.panelCount) return []
+  const [x, y] = centres(plan, px, selection.index)
+  return [polyline('chain', [x, y + 9, x, height])]
+}
+
+/** What the counts of the legend count. */
+const captions: Readonly<Record<ReadingName, readonly [string, string]>> = {
+  slope: ['panels by slope', ''], flatness: ['panels by flatness,', 'as written'], fold: ['joints by fold angle', ''], force: ['joints by form force;', 'no load'],
+  group: ['panels in flat groups', ''], freedom: ['panels by share of joints', 'that can fold'],
+}
+
 /** On a band of paper, so that a zoomed plan does not run under the figures. */
 function furniture(answer: Answer, options: PlanDrawingOptions, window: PlanWindow): Item[] {
   const { width, height, reading, joints } = options
@@ -407,7 +422,10 @@ function furniture(answer: Answer, options: PlanDrawingOptions, window: PlanWind
   const scale = legend(reading, Math.max(room, 180))
   const narrow = room < 180
   const items: Item[] = [band.fills('paper')]
-  if (!narrow) items.push(...moved(bar.items, 20, height - 34))
+  if (!narrow) {
+    items.push(...moved(bar.items, 20, height - 30))
+    for (const [k, line] of captions[reading.name].entries()) items.push(label(13, height - 50 + 13 * k, line, { size: 12 }))
+  }
   items.push(...moved(scale.items, narrow ? 8 : Math.max(130, bar.width + 24) + 14, height - 58))
   items.push(...moved(northPoint().items, width - 36, 14))
   if (options.key !== false && width > 480) {

@@ -31,21 +31,43 @@ export interface SlopeChartOptions {
   readonly before: Float64Array | null
   /** The slope reading, whose tones the points take; null: worked out here. */
   readonly tones: Reading | null
+  /** The level point can be dragged. */
+  readonly handle?: boolean
 }
 
-/** Rings that may be drawn, degrees; those within the figure and the next one beyond it are. */
-const rings = [1, 2, 5, 10, 15, 20, 25, 30, 45, 60, 75]
+/** Rings that may be drawn, round figures of each unit, in its words; those within the figure and the next one beyond it are. */
+const ringFigures: Readonly<Record<SlopeUnit, readonly number[]>> = {
+  degrees: [1, 2, 5, 10, 15, 20, 25, 30, 45, 60, 75],
+  percent: [1, 2, 5, 10, 15, 20, 30, 40, 50, 75, 100, 150, 250, 400],
+  ratio: [100, 50, 40, 30, 20, 15, 10, 8, 6, 5, 4, 3, 2, 1.5, 1, 0.5, 0.25],
+}
+
+interface Ring {
+  /** Tangent of the slope: the radius for a scale of 1. */
+  readonly tangent: number
+  readonly text: string
+}
+
+function ringsOf(unit: SlopeUnit): Ring[] {
+  return ringFigures[unit].map((value) => {
+    const text = String(value)
+    if (unit === 'degrees') return { tangent: Math.tan((value * Math.PI) / 180), text: `${text}°` }
+    return unit === 'percent' ? { tangent: value / 100, text: `${text}\u202f%` } : { tangent: 1 / value, text: `1:${text}` }
+  })
+}
 
 /** The window in which the whole figure lies, its middle on the level panel. */
-export function chartFit(answer: Answer, width: number, height: number): ChartWindow {
-  const outer = outerRing(answer)
-  const radius = Math.max(20, Math.min(width - 74, height - 84) / 2)
-  return { scale: radius / Math.tan((outer * Math.PI) / 180), middleX: width / 2, middleY: (height - 16) / 2 }
+export function chartFit(answer: Answer, width: number, height: number, unit: SlopeUnit = 'degrees'): ChartWindow {
+  const outer = outerRing(answer, unit)
+  return { scale: roseRadius(width, height) / outer.tangent, middleX: width / 2, middleY: (height - 16) / 2 }
 }
 
-function outerRing(answer: Answer): number {
-  const steepest = steepestSlope(answer)
-  return rings.find((ring) => ring >= steepest * 1.02) ?? 75
+const roseRadius = (width: number, height: number): number => Math.max(20, Math.min(width - 74, height - 84) / 2)
+
+function outerRing(answer: Answer, unit: SlopeUnit): Ring {
+  const steepest = (steepestSlope(answer) * 1.02 * Math.PI) / 180
+  const rings = ringsOf(unit)
+  return rings.find(({ tangent }) => Math.atan(tangent) >= steepest) ?? rings[rings.length - 1]
 }
 
 function steepestSlope(answer: Answer): number {
@@ -58,10 +80,10 @@ function steepestSlope(answer: Answer): number {
 export function slopeChart(answer: Answer, options: SlopeChartOptions): DisplayList {
   const { plan, roof } = answer
   const { width, height } = options
-  const window = options.window ?? chartFit(answer, width, height)
-  const items: Item[] = [...rose(answer, window, options)]
+  const window = options.window ?? chartFit(answer, width, height, options.unit)
+  const { under: items, over } = rose(window, options)
   const title = 'Slope chart'
-  if (roof === null) return { width, height, title, description: 'No roof yet.', items }
+  if (roof === null) return { width, height, title, description: 'No roof yet.', items: [...items, ...over] }
 
   const points = new Float64Array(2 * plan.panelCount)
   for (let p = 0; p < plan.panelCount; p += 1) {
@@ -73,19 +95,24 @@ export function slopeChart(answer: Answer, options: SlopeChartOptions): DisplayL
   items.push(...edges(answer, points, options))
   if (options.before !== null) items.push(...moves(answer, points, options.before, window))
   items.push(...panelPoints(answer, points, slopes))
-  items.push(...callouts(points, slopes, options, window))
+  items.push(...over, ...callouts(points, slopes, options, window))
+  if (options.handle === true) items.push(...centreHandle(window))
   return {
     width, height, title, items,
     description: `Slopes from ${slopeFigure(slopes.smallest, options.unit)} to ${slopeFigure(slopes.largest, options.unit)}; a point a panel, where it falls to.`,
   }
 }
 
-function rose(answer: Answer, window: ChartWindow, { leastSlope, unit }: SlopeChartOptions): Item[] {
-  const outer = outerRing(answer)
+/** Circles, compass and least slope go under the figure, the words on them over it. */
+function rose(window: ChartWindow, { leastSlope, unit, width, height }: SlopeChartOptions): { under: Item[]; over: Item[] } {
+  // The largest that lies on the sheet: the window may be that of an earlier roof.
+  const fitting = ringsOf(unit).filter(({ tangent }) => window.scale * tangent <= roseRadius(width, height) * 1.001)
+  const outer = fitting[fitting.length - 1] ?? ringsOf(unit)[0]
   const radius = (degrees: number): number => window.scale * Math.tan((degrees * Math.PI) / 180)
   const { middleX: x, middleY: y } = window
-  const most = radius(outer)
+  const most = window.scale * outer.tangent
   const items: Item[] = []
+  const over: Item[] = []
   if (leastSlope !== null && leastSlope > 0) {
     const r = radius(leastSlope)
     items.push(dots([x, y], r, 'faultWash', 'fault', 1))
@@ -95,13 +122,17 @@ function rose(answer: Answer, window: ChartWindow, { leastSlope, unit }: SlopeCh
       for (let at = -half + (row % 2 === 0 ? 1 : 5); at + 5 < half; at += 9) dashes.segment(x + at, y + 5 * row, x + at + 5, y + 5 * row)
     }
     if (!dashes.empty) items.push(dashes.strokes('water', 0.9))
+    if (r > 10) over.push(label(x, y + r + 12, `least ${slopeFigure(leastSlope, unit)}`, { size: 11, tone: 'fault', anchor: 'middle', plate: true }))
   }
-  const shown = rings.filter((ring) => ring <= outer && radius(ring) > 14)
-  const kept = shown.filter((ring, i) => ring === outer || i % Math.max(1, Math.round(shown.length / 4)) === 0)
-  for (const ring of kept) {
-    const r = radius(ring)
-    items.push(dots([x, y], r, null, ring === outer ? 'rule' : 'hair', ring === outer ? 1 : 0.9))
-    items.push(label(x + r * Math.SQRT1_2 + 3, y - r * Math.SQRT1_2 - 2, slopeFigure(ring, unit, unit === 'degrees' ? 0 : 1), { size: 11, plate: true }))
+  // From the outermost inwards, none nearer to the one before than its words need.
+  let free = Infinity
+  for (const ring of ringsOf(unit).reverse()) {
+    const r = window.scale * ring.tangent
+    if (ring.tangent > outer.tangent || r < 16 || r > free) continue
+    const isOuter = ring.tangent === outer.tangent
+    free = r - 22
+    items.push(dots([x, y], r, null, isOuter ? 'rule' : 'hair', isOuter ? 1 : 0.9))
+    over.push(label(x + r * Math.SQRT1_2 + 3, y - r * Math.SQRT1_2 - 2, ring.text, { size: 11, plate: true }))
   }
   for (let k = 0; k < 8; k += 1) {
     const c = Math.cos((k * Math.PI) / 4)
@@ -113,7 +144,16 @@ function rose(answer: Answer, window: ChartWindow, { leastSlope, unit }: SlopeCh
     label(x + most + 8, y + 4, 'E', { tone: 'ink' }), label(x - most - 8, y + 4, 'W', { tone: 'ink', anchor: 'end' }),
     polyline('rule', [x - 4, y, x + 4, y]), polyline('rule', [x, y - 4, x, y + 4]),
   )
-  return items
+  return { under: items, over }
+}
+
+/** A diamond on the level point. */
+function centreHandle({ middleX: x, middleY: y }: ChartWindow): Item[] {
+  const corners = [x, y - 6, x + 6, y, x, y + 6, x - 6, y]
+  const fill = new Batch()
+  for (let i = 0; i < 8; i += 2) fill.point(corners[i], corners[i + 1])
+  fill.end()
+  return [fill.fills('paper'), polyline('thin', corners, 1.3, true)]
 }
 
 /** Over 2,000 panels only the edges of the selected panel's neighbours: the rest would be a blot. */
