@@ -4,9 +4,9 @@
  *
  * Each panel is simple and counter-clockwise, and each edge has one panel on either side or is on the rim; so the number of
  * panels over a point is the winding number of the rim about it, the shared edges cancelling. Where the rim is one outer loop
- * with its void loops, and they neither cross nor touch, that number is 0 or 1: no two panels overlap, no edges cross. Where
- * each corner keeps its distance from the sides of its panels that do not end there, the disc of that size round an inner
- * node holds nothing else, so that no point can be joined and no corner lies on an edge; for the rim it is looked up.
+ * with its void loops, and they neither cross nor touch, that number is 0 or 1: no two panels overlap, no edges cross. What
+ * lies within the snap distance of a node lies in its own panels or beyond sides of theirs that are as near; for the rim,
+ * which has the open beyond it, it is looked up.
  */
 import { crossProperly } from '../base/geometry/segment-crossing.ts'
 import { meanWidth } from '../base/geometry/polygon-width.ts'
@@ -17,6 +17,7 @@ import type { Drawing } from './drawing.ts'
 import { crossings, lineIndex, touchingNodes } from './line-work-cuts.ts'
 import type { LineFrame } from './line-work-frame.ts'
 import { joinedPoints } from './line-work-joined.ts'
+import { nodesStayApart } from './nodes-apart.ts'
 import type { Plan } from './plan.ts'
 import { planFromFaces, type Subdivision } from './subdivision.ts'
 
@@ -34,15 +35,22 @@ export function* cleanMesh(drawing: Drawing, frame: LineFrame, unit: Unit): Step
   yield { stage: 'Building the plan', done: 0.1 }
   const made = planFromFaces({ unit, x: frame.planX, y: frame.planY, start, corner })
   if (!made.ok) return null
-  const { plan } = made.value
+  const { plan, pointOfNode } = made.value
   // Where most edges are on the rim the outlines may be bars or panes drawn apart.
   const rimEdges = plan.edgeCount - plan.jointCount
   if (2 * rimEdges >= plan.edgeCount || !isOneSheet(plan)) return null
+  const x = new Float64Array(plan.nodeCount), y = new Float64Array(plan.nodeCount)
+  for (let node = 0; node < plan.nodeCount; node += 1) {
+    x[node] = frame.x[pointOfNode[node]]
+    y[node] = frame.y[pointOfNode[node]]
+  }
+  const crowded = new Uint8Array(plan.nodeCount)
   for (let from = 0; from < panels; from += panelsPerStep) {
     yield { stage: 'Building the plan', done: 0.5 + (0.4 * from) / panels }
-    if (!areApart(frame, start, corner, from, Math.min(panels, from + panelsPerStep))) return null
+    if (!areSimple(plan, x, y, frame.snap, from, Math.min(panels, from + panelsPerStep), crowded)) return null
   }
-  return (yield* rimIsApart(made.value, frame)) ? made.value : null
+  if (!(yield* nodesStayApart(plan, x, y, frame, crowded))) return null
+  return (yield* rimIsApart(plan, x, y, frame)) ? made.value : null
 }
 
 /** The outlines' points, each loop counter-clockwise from the point it begins with; null where one is a strip. */
@@ -64,28 +72,29 @@ function isOneSheet({ rimIsVoid, rimPasses }: Plan): boolean {
 }
 
 /**
- * Whether panels [low, high) are simple, each of their sides is longer than the snap distance, and each corner farther than
- * that from their sides that do not end there.
+ * Whether panels [low, high) are simple; marks the nodes that have a side no longer than the snap distance, or one of their
+ * panels' other sides within it.
  */
-function areApart({ x, y, snap }: LineFrame, start: Int32Array, corner: Int32Array, low: number, high: number): boolean {
+function areSimple({ panelStart, corner }: Plan, x: Float64Array, y: Float64Array, snap: number, low: number, high: number, crowded: Uint8Array): boolean {
   const least = snap * snap
   for (let p = low; p < high; p += 1) {
-    const from = start[p], to = start[p + 1]
+    const from = panelStart[p], to = panelStart[p + 1]
     for (let k = from; k < to; k += 1) {
       const end = k + 1 < to ? k + 1 : from
       const ax = x[corner[k]], ay = y[corner[k]]
       const ux = x[corner[end]] - ax, uy = y[corner[end]] - ay
       const square = ux * ux + uy * uy
-      if (!(square > least)) return false
+      if (!(square > least)) {
+        crowded[corner[k]] = 1
+        crowded[corner[end]] = 1
+      }
       for (let m = from; m < to; m += 1) {
         if (m === k || m === end) continue
         const vx = x[corner[m]] - ax, vy = y[corner[m]] - ay
         const along = ux * vx + uy * vy
         const across = ux * vy - uy * vx
-        // Squared distance to the side: to its ends where the foot lies beyond them.
-        if (along <= 0) {
-          if (!(vx * vx + vy * vy > least)) return false
-        } else if (along < square && !(across * across > least * square)) return false
+        // Squared distance to the side: to its first end where the foot lies before it; the next side has the other.
+        if (along <= 0 ? !(vx * vx + vy * vy > least) : along < square && !(across * across > least * square)) crowded[corner[m]] = 1
       }
     }
     if (!isConvex(x, y, corner, from, to) && crossesItself(x, y, corner, from, to)) return false
@@ -121,21 +130,16 @@ function crossesItself(x: Float64Array, y: Float64Array, corner: Int32Array, fro
 }
 
 /** Whether the rim's edges neither cross nor touch, and no two of its nodes would be joined. */
-function* rimIsApart({ plan, pointOfNode }: Subdivision, frame: LineFrame): Steps<boolean> {
-  const { origin, rimHalf, nodeCount } = plan
+function* rimIsApart({ origin, rimHalf, nodeCount }: Plan, x: Float64Array, y: Float64Array, frame: LineFrame): Steps<boolean> {
   const onRim = new Int32Array(nodeCount).fill(-1)
-  const x = new Float64Array(rimHalf.length), y = new Float64Array(rimHalf.length)
   // The loops pass each node once, so their edges and nodes are equally many.
-  rimHalf.forEach((half, k) => {
-    onRim[origin[half]] = k
-    x[k] = frame.x[pointOfNode[origin[half]]]
-    y[k] = frame.y[pointOfNode[origin[half]]]
-  })
-  const a = Int32Array.from(rimHalf, (half) => onRim[origin[half]])
-  const b = Int32Array.from(rimHalf, (half) => onRim[origin[half ^ 1]])
-  const { pointOf } = yield* joinedPoints(x, y, a, b, frame)
-  if (pointOf.length < x.length) return false
-  const lines = { x, y, a, b }
+  rimHalf.forEach((half, k) => { onRim[origin[half]] = k })
+  const lines = {
+    x: Float64Array.from(rimHalf, (half) => x[origin[half]]), y: Float64Array.from(rimHalf, (half) => y[origin[half]]),
+    a: Int32Array.from(rimHalf, (half) => onRim[origin[half]]), b: Int32Array.from(rimHalf, (half) => onRim[origin[half ^ 1]]),
+  }
+  const { pointOf } = yield* joinedPoints(lines.x, lines.y, lines.a, lines.b, frame)
+  if (pointOf.length < rimHalf.length) return false
   const index = yield* lineIndex(lines, frame.snap + 4 * frame.rounding)
   const touched = yield* touchingNodes(lines, index, frame.snap)
   if (!touched.ok || touched.value.edge.length > 0) return false
