@@ -8,19 +8,23 @@ import { emptyBrief, type Brief } from '../plan/project/brief.ts'
 import { noOptions, type NamedFile, type Options } from '../plan/project/options.ts'
 import { wishesOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
+import { mirrorLines, type MirrorLine } from '../plan/symmetry.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
-import { answerTo, type Checked } from './check.ts'
+import { answerTo, type Checked, type PlanQuestion } from './check.ts'
 import { filesOf, type OutputFile } from './files.ts'
+import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
+import { releasesOf, type Release } from './releases.ts'
 import { targetOf } from './target.ts'
 import { version } from './run.ts'
 import { waysOf, type Way } from './ways.ts'
 import { whyFrozen, type FrozenReason } from './why-frozen.ts'
 
-export type { FrozenReason, Way }
+export type { FrozenReason, MirrorLine, Release, Way }
 
 export class Session {
   private free: FreeRim | null = null
   private last: Checked | null = null
+  private question: PlanQuestion | null = null
   private readonly read: ReadPlan
   private readonly name: string
 
@@ -38,11 +42,13 @@ export class Session {
     // Heights set by hand are the target whatever the options say of the drawing's.
     const asked = target === null ? options : { ...options, target: null, shape: null }
     const request = { command: 'check', source: { name: this.name, bytes: new Uint8Array() }, options: asked, brief: null, levels: null, given: {} } as const
-    const made = await drive(answerTo({ request, version, sha256: '', read: this.read, brief, target, free: this.free, space: this.last?.under.space ?? null }), driven)
+    const question = { request, version, sha256: '', read: this.read, brief, target, free: this.free }
+    const made = await drive(answerTo({ ...question, space: this.last?.under.space ?? null }), driven)
     if (made === cancelled) return fail('cancelled', 'stopped before the end')
     if (made.ok) {
       this.free = made.value.free
       this.last = made.value
+      this.question = question
     }
     return made
   }
@@ -58,6 +64,18 @@ export class Session {
     if (this.last === null) return fail('no-answer', 'there is no answer yet')
     const { answer, free, under, rows } = this.last
     return ok(whyFrozen(answer.plan, free, under, rows, joint))
+  }
+
+  /** What letting go of one condition of the last answer would give. */
+  async releases(driven: DriveOptions = {}): Promise<Result<readonly Release[]>> {
+    if (this.last === null || this.question === null) return fail('no-answer', 'there is no answer yet')
+    const made = await drive(releasesOf(this.question, this.last), driven)
+    return made === cancelled ? fail('cancelled', 'stopped before the end') : made
+  }
+
+  /** Lines that the plan is symmetric about, within what a drawing is exact to. */
+  mirrors(): readonly MirrorLine[] {
+    return mirrorLines(this.read.plan, defaultPlanTolerance_mm)
   }
 
   /** Heights of a second surface over every node; fails where it does not lie over the plan. */

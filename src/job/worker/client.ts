@@ -36,9 +36,9 @@ export class WorkerClient {
     this.start = start
   }
 
-  /** Asks; null when it was cancelled or overtaken. `alone`: cancels earlier questions of this kind. */
+  /** Asks; null when it was cancelled or overtaken. `alone`: cancels earlier questions of this kind; an answer also those about the answer before. */
   ask<K extends Kind>(kind: K, ask: Questions[K]['ask'], alone: boolean, onProgress: (progress: Progress) => void = () => {}): Promise<Questions[K]['tell'] | null> {
-    if (alone) for (const [id, question] of this.waiting) if (question.kind === kind) this.cancel(id)
+    if (alone) for (const [id, question] of this.waiting) if (question.kind === kind || (kind === 'answer' && question.kind === 'releases')) this.cancel(id)
     const id = this.next
     this.next += 1
     return new Promise((resolve, reject) => {

@@ -9,7 +9,7 @@ import type { NamedFile, Options } from '../../plan/project/options.ts'
 import type { ReadAnswer } from '../run.ts'
 import type { Request } from '../request.ts'
 import type { OutputFile } from '../files.ts'
-import type { Way } from '../session.ts'
+import type { FrozenReason, MirrorLine, Release, Way } from '../session.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 
 /** What each question holds and what comes back for it. */
@@ -22,6 +22,12 @@ export interface Questions {
   answer: { ask: { plan: number; brief: Brief; options: Options; target: Float64Array | null }; tell: Result<Omit<Answer, 'plan'>> }
   /** The independent ways left under the brief of the last answer, smoothest first. */
   ways: { ask: { plan: number; count: number }; tell: Result<readonly Way[]> }
+  /** Why a joint cannot fold in any roof of the last answer; null: it can. */
+  frozen: { ask: { plan: number; joint: number }; tell: Result<FrozenReason | null> }
+  /** What letting go of one condition of the last answer would give. */
+  releases: { ask: { plan: number }; tell: Result<readonly Release[]> }
+  /** Lines that the plan is symmetric about. */
+  mirrors: { ask: { plan: number }; tell: Result<readonly MirrorLine[]> }
   /** Heights of a second surface over the nodes of the plan. */
   surface: { ask: { plan: number; file: NamedFile }; tell: Result<Float64Array> }
   /** Files of the last answer. */

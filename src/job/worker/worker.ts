@@ -57,6 +57,9 @@ async function told(question: Exclude<ToWorker, { kind: 'cancel' }>, signal: Abo
       if (session === null || session.plan !== question.ask.plan) return fail('no-plan', 'the worker has no such plan')
       const { session: held } = session
       if (question.kind === 'ways') return held.ways(question.ask.count)
+      if (question.kind === 'frozen') return held.whyFrozen(question.ask.joint)
+      if (question.kind === 'releases') return held.releases(drive)
+      if (question.kind === 'mirrors') return ok(held.mirrors())
       if (question.kind === 'surface') return held.surface(question.ask.file, drive)
       if (question.kind === 'files') return held.files(question.ask.csv, drive)
       const { brief, options, target } = question.ask

@@ -1,103 +1,119 @@
-/** What the roof must keep, listed as it was put down, with how much freedom it leaves and what clashes. */
+/** What the roof must keep, listed as it was put down, with how much freedom it leaves, what clashes, and what letting go gives. */
+import { useEffect, useState } from 'react'
 import { conversion } from '../../base/length.ts'
-import { figure, signed, compassPoint } from '../../paper/drawing/figures.ts'
-import type { Condition, Point } from '../../plan/project/condition.ts'
-import type { Plan } from '../../plan/plan.ts'
+import { figure } from '../../paper/drawing/figures.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
+import type { Release } from '../../job/session.ts'
+import { ConditionFields, askedWords } from './ConditionFields.tsx'
 import { useDesk, useDeskState } from './context.ts'
+import { LengthField, typable } from './Fields.tsx'
+import { rimsOf } from './rims.ts'
 
 export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
   const desk = useDesk()
   const doc = useDeskState((state) => state.doc)
+  const [open, setOpen] = useState('')
   if (doc === null) return null
   const { conditions } = doc.brief
-  const mm = conversion(doc.read.plan.unit, 'mm')
-  const { freedomLeft } = answer.summary.stress
-  const clashes = answer.summary.held.clashes
+  const { unit } = doc.read.plan
+  const mm = conversion(unit, 'mm')
+  const { clashes } = answer.summary.held
   return (
     <>
-      <RimRow answer={answer} />
-      {conditions.length === 0 ? <p className="entry note">Nothing is held. Select a node, a joint or a panel on the plan and hold it; Shift and a second node picks a run.</p> : (
+      <RimRows answer={answer} />
+      {conditions.length === 0 ? <p className="entry note">Nothing is held. Select a node, a joint or a panel on the plan and hold it; Shift and a second node picks a run; Ctrl and click, or G, gathers several.</p> : (
         <table className="conditions">
           <thead><tr><th>Held</th><th>asked</th><th>how</th><th /></tr></thead>
           <tbody>
             {conditions.map((condition) => {
+              const { name, soft } = condition
               const off = condition.off === true
-              const clashing = clashes.some((clash) => clash.conditions.includes(condition.name))
-              return (
-                <tr key={condition.name} className={off ? 'off' : clashing ? 'clash' : ''}>
-                  <td><label><input type="checkbox" checked={!off} aria-label={`${condition.name} on`} onChange={() => desk.switchCondition(condition.name)} /> {condition.name}</label></td>
-                  <td>{askedWords(condition, mm)}</td>
-                  <td><button className="word" title="exact or soft" onClick={() => desk.condition({ ...condition, soft: condition.soft === null ? 1 : null }, `${condition.name} ${condition.soft === null ? 'softly' : 'exactly'}`)}>{condition.soft === null ? 'exact' : `soft \u00d7${condition.soft}`}</button></td>
-                  <td><button className="word" aria-label={`Release ${condition.name}`} onClick={() => desk.release([condition.name])}>Release</button></td>
-                </tr>
-              )
+              const clashing = clashes.some((clash) => clash.conditions.includes(name))
+              const isOpen = open === name
+              return [
+                <tr key={name} className={off ? 'off' : clashing ? 'clash' : ''}>
+                  <td><label><input type="checkbox" checked={!off} aria-label={`${name} on`} onChange={() => desk.switchCondition(name)} /> {name}</label></td>
+                  <td><button className="word" aria-expanded={isOpen} title="type over it" onClick={() => setOpen(isOpen ? '' : name)}>{askedWords(condition, mm)}</button></td>
+                  <td><button className="word" title="exact or soft" onClick={() => { desk.soften(name, soft === null ? 1 : null); setOpen(soft === null ? name : '') }}>{soft === null ? 'exact' : `soft \u00d7${figure(soft, soft < 1 ? 2 : Number.isInteger(soft) ? 0 : 1)}`}</button></td>
+                  <td><button className="word" aria-label={`Release ${name}`} onClick={() => desk.release([name])}>Release</button></td>
+                </tr>,
+                isOpen && <tr key={`${name} fields`} className="opened"><td colSpan={4}><ConditionFields condition={condition} unit={unit} /></td></tr>,
+              ]
             })}
           </tbody>
         </table>
       )}
-      <p className="entry">
-        {freedomLeft === null ? <b className="fault">No roof meets all of these.</b> : conditions.length === 0 ? `Freedom with the rim free: ${figure(answer.summary.stress.freedom)}, tilts not counted.` : freedomLeft === 0 ? (answer.summary.held.frozenJoints === answer.plan.jointCount ? 'Only one roof meets these, and no joint folds in it.' : 'Exactly one roof meets these.') : `Freedom left: ${figure(freedomLeft)}, tilts counted.`}
-        {clashes.map((clash, i) => <span key={i} className="fault"> {clash.conditions.join(' and ')} clash{clash.conditions.length === 1 ? 'es with the flatness of the panels' : ''}, by {figure(clash.misfit_mm, 1)} mm.</span>)}
+      <p className="entry" role="status">
+        {freedomWords(answer, conditions.length)}
+        {clashes.map((clash, i) => <span key={i} className="fault"> {clash.conditions.join(' and ')} clash{clash.conditions.length === 1 ? 'es with the flatness of the panels' : ''}, by {clash.misfit_mm < 0.05 ? 'less than 0.1' : figure(clash.misfit_mm, 1)} mm.</span>)}
         {conditions.length > 1 && <> <button className="word" onClick={() => desk.release(conditions.map(({ name }) => name))}>Release all</button></>}
       </p>
+      <Releases answer={answer} />
     </>
   )
 }
 
-export function askedWords(condition: Condition, mm: number): string {
-  switch (condition.kind) {
-    case 'level': return condition.level === null ? 'at the datum' : `${signed(condition.level * mm)} mm`
-    case 'fall': return `${figure(condition.per_mille, 1)} \u2030`
-    case 'plane': return `${figure(condition.pitch_deg, 1)}° ${compassPoint(condition.bearing_deg)}`
-    case 'profile': return 'arc' in condition.section ? `arc, rise ${figure(condition.section.arc.rise * mm)} mm` : 'pitch_deg' in condition.section ? `pitch ${figure(condition.section.pitch_deg, 1)}°` : `${condition.section.points.length} levels`
-    case 'straight': return 'straight'
-    case 'equal': return 'equal levels'
-    case 'coplanar': return 'one plane'
-    case 'flush': return 'flush'
-    case 'form-force': return typeof condition.force === 'string' ? condition.force : `${condition.force < 0 ? 'ridge' : condition.force > 0 ? 'valley' : 'flush'} ${figure(Math.abs(condition.force), 3)}`
+function freedomWords(answer: Answer, held: number) {
+  const { freedomLeft, freedom } = answer.summary.stress
+  if (freedomLeft === null) return <b className="fault">No roof meets all of these.</b>
+  if (held === 0) return `Freedom with the rim free: ${figure(freedom)}, tilts not counted.`
+  if (freedomLeft > 0) return `Freedom left: ${figure(freedomLeft)}, tilts counted.`
+  return answer.summary.held.frozenJoints === answer.plan.jointCount ? 'Only one roof meets these, and no joint folds in it.' : 'Exactly one roof meets these.'
+}
+
+/** What letting go of one gives, where conditions clash or leave no fold. */
+function Releases({ answer }: { readonly answer: Answer }) {
+  const desk = useDesk()
+  const releases = useDeskState((state) => state.releases)
+  const fresh = useDeskState((state) => state.fresh && state.inHand === null)
+  const { held, stress } = answer.summary
+  const asked = held.clashes.length > 0 || (held.frozenJoints === answer.plan.jointCount && stress.freedom > 0 && answer.conditions.some(({ soft }) => !soft))
+  useEffect(() => { if (asked && fresh) void desk.askReleases() }, [asked, fresh, answer, desk])
+  if (!asked || releases === null || releases.length === 0) return null
+  return (
+    <ul className="releases" aria-label="What letting go of one gives">
+      {releases.map((release) => <li key={release.name}><button className="word" onClick={() => desk.release([release.name])}>Release {release.name}</button>: {releaseWords(release)}.</li>)}
+    </ul>
+  )
+}
+
+function releaseWords({ verdict, freedomLeft }: Release): string {
+  if (freedomLeft === null) return 'the others still clash'
+  const left = `freedom left ${figure(freedomLeft)}`
+  switch (verdict) {
+    case 'lifts': return `every joint folds, ${left}`
+    case 'lifts in part': return `some joints fold, ${left}`
+    case 'lifts within plan tolerance': return 'it lifts within the plan tolerance'
+    case 'lifts within tolerance': return 'the nearest roof is flat within the tolerance'
+    case 'does not lift': return 'still no joint folds'
   }
 }
 
-/** Each rim: free, level, equal levels. */
-function RimRow({ answer }: { readonly answer: Answer }) {
+/** Each rim: free, at the datum, at a level that is typed, at one level wherever. */
+function RimRows({ answer }: { readonly answer: Answer }) {
   const desk = useDesk()
   const doc = useDeskState((state) => state.doc)
   if (doc === null) return null
-  const rims: { title: string; at: 'outer' | Point }[] = [{ title: 'rim', at: 'outer' }]
-  for (const [k, at] of voidPoints(answer.plan).entries()) rims.push({ title: `rim of void ${k + 1}`, at })
+  const { unit } = doc.read.plan
+  const mm = conversion(unit, 'mm')
   return (
     <>
-      {rims.slice(0, 6).map(({ title, at }) => {
+      {rimsOf(answer.plan).slice(0, 6).map(({ title, at }) => {
         const held = doc.brief.conditions.find((condition) => condition.name === title || ('rim' in condition.at && String(condition.at.rim) === String(at)))
         const name = held?.name ?? title
-        const hold = (kind: 'level' | 'equal'): void => desk.condition(
-          kind === 'level' ? { name, kind, at: { rim: at }, level: null, soft: null } : { name, kind, at: { rim: at }, soft: null }, `${name} ${kind === 'level' ? 'level at the datum' : 'level, wherever'}`)
+        const level = held?.kind === 'level' ? held.level : null
+        const chosen = held === undefined ? 'free' : held.kind === 'equal' ? 'equal' : held.kind === 'level' && held.level === null ? 'datum' : 'typed'
+        const radio = (value: string, words: string, take: () => void) => <button role="radio" aria-checked={chosen === value} className={chosen === value ? 'chosen' : ''} onClick={take}>{words}</button>
         return (
-          <p key={title} className="entry switch" role="radiogroup" aria-label={title}>
-            <span>{title === 'rim' ? 'Rim' : title.replace('rim', 'Rim')}</span>
-            <button role="radio" aria-checked={held === undefined} className={held === undefined ? 'chosen' : ''} onClick={() => held !== undefined && desk.release([name])}>free</button>
-            <button role="radio" aria-checked={held?.kind === 'level'} className={held?.kind === 'level' ? 'chosen' : ''} onClick={() => hold('level')}>level at the datum</button>
-            <button role="radio" aria-checked={held?.kind === 'equal'} className={held?.kind === 'equal' ? 'chosen' : ''} onClick={() => hold('equal')}>level, wherever</button>
-          </p>
+          <div key={title} className="entry switch" role="radiogroup" aria-label={title}>
+            <span>{title[0].toUpperCase() + title.slice(1)}</span>
+            {radio('free', 'free', () => held !== undefined && desk.release([name]))}
+            {radio('datum', 'level at the datum', () => desk.condition({ name, kind: 'level', at: { rim: at }, level: null, soft: null }, `${name} level at the datum`))}
+            {radio('equal', 'level, wherever', () => desk.condition({ name, kind: 'equal', at: { rim: at }, soft: null }, `${name} level, wherever`))}
+            <LengthField label="level at" bare="mm" to={unit} start={level === null ? '' : typable(level * mm)} onValue={(value) => desk.condition({ name, kind: 'level', at: { rim: at }, level: value, soft: null }, `${name} level at ${figure(value * mm)} mm`)} />
+          </div>
         )
       })}
     </>
   )
-}
-
-/** A point in each void: beside the middle of its first edge, a little inwards. */
-export function voidPoints(plan: Plan): Point[] {
-  const points: Point[] = []
-  for (let l = 0; l + 1 < plan.rimStart.length; l += 1) {
-    if (plan.rimIsVoid[l] === 0) continue
-    const half = plan.rimHalf[plan.rimStart[l]]
-    const a = plan.origin[half]
-    const b = plan.origin[half ^ 1]
-    const dx = plan.x[b] - plan.x[a]
-    const dy = plan.y[b] - plan.y[a]
-    // The void lies on the left of its rim's half-edges.
-    points.push([(plan.x[a] + plan.x[b]) / 2 - dy * 0.02, (plan.y[a] + plan.y[b]) / 2 + dx * 0.02])
-  }
-  return points
 }

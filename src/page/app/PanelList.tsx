@@ -76,8 +76,8 @@ export function PanelList() {
               <span className="cell area" role="gridcell">{figure(rows.area[p], 2)}</span>
               <span className="cell slope" role="gridcell">{answer?.roof === null ? '\u2013' : figure(rows.slope[p], 1)}</span>
               <span className="cell fall" role="gridcell">{answer?.roof === null || Number.isNaN(rows.fall[p]) ? '\u2013' : compassPoint(rows.fall[p])}</span>
-              <span className="cell corner" role="gridcell">{answer?.roof === null ? '\u2013' : figure(rows.corner[p], 2)}</span>
-              <span className="cell flat" role="gridcell">{answer?.roof === null ? '\u2013' : figure(rows.flat[p], 2)}</span>
+              <span className="cell corner" role="gridcell">{answer?.roof === null ? '\u2013' : hundredths(rows.corner[p])}</span>
+              <span className="cell flat" role="gridcell">{answer?.roof === null ? '\u2013' : hundredths(rows.flat[p])}</span>
               <span className="cell flag" role="gridcell">{flagWords(rows.flag[p], rows.flat[p] - flat_mm)}</span>
             </div>
           ))}
@@ -96,12 +96,15 @@ export function PanelList() {
   )
 }
 
+/** Millimetres in a list: never "0.00", which nothing made is; a triangle is flat by nature. */
+const hundredths = (mm: number): string => (mm === 0 ? '0' : mm < 0.01 ? '< 0.01' : figure(mm, 2))
+
 function flagWords(flag: number, over: number) {
   if (flag === 0) return null
   return (
     <>
       {(flag & 1) === 1 && <span title="under the least slope"><svg width="22" height="9" aria-hidden="true"><path d="M1 2h8M12 2h8M5 7h8" /></svg><span className="unseen">under the least slope</span></span>}
-      {(flag & 2) === 2 && <b>+{figure(over, 2)}</b>}
+      {(flag & 2) === 2 && <b>+{figure(over, over < 9.95 ? 1 : 0)}</b>}
     </>
   )
 }

@@ -1,12 +1,13 @@
 /** Profiles: the section of a picked run, to be typed or dragged, and held. */
 import { useEffect, useRef, useState, type PointerEvent } from 'react'
-import { conversion } from '../../base/length.ts'
+import { conversion, parseLength, type Unit } from '../../base/length.ts'
 import { nodeName } from '../../plan/names.ts'
 import { figure, signed } from '../../paper/drawing/figures.ts'
+import { heldRun } from '../../plan/project/edits.ts'
 import type { Condition, Section } from '../../plan/project/condition.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { LengthField, NumberField } from './PlanHand.tsx'
+import { LengthField, NumberField, typable } from './Fields.tsx'
 import { levelAt, runSection } from './run-section.ts'
 
 type Kind = 'arc' | 'pitch' | 'levels' | 'level' | 'equal' | 'straight' | 'fall'
@@ -18,6 +19,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
   const desk = useDesk()
   const picked = useDeskState((state) => state.picked)
   const doc = useDeskState((state) => state.doc)
+  const mirror = useDeskState((state) => state.mirror)
   const [kind, setKind] = useState<Kind>('arc')
   const drag = useRef<{ y: number; rise: number; k: number } | null>(null)
   const [levels, setLevels] = useState<readonly number[]>([])
@@ -36,24 +38,28 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
     )
   }
   const section = runSection(answer, picked)
-  const mm = conversion(doc.read.plan.unit, 'mm')
+  const { unit } = doc.read.plan
+  const mm = conversion(unit, 'mm')
   const name = `${nodeName(first)} to ${nodeName(last)}`
-  const existing = doc.brief.conditions.find((condition) => condition.name === name)
+  const run = picked.map(nodeName)
+  const existing = doc.brief.conditions.filter(({ at }) => 'run' in at && at.run.join() === run.join())
+  const profile = existing.find((condition) => condition.kind === 'profile')
   const base = Math.min(section.level[0], section.level[section.level.length - 1])
-  const heldSection: Section | null = existing?.kind === 'profile' ? existing.section : null
-  const heldBase = existing?.kind === 'profile' ? (existing.level ?? 0) : base
+  const heldSection: Section | null = profile?.section ?? null
+  const heldBase = profile?.level ?? (profile === undefined ? base : 0)
   const rise = heldSection !== null && 'arc' in heldSection ? heldSection.arc.rise : Math.max(...section.level) - base
   const pitch = heldSection !== null && 'pitch_deg' in heldSection ? heldSection.pitch_deg : (Math.atan((2 * (Math.max(...section.level) - base)) / section.length) * 180) / Math.PI
 
-  const conditionFor = (wished: Section): Condition => ({ name, kind: 'profile', at: { run: picked.map(nodeName) }, section: wished, level: 'points' in wished ? null : heldBase, soft: null })
+  const conditionFor = (wished: Section): Condition => heldRun(run, wished, heldBase, profile?.soft ?? null)
   const words = (wished: Section): string => 'arc' in wished ? `${name}: arc, rise ${figure(wished.arc.rise * mm)} mm` : 'pitch_deg' in wished ? `${name}: pitch ${figure(wished.pitch_deg, 1)}°` : `${name}: ${wished.points.length} levels`
   const take = (wished: Section): void => desk.condition(conditionFor(wished), words(wished))
-  const hold = (wished: Section): void => {
-    const stepDoc = desk.state.steps[desk.state.at]?.doc
-    if (stepDoc === undefined) return
-    const conditions = [...stepDoc.brief.conditions.filter((other) => other.name !== name), conditionFor(wished)]
-    desk.hold({ doc: { ...stepDoc, brief: { ...stepDoc.brief, conditions } }, what: words(wished), before: existing === undefined ? 'was free' : 'was otherwise' })
+  const hold = (wished: Section): void => desk.holdCondition(conditionFor(wished), words(wished))
+  const along = (kindOf: 'level' | 'equal' | 'straight' | 'fall', asked: object, what: string): void => {
+    const called = `${kindOf} ${name}`
+    desk.condition({ name: called, kind: kindOf, at: { run }, soft: existing.find((other) => other.name === called)?.soft ?? null, ...asked } as Condition, `${name} ${what}`)
   }
+  // A run that is its own image keeps its levels the same from both ends.
+  const isOwnImage = mirror !== null && picked.every((node, k) => mirror.node[node] === picked[picked.length - 1 - k])
 
   // The drawing: heights at least a tenth of the width, so that a level run can be dragged too.
   const shown = heldSection
@@ -65,7 +71,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
   const sy = (level: number): number => height - 20 - (level - low) * scaleY
   const path = (levelOf: (along: number, k: number) => number, fine: boolean): string => {
     const alongs = fine ? Array.from({ length: 41 }, (_, i) => (i / 40) * section.length) : section.along
-    return alongs.map((along, k) => `${k === 0 ? 'M' : 'L'}${sx(along).toFixed(1)} ${sy(levelOf(along, k)).toFixed(1)}`).join('')
+    return alongs.map((at, k) => `${k === 0 ? 'M' : 'L'}${sx(at).toFixed(1)} ${sy(levelOf(at, k)).toFixed(1)}`).join('')
   }
   const start = (event: PointerEvent<SVGElement>, k: number): void => {
     event.currentTarget.setPointerCapture(event.pointerId)
@@ -75,7 +81,7 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
     if (drag.current === null || event.buttons === 0) return
     const value = drag.current.rise + (drag.current.y - event.clientY) / scaleY
     if (drag.current.k >= 0) {
-      const next = levels.map((level, k) => (k === drag.current?.k ? value : level))
+      const next = levels.map((level, k) => (k === drag.current?.k || (isOwnImage && picked.length - 1 - k === drag.current?.k) ? value : level))
       setLevels(next)
       hold({ points: section.along.map((along, k) => [along, next[k]]) })
     } else if (kind === 'pitch') hold({ pitch_deg: Math.max(-80, Math.min(80, (Math.atan((2 * value) / section.length) * 180) / Math.PI)) })
@@ -87,7 +93,6 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
   }
   const knob = kind === 'arc' || kind === 'pitch'
   const knobY = sy(heldBase + (kind === 'pitch' ? (section.length / 2) * Math.tan((pitch * Math.PI) / 180) : rise))
-  const run = { run: picked.map(nodeName) }
   return (
     <>
       <p className="entry switch" role="radiogroup" aria-label="Section">
@@ -104,27 +109,40 @@ export function ProfileDesk({ answer }: { readonly answer: Answer }) {
         <text x={width / 2} y={height - 5} textAnchor="middle">chord {figure(section.length * mm)} mm</text>
       </svg>
       <div className="entry fields">
-        {kind === 'arc' && <LengthField label="rise" bare="mm" to={doc.read.plan.unit} start={figure(rise * mm).replace(/\u202f/g, '')} onValue={(value) => take({ arc: { rise: value } })} />}
-        {kind === 'pitch' && <NumberField label="pitch °" start={figure(pitch, 1)} onValue={(value) => Math.abs(value) < 90 && take({ pitch_deg: value })} />}
-        {kind === 'levels' && <label className="field wide"><span>levels, mm</span><input defaultValue={levels.map((level) => figure(level * mm).replace(/\u202f/g, '')).join(' ')} key={levels.join()} onKeyDown={(event) => {
-          if (event.key !== 'Enter') return
-          event.stopPropagation()
-          const typed = event.currentTarget.value.trim().split(/[\s;]+/).map((text) => Number(text.replace(',', '.').replace('\u2212', '-')))
-          if (typed.length === section.along.length && typed.every(Number.isFinite)) {
-            setLevels(typed.map((value) => value / mm))
-            take({ points: section.along.map((along, k) => [along, typed[k] / mm]) })
-          }
-        }} /><small>{picked.length} levels, Enter</small></label>}
-        {kind === 'level' && <LengthField label="level" bare="mm" to={doc.read.plan.unit} start={figure(base * mm).replace(/\u202f/g, '')} onValue={(level) => desk.condition({ name, kind: 'level', at: run, level, soft: null }, `${name} level at ${signed(level * mm)} mm`)} />}
-        {kind === 'fall' && <NumberField label="fall \u2030" start="20" onValue={(per_mille) => desk.condition({ name, kind: 'fall', at: run, per_mille, level: null, soft: null }, `${name} falls ${figure(per_mille, 1)} \u2030`)} />}
-        {kind === 'equal' && <button className="word" onClick={() => desk.condition({ name, kind: 'equal', at: run, soft: null }, `${name} at one level, wherever`)}>Hold at one level, wherever</button>}
-        {kind === 'straight' && <button className="word" onClick={() => desk.condition({ name, kind: 'straight', at: run, soft: null }, `${name} straight`)}>Hold straight</button>}
+        {kind === 'arc' && <LengthField label="rise" bare="mm" to={unit} start={typable(rise * mm)} onValue={(value) => take({ arc: { rise: value } })} />}
+        {kind === 'pitch' && <NumberField label="pitch °" start={typable(pitch, 1)} from={-89} below={90} onValue={(value) => take({ pitch_deg: value })} />}
+        {(kind === 'arc' || kind === 'pitch') && <LengthField label="ends at" bare="mm" to={unit} start={typable(heldBase * mm)} onValue={(level) => desk.condition(heldRun(run, heldSection ?? (kind === 'arc' ? { arc: { rise } } : { pitch_deg: pitch }), level, profile?.soft ?? null), `${name}: ends at ${signed(level * mm)} mm`)} />}
+        {kind === 'levels' && <LevelsField levels={levels} unit={unit} onValue={(typed) => { setLevels(typed); take({ points: section.along.map((at, k) => [at, typed[k]]) }) }} />}
+        {kind === 'level' && <LengthField label="level" bare="mm" to={unit} start={typable(base * mm)} onValue={(level) => along('level', { level }, `level at ${signed(level * mm)} mm`)} />}
+        {kind === 'level' && <button className="word" onClick={() => along('level', { level: null }, 'level at the datum')}>At the datum</button>}
+        {kind === 'fall' && <NumberField label={'fall \u2030'} start="20" onValue={(per_mille) => along('fall', { per_mille, level: null }, `falls ${figure(per_mille, 1)} \u2030`)} />}
+        {kind === 'fall' && <small className="note">from {nodeName(first)} to {nodeName(last)}; 20 {'\u2030'} are 20 mm a metre</small>}
+        {kind === 'equal' && <button className="word" onClick={() => along('equal', {}, 'at one level, wherever')}>Hold at one level, wherever</button>}
+        {kind === 'straight' && <button className="word" onClick={() => along('straight', {}, 'straight')}>Hold straight</button>}
         {kind === 'arc' && heldSection === null && <button className="word" onClick={() => take({ arc: { rise } })}>Hold</button>}
         {kind === 'pitch' && heldSection === null && <button className="word" onClick={() => take({ pitch_deg: pitch })}>Hold</button>}
-        {existing !== undefined && <button className="word" onClick={() => desk.release([name])}>Release</button>}
+        {existing.length > 0 && <button className="word" onClick={() => desk.release(existing.map((condition) => condition.name))}>Release</button>}
         <button className="word" onClick={() => desk.set({ picked: [] })}>Put down</button>
       </div>
     </>
+  )
+}
+
+/** A level a node, typed one after the other. */
+function LevelsField({ levels, unit, onValue }: { readonly levels: readonly number[]; readonly unit: Unit; readonly onValue: (levels: readonly number[]) => void }) {
+  const [said, setSaid] = useState('')
+  const mm = conversion(unit, 'mm')
+  return (
+    <label className="field wide"><span>levels, mm</span><input defaultValue={levels.map((level) => typable(level * mm)).join(' ')} key={levels.join()} onKeyDown={(event) => {
+      if (event.key !== 'Enter') return
+      event.stopPropagation()
+      const words = event.currentTarget.value.trim().split(/\s*;\s*|\s+(?=[-+\u2212\d])/)
+      const typed = words.map((text) => parseLength(text, 'mm', unit))
+      const wrong = words.findIndex((_, k) => !typed[k].ok)
+      if (wrong >= 0) setSaid(`"${words[wrong]}" is not a length`)
+      else if (typed.length !== levels.length) setSaid(`${typed.length} levels for ${levels.length} nodes`)
+      else onValue(typed.flatMap((length) => (length.ok ? [length.value] : [])))
+    }} /><small>{said === '' ? `${levels.length} levels, Enter` : said}</small></label>
   )
 }
 

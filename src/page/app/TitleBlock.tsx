@@ -5,7 +5,8 @@ import { sentence } from '../../base/result.ts'
 import { figure } from '../../paper/drawing/figures.ts'
 import { caution } from '../../roof/answer/caution.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { LengthField, NumberField } from './PlanHand.tsx'
+import { LengthField, NumberField, typable } from './Fields.tsx'
+import { withDatum, withRise } from '../../plan/project/edits.ts'
 import { firstSentence, rimWords, secondSentence, signOf, type Piece, type Sign, type Target } from './verdict.ts'
 import { readingFor, useLimits } from './useReading.ts'
 
@@ -30,21 +31,25 @@ export function TitleBlock() {
       <Verdict />
       <dl className="facts">
         <div>
-          <dt>Drawing</dt><dd className="clip" title={opening?.file.name ?? doc?.name}>{opening?.file.name ?? doc?.name ?? '\u2013'}</dd>
-          <dt>Unit</dt><dd>{doc === null && opening === null ? '\u2013' : unit}</dd>
+          <dt>Drawing</dt><dd className="clip" title={opening?.file.name ?? doc?.name}>{opening?.file.name ?? doc?.name ?? '\u2013'}{doc === null && opening === null ? '' : `, ${unit}`}</dd>
+          <dt>Springing</dt>
+          <dd>{doc === null || opening !== null ? 'lowest of the rim' : <LengthField label="" named="Springing" bare="mm" to={unit} empty="lowest of rim" start={doc.brief.datum === null ? '' : typable(doc.brief.datum * mm)}
+            onValue={(datum) => desk.take({ doc: withDatum(doc, datum), what: `Springing at ${figure(datum * mm)} mm`, before: doc.brief.datum === null ? 'was the lowest of the rim' : `was ${figure(doc.brief.datum * mm)} mm` })}
+            onClear={() => doc.brief.datum !== null && desk.take({ doc: withDatum(doc, null), what: 'Springing at the lowest of the rim', before: `was ${figure(doc.brief.datum * mm)} mm` })} />}</dd>
         </div>
         <div>
           <dt>Rise over springing</dt>
           <dd>{doc !== null && rise !== undefined && opening === null
-            ? <LengthField label="" bare="mm" to={unit} start={figure(rise * mm).replace(/\u202f/g, '')} onValue={(value) => value > 0 && desk.brief({ rise: value }, `Rise ${figure(value * mm)} mm`, `was ${figure(rise * mm)} mm`)} />
+            ? <LengthField label="" named="Rise over springing" bare="mm" to={unit} start={typable(rise * mm)} onValue={(value) => value > 0 && desk.brief({ rise: value }, `Rise ${figure(value * mm)} mm`, `was ${figure(rise * mm)} mm`)}
+              onClear={() => doc.brief.rise !== null && desk.take({ doc: withRise(doc, null), what: 'Rise as it comes', before: `was ${figure(rise * mm)} mm` })} />
             : 'not yet raised'}</dd>
           <dt>Rim, mm</dt><dd className="clip">{answer === null || opening !== null ? 'not yet raised' : rimWords(answer)}</dd>
         </div>
         <div>
           <dt>Flat within, mm</dt>
-          <dd>{doc === null || opening !== null ? figure(flat_mm, 1) : <NumberField label="" start={figure(flat_mm, 1)} onValue={(value) => value > 0 && desk.brief({ flat_mm: value }, `Flat within ${figure(value, 2)} mm`, `was ${figure(flat_mm, 2)} mm`)} />}</dd>
+          <dd>{doc === null || opening !== null ? figure(flat_mm, 1) : <NumberField label="" named="Flat within, mm" start={figure(flat_mm, 1)} onValue={(value) => value > 0 && desk.brief({ flat_mm: value }, `Flat within ${figure(value, 2)} mm`, `was ${figure(flat_mm, 2)} mm`)} />}</dd>
           <dt>Least slope, °</dt>
-          <dd>{doc === null || opening !== null ? (leastSlope === null ? 'none' : figure(leastSlope, 1)) : <NumberField label="" start={leastSlope === null ? '0' : figure(leastSlope, 1)} onValue={(value) => value >= 0 && value < 90 && desk.take({ doc: { ...doc, leastSlope: value === 0 ? null : value }, what: value === 0 ? 'No least slope' : `Least slope ${figure(value, 1)}°`, before: leastSlope === null ? 'was none' : `was ${figure(leastSlope, 1)}°` })} />}</dd>
+          <dd>{doc === null || opening !== null ? (leastSlope === null ? 'none' : figure(leastSlope, 1)) : <NumberField label="" named="Least slope, degrees" start={leastSlope === null ? '0' : figure(leastSlope, 1)} onValue={(value) => value >= 0 && value < 90 && desk.take({ doc: { ...doc, leastSlope: value === 0 ? null : value }, what: value === 0 ? 'No least slope' : `Least slope ${figure(value, 1)}°`, before: leastSlope === null ? 'was none' : `was ${figure(leastSlope, 1)}°` })} />}</dd>
         </div>
         <div>
           <dt>Freedom left</dt><dd>{answer === null || opening !== null ? '\u2013' : left === null ? 'none, they clash' : figure(left)}</dd>

@@ -38,6 +38,7 @@ export const commands: readonly Command[] = [
   reading('S', 'slope', 'Slope'), reading('F', 'flatness', 'Flatness'), reading('D', 'fold', 'Fold'),
   reading('E', 'force', 'Form force'), reading('A', 'group', 'Flat group'), reading('M', 'freedom', 'Freedom'),
   { key: 'V', title: 'Next view of the roof', group: 'look', run: (desk) => desk.view(sides[(sides.indexOf(desk.state.side) + 1) % sides.length] ?? 'south') },
+  { key: 'G', title: 'Gather what is selected with others', group: 'edit', run: (desk) => desk.state.selection !== null && desk.gather(desk.state.selection) },
   { key: 'H', title: 'Hold what is selected', group: 'edit', run: () => document.querySelector<HTMLElement>('[data-hold]')?.click() },
   { key: 'X', title: 'Release what is selected', group: 'edit', run: () => document.querySelector<HTMLElement>('[data-release]')?.click() },
 ]

@@ -1,56 +1,52 @@
 /** The page's one object: its state, the worker it asks, and every command as a method that components and keys call. */
 import { counted, figure } from '../../paper/drawing/figures.ts'
 import type { Selection } from '../../paper/drawing/plan-drawing.ts'
-import { fail, type Problem, type Result } from '../../base/result.ts'
+import { fail, type Result } from '../../base/result.ts'
 import { emptyBrief, type Brief } from '../../plan/project/brief.ts'
 import type { Condition } from '../../plan/project/condition.ts'
 import { softened, switched, withCondition, withoutConditions, withRise } from '../../plan/project/edits.ts'
+import { indexOfName, panelName } from '../../plan/names.ts'
 import { projectOf } from '../../plan/project/project-record.ts'
-import { withVoids } from '../../plan/project/turned-face.ts'
-import type { Answer } from '../../roof/answer/answer.ts'
+import { asymmetry, imageName, symmetricConditions, symmetricHeights } from '../../plan/project/mirrored.ts'
+import { turnedFace, withVoids } from '../../plan/project/turned-face.ts'
+import type { MirrorLine } from '../../job/session.ts'
 import { briefInUnit, openBrief } from './brief-file.ts'
-import type { Engine, NamedBytes } from './engine.ts'
+import { Asking } from './asking.ts'
+import type { NamedBytes } from './engine.ts'
 import { answered, switchedLayer, turnedVoid } from './opening.ts'
 import { openProject } from './project-file.ts'
-import { initialState, openingOptions, type Doc, type OpeningOptions, type State, type Step } from './state.ts'
+import { openingOptions, type Doc, type OpeningOptions, type State, type Step } from './state.ts'
 import { gone, held, putDown, taken } from './steps.ts'
-import { createStore, type Store } from './store.ts'
-
-/** After this long a question shows its bar. */
-const busyAfter = 1000
 
 /** Slope below which panels of a new plan are marked: where water is said to stay on glass, common practice, no source. */
 const usualLeastSlope_deg = 3
 
-export class Desk {
-  readonly store: Store<State>
-  private readonly engine: Engine
-  private asked: Doc | null = null
-  private question = 0
-  /** A newer document waits for the running question to end. */
-  private behind = false
-  private readonly answers = new WeakMap<Doc, Answer>()
-
-  constructor(engine: Engine, initial: Partial<State> = {}) {
-    this.engine = engine
-    this.store = createStore<State>({ ...initialState, ...initial })
-  }
-
-  get state(): State {
-    return this.store.state()
-  }
-
-  /** The document that an edit starts from: that of the last step, also while another edit is in hand. */
-  get standing(): Doc | null {
-    return this.state.steps[this.state.at]?.doc ?? null
-  }
-
-  set(change: Partial<State>): void {
-    this.store.update((state) => ({ ...state, ...change }))
-  }
-
+export class Desk extends Asking {
   select(selection: Selection | null): void {
     this.set({ selection })
+  }
+
+  /** Adds a thing to those picked together, or takes it out again; another kind starts anew. */
+  gather({ kind, index }: Selection): void {
+    const { gathered, selection } = this.state
+    const before = gathered !== null && gathered.kind === kind ? gathered.indices : selection !== null && selection.kind === kind && selection.index !== index ? [selection.index] : []
+    const indices = before.includes(index) ? before.filter((other) => other !== index) : [...before, index]
+    this.set({ gathered: indices.length === 0 ? null : { kind, indices }, selection: { kind, index }, picked: [] })
+  }
+
+  /** Picks on the plan what a condition holds. */
+  locate({ name }: Condition): void {
+    const held = this.state.answer?.conditions.find((condition) => condition.name === name)
+    const at = this.state.doc?.brief.conditions.find((condition) => condition.name === name)?.at
+    const named = (spots: readonly unknown[], letter: 'P' | 'J'): number[] => spots.flatMap((spot) => (typeof spot === 'string' ? [indexOfName(spot, letter)] : [])).filter((index) => index >= 0)
+    const together = (kind: Selection['kind'], indices: readonly number[]): void => this.set({ selection: indices.length === 1 ? { kind, index: indices[0] } : null, gathered: indices.length > 1 ? { kind, indices } : null, picked: [] })
+    if (at === undefined) return
+    if ('panels' in at && at.panels !== 'all') together('panel', named(at.panels, 'P'))
+    else if ('joints' in at) together('joint', named(at.joints, 'J'))
+    else if (held !== undefined) {
+      if ('run' in at || 'rim' in at) this.set({ picked: Array.from(held.nodes), selection: null, gathered: null })
+      else together('node', Array.from(held.nodes))
+    }
   }
 
   /** Back to a stock view, or to the same one again. */
@@ -65,13 +61,16 @@ export class Desk {
 
   /** Lays an earlier step beside the one in force. */
   compare(step: number | null): void {
-    this.set({ compared: step })
+    this.set({ compared: step, beside: null })
   }
 
-  /** The answer that a step had, if it was shown. */
-  answerOf(step: number): Answer | null {
-    const doc = this.state.steps[step]?.doc
-    return doc === undefined ? null : (this.answers.get(doc) ?? null)
+  /** Lays another project beside the one in hand; null: puts it away. */
+  async compareWith(file: NamedBytes | null): Promise<void> {
+    if (file === null) return this.set({ beside: null })
+    const made = await this.answerOfProject(file)
+    if (made === null) return
+    if (!made.ok) this.set({ problem: made.problem })
+    else this.set({ beside: made.value, compared: null })
   }
 
   // Opening
@@ -116,14 +115,27 @@ export class Desk {
     this.take({ doc: made.value, what: name, before: 'brief laid over the plan' })
   }
 
-  /** A second surface for the roof to come near to. */
+  /** A second surface for the roof to come near to: a file with heights, or the roof of another project. */
   async nearSurface(file: NamedBytes): Promise<void> {
     const { doc } = this.state
     if (doc === null) return
-    const made = await this.working(() => this.engine.surface(doc, file))
+    const surface = await this.surfaceIn(file)
+    if (surface === null) return
+    const made = surface.ok ? await this.working(() => this.engine.surface(doc, surface.value)) : surface
     if (made === null || this.state.doc !== doc) return
     if (!made.ok) this.set({ problem: made.problem })
     else this.take({ doc: { ...withRise(doc, null), target: made.value }, what: `Near to ${file.name}`, before: 'was another shape' })
+  }
+
+  private async surfaceIn(file: NamedBytes): Promise<Result<NamedBytes> | null> {
+    if (openProject(file.name, file.bytes) === null) return { ok: true, value: file }
+    let roof: NamedBytes | undefined
+    const made = await this.answerOfProject(file, async (engine, doc) => {
+      const files = await engine.files(doc)
+      if (files !== null && files.ok) roof = files.value.find(({ name }) => name === 'roof.obj')
+    })
+    if (made === null || !made.ok) return made
+    return roof === undefined ? fail('no-target', 'this project has no roof', { file: file.name }) : { ok: true, value: roof }
   }
 
   chooseRepair(repair: number): void {
@@ -192,8 +204,9 @@ export class Desk {
   begin(opened: Doc, what: string, before: string): void {
     // Edits of the page are in the plan's unit.
     const doc = { ...opened, brief: briefInUnit(opened.brief, opened.read.plan.unit) }
-    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, saved: '' }))
+    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '', saved: '' }))
     void this.ask()
+    void this.askMirrors()
   }
 
   putAway(): void {
@@ -242,22 +255,60 @@ export class Desk {
     if (doc !== null) this.take({ doc: { ...doc, brief: { ...doc.brief, ...change } }, what, before })
   }
 
-  /** Puts a condition down, in the place of the one of its name. */
+  /** Puts a condition down, in the place of the one of its name; with its image where symmetry is kept. */
   condition(condition: Condition, what: string): void {
     const doc = this.standing
-    if (doc !== null) this.take({ doc: withCondition(doc, condition), what, before: wasWords(doc, condition) })
+    const next = doc === null ? null : this.withKept(doc, condition)
+    if (doc !== null && next !== null) this.take({ doc: next, what, before: wasWords(doc, condition) })
   }
 
   /** The same while the hand still moves it. */
   holdCondition(condition: Condition, what: string, before: string | null = null): void {
     const doc = this.standing
-    if (doc !== null) this.hold({ doc: withCondition(doc, condition), what, before: before ?? wasWords(doc, condition) })
+    const next = doc === null ? null : this.withKept(doc, condition)
+    if (doc !== null && next !== null) this.hold({ doc: next, what, before: before ?? wasWords(doc, condition) })
+  }
+
+  private withKept(doc: Doc, condition: Condition): Doc | null {
+    const { mirror } = this.state
+    if (mirror === null) return withCondition(doc, condition)
+    const made = symmetricConditions(doc.read.plan, mirror, condition)
+    if (made.ok) return made.value.reduce(withCondition, doc)
+    this.set({ problem: made.problem })
+    return null
+  }
+
+  /** These conditions and, where symmetry is kept, those that are their images. */
+  private paired(doc: Doc, names: readonly string[]): readonly string[] {
+    const { mirror } = this.state
+    if (mirror === null) return names
+    const images = names.map((name) => imageName(doc.read.plan, mirror, name))
+    return doc.brief.conditions.map(({ name }) => name).filter((name) => names.includes(name) || images.includes(name))
+  }
+
+  /** Keeps the roof symmetric about a line from now on: conditions get their images, the roof comes near to itself and its image. */
+  keepSymmetric(mirror: MirrorLine | null): void {
+    const { doc, answer } = this.state
+    this.set({ mirror })
+    if (mirror === null || doc === null) return
+    const { plan } = doc.read
+    let next: Doc = doc
+    for (const condition of doc.brief.conditions) {
+      const made = symmetricConditions(plan, mirror, condition)
+      if (!made.ok) return this.set({ problem: made.problem, mirror: null })
+      next = made.value.reduce((before, one) => (one.name !== condition.name && doc.brief.conditions.some(({ name }) => name === one.name) ? before : withCondition(before, one)), next)
+    }
+    const heights = answer?.roof?.heights
+    const isEven = heights === undefined || asymmetry(mirror, heights) < evenShare * plan.frame.span
+    if (!isEven) next = { ...withRise(next, null), target: symmetricHeights(mirror, heights) }
+    const grown = next.brief.conditions.length - doc.brief.conditions.length
+    if (!isEven || grown > 0) this.take({ doc: next, what: 'Symmetric', before: grown > 0 ? `${counted(grown, 'condition')} mirrored` : 'was not' })
   }
 
   release(names: readonly string[]): void {
     const { doc } = this.state
     if (doc === null || names.length === 0) return
-    this.take({ doc: withoutConditions(doc, names), what: names.length === 1 ? `${names[0]} released` : `${names.length} conditions released`, before: 'was held' })
+    this.take({ doc: withoutConditions(doc, this.paired(doc, names)), what: names.length === 1 ? `${names[0]} released` : `${names.length} conditions released`, before: 'was held' })
   }
 
   switchCondition(name: string): void {
@@ -265,7 +316,20 @@ export class Desk {
     const condition = doc?.brief.conditions.find((other) => other.name === name)
     if (doc === null || condition === undefined) return
     const isOff = condition.off === true
-    this.take({ doc: switched(doc, name, !isOff), what: `${name} ${isOff ? 'on' : 'off'}`, before: isOff ? 'was off' : 'was on' })
+    this.take({ doc: this.paired(doc, [name]).reduce((next, each) => switched(next, each, !isOff), doc), what: `${name} ${isOff ? 'on' : 'off'}`, before: isOff ? 'was off' : 'was on' })
+  }
+
+  /** Takes a panel out of the roof: it is a void from now on. Conditions go with what they hold. */
+  turnToVoid(panel: number): void {
+    const { doc } = this.state
+    if (doc === null) return
+    const face = Array.from(doc.faces.isVoid.keys()).filter((f) => doc.faces.isVoid[f] === 0)[panel]
+    const made = turnedFace(doc, face)
+    if (!made.ok) return this.set({ problem: made.problem })
+    this.set({ selection: null, picked: [], gathered: null, mirror: null, mirrors: null, answer: null })
+    const { project, released } = made.value
+    this.take({ doc: project, what: `${panelName(panel)} is a void`, before: released.length === 0 ? 'was a panel' : `${released.join(', ')} released` })
+    void this.askMirrors()
   }
 
   /** Exact, or soft with a weight. */
@@ -273,89 +337,11 @@ export class Desk {
     const { doc } = this.state
     const was = doc?.brief.conditions.find((other) => other.name === name)
     if (doc === null || was === undefined || was.soft === soft) return
-    this.take({ doc: softened(doc, name, soft), what: soft === null ? `${name} exactly` : `${name} softly, weight ${figure(soft, 2)}`, before: was.soft === null ? 'was exact' : `was soft, weight ${figure(was.soft, 2)}` })
-  }
-
-  // Answers
-
-  /**
-   * Asks the worker about the document in force; the last question wins, stale answers are dropped. While something is in
-   * hand a running question is let finish and the newest follows it: cancelling each for the next would show none at all.
-   */
-  async ask(): Promise<void> {
-    const { doc, inHand } = this.state
-    if (doc === null || this.asked === doc) return
-    if (this.asked !== null && inHand !== null) {
-      this.behind = true
-      return
-    }
-    this.asked = doc
-    this.behind = false
-    const started = performance.now()
-    const result = await this.working((onProgress) => this.engine.answer(doc, onProgress))
-    if (this.asked === doc) this.asked = null
-    const isNow = this.state.doc === doc
-    if (result !== null && (isNow || this.state.inHand !== null)) this.show(doc, result, isNow, performance.now() - started)
-    if (this.behind && this.asked === null) {
-      this.behind = false
-      void this.ask()
-    }
-  }
-
-  private show(doc: Doc, result: Result<Omit<Answer, 'plan'>>, isNow: boolean, answerMs: number): void {
-    if (!result.ok) {
-      this.set({ problem: result.problem, fresh: true })
-      return
-    }
-    // The plan stays here: it does not come back with every answer.
-    const answer = { ...result.value, plan: doc.read.plan }
-    this.answers.set(doc, answer)
-    this.set({ answer, fresh: isNow, problem: null, answerMs })
-    if (this.state.inHand === null && this.state.desk === 'ways') void this.askWays()
-    else this.set({ ways: this.state.inHand === null ? null : this.state.ways })
-  }
-
-  /** Asks for the ways left; they are shown only on the desk that lists them. */
-  async askWays(): Promise<void> {
-    const { doc, answer } = this.state
-    if (doc === null || answer === null) return
-    const result = await this.engine.ways(doc, 12)
-    if (result !== null && result.ok && this.state.answer === answer) this.set({ ways: result.value })
-  }
-
-  files(): Promise<Result<readonly NamedBytes[]> | null> {
-    const { doc } = this.state
-    if (doc === null) return Promise.resolve(fail('nothing-open', 'no drawing is open', null, 'open one first'))
-    return this.engine.files(doc)
-  }
-
-  /** Stops the work in hand and goes back to the last step that was answered. */
-  stop(): void {
-    this.engine.stop()
-    this.asked = null
-    this.set({ busy: null, fresh: true })
-    if (this.state.inHand !== null) this.store.update((state) => putDown(state, false))
-    else if (this.state.answer !== null && this.state.at > 0) this.store.update((state) => ({ ...gone(state, state.at - 1), fresh: true }))
-  }
-
-  private async working<T>(work: (onProgress: (progress: { stage: string; done: number }) => void) => Promise<T>): Promise<T> {
-    const question = (this.question += 1)
-    const since = performance.now()
-    try {
-      return await work((progress) => {
-        if (question === this.question && performance.now() - since > busyAfter) this.set({ busy: { ...progress, since } })
-      })
-    } catch (error) {
-      this.set({ problem: bug(error) })
-      return null as T
-    } finally {
-      if (question === this.question && this.state.busy !== null) this.set({ busy: null })
-    }
+    this.take({ doc: this.paired(doc, [name]).reduce((next, each) => softened(next, each, soft), doc), what: soft === null ? `${name} exactly` : `${name} softly, weight ${figure(soft, 2)}`, before: was.soft === null ? 'was exact' : `was soft, weight ${figure(was.soft, 2)}` })
   }
 }
+
+/** A roof that differs from its image by less of the span is symmetric. */
+const evenShare = 1e-7
 
 const wasWords = (doc: Doc, { name }: Condition): string => (doc.brief.conditions.some((other) => other.name === name) ? 'was otherwise' : 'was free')
-
-function bug(error: unknown): Problem {
-  return { code: 'bug', message: `the program has made a mistake: ${error instanceof Error ? error.message : String(error)}`, where: null, cure: 'undo the last step and report it' }
-}

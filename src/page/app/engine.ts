@@ -3,6 +3,7 @@ import type { Result } from '../../base/result.ts'
 import type { Progress } from '../../base/steps.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
+import type { FrozenReason, MirrorLine, Release, Way } from '../../job/session.ts'
 import type { Doc, OpeningOptions } from './state.ts'
 
 export interface NamedBytes {
@@ -23,10 +24,17 @@ export interface Engine {
   /** The last question wins: earlier ones come back as null. */
   answer(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<Omit<Answer, 'plan'>> | null>
   /** The independent ways left under the last answer's conditions, smoothest first. */
-  ways(doc: Doc, count: number): Promise<Result<readonly { readonly heights: Float64Array }[]> | null>
+  ways(doc: Doc, count: number): Promise<Result<readonly Way[]> | null>
+  /** Why a joint cannot fold in any roof of the last answer; null: it can. */
+  whyFrozen(doc: Doc, joint: number): Promise<Result<FrozenReason | null> | null>
+  /** What letting go of one condition of the last answer would give. */
+  releases(doc: Doc): Promise<Result<readonly Release[]> | null>
+  mirrors(doc: Doc): Promise<Result<readonly MirrorLine[]> | null>
   /** Heights of a second surface over the plan's nodes. */
   surface(doc: Doc, file: NamedBytes): Promise<Result<Float64Array> | null>
   /** Files to take away: model and lists. */
   files(doc: Doc): Promise<Result<readonly NamedBytes[]> | null>
   stop(): void
+  /** Ends the worker. */
+  close(): void
 }

@@ -2,6 +2,7 @@
 import '@fontsource-variable/national-park/wght.css'
 import '@fontsource-variable/sofia-sans-semi-condensed/wght.css'
 import './sheet.css'
+import './shaping.css'
 import { createRoot } from 'react-dom/client'
 import { webGlKind } from '../view/webgl.ts'
 import { keepSaved } from './autosave.ts'
@@ -16,7 +17,7 @@ import { WorkerEngine } from './worker-engine.ts'
 const root = document.getElementById('sheet')
 if (root !== null) {
   const dark = window.matchMedia('(prefers-color-scheme: dark)').matches
-  const desk = new Desk(new WorkerEngine(), { webgl: webGlKind(), theme: dark ? 'night' : 'day', pane: 'roof' })
+  const desk = new Desk(new WorkerEngine(), () => new WorkerEngine(), { webgl: webGlKind(), theme: dark ? 'night' : 'day', pane: 'roof' })
   listenForKeys(desk)
   keepSaved(desk)
   // What is not accepted or not kept yet is asked about before the page goes.

@@ -20,7 +20,7 @@ export function listenForKeys(desk: Desk): () => void {
       if (desk.state.dialog !== null) return
       if (desk.state.inHand !== null) desk.putDown(false)
       else if (desk.state.opening !== null) desk.putAway()
-      else desk.set({ selection: null, picked: [], problem: null })
+      else desk.set({ selection: null, picked: [], gathered: null, problem: null })
       return
     }
     if (typing || desk.state.dialog !== null || !desk.state.letterKeys) return

@@ -8,6 +8,7 @@ import type { SlopeUnit } from '../../paper/drawing/figures.ts'
 import type { ThemeName } from '../../paper/drawing/theme.ts'
 import type { Brief } from '../../plan/project/brief.ts'
 import type { Project } from '../../plan/project/project-record.ts'
+import type { MirrorLine, Release, Way } from '../../job/session.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 
@@ -86,10 +87,32 @@ export interface State {
   readonly filter: ListFilter
   readonly webgl: 'none' | 'software' | 'hardware'
   readonly saved: string
-  /** Ways left for the answer shown, null while they are not known. */
   /** Step that the one in force is compared with, null: none. */
   readonly compared: number | null
-  readonly ways: readonly { readonly heights: Float64Array }[] | null
+  /** Another project beside the one in hand, null: none. */
+  readonly beside: Beside | null
+  /** Ways left for the answer shown, null while they are not known. */
+  readonly ways: readonly Way[] | null
+  /** What letting go of one condition gives, where conditions clash or leave no fold; null while it is not known. */
+  readonly releases: readonly Release[] | null
+  /** Lines that the plan is symmetric about, null while they are not known. */
+  readonly mirrors: readonly MirrorLine[] | null
+  /** The one that edits are mirrored about, null: none. */
+  readonly mirror: MirrorLine | null
+  /** Things of one kind that were picked together. */
+  readonly gathered: Gathered | null
+  /** What another tab has to do with this project; empty: nothing. */
+  readonly elsewhere: string
+}
+
+export interface Beside {
+  readonly doc: Doc
+  readonly answer: Answer
+}
+
+export interface Gathered {
+  readonly kind: Selection['kind']
+  readonly indices: readonly number[]
 }
 
 export type ListColumn = 'panel' | 'area' | 'slope' | 'fall' | 'corner' | 'flat'
@@ -99,4 +122,5 @@ export const initialState: State = {
   doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
   selection: null, picked: [], reading: 'slope', side: 'south', turned: null, views: 0, exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
   desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
+  beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '',
 }

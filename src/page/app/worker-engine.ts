@@ -34,6 +34,18 @@ export class WorkerEngine implements Engine {
     return this.client.ask('ways', { plan: this.base(doc), count }, true)
   }
 
+  whyFrozen(doc: Doc, joint: number): ReturnType<Engine['whyFrozen']> {
+    return this.client.ask('frozen', { plan: this.base(doc), joint }, true)
+  }
+
+  releases(doc: Doc): ReturnType<Engine['releases']> {
+    return this.client.ask('releases', { plan: this.base(doc) }, true)
+  }
+
+  mirrors(doc: Doc): ReturnType<Engine['mirrors']> {
+    return this.client.ask('mirrors', { plan: this.base(doc) }, true)
+  }
+
   surface(doc: Doc, file: NamedBytes): ReturnType<Engine['surface']> {
     return this.client.ask('surface', { plan: this.base(doc), file }, true)
   }
@@ -44,6 +56,10 @@ export class WorkerEngine implements Engine {
 
   stop(): void {
     this.client.stop()
+  }
+
+  close(): void {
+    this.client.close()
   }
 
   /** Number of the document's plan with the worker, which is told of it first when it does not know it. */
