@@ -78,6 +78,7 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     rim: take('rim', typedRim),
     datum: take('datum', typedLength),
     levelsWithin: take('levels-within', typedLength),
+    oneWay: take('one-way', typedJoints),
     pitch_deg: take('pitch', typedDegrees),
     bearing_deg: take('bearing', typedDegrees),
     rise: take('rise', typedLength),
@@ -99,6 +100,15 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     full: has('full'),
   }
   return problems[0] ?? ok(options)
+}
+
+/** "all", or names of joints with commas between them. */
+function typedJoints(text: string, option: string): Result<Options['oneWay']> {
+  if (text.trim().toLowerCase() === 'all') return ok('all')
+  const names = text.split(/[\s,]+/).filter((name) => name !== '')
+  const wrong = names.find((name) => !/^J[1-9]\d{0,8}$/i.test(name))
+  if (wrong === undefined && names.length > 0) return ok(names)
+  return fail('not-a-joint', `"${wrong ?? text}" is not the name of a joint`, { field: option }, 'write all, or names like J4,J11')
 }
 
 function typedRim(text: string, option: string): Result<Options['rim']> {

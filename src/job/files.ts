@@ -8,6 +8,7 @@ import { caution } from '../roof/answer/caution.ts'
 import type { Summary } from '../roof/answer/answer.ts'
 import { lists } from '../roof/panels/lists.ts'
 import type { Checked } from './check.ts'
+import { writtenCoordinates } from './written.ts'
 
 export interface OutputFile {
   readonly name: string
@@ -15,12 +16,13 @@ export interface OutputFile {
 }
 
 /** Every name that a run may write into its folder; the summary is the last to be there. */
-export const fileNames = ['roof.obj', 'panels.csv', 'joints.csv', 'nodes.csv', 'summary.json'] as const
+export const fileNames = ['roof.obj', 'one-way.obj', 'panels.csv', 'joints.csv', 'nodes.csv', 'summary.json'] as const
 
 /** Which of them this answer has: a roof that does not lift is written only when the near one was asked for. */
 export function namesOfFiles({ answer, wishes }: Checked): readonly string[] {
   const hasRoof = answer.roof !== null && (answer.summary.verdict !== 'does not lift' || wishes.near)
-  return hasRoof ? fileNames : fileNames.slice(-1)
+  const names = hasRoof ? fileNames : fileNames.slice(-1)
+  return (answer.oneWayHeights ?? null) === null ? names.filter((name) => name !== 'one-way.obj') : names
 }
 
 /** What `summary.json` holds: the summary and the names of the files. */
@@ -40,6 +42,12 @@ export function* filesOf(checked: Checked): Steps<OutputFile[]> {
     ]
     const { writtenX: x, writtenY: y, written: z } = roof
     files.push({ name: 'roof.obj', bytes: yield* writeObj({ plan, x, y, z, decimals: wishes.decimals, comments }) })
+    const { oneWayHeights = null } = answer
+    if (oneWayHeights !== null) {
+      const oneWay = yield* writtenCoordinates(plan, oneWayHeights, wishes.decimals)
+      const about = [`The roof in which the weakest of the chosen joints folds most: ${summary.oneWay?.joints ?? 0} joints, all ridges.`, caution]
+      files.push({ name: 'one-way.obj', bytes: yield* writeObj({ plan, ...oneWay, decimals: wishes.decimals, comments: [comments[0], ...about] }) })
+    }
     const { panels, joints, nodes } = yield* lists(plan, roof)
     files.push({ name: 'panels.csv', bytes: yield* writeCsv(panels, wishes.csv) })
     files.push({ name: 'joints.csv', bytes: yield* writeCsv(joints, wishes.csv) })

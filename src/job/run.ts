@@ -7,10 +7,12 @@ import { cancelled, drive, type DriveOptions, type Steps } from '../base/steps.t
 import type { Repair, LeftOut, Question } from '../base/repair.ts'
 import type { PlanFacts } from '../roof/answer/answer.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
+import { linearSolver } from '../roof/cures/linear-program.ts'
 import { adjust, type AdjustAnswer } from './adjust.ts'
 import { adjustFiles } from './adjust-files.ts'
 import { check, planFacts, type Checked } from './check.ts'
 import type { OutputFile } from './files.ts'
+import { withOneWay } from './one-way.ts'
 import { reading } from './reading.ts'
 import type { Request } from './request.ts'
 
@@ -37,7 +39,10 @@ export interface ReadAnswer {
 /** Reads, checks and raises; nothing is written. Code "cancelled" when the signal was aborted. */
 export async function run(request: Request, options: DriveOptions = {}): Promise<Result<Checked>> {
   const sha256 = await sha256Of(request.source.bytes)
-  return driven(check(request, version, sha256), options)
+  const checked = await driven(check(request, version, sha256), options)
+  const { oneWay } = request.options
+  if (!checked.ok || oneWay === null) return checked
+  return driven(withOneWay(checked.value, oneWay, await linearSolver()), options)
 }
 
 /** Reads, checks, moves nodes until the plan lifts, and checks again; nothing is written. */

@@ -8,6 +8,7 @@ import { drawingSentences, type DrawingNotes } from './drawing-sentences.ts'
 import { answerFacts, planFacts, type Fact } from './facts.ts'
 import { counted, lengthWords, listWords, sentenceOf } from './figures.ts'
 import { headline } from './headline.ts'
+import { oneWaySentences } from './one-way-sentences.ts'
 import { roofSentences } from './roof-sentences.ts'
 
 export interface Report {
@@ -26,7 +27,7 @@ export function answerReport(answer: Answer): Report {
   return {
     headline: headline(answer),
     verdict: summary.verdict,
-    sentences: [...reasonSentences(answer), ...roofSentences(answer), ...drawingSentences(summary)],
+    sentences: [...reasonSentences(answer), ...roofSentences(answer), ...oneWaySentences(summary), ...drawingSentences(summary)],
     facts: answerFacts(summary),
     caution,
   }

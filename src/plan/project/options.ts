@@ -78,6 +78,8 @@ export interface Options {
   readonly levels: Levels | null
   /** How far a level may lie from its node. */
   readonly levelsWithin: TypedLength | null
+  /** Joints, or all of them, of which it is asked whether they can all fold one way. */
+  readonly oneWay: readonly string[] | 'all' | null
   /** All panels at this pitch, falling towards this bearing (default 180, south). */
   readonly pitch_deg: number | null
   readonly bearing_deg: number | null
@@ -104,7 +106,7 @@ export interface Options {
 
 export const noOptions: Options = {
   unit: null, scale: null, layers: null, snap_mm: null, sagitta_mm: null, voids: null, accept: [], leave: [], scaleFrom: null,
-  rim: null, datum: null, levels: null, levelsWithin: null, pitch_deg: null, bearing_deg: null,
+  rim: null, datum: null, levels: null, levelsWithin: null, oneWay: null, pitch_deg: null, bearing_deg: null,
   rise: null, down: false, shape: null, target: null,
   keeps: noKeeps, planTolerance_mm: null,
   flat_mm: null, decimals: null, near: false, csv: 'comma', full: false,

@@ -66,6 +66,21 @@ export interface RoofFacts {
   readonly heightError?: number
 }
 
+/** Whether chosen joints can all be ridges at once; the same holds for valleys. */
+export interface OneWayFacts {
+  /** Least form force of the chosen joints beside the largest of any joint, in the roof where it is largest; 0: they cannot. */
+  readonly margin: number
+  readonly on: 'force'
+  /** How many joints were asked about. */
+  readonly joints: number
+  /** Whether the hard conditions were kept; else the rim was free. */
+  readonly held: boolean
+  /** Joints whose weighted form forces cancel in every roof; [] where the margin is more than 0. */
+  readonly certificate: readonly { readonly joint: string; readonly weight: number }[]
+  /** False: margin 0 that no certificate proves. */
+  readonly decided: boolean
+}
+
 export interface Summary {
   readonly version: string
   readonly input: { readonly name: string; readonly sha256: string }
@@ -85,6 +100,8 @@ export interface Summary {
   readonly roof: RoofFacts | null
   /** True when the roof is the near one of a plan that does not lift. */
   readonly near?: boolean
+  /** With --one-way. */
+  readonly oneWay?: OneWayFacts
   readonly caution: string
 }
 
@@ -119,4 +136,6 @@ export interface Answer {
   /** What holds, with names, for lists and pictures. */
   readonly conditions: readonly { readonly name: string; readonly kind: string; readonly soft: boolean; readonly nodes: Int32Array }[]
   readonly roof: Roof | null
+  /** Heights in the plan's unit of the roof that folds the chosen joints all one way; absent: none was asked for, null: there is none. */
+  readonly oneWayHeights?: Float64Array | null
 }

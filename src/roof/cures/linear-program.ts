@@ -3,7 +3,8 @@
  *
  *   rowLower <= A x <= rowUpper      lower <= x <= upper
  *
- * by the dual simplex method, presolve off: with it on, a plan whose closure conditions hold to the solver's tolerance only
+ * by the primal simplex method, presolve off. All programs here start at a point that keeps their rows, where the primal
+ * method is four to seven times quicker than the dual one (0.0007 of margin among 3,000 joints: 1.4 s for 9). With presolve on, a plan whose closure conditions hold to the solver's tolerance only
  * was given margin 0, "optimal", and a certificate of one joint, while its margin is 0.2. An answer is a vertex, so that few
  * multipliers are not zero. Whoever asks checks the answer on exact lifts.
  *
@@ -40,7 +41,10 @@ export interface LinearSolver {
 }
 
 /** Simplex steps between two turns of whoever drives: some 50 ms on dense programs; by size, since a clock would change the answer's bytes. */
-const sliceOf = (entries: number): number => Math.min(500, Math.max(20, Math.round(4e6 / (entries + 1))))
+const sliceOf = (entries: number): number => Math.min(500, Math.max(50, Math.round(1e7 / (entries + 1))))
+
+/** The solver's number for the primal simplex method. */
+const primal = 4
 
 /** Steps after which a program is given up: far above what any plan tried has taken. */
 const mostSteps = 2_000_000
@@ -92,7 +96,7 @@ function solverOf(highs: Highs): LinearSolver {
       })
       try {
         model.options.set({
-          output_flag: false, presolve: 'off', solver: 'simplex', random_seed: 1,
+          output_flag: false, presolve: 'off', solver: 'simplex', simplex_strategy: primal, random_seed: 1,
           primal_feasibility_tolerance: 1e-9, dual_feasibility_tolerance: 1e-9,
         })
         const slice = sliceOf(program.value.length)
