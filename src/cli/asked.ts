@@ -11,7 +11,7 @@ import { shapes } from '../plan/project/brief.ts'
 import { noOptions, type Options } from '../plan/project/options.ts'
 import type { Arguments } from './arguments.ts'
 import { readInput } from './read-input.ts'
-import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedScale, typedScaleFrom, typedUnit, typedWord } from './typed-values.ts'
+import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedColour, typedInside, typedScale, typedScaleFrom, typedUnit, typedWindow, typedWord } from './typed-values.ts'
 
 /** A request without its plan: the same for every plan of the run. */
 export type Asked = Omit<Request, 'source'>
@@ -57,6 +57,16 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     if (!code.ok) problems.push(code)
     return code.ok ? [code.value] : []
   })
+  /** The same for each value of a repeatable option; null where it was not given. */
+  const several = <T>(name: string, read: (text: string, option: string) => Result<T>): T[] | null => {
+    const texts = values.get(name)
+    if (texts === undefined) return null
+    return texts.flatMap((text) => {
+      const value = read(text, `--${name}`)
+      if (!value.ok) problems.push(value)
+      return value.ok ? [value.value] : []
+    })
+  }
   const has = (name: string): boolean => values.has(name)
   const voids: (readonly [number, number])[] = []
   for (const text of values.get('void') ?? []) {
@@ -69,6 +79,7 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     unit: take('unit', typedUnit),
     scale: take('scale', typedScale),
     layers: values.get('layer') ?? null,
+    ...chosen({ colours: several('colour', typedColour), lineTypes: values.get('line-type') ?? null, window: take('window', typedWindow), inside: take('inside', typedInside) }),
     snap_mm: take('snap', (text, option) => typedMillimetres(text, option, false)),
     sagitta_mm: take('sagitta', (text, option) => typedMillimetres(text, option, true)),
     voids: voids.length > 0 ? voids : null,
@@ -109,6 +120,11 @@ function typedJoints(text: string, option: string): Result<Options['oneWay']> {
   const wrong = names.find((name) => !/^J[1-9]\d{0,8}$/i.test(name))
   if (wrong === undefined && names.length > 0) return ok(names)
   return fail('not-a-joint', `"${wrong ?? text}" is not the name of a joint`, { field: option }, 'write all, or names like J4,J11')
+}
+
+/** What is chosen at all. */
+function chosen(lines: Pick<Options, 'colours' | 'lineTypes' | 'window' | 'inside'>): typeof lines {
+  return Object.fromEntries(Object.entries(lines).filter(([, value]) => value !== null))
 }
 
 function typedRim(text: string, option: string): Result<Options['rim']> {
@@ -153,7 +169,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
     const recorded = ['brief', 'levels', 'target'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
-    record[name] = recorded.length === 0 ? true : ['layer', 'void', 'accept', 'leave', 'stay'].includes(name) ? recorded : recorded[0]
+    record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay'].includes(name) ? recorded : recorded[0]
   }
   return record
 }

@@ -20,6 +20,10 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'scale', value: '1:N', group: 'Reading the plan', help: 'how a drawing on paper was drawn; without it 1:1' },
   { name: 'scale-from', value: 'X1,Y1,X2,Y2,LENGTH', group: 'Reading the plan', help: 'two points of an unscaled drawing and how far apart they truly are' },
   { name: 'layer', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'take this layer only (repeatable; capitals do not matter)' },
+  { name: 'colour', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'read lines of this colour only: red, 1 to 255, #ff8000 (repeatable)' },
+  { name: 'line-type', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'read lines of this line type only (repeatable)' },
+  { name: 'window', value: 'X1,Y1,X2,Y2', group: 'Reading the plan', help: 'read only what lies wholly within this window' },
+  { name: 'inside', value: 'LAYER|X,Y', group: 'Reading the plan', help: 'read only what lies inside the closed line on this layer, or round this point' },
   { name: 'snap', value: 'LENGTH', group: 'Reading the plan', help: 'line ends nearer than this are one node (bare: mm)' },
   { name: 'sagitta', value: 'LENGTH', group: 'Reading the plan', help: 'largest distance of a curve from its chords (bare: mm; default 5)' },
   { name: 'void', value: 'X,Y', repeatable: true, group: 'Reading the plan', help: 'the bounded face round this point is a void, no panel (repeatable)' },
@@ -56,7 +60,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'help', value: null, group: 'This run', help: 'show this' },
 ]
 
-const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'snap', 'sagitta', 'void', 'accept', 'leave', 'plan-tolerance', 'brief', 'json', 'quiet', 'help']
+const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'plan-tolerance', 'brief', 'json', 'quiet', 'help']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {

@@ -1,6 +1,7 @@
 /** The values of options as people type them, each with a sentence when it is none. */
 import { parseLength, units, isUnit, type Unit } from '../base/length.ts'
 import { fail, ok, placed, type Result } from '../base/result.ts'
+import { namedColour } from '../plan/project/colour-name.ts'
 import type { ScaleFrom } from '../plan/project/options.ts'
 
 const decimal = String.raw`[+-]?(?:\d+(?:\.\d*)?|\.\d+)(?:[eE][+-]?\d+)?`
@@ -66,6 +67,27 @@ export function typedScaleFrom(text: string, option: string): Result<ScaleFrom> 
   const length = parts.length === 5 ? typedLength(parts[4].trim(), option) : null
   if (length !== null && length.ok && x1.ok && y1.ok && x2.ok && y2.ok) return ok({ from: [x1.value, y1.value], to: [x2.value, y2.value], length: length.value })
   return fail('not-a-scale', `"${text}" is not two points and a length`, { field: option }, 'write it like 0,0,250,0,12.5m')
+}
+
+/** A colour as looks of a drawing have it. */
+export function typedColour(text: string, option: string): Result<string> {
+  const colour = namedColour(text)
+  return colour === null ? fail('not-a-colour', `"${text}" is not a colour`, { field: option }, 'write a name like red, a number from 1 to 255, or #ff8000') : ok(colour)
+}
+
+/** "X1,Y1,X2,Y2": two opposite corners in the plan's unit; with decimal commas between semicolons. */
+export function typedWindow(text: string, option: string): Result<readonly [readonly [number, number], readonly [number, number]]> {
+  const parts = text.includes(';') ? text.split(';') : text.split(',')
+  const [x1, y1, x2, y2] = parts.map((part) => typedNumber(part, option))
+  if (parts.length === 4 && x1.ok && y1.ok && x2.ok && y2.ok) return ok([[x1.value, y1.value], [x2.value, y2.value]])
+  return fail('not-a-window', `"${text}" is not two points`, { field: option }, "write it like 0,0,12.5,8, in the plan's unit")
+}
+
+/** A point where the text is one, else the name of a layer. */
+export function typedInside(text: string, option: string): Result<string | readonly [number, number]> {
+  const point = typedPoint(text, option)
+  if (point.ok) return point
+  return text.trim() === '' ? fail('not-a-point', 'there is neither a layer nor a point', { field: option }, 'name the layer of a closed line, or a point in one') : ok(text)
 }
 
 /** A whole number from 0 to `most`. */

@@ -5,10 +5,10 @@ import type { Steps } from '../base/steps.ts'
 import { readDrawing } from '../formats/all.ts'
 import type { FormatOptions } from '../formats/format.ts'
 import type { Drawing } from '../plan/drawing.ts'
-import { planFromDrawing } from '../plan/from-drawing.ts'
 import { emptyBrief, readBrief, type Brief } from '../plan/project/brief.ts'
 import type { Options } from '../plan/project/options.ts'
 import { readOptionsOf } from '../plan/project/wishes.ts'
+import { planOfLines } from '../plan/which-lines.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import { projectIn, withOptions } from './project-reading.ts'
 import type { Request } from './request.ts'
@@ -40,9 +40,9 @@ export function* reading(request: Request): Steps<Result<Reading>> {
     const { brief: own, target, read } = made.value.project
     return ok({ brief: own, read: { ...read, notices: [...read.notices, ...made.value.notices] }, target, layers: [''] })
   }
-  const drawing = yield* readDrawing(request.source, formatOptions(request.options))
+  const drawing = yield* readDrawing(request.source, formatOptions({ ...request.options, layers: request.options.layers ?? brief.value.lines?.layers ?? null }))
   if (!drawing.ok) return drawing
-  const read = yield* planFromDrawing(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
+  const read = yield* planOfLines(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
   if (!read.ok) return { ok: false, problem: placed(read.problem, { file: request.source.name }) }
   return ok({ brief: brief.value, read: read.value, target: null, layers: drawing.value.layers })
 }

@@ -1,5 +1,6 @@
 /** A drawing made into a plan, with everything the reader did and noticed on the way. */
 import type { LeftOut, Question, Repair } from '../base/repair.ts'
+import type { Axis } from './axes.ts'
 import type { Exactness } from './office-exactness.ts'
 import type { Plan } from './plan.ts'
 
@@ -11,6 +12,8 @@ export interface ReadPlan {
   readonly marks: { readonly points: Float64Array; readonly layer: Int32Array; readonly layers: readonly string[] }
   /** Width of the bar or gap that each edge was drawn with, per edge in the plan's unit, NaN for a single line; absent when no bars were reduced. */
   readonly barWidth?: Float64Array
+  /** Building axes that the drawing names, in the plan's unit and place; absent where it names none. */
+  readonly axes?: readonly Axis[]
   /** How exactly the drawing seems to be drawn. */
   readonly exactness?: Exactness
   readonly repairs: readonly Repair[]
@@ -36,6 +39,15 @@ export interface ReadOptions {
   readonly leave?: readonly string[]
   /** What the drawing is exact to: line ends nearer than this are one node unless `snap_mm` says otherwise, and no proposal moves a node farther; null: 1 mm. */
   readonly planTolerance_mm?: number | null
+  /** Set where the user has chosen layers, so that no guess is made. */
+  readonly layers?: readonly string[]
+  /** Only lines of these colours ("1" to "255", "#rrggbb") and line types are read; null: of all. */
+  readonly colours?: readonly string[] | null
+  readonly lineTypes?: readonly string[] | null
+  /** Only what lies wholly within this window, two corners in the plan's coordinates, is read. */
+  readonly window?: readonly [readonly [number, number], readonly [number, number]] | null
+  /** Only what lies inside this closed line is read: the largest on a layer, or the smallest round a point of the plan's coordinates. */
+  readonly inside?: string | readonly [number, number] | null
   /** Two points of the drawing, in its own coordinates, and their true distance: a number in the plan's unit, or as typed. */
   readonly scaleFrom?: { readonly from: readonly [number, number]; readonly to: readonly [number, number]; readonly length: number | string } | null
 }

@@ -141,3 +141,30 @@ export const widerTurns = 4
 
 /** .. which they are not where turns beyond `runSine` are more than this many times those within: evenly spread turns are three times as many. */
 export const turnsByChance = 2
+
+/** Sizes (square roots of areas) between which a face may be a panel, in metres: common practice, no source; a pane of 20 cm to a bay of 20 m2. */
+export const panelSizes_m = [0.2, 4.5] as const
+
+/** A panel is compact: 4 pi A / P^2 is at least this, which is a rectangle of 1 to 13. */
+export const leastCompact = 0.2
+
+/** Panels side by side are of about one size: up to this factor. */
+export const likeSizes = 3
+
+/** .. and lie within this share of their size of each other: a bar or a gutter is narrower, the space between two figures is wider. */
+export const nearShare = 0.3
+
+/** Lines of which less than this share is loose, and faces of which less than this share look like no panels, are a clean plan. */
+export const cleanShare = 0.02
+
+/** Panels of two layers or figures are of one kind when their usual sizes differ by less than this factor. */
+export const alikeSizes = 1.6
+
+/** Figures whose sides differ by less than this share are copies of one another: other storeys, or other states. */
+export const sameExtent = 0.02
+
+/** A building axis is at least this many radii of its circle long: a leader to a number in a circle is short. */
+export const axisRadii = 6
+
+/** Share of the circle's radius by which the line of an axis may miss its circle or its middle. */
+export const axisOff = 0.15

@@ -16,6 +16,8 @@ const place = (field: string, schema: Schema, others: Readonly<Record<string, Sc
   additionalProperties: false,
 })
 
+const names = (description: string): Schema => ({ type: 'array', items: { type: 'string', minLength: 1 }, minItems: 1, description })
+
 const spots = (letter: string, what: string): Schema => ({
   type: 'array',
   description: `${what} by name or by a point`,
@@ -58,6 +60,19 @@ export const briefSchema: SchemaDocument = {
     shape: { type: 'string', enum: ['dome', 'barrel', 'pitched', 'hipped'], description: 'starting shape' },
     flat_mm: { type: 'number', exclusiveMinimum: 0, description: 'out-of-flatness that a panel may have, in mm; default 1' },
     voids: { type: 'array', items: { $ref: '#/$defs/point' }, description: 'a point in each bounded face that is a void' },
+    lines: {
+      type: 'object',
+      description: 'which lines of the drawing are read; what fits all that is said is',
+      properties: {
+        layers: names('names of layers; capitals do not matter'),
+        colours: names('colours: names like red, numbers from 1 to 255, or #ff8000'),
+        line_types: names('names of line types'),
+        window: { type: 'array', items: { $ref: '#/$defs/point' }, minItems: 2, maxItems: 2, description: 'two opposite corners: what lies wholly within' },
+        inside: { oneOf: [{ type: 'string', minLength: 1, description: 'the layer of a closed line' }, { $ref: '#/$defs/point' }], description: 'what lies inside the closed line on a layer, or round a point' },
+      },
+      required: [],
+      additionalProperties: false,
+    },
     conditions: { type: 'array', items: { $ref: '#/$defs/condition' } },
   },
   required: ['panewise', 'version'],

@@ -2,6 +2,7 @@
 import { briefVersion, type Brief } from './brief.ts'
 import type { At, Condition } from './condition.ts'
 import { documentText } from './document-text.ts'
+import { writtenLines } from './lines-wish.ts'
 
 /** The text of a brief file. */
 export function briefText(brief: Brief): string {
@@ -9,10 +10,10 @@ export function briefText(brief: Brief): string {
 }
 
 /** The brief as its file says it, a value for JSON. */
-export function writtenBrief({ unit, datum, rise, down, shape, flat_mm, voids, conditions }: Brief): object {
+export function writtenBrief({ unit, datum, rise, down, shape, flat_mm, voids, lines, conditions }: Brief): object {
   return {
     panewise: 'brief', version: briefVersion,
-    ...said({ unit, datum, rise, down: down ? true : null, shape, flat_mm, voids }),
+    ...said({ unit, datum, rise, down: down ? true : null, shape, flat_mm, voids, lines: lines === undefined || lines === null ? null : writtenLines(lines) }),
     ...(conditions.length === 0 ? {} : { conditions: conditions.map(writtenCondition) }),
   }
 }

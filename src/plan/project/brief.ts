@@ -4,6 +4,7 @@ import { fail, ok, type Problem, type Result } from '../../base/result.ts'
 import { briefSchema, voidPattern } from './brief-schema.ts'
 import { kindsNotBuilt, type Condition, type Point } from './condition.ts'
 import { placedIn, readJson } from './json-text.ts'
+import { linesIn, type LinesWish, type WrittenLines } from './lines-wish.ts'
 import { misfit } from './schema.ts'
 
 export type Shape = 'dome' | 'barrel' | 'pitched' | 'hipped'
@@ -21,6 +22,8 @@ export interface Brief {
   readonly flat_mm: number | null
   /** null: not said; the plan then has no bounded face that is a void. */
   readonly voids: readonly Point[] | null
+  /** Which lines of the drawing are read; null or absent: a guess is made. */
+  readonly lines?: LinesWish | null
   readonly conditions: readonly Condition[]
 }
 
@@ -49,6 +52,8 @@ export function briefOf(value: unknown): Result<Brief> {
   const written = value as WrittenBrief
   const unordered = unorderedSection(written.conditions ?? [])
   if (unordered !== null) return { ok: false, problem: unordered }
+  const lines = linesIn(written.lines)
+  if (!lines.ok) return lines
   const conditions = namedConditions(written.conditions ?? [])
   if (!conditions.ok) return conditions
   return ok({
@@ -59,6 +64,7 @@ export function briefOf(value: unknown): Result<Brief> {
     shape: shapes.find((shape) => shape === written.shape) ?? null,
     flat_mm: written.flat_mm ?? null,
     voids: written.voids ?? null,
+    ...(written.lines === undefined ? {} : { lines: lines.value }),
     conditions: conditions.value,
   })
 }
@@ -71,6 +77,7 @@ interface WrittenBrief {
   readonly shape?: string
   readonly flat_mm?: number
   readonly voids?: readonly Point[]
+  readonly lines?: WrittenLines
   readonly conditions?: readonly WrittenCondition[]
 }
 

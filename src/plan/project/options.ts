@@ -60,6 +60,13 @@ export interface Options {
   /** N of a scale 1:N. */
   readonly scale: number | null
   readonly layers: readonly string[] | null
+  /** Colours ("1" to "255", "#rrggbb") and line types of which lines are read; null or absent: all. */
+  readonly colours?: readonly string[] | null
+  readonly lineTypes?: readonly string[] | null
+  /** Two corners, in the plan's coordinates, within which lines are read; null or absent: everywhere. */
+  readonly window?: readonly [Point, Point] | null
+  /** The layer of a closed line, or a point in one: only what lies inside is read. */
+  readonly inside?: string | Point | null
   readonly snap_mm: number | null
   readonly sagitta_mm: number | null
   /** In the plan's coordinates; null: the brief's. */

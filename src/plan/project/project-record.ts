@@ -42,7 +42,12 @@ export function projectOf(read: ReadPlan, { name, sha256, brief, target, leastSl
   const faces = drawnFaces(read.plan, read.heights)
   const factor = conversion(brief.unit ?? faces.unit, faces.unit)
   const voids = (brief.voids ?? []).filter(([x, y]) => faces.isVoid[faceAt(faces, x * factor, y * factor)] === 0)
-  return { name, sha256, faces, read: kept, brief: { ...brief, voids: voids.length === 0 ? null : voids }, target, leastSlope }
+  return { name, sha256, faces, read: kept, brief: { ...withoutLines(brief), voids: voids.length === 0 ? null : voids }, target, leastSlope }
+}
+
+/** A plan that was accepted needs no choice of lines. */
+function withoutLines(brief: Brief): Brief {
+  return brief.lines === undefined ? brief : { ...brief, lines: null }
 }
 
 /** The plan of faces, read as a drawing of which reading had this to say. */

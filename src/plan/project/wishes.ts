@@ -3,6 +3,7 @@ import { conversion, parseLength, type Unit } from '../../base/length.ts'
 import { fail, ok, placed, type Result } from '../../base/result.ts'
 import type { ReadOptions } from '../read-plan.ts'
 import type { Brief, Shape } from './brief.ts'
+import { linesOf } from './lines-chosen.ts'
 import { inUnit, type Condition, type LevelCondition, type Point } from './condition.ts'
 import type { NamedFile, Options, TypedLength } from './options.ts'
 
@@ -86,7 +87,10 @@ export function readOptionsOf(brief: Brief, options: Options, fileUnit: Unit | n
   const unit = options.unit ?? fileUnit ?? 'm'
   const factor = conversion(brief.unit ?? unit, unit)
   const voids = options.voids ?? (brief.voids ?? []).map(([x, y]): Point => [x * factor, y * factor])
-  return { unit: options.unit, scale: options.scale, snap_mm: options.snap_mm, voids, accept: options.accept, leave: options.leave, scaleFrom: options.scaleFrom, planTolerance_mm: options.planTolerance_mm }
+  return {
+    unit: options.unit, scale: options.scale, snap_mm: options.snap_mm, voids, accept: options.accept, leave: options.leave, scaleFrom: options.scaleFrom,
+    planTolerance_mm: options.planTolerance_mm, ...linesOf(brief, options, factor),
+  }
 }
 
 const scaled = (value: number | null, factor: number): number | null => (value === null ? null : value * factor)
