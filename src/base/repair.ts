@@ -2,10 +2,10 @@
 
 export type RepairCode =
   | 'split' | 'joined' | 'repeat' | 'loose-end' | 'chords' | 'flattened' | 'tiny-face' | 'left-out' | 'unit-assumed'
-  | 'double-lines' | 'unit' | 'which-lines' | 'straighten' | 'equalise' | 'symmetric' | 'levels'
+  | 'double-lines' | 'unit' | 'which-lines' | 'straighten' | 'square' | 'equalise' | 'symmetric' | 'levels'
 
 /** Codes of what the reader offers and does not do unasked. */
-export const proposalCodes = ['double-lines', 'unit', 'which-lines', 'straighten', 'equalise', 'symmetric', 'levels'] as const satisfies readonly RepairCode[]
+export const proposalCodes = ['double-lines', 'unit', 'which-lines', 'straighten', 'square', 'equalise', 'symmetric', 'levels'] as const satisfies readonly RepairCode[]
 
 export interface Repair {
   readonly code: RepairCode

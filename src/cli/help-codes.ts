@@ -23,6 +23,7 @@ const repairs: Readonly<Record<RepairCode, string>> = {
   unit: 'the stated unit is not plausible and another fits',
   'which-lines': 'it is not clear which lines are the plan',
   straighten: 'nodes that are nearly in line come into line',
+  square: 'runs that are nearly at right angles become so',
   equalise: 'bays that are nearly equal become equal',
   symmetric: 'a plan that is nearly symmetric becomes so',
   levels: 'texts or points with levels are held',

@@ -18,13 +18,9 @@ const mostEdges = 64
 const nodesPerStep = 10_000
 
 /** At every node edges are paired by the smaller turn first, each edge with one other at most. */
-export function* runsOf({ work, origin, edgeCount, nodeCount }: Plan): Steps<Runs> {
-  const first = new Int32Array(nodeCount + 1)
-  for (const node of origin) first[node + 1] += 1
-  for (let n = 0; n < nodeCount; n += 1) first[n + 1] += first[n]
-  const fill = first.slice(0, nodeCount)
-  const leaving = new Int32Array(origin.length)
-  for (let h = 0; h < origin.length; h += 1) leaving[fill[origin[h]]++] = h
+export function* runsOf(plan: Plan): Steps<Runs> {
+  const { work, origin, edgeCount, nodeCount } = plan
+  const { first, leaving } = leavingEdges(plan)
   let within = 0, beyond = 0
   // Half-edge that leaves a node -> the one that leaves it straight on, -1: none.
   const opposite = new Int32Array(origin.length).fill(-1)
@@ -68,6 +64,17 @@ export function* runsOf({ work, origin, edgeCount, nodeCount }: Plan): Steps<Run
     else node.length = from
   }
   return { areMeant: beyond <= turnsByChance * within, start: Int32Array.from(start), node: Int32Array.from(node) }
+}
+
+/** Half-edges that leave each node n: leaving[first[n] .. first[n + 1]). */
+export function leavingEdges({ origin, nodeCount }: Plan): { readonly first: Int32Array; readonly leaving: Int32Array } {
+  const first = new Int32Array(nodeCount + 1)
+  for (const node of origin) first[node + 1] += 1
+  for (let n = 0; n < nodeCount; n += 1) first[n + 1] += first[n]
+  const fill = first.slice(0, nodeCount)
+  const leaving = new Int32Array(origin.length)
+  for (let h = 0; h < origin.length; h += 1) leaving[fill[origin[h]]++] = h
+  return { first, leaving }
 }
 
 /** Sine of the turn from arriving against g to leaving along h; infinite for turns of a right angle and more. */

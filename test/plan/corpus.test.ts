@@ -27,7 +27,7 @@ describe('24 cells as drawn by several programs', () => {
     ['dxf/cells-lines.dxf', {}, 'mm', []],
     ['dxf/cells-polylines.dxf', {}, 'cm', []],
     ['dxf/cells-faults.dxf', {}, 'm', ['unit-assumed', 'joined', 'repeat', 'loose-end', 'unit']],
-    ['dxf/cells-faults.dxf', { unit: 'mm' }, 'mm', ['joined', 'repeat', 'loose-end', 'straighten']],
+    ['dxf/cells-faults.dxf', { unit: 'mm' }, 'mm', ['joined', 'repeat', 'loose-end', 'straighten', 'square']],
     ['svg/cells-plot.svg', { scale: 100 }, 'm', []],
     ['svg/cells.svg', { scale: 100 }, 'm', []],
   ] as const)('%s %o', (path, options, unit, expected) => {

@@ -26,7 +26,7 @@ describe('outlines are the panels', () => {
 
   test('off the edge by half a millimetre it is inserted, counted and named, and keeps its place', () => {
     const r = read({ outlines: [[[0, 0], [2, 0], [2, 1], [0, 1]], [[0, 1], [1, 1.0005], [1, 2], [0, 2]], [[1, 1.0005], [2, 1], [2, 2], [1, 2]]] })
-    expect(codes(r)).toEqual(['split 1', 'straighten 3'])
+    expect(codes(r)).toEqual(['split 1', 'straighten 3', 'square 3'])
     expect(r.repairs[0]!.message).toContain('0.5 mm')
     expect(r.repairs[0]!.where).toEqual([[1, 1.0005]])
     expect(r.plan.jointCount).toBe(3)
@@ -37,7 +37,7 @@ describe('outlines are the panels', () => {
     const noisy = quads(6, 5, 1.5).map((quad) => quad.map(([x, y]) => [x + 6e-4 * (next() - 0.5), y + 6e-4 * (next() - 0.5)] as Point))
     const r = read({ outlines: noisy })
     expect([r.plan.panelCount, r.plan.nodeCount, r.plan.jointCount]).toEqual([30, 42, 49])
-    expect(codes(r)).toEqual(['joined 38', 'straighten 42'])
+    expect(codes(r)).toEqual(['joined 38', 'straighten 42', 'square 42', 'equalise 41', 'symmetric 42'])
     expect(r.repairs[0]!.message).toMatch(/up to 0\.\d+ mm/)
   })
 

@@ -142,6 +142,12 @@ export const widerTurns = 4
 /** .. which they are not where turns beyond `runSine` are more than this many times those within: evenly spread turns are three times as many. */
 export const turnsByChance = 2
 
+/** Bays are nearly equal when they differ by no more than a run may bend, and by this share of the bay at most: 1.500 and 1.530 m are two bays. */
+export const bayShare = 0.02
+
+/** Runs off a common right angle by less than this (sine, 4 mm at 1.5 m) may be meant to be square: of runs that lie anyhow one in 300. */
+export const squareSine = 0.0026
+
 /** Sizes (square roots of areas) between which a face may be a panel, in metres: common practice, no source; a pane of 20 cm to a bay of 20 m2. */
 export const panelSizes_m = [0.2, 4.5] as const
 
