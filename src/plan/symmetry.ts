@@ -51,7 +51,7 @@ export function* mirrorLineSteps(plan: Plan, tolerance_mm: number): Steps<Mirror
   for (const [k, other] of ring.entries()) {
     yield { stage: 'Looking for symmetry', done: k / ring.length }
     const toward = (i: number): number => Math.atan2(plan.y[i] - cy, plan.x[i] - cx)
-    const line = lineNear(plan, points, () => (halves ??= halfEdges(plan)), cx, cy, (toward(first) + toward(other)) / 2, tolerance)
+    const line = yield* lineNear(plan, points, () => (halves ??= halfEdges(plan)), cx, cy, (toward(first) + toward(other)) / 2, tolerance)
     if (line !== null && !found.some(({ angle }) => Math.abs(Math.sin(angle - line.angle)) < 1e-6)) found.push(line)
   }
   return found.sort((a, b) => a.angle - b.angle)
@@ -70,11 +70,12 @@ function smallestRing(radius: Float64Array, tolerance: number): number[] {
 }
 
 /** The mirror line next to a line through the centroid; null: there is none. */
-function lineNear(
+function* lineNear(
   plan: Plan, points: NearPoints, halves: () => Map<number, number>, cx: number, cy: number, tried: number, tolerance: number,
-): MirrorLine | null {
+): Steps<MirrorLine | null> {
   const rough = images(plan, points, cx, cy, tried)
   if (rough === null) return null
+  yield { stage: 'Looking for symmetry', done: 0.5 }
   // Node and image make twice the line's angle: z_i z_j = r^2 e^(2 i angle), weighted by r^2.
   let re = 0, im = 0
   rough.forEach((j, i) => {
@@ -91,7 +92,10 @@ function lineNear(
     misfit = Math.max(misfit, Math.hypot(cx + c * dx + s * dy - plan.x[rough[i]], cy + s * dx - c * dy - plan.y[rough[i]]))
   }
   if (misfit > tolerance) return null
-  const faces = imagesOfFaces(plan, rough, halves())
+  yield { stage: 'Looking for symmetry', done: 0.6 }
+  const edges = halves()
+  yield { stage: 'Looking for symmetry', done: 0.8 }
+  const faces = imagesOfFaces(plan, rough, edges)
   return faces === null ? null : { x: cx, y: cy, angle, node: rough, ...faces, misfit }
 }
 
