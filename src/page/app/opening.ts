@@ -19,6 +19,12 @@ export function switchedLayer({ options, layers }: Opening, layer: string): Part
   return { layers: next.length === layers.length ? null : next }
 }
 
+/** A proposal taken, left (so that it is not asked about again), or neither: null. */
+export function taking({ accept, leave }: OpeningOptions, code: string, take: boolean | null): Pick<OpeningOptions, 'accept' | 'leave'> {
+  const without = (codes: readonly string[]): string[] => codes.filter((other) => other !== code)
+  return { accept: take === true ? [...without(accept), code] : without(accept), leave: take === false ? [...without(leave), code] : without(leave) }
+}
+
 /** The answer to a reader's question, one of the options that it names, as typed on a command line; null: not known here. */
 export function answered(options: OpeningOptions, option: string): Partial<OpeningOptions> | null {
   const match = /^--([a-z-]+)[ =](.+)$/.exec(option)
@@ -26,7 +32,10 @@ export function answered(options: OpeningOptions, option: string): Partial<Openi
   const [, name, value] = match
   if (name === 'unit' && isUnit(value)) return { unit: value }
   if (name === 'scale') return { scale: Number(value.replace(/^1:/, '')) }
-  if (name === 'accept') return { accept: [...options.accept, value] }
+  if (name === 'accept') return taking(options, value, true)
+  if (name === 'leave') return taking(options, value, false)
+  if (name === 'colour') return { colours: value.split(',') }
+  if (name === 'line-type') return { lineTypes: value.split(',') }
   if (name === 'snap') return { snap_mm: Number.parseFloat(value) }
   if (name === 'layers' || name === 'layer') return { layers: value.split(',') }
   return null

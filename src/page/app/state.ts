@@ -43,10 +43,13 @@ export interface OpeningOptions {
   readonly snap_mm: number | null
   readonly layers: readonly string[] | null
   readonly voids: readonly (readonly [number, number])[]
+  readonly colours: readonly string[] | null
+  readonly lineTypes: readonly string[] | null
   readonly accept: readonly string[]
+  readonly leave: readonly string[]
 }
 
-export const openingOptions: OpeningOptions = { unit: null, scale: null, snap_mm: null, layers: null, voids: [], accept: [] }
+export const openingOptions: OpeningOptions = { unit: null, scale: null, snap_mm: null, layers: null, voids: [], colours: null, lineTypes: null, accept: [], leave: [] }
 
 export type Pane = 'roof' | 'plan' | 'chart' | 'list' | 'steps'
 export type Desk = 'ways' | 'conditions' | 'profile'
