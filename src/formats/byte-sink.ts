@@ -9,16 +9,28 @@ import { assert } from '../base/assert.ts'
 
 const zero = 48
 const minus = 45
-/** 10^0 .. 10^15, all exact. */
-const powersOfTen = [1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15]
-/** Integers below this are split into digits with 32-bit arithmetic. */
-const smallIntegers = 2 ** 31
+/** 10^0 .. 10^22, all exact. */
+const powersOfTen = [
+  1, 1e1, 1e2, 1e3, 1e4, 1e5, 1e6, 1e7, 1e8, 1e9, 1e10, 1e11, 1e12, 1e13, 1e14, 1e15, 1e16, 1e17, 1e18, 1e19, 1e20, 1e21, 1e22,
+]
+/** Most decimals of `decimal`. */
+const mostDecimals = 15
+/** Digits that 32-bit arithmetic splits. */
+const smallDigits = 9
+const smallIntegers = 1e9
+
+/** Room of a sink that is done, for the next one: fresh memory costs more than what is written into it. */
+let spare: Uint8Array | null = null
 
 export class ByteSink {
-  private bytes = new Uint8Array(1 << 16)
+  private bytes: Uint8Array
   private length = 0
   private readonly encoder = new TextEncoder()
-  private readonly digits = new Uint8Array(24)
+
+  constructor() {
+    this.bytes = spare ?? new Uint8Array(1 << 16)
+    spare = null
+  }
 
   /** Any text, as UTF-8. */
   text(text: string): void {
@@ -49,7 +61,7 @@ export class ByteSink {
       this.bytes[this.length] = minus
       this.length += 1
     }
-    this.natural(Math.abs(value), 0)
+    this.natural(Math.abs(value))
   }
 
   /**
@@ -57,79 +69,110 @@ export class ByteSink {
    * is rounded as `rounded` does. Falls back to strings where value 10^d is no exact integer any more; d is at most 15.
    */
   decimal(value: number, decimals: number, keepZeros: boolean, point = 46): void {
-    const scale = powersOfTen[decimals] ?? NaN
+    const scale = decimals <= mostDecimals ? powersOfTen[decimals] : NaN
     const scaled = Math.round(Math.abs(value) * scale)
     if (!(scaled < 9007199254740992)) {
       assert(Number.isFinite(value), 'a number to be written is finite')
       this.text((keepZeros ? fixed(value, decimals) : shortest(value)).replace('.', String.fromCharCode(point)))
       return
     }
-    this.room(40)
+    this.room(48)
     if (value < 0 && scaled !== 0) {
       this.bytes[this.length] = minus
       this.length += 1
     }
-    // The quotient may be rounded up to the next integer: then the rest is negative and one is given back.
-    const quotient = Math.floor(scaled / scale)
-    const whole = quotient * scale > scaled ? quotient - 1 : quotient
-    this.natural(whole, 0)
-    let rest = scaled - whole * scale
-    let places = decimals
-    if (!keepZeros) {
-      if (rest === 0) return
-      while (rest % 10 === 0) {
-        rest /= 10
-        places -= 1
-      }
-    }
-    if (places === 0) return
-    this.bytes[this.length] = point
-    this.length += 1
-    this.natural(rest, places)
+    this.shifted(scaled, decimals, keepZeros, point)
   }
 
   /** At most `digits` significant digits, zeros at the end dropped. */
   significant(value: number, digits: number, point = 46): void {
     const decimals = value === 0 ? 0 : digits - 1 - Math.floor(Math.log10(Math.abs(value)))
-    if (decimals >= 0 && decimals < powersOfTen.length) this.decimal(value, decimals, false, point)
+    if (decimals >= 0 && decimals <= mostDecimals) this.decimal(value, decimals, false, point)
     else this.text(significant(value, digits).replace('.', String.fromCharCode(point)))
   }
 
-  /** The shortest digits that read back as exactly this double. */
+  /**
+   * The shortest digits that read back as exactly this double. Where fifteen digits do, m 10^-d with m < 10^15 and 10^d exact,
+   * they are found by one division, which is rounded correctly and therefore decides; no other fifteen digits read back as the
+   * same double, so these less their zeros are the shortest. Else by a string.
+   */
   shortest(value: number, point = 46): void {
-    if (Number.isInteger(value) && Math.abs(value) < smallIntegers) this.integer(value)
-    else this.text(point === 46 ? shortest(value) : shortest(value).replace('.', String.fromCharCode(point)))
+    const size = Math.abs(value)
+    if (size >= 1e-6 && size < 1e15) {
+      let decimals = mostDecimals
+      if (size >= 1) while (powersOfTen[mostDecimals - decimals] <= size) decimals -= 1
+      else while (size * powersOfTen[decimals + 1 - mostDecimals] < 1) decimals += 1
+      const scaled = Math.round(size * powersOfTen[decimals])
+      if (scaled / powersOfTen[decimals] === size) {
+        this.room(48)
+        if (value < 0) {
+          this.bytes[this.length] = minus
+          this.length += 1
+        }
+        this.shifted(scaled, decimals, false, point)
+        return
+      }
+    }
+    this.text(point === 46 ? shortest(value) : shortest(value).replace('.', String.fromCharCode(point)))
   }
 
-  /** The bytes so far, as an array of their own. */
+  /** The bytes so far, as an array of their own. The sink is not to be used afterwards. */
   done(): Uint8Array {
-    return this.bytes.slice(0, this.length)
+    const { bytes } = this
+    spare = bytes
+    return bytes.slice(0, this.length)
   }
 
-  /** Digits of a natural number, with zeros in front up to `width`. */
-  private natural(value: number, width: number): void {
-    let count = 0
+  /** scaled 10^-decimals, for a natural number below 2^53. */
+  private shifted(scaled: number, decimals: number, keepZeros: boolean, point: number): void {
+    const scale = powersOfTen[decimals]
+    // The quotient may be rounded up to the next integer: then the rest is negative and one is given back.
+    const quotient = Math.floor(scaled / scale)
+    const whole = quotient * scale > scaled ? quotient - 1 : quotient
+    this.natural(whole)
+    const rest = scaled - whole * scale
+    if (decimals === 0 || (rest === 0 && !keepZeros)) return
+    this.bytes[this.length] = point
+    this.length += 1
+    // From the left in groups that 32-bit arithmetic splits.
+    let left = rest
+    for (let places = decimals; places > 0; places -= smallDigits) {
+      const count = places < smallDigits ? places : smallDigits
+      const unit = powersOfTen[places - count]
+      const group = Math.floor(left / unit)
+      left -= group * unit
+      this.group(group, count)
+    }
+    if (keepZeros) return
+    while (this.bytes[this.length - 1] === zero) this.length -= 1
+  }
+
+  /** Digits of a natural number below 2^53. */
+  private natural(value: number): void {
     let rest = value
-    while (rest >= smallIntegers) {
-      const next = Math.floor(rest / 10)
-      this.digits[count] = zero + (rest - 10 * next)
-      count += 1
-      rest = next
+    if (rest >= smallIntegers) {
+      const high = Math.floor(rest / smallIntegers)
+      this.natural(high)
+      rest -= high * smallIntegers
+      this.group(rest, smallDigits)
+      return
     }
-    do {
+    let count = 1
+    while (count < smallDigits && powersOfTen[count] <= rest) count += 1
+    this.group(rest, count)
+  }
+
+  /** `count` digits of a natural number below 10^9, zeros in front. */
+  private group(value: number, count: number): void {
+    const { bytes } = this
+    const start = this.length
+    let rest = value | 0
+    for (let at = start + count - 1; at >= start; at -= 1) {
       const next = (rest / 10) | 0
-      this.digits[count] = zero + (rest - 10 * next)
-      count += 1
+      bytes[at] = zero + rest - 10 * next
       rest = next
-    } while (rest > 0)
-    while (count < width) {
-      this.digits[count] = zero
-      count += 1
     }
-    for (let i = count - 1; i >= 0; i -= 1) {
-      this.bytes[this.length] = this.digits[i]
-      this.length += 1
-    }
+    this.length = start + count
   }
 
   /** Makes room for `more` bytes. */

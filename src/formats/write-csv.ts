@@ -11,22 +11,27 @@ export type CsvStyle = 'comma' | 'semicolon'
 
 export const csvStyles: readonly CsvStyle[] = ['comma', 'semicolon']
 
+const carriageReturn = 13
+const lineFeed = 10
+
 /** Rows between two looks at the clock: about a millisecond. */
 const slice = 1024
 
 export function* writeCsv(table: Table, style: CsvStyle = 'comma', stage = 'Writing the lists'): Steps<Uint8Array> {
   const separator = style === 'comma' ? ',' : ';'
   const point = (style === 'comma' ? '.' : ',').charCodeAt(0)
+  const comma = separator.charCodeAt(0)
   const sink = new ByteSink()
   const cells = table.columns.map((column) => cellWriter(column, separator, point, sink))
   sink.text(table.columns.map(({ title }) => textCell(title, separator)).join(separator))
   sink.text('\r\n')
   for (let row = 0; row < table.rows; row += 1) {
     for (let at = 0; at < cells.length; at += 1) {
-      if (at > 0) sink.text(separator)
+      if (at > 0) sink.code(comma)
       cells[at]?.(row)
     }
-    sink.text('\r\n')
+    sink.code(carriageReturn)
+    sink.code(lineFeed)
     if (row % slice === 0) yield { stage, done: row / table.rows }
   }
   return sink.done()
