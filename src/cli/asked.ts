@@ -169,7 +169,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
     const recorded = ['brief', 'levels', 'target'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
-    record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay'].includes(name) ? recorded : recorded[0]
+    record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay', 'cure'].includes(name) ? recorded : recorded[0]
   }
   return record
 }

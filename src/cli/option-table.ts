@@ -48,6 +48,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'least-edge', value: 'LENGTH', group: 'What the plan keeps', help: 'no edge gets shorter (default: a quarter of what it is)' },
   { name: 'least-corner', value: 'DEGREES', group: 'What the plan keeps', help: 'no corner gets sharper (default: half of what it is)' },
   { name: 'plan-tolerance', value: 'LENGTH', group: 'What the plan keeps', help: 'what the drawing is exact to (bare: mm; default 1)' },
+  { name: 'cure', value: 'CODE[:NAME]', repeatable: true, group: 'Judging and writing', help: 'apply a cure that check lists, like add-diagonals or "release:south gutter" (repeatable, in order)' },
   { name: 'flat', value: 'LENGTH', group: 'Judging and writing', help: 'out of flat that a panel may be (bare: mm; default 1)' },
   { name: 'full', value: null, group: 'Judging and writing', help: 'name frozen joints and flat groups in the summary' },
   { name: 'out', value: 'DIR', group: 'Judging and writing', help: 'where raise writes: one plan into DIR, several into DIR/NAME' },
@@ -65,5 +66,5 @@ const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', '
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {
   if (command === 'read') return optionTable.filter(({ name }) => forReading.includes(name))
-  return command === 'adjust' ? optionTable.filter(({ name }) => name !== 'near') : optionTable.filter(({ name, group }) => name === 'plan-tolerance' || group !== 'What the plan keeps')
+  return command === 'adjust' ? optionTable.filter(({ name }) => name !== 'near' && name !== 'cure') : optionTable.filter(({ name, group }) => name === 'plan-tolerance' || group !== 'What the plan keeps')
 }

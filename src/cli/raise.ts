@@ -4,9 +4,11 @@ import { join } from 'node:path'
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import { finish } from '../base/steps.ts'
 import { writeCsv, type CsvStyle } from '../formats/write-csv.ts'
-import { fileNames, files, summaryWithFiles, type OutputFile } from '../job/files.ts'
-import { run as job } from '../job/run.ts'
-import { answerReport, type Report } from '../paper/report/report.ts'
+import { solvedFileNames, solvedFiles, solvedSummary } from '../job/cure-files.ts'
+import { fileNames, type OutputFile } from '../job/files.ts'
+import { solve } from '../job/run.ts'
+import { solvedReport } from '../paper/report/cure-report.ts'
+import type { Report } from '../paper/report/report.ts'
 import type { Arguments } from './arguments.ts'
 import { eachPlan, gaveUp, type Run } from './each-plan.ts'
 import { badUse, exitCodeOf, type ExitCode } from './exit-code.ts'
@@ -21,7 +23,9 @@ export async function raisePlans(run: Run): Promise<ExitCode> {
   if (folder === undefined) return gaveUp(screen, fail('no-out', 'raise needs a folder to write into', null, 'add --out DIR').problem)
   const isOne = args.plans.length <= 1
   const folders = isOne ? [''] : planFolders(args.plans)
-  const owned = [...folders.flatMap((each) => fileNames.map((name) => join(each, name))), ...(isOne ? [] : [overviewName])]
+  // A plan.obj is ours only where a cure may write one: it is what people call their drawings.
+  const names = args.values.has('cure') ? solvedFileNames : fileNames
+  const owned = [...folders.flatMap((each) => names.map((name) => join(each, name))), ...(isOne ? [] : [overviewName])]
   const inTheWay = inputAmong(args, owned.map((path) => join(folder, path)))
   if (inTheWay !== null) return gaveUp(screen, inTheWay)
   const output = openOutput(folder, { overwrite: args.values.has('overwrite'), owned })
@@ -34,7 +38,7 @@ export async function raisePlans(run: Run): Promise<ExitCode> {
 }
 
 /** The problem of an input that lies where a file is to be written: not even --overwrite may lose a drawing. */
-function inputAmong({ plans, values }: Arguments, written: readonly string[]): Problem | null {
+export function inputAmong({ plans, values }: Arguments, written: readonly string[]): Problem | null {
   const inputs = [...plans, ...['brief', 'target', 'levels'].flatMap((name) => values.get(name) ?? [])]
   const places = new Set<string | null>(written.map(placeOf))
   places.delete(null)
@@ -54,18 +58,18 @@ function placeOf(path: string): string | null {
 
 function raiseOne(run: Run, folder: string, output: Output): Promise<ExitCode> {
   return eachPlan(run, async (request, _at, drive) => {
-    const checked = await job(request, drive)
-    if (!checked.ok) return checked
-    const made = await files(checked.value, drive)
+    const solved = await solve(request, run.args.values.get('cure') ?? [], drive)
+    if (!solved.ok) return solved
+    const made = await solvedFiles(solved.value, drive)
     if (!made.ok) return made
     const put = putAll(output, '', made.value)
     const written = put.ok ? output.commit() : put
     if (!written.ok) return written
-    const { answer } = checked.value
+    const { answer } = solved.value.checked
     const names = made.value.map(({ name }) => name).join(', ')
     return ok({
-      record: summaryWithFiles(checked.value),
-      report: withSentence(answerReport(answer), `Written to ${folder}: ${names}.`),
+      record: solvedSummary(solved.value),
+      report: withSentence(solvedReport(answer), `Written to ${folder}: ${names}.`),
       exit: exitCodeOf(answer.summary.verdict),
     })
   })
@@ -79,16 +83,16 @@ function raiseSeveral(run: Run, folders: readonly string[], output: Output): Pro
     run,
     async (request, at, drive) => {
       csv = request.options.csv
-      const checked = await job(request, drive)
-      if (!checked.ok) return checked
-      const made = await files(checked.value, drive)
+      const solved = await solve(request, run.args.values.get('cure') ?? [], drive)
+      if (!solved.ok) return solved
+      const made = await solvedFiles(solved.value, drive)
       if (!made.ok) return made
       const put = putAll(output, folders[at], made.value)
       if (!put.ok) return put
-      const { answer } = checked.value
+      const { answer } = solved.value.checked
       const exit = exitCodeOf(answer.summary.verdict)
       rows.push({ plan: plans[at], folder: folders[at], exit, summary: answer.summary, problem: null })
-      return ok({ record: { folder: folders[at], ...summaryWithFiles(checked.value) }, report: answerReport(answer), exit })
+      return ok({ record: { folder: folders[at], ...solvedSummary(solved.value) }, report: solvedReport(answer), exit })
     },
     {
       failed: (at, problem) => rows.push({ plan: plans[at], folder: '', exit: badUse, summary: null, problem }),
@@ -100,7 +104,7 @@ function raiseSeveral(run: Run, folders: readonly string[], output: Output): Pro
   )
 }
 
-function putAll(output: Output, folder: string, made: readonly OutputFile[]): Result<null> {
+export function putAll(output: Output, folder: string, made: readonly OutputFile[]): Result<null> {
   for (const { name, bytes } of made) {
     const put = output.put(join(folder, name), bytes)
     if (!put.ok) return put
@@ -108,4 +112,4 @@ function putAll(output: Output, folder: string, made: readonly OutputFile[]): Re
   return ok(null)
 }
 
-const withSentence = (report: Report, sentence: string): Report => ({ ...report, sentences: [...report.sentences, sentence] })
+export const withSentence = (report: Report, sentence: string): Report => ({ ...report, sentences: [...report.sentences, sentence] })

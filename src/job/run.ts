@@ -14,6 +14,7 @@ import { check, planFacts, type Checked } from './check.ts'
 import type { OutputFile } from './files.ts'
 import { withOneWay } from './one-way.ts'
 import { reading } from './reading.ts'
+import { solvedWith, withCures, type Solved } from './solve.ts'
 import type { Request } from './request.ts'
 
 declare const __VERSION__: string
@@ -43,6 +44,19 @@ export async function run(request: Request, options: DriveOptions = {}): Promise
   const { oneWay } = request.options
   if (!checked.ok || oneWay === null) return checked
   return driven(withOneWay(checked.value, oneWay, await linearSolver()), options)
+}
+
+/** The same with these cures applied ("release:south gutter"), and in the summary what else it takes where the answer is not a plain yes. */
+export async function solve(request: Request, cures: readonly string[], options: DriveOptions = {}): Promise<Result<Solved>> {
+  const sha256 = await sha256Of(request.source.bytes)
+  let solved = await driven(solvedWith(request, version, sha256, cures), options)
+  const { oneWay } = request.options
+  if (solved.ok && oneWay !== null) {
+    const asked = await driven(withOneWay(solved.value.checked, oneWay, await linearSolver()), options)
+    if (!asked.ok) return asked
+    solved = ok({ ...solved.value, checked: asked.value })
+  }
+  return solved.ok ? driven(withCures(solved.value), options) : solved
 }
 
 /** Reads, checks, moves nodes until the plan lifts, and checks again; nothing is written. */

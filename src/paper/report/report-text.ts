@@ -9,16 +9,19 @@ const unmarked: Mark = (text) => text
 
 /** `strong` marks the first sentence. */
 export function reportText(report: Report, strong: Mark = unmarked): string {
-  const { facts, caution } = report
+  const { facts, caution, cures } = report
   const width = Math.max(...facts.map(([label]) => label.length))
   const table = facts.map(([label, value]) => `  ${label.padEnd(width)}  ${printable(value)}`)
-  const blocks = [sentences(report, strong).join('\n'), table.join('\n'), ...(caution === null ? [] : [caution])]
+  const ways = cures === undefined ? [] : [[strong(printable(cures.heading)), ...cures.lines.map((line) => `  ${printable(line)}`)].join('\n')]
+  const blocks = [sentences(report, strong).join('\n'), ...ways, table.join('\n'), ...(caution === null ? [] : [caution])]
   return `${blocks.join('\n\n')}\n`
 }
 
 /** The sentences alone, under a name: for a plan among several. */
 export function reportUnder(name: string, report: Report, strong: Mark = unmarked): string {
-  return `${[printable(name), ...sentences(report, strong).map((line) => `  ${line}`)].join('\n')}\n`
+  const { cures } = report
+  const ways = cures === undefined ? [] : [printable(cures.heading), ...cures.lines.map((line) => `  ${printable(line)}`)]
+  return `${[printable(name), ...[...sentences(report, strong), ...ways].map((line) => `  ${line}`)].join('\n')}\n`
 }
 
 function sentences({ headline, verdict, sentences: others }: Report, strong: Mark): string[] {

@@ -18,6 +18,8 @@ export interface Report {
   readonly verdict: Verdict | null
   readonly sentences: readonly string[]
   readonly facts: readonly Fact[]
+  /** What it takes, a line each, under their heading; absent: a plain yes, or nothing was looked for. */
+  readonly cures?: { readonly heading: string; readonly lines: readonly string[] }
   /** null for a plan that was only read: nobody could take it for a design. */
   readonly caution: string | null
 }

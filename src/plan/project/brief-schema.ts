@@ -1,5 +1,6 @@
 /** The brief as JSON Schema, draft 2020-12: what `panewise help brief` prints, and what briefs are checked against. */
 import { units } from '../../base/length.ts'
+import { cureWeightsSchema } from './cure-weights.ts'
 import type { ObjectSchema, Schema, SchemaDocument } from './schema.ts'
 
 const number = (description: string): Schema => ({ type: 'number', description })
@@ -73,6 +74,7 @@ export const briefSchema: SchemaDocument = {
       required: [],
       additionalProperties: false,
     },
+    cures: cureWeightsSchema,
     conditions: { type: 'array', items: { $ref: '#/$defs/condition' } },
   },
   required: ['panewise', 'version'],

@@ -6,6 +6,7 @@ import { kindsNotBuilt, type Condition, type Point } from './condition.ts'
 import { placedIn, readJson } from './json-text.ts'
 import { linesIn, type LinesWish, type WrittenLines } from './lines-wish.ts'
 import { misfit } from './schema.ts'
+import type { CureWeights } from './cure-weights.ts'
 
 export type Shape = 'dome' | 'barrel' | 'pitched' | 'hipped'
 
@@ -24,6 +25,8 @@ export interface Brief {
   readonly voids: readonly Point[] | null
   /** Which lines of the drawing are read; null or absent: a guess is made. */
   readonly lines?: LinesWish | null
+  /** Weights that change the order of cures; absent: none. */
+  readonly cures?: CureWeights
   readonly conditions: readonly Condition[]
 }
 
@@ -65,6 +68,7 @@ export function briefOf(value: unknown): Result<Brief> {
     flat_mm: written.flat_mm ?? null,
     voids: written.voids ?? null,
     ...(written.lines === undefined ? {} : { lines: lines.value }),
+    ...(written.cures === undefined ? {} : { cures: written.cures }),
     conditions: conditions.value,
   })
 }
@@ -78,6 +82,7 @@ interface WrittenBrief {
   readonly flat_mm?: number
   readonly voids?: readonly Point[]
   readonly lines?: WrittenLines
+  readonly cures?: CureWeights
   readonly conditions?: readonly WrittenCondition[]
 }
 

@@ -5,8 +5,10 @@
 import type { LeftOut, Question, Repair } from '../../base/repair.ts'
 import type { Unit } from '../../base/length.ts'
 import type { Plan } from '../../plan/plan.ts'
+import type { AnswerWord, AsDrawn, Blocking, Cure } from './cure.ts'
+import type { Verdict } from './verdict.ts'
 
-export type Verdict = 'lifts' | 'lifts in part' | 'lifts within plan tolerance' | 'lifts within tolerance' | 'does not lift'
+export type { Verdict }
 
 export interface PlanFacts {
   readonly panels: number
@@ -50,6 +52,8 @@ export interface HeldFacts {
   readonly frozenJoints: number
   readonly flatGroups: number
   readonly clashes: readonly Clash[]
+  /** Conditions that stand in the way together, none of them to be spared; only where cures were looked for and some do. */
+  readonly blocking?: Blocking
 }
 
 export interface RoofFacts {
@@ -102,6 +106,13 @@ export interface Summary {
   readonly near?: boolean
   /** With --one-way. */
   readonly oneWay?: OneWayFacts
+  /** Of `check` and `raise`: the form of the answer, and what it takes where it is not a plain yes. */
+  readonly answer?: AnswerWord
+  readonly cures?: readonly Cure[]
+  /** The nearest roof, where there is no exact one that folds. */
+  readonly asDrawn?: AsDrawn
+  /** The cures that --cure applied before, in this order: the rest of the summary is about the plan with them. */
+  readonly cured?: readonly Cure[]
   readonly caution: string
 }
 

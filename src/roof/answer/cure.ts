@@ -1,9 +1,8 @@
 /** What it takes to make a plan lift, with its figures: what `check --json` prints under `cures`, and a page shows. */
-import type { Verdict } from './answer.ts'
+import type { CureCode } from '../../plan/project/cure-weights.ts'
+import type { Verdict } from './verdict.ts'
 
-export const cureCodes = ['accept-deviation', 'move-nodes', 'pack-rim', 'add-diagonals', 'remove-joints', 'release'] as const
-
-export type CureCode = (typeof cureCodes)[number]
+export type { CureCode }
 
 /** yes: every joint folds as asked; yes, if: something has to be done or taken; no, because: nothing was found that helps. */
 export type AnswerWord = 'yes' | 'yes, if' | 'no, because'

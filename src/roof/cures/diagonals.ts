@@ -35,8 +35,8 @@ export interface DiagonalQuestion {
 
 /** A wish that leaves less than this share of itself beyond the lifts asks for no diagonals. */
 const leastPull = 1e-6
-/** Cosine between what the wish asks and what the diagonals give below which they do not serve it. */
-const leastServed = 0.1
+/** Cosine between what the wish asks and what the diagonals give below which they do not serve it: one corner folded off costs next to nothing. */
+const leastServed = 0.5
 /** Lifts gained that are looked at together. */
 const mostGained = 48
 /** Of the largest fold: below this a diagonal is not used by a lift. */
@@ -143,14 +143,20 @@ function trialOf(space: LiftSpace, form: DividedForm, pull: Float64Array | null)
       for (let pass = 0; pass < 3; pass += 1) roof = flat(roof, 1)
       if (!isFlat(form, weight, roof)) return null
       const probes = gained > 0 ? lifted(gaussians(n * Math.min(gained, mostGained), 41), Math.min(gained, mostGained)) : new Float64Array(0)
-      return needed(set, roof, probes, n, foldsOf, null)
+      return neededForOne(set, roof, probes, n, foldsOf)
     }
     if (gained <= 0) return null
     const towards = lifted(pull, 1)
     const served = Math.sqrt(Math.max(0, dot(towards, pull)) / dot(pull, pull))
     if (!(served > leastServed)) return null
-    const columns = Math.min(gained, mostGained)
-    return needed(set, towards, lifted(gaussians(n * columns, 41), columns), n, foldsOf, pull)
+    const columns = Math.min(gained, mostGained) - 1
+    // What the lifts that were there already have of them is left out: it folds no diagonal.
+    const fresh = (heights: Float64Array, count: number): Float64Array => {
+      const old = projected(space, heights, count)
+      return heights.map((height, i) => height - old[i])
+    }
+    const probes = columns > 0 ? fresh(lifted(gaussians(n * columns, 41), columns), columns) : new Float64Array(0)
+    return neededToServe(set, [fresh(towards, 1), ...Array.from({ length: columns }, (_, k) => probes.slice(k * n, (k + 1) * n))], foldsOf, pull)
   }
 }
 
@@ -219,31 +225,86 @@ function isFlat(form: DividedForm, weight: PanelWeight, heights: Float64Array): 
 }
 
 /**
- * What is needed of the set: over roofs base + sum a_k probe_k (for a rise: pull . roof = its value at base) one fold after
- * another, smallest first, is made 0 where that leaves a roof. Gauss on the small system A a = r, a row a fold that is 0.
+ * What is needed of the set so that the lifts gained still serve the wish: over an orthonormal basis u of them a fold is a row
+ * c_s . a, and making it 0 takes the direction c_s away from what is left of the pull, p = (pull . u). Smallest folds first,
+ * each stays 0 as long as |p| keeps the share asked. The roof is then sum p_k u_k, the best that is left.
  */
-function needed(
-  set: readonly Candidate[], base: Float64Array, probes: Float64Array, n: number, foldsOf: (heights: Float64Array) => Float64Array, pull: Float64Array | null,
-): Chosen {
+function neededToServe(set: readonly Candidate[], lifts: readonly Float64Array[], foldsOf: (heights: Float64Array) => Float64Array, pull: Float64Array): Chosen | null {
+  const basis = orthonormal(lifts)
+  const folds = basis.map(foldsOf)
+  const least = leastServed * Math.sqrt(dot(pull, pull))
+  let p = Float64Array.from(basis, (u) => dot(pull, u))
+  if (!(Math.sqrt(dot(p, p)) > least)) return null
+  const scale = Math.max(...folds.map((list) => list.reduce((most, c) => Math.max(most, Math.abs(c)), 0)))
+  const gone: Float64Array[] = []
+  for (const s of set.map((_, k) => k).sort((a, b) => set[a].fold - set[b].fold || b - a)) {
+    const row = lessAll(Float64Array.from(folds, (list) => list[s]), gone)
+    const size = Math.sqrt(dot(row, row))
+    if (!(size > unused * scale)) continue
+    const direction = row.map((value) => value / size)
+    const share = dot(p, direction)
+    const left = p.map((value, k) => value - share * direction[k])
+    if (!(Math.sqrt(dot(left, left)) > least)) continue
+    p = left
+    gone.push(direction)
+  }
+  const heights = new Float64Array(pull.length)
+  basis.forEach((u, k) => u.forEach((value, i) => (heights[i] += p[k] * value)))
+  return { set: used(set, foldsOf(heights)), heights }
+}
+
+function used(set: readonly Candidate[], folds: Float64Array): Candidate[] {
+  const largest = folds.reduce((most, c) => Math.max(most, Math.abs(c)), 0)
+  return set.filter((_, s) => Math.abs(folds[s]) > unused * largest)
+}
+
+/** The vector less its parts along orthonormal ones, twice. */
+function lessAll(vector: Float64Array, directions: readonly Float64Array[]): Float64Array {
+  const left = vector.slice()
+  for (let pass = 0; pass < 2; pass += 1) {
+    for (const direction of directions) {
+      const share = dot(left, direction)
+      for (let k = 0; k < left.length; k += 1) left[k] -= share * direction[k]
+    }
+  }
+  return left
+}
+
+function orthonormal(vectors: readonly Float64Array[]): Float64Array[] {
+  const basis: Float64Array[] = []
+  for (const vector of vectors) {
+    const before = Math.sqrt(dot(vector, vector))
+    const left = lessAll(vector, basis)
+    const size = Math.sqrt(dot(left, left))
+    if (size > unused * before) basis.push(left.map((value) => value / size))
+  }
+  return basis
+}
+
+/**
+ * What is needed of the set so that there is a roof at all: over roofs base + sum a_k probe_k one fold after another, smallest
+ * first, is made 0 where that leaves a roof. Gauss on the small system A a = r, a row a fold that is 0.
+ */
+function neededForOne(set: readonly Candidate[], base: Float64Array, probes: Float64Array, n: number, foldsOf: (heights: Float64Array) => Float64Array): Chosen {
   const g = probes.length / n
   const column = (k: number): Float64Array => probes.subarray(k * n, (k + 1) * n)
   const foldBase = foldsOf(base)
   const foldProbe = Array.from({ length: g }, (_, k) => foldsOf(column(k)))
   const rows: { a: Float64Array; r: number; pivot: number }[] = []
-  /** Joins the equation; false where the ones before leave no solution, or it says nothing new and is not met. */
-  const join = (a: Float64Array, r: number): boolean => {
-    const size = Math.max(...a.map(Math.abs), Math.abs(r), 1e-300)
-    const left = a.map((value) => value / size)
-    let right = r / size
+  const scale = Math.max(...foldBase.map(Math.abs))
+  for (const s of set.map((_, k) => k).sort((a, b) => set[a].fold - set[b].fold || b - a)) {
+    const size = Math.max(...foldProbe.map((list) => Math.abs(list[s])), Math.abs(foldBase[s]), unused * scale)
+    const left = Float64Array.from(foldProbe, (list) => list[s] / size)
+    let right = -foldBase[s] / size
     for (const row of rows) {
       const f = left[row.pivot]
       if (f === 0) continue
       for (let k = 0; k < g; k += 1) left[k] -= f * row.a[k]
       right -= f * row.r
     }
-    let pivot = -1
-    for (let k = 0; k < g; k += 1) if (Math.abs(left[k]) > unused && (pivot < 0 || Math.abs(left[k]) > Math.abs(left[pivot]))) pivot = k
-    if (pivot < 0) return Math.abs(right) <= unused
+    const pivot = left.reduce((best, value, k) => (Math.abs(value) > Math.max(unused, best < 0 ? 0 : Math.abs(left[best])) ? k : best), -1)
+    // No roof is left that does without this one, or it is 0 already.
+    if (pivot < 0) continue
     const by = left[pivot]
     const fresh = { a: left.map((value) => value / by), r: right / by, pivot }
     for (const row of rows) {
@@ -253,22 +314,11 @@ function needed(
       row.r -= f * fresh.r
     }
     rows.push(fresh)
-    return true
-  }
-  if (pull !== null) join(Float64Array.from({ length: g }, (_, k) => dot(pull, column(k)) / dot(pull, base)), 0)
-  const order = set.map((_, s) => s).sort((s, t) => set[s].fold - set[t].fold || t - s)
-  const scale = Math.max(...foldBase.map(Math.abs))
-  const kept: number[] = []
-  for (const s of order) {
-    const a = Float64Array.from({ length: g }, (_, k) => foldProbe[k][s] / scale)
-    if (!join(a, -foldBase[s] / scale)) kept.push(s)
   }
   const heights = base.slice()
   // Free unknowns at 0; each row then reads a_pivot = r.
   for (const { r, pivot } of rows) column(pivot).forEach((value, i) => (heights[i] += r * value))
-  const folds = foldsOf(heights)
-  const largest = Math.max(...folds.map(Math.abs))
-  return { set: kept.filter((s) => Math.abs(folds[s]) > unused * largest).sort((a, b) => a - b).map((s) => set[s]), heights }
+  return { set: used(set, foldsOf(heights)), heights }
 }
 
 /** Of the two diagonals of a quad the one that is a ridge (a valley where the roof hangs): no water is kept back by it. */

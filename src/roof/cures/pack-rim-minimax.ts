@@ -47,6 +47,38 @@ export function minimax(
   return best === null ? { b: anchor, largest: 0, least: 0, weights: w } : { ...best, least }
 }
 
+/**
+ * Of all b with |A_k . b - r_k| <= most the one nearest to `anchor`: a penalty on what is over, its active rows found by Newton
+ * steps on the piecewise quadratic (Pinar, Zenios, SIAM J. Optim. 4 (1994)); what stays over is about 1 / `firm` of a row's pull.
+ */
+export function nearestWithin(a: Float64Array, right: Float64Array, columns: number, anchor: Float64Array, start: Float64Array, most: number): Float64Array {
+  const rows = right.length
+  const square = a.reduce((sum, value) => sum + value * value, 0) / Math.max(1, rows * columns)
+  let b = start
+  let before = ''
+  for (let step = 0; step < mostNewtonSteps; step += 1) {
+    const w = new Float64Array(rows)
+    const goal = right.slice()
+    for (let k = 0; k < rows; k += 1) {
+      let e = -right[k]
+      for (let i = 0; i < columns; i += 1) e += a[k * columns + i] * b[i]
+      // Rows at the bound are held to it; at the start, where all lie within, the largest ones are.
+      if (Math.abs(e) < most * (step === 0 ? heldShare : 1 - 1e-12)) continue
+      w[k] = firm
+      goal[k] = right[k] + Math.sign(e) * most
+    }
+    const active = w.join()
+    if (step > 0 && active === before) break
+    before = active
+    b = weighted(a, goal, columns, anchor, w, square)
+  }
+  return b
+}
+
+const firm = 1e7
+const heldShare = 0.999
+const mostNewtonSteps = 40
+
 /** (A^T W A + eta I) b = A^T W r + eta anchor, by Cholesky. */
 function weighted(a: Float64Array, right: Float64Array, n: number, anchor: Float64Array, w: Float64Array, eta: number): Float64Array {
   const m = new Float64Array(n * n)

@@ -72,7 +72,9 @@ export function* feasibleRoof(
   const space = known !== null && sameSolution(known, free, elimination) ? { ...known, elimination } : yield* liftSpace(plan, free.bases, elimination)
   if (clashes.length > 0) return { space, start: null, rowClashes: clashes }
   const roof = yield* roofUnderConditions(space, wish)
-  return { space, start: isLift(space, roof, areas) ? roof : null, rowClashes: [] }
+  // Rows with all values zero leave the flat roof, also where a near lift just above tau keeps the first one from being flat.
+  const flat = homogeneous(hard) ? new Float64Array(plan.nodeCount) : null
+  return { space, start: isLift(space, roof, areas) ? roof : flat, rowClashes: [] }
 }
 
 /** Whether the space is of the same plan, with rows solved in the same way: T is what the factor is made of. */
