@@ -61,3 +61,12 @@ export function fourthCorner_mm({ nodes, faces }: ReturnType<typeof readObj>): n
   }
   return 1000 * most
 }
+
+/** Gradient of a panel through its first three corners. */
+export function gradient({ nodes, faces }: ReturnType<typeof readObj>, panel: number): [number, number] {
+  const [a, b, c] = faces[panel]!.map((i) => nodes[i]!) as unknown as [number[], number[], number[]]
+  const [ux, uy, uz] = [b[0]! - a[0]!, b[1]! - a[1]!, b[2]! - a[2]!]
+  const [vx, vy, vz] = [c[0]! - a[0]!, c[1]! - a[1]!, c[2]! - a[2]!]
+  const det = ux * vy - uy * vx
+  return [(uz * vy - uy * vz) / det, (ux * vz - uz * vx) / det]
+}

@@ -1,82 +1,11 @@
 /** The page in a real Chromium, driven as a hand would; what it exports is measured by readers of the tests' own. */
-import { readFileSync } from 'node:fs'
-import type { Browser, BrowserContext, Page } from 'playwright-core'
 import { afterAll, beforeAll, expect, test } from 'vitest'
-import { planArea } from '../../src/paper/drawing/plan-drawing.ts'
-import { fitted, toSheet } from '../../src/paper/drawing/plan-window.ts'
-import { grid as gridPlan } from '../make/plans.ts'
 import { startBrowser } from './chromium.ts'
-import { broken, faulty, fourthCorner_mm, grid, readObj, type File } from './drawings.ts'
-import { builtSite, type Site } from './site.ts'
+import { broken, faulty, fourthCorner_mm, gradient, grid, readObj, type File } from './drawings.ts'
+import { accepted, downloaded, freeWords, onPlan, opened, raiseStage, read, says, slow, stage, strikeStage } from './stage.ts'
 
-let site: Site
-let browser: Browser
-const wrong: string[] = []
-const slow = 60_000
-
-beforeAll(async () => {
-  site = await builtSite()
-  browser = await startBrowser()
-}, 240_000)
-
-afterAll(async () => {
-  await browser?.close()
-  site?.close()
-})
-
-/** A page of its own context; errors on its console and requests to other places are collected, and fail the last test. */
-async function opened(context?: BrowserContext, init?: () => void): Promise<Page> {
-  const own = context ?? (await browser.newContext({ viewport: { width: 1440, height: 900 }, acceptDownloads: true }))
-  const page = await own.newPage()
-  page.setDefaultTimeout(slow)
-  page.on('console', (message) => { if (message.type() === 'error') wrong.push(`console: ${message.text()}`) })
-  page.on('pageerror', (error) => wrong.push(`page: ${error.message}`))
-  page.on('request', (request) => { if (!request.url().startsWith(site.address) && !/^(?:blob|data):/.test(request.url())) wrong.push(`request: ${request.url()}`) })
-  if (init !== undefined) await page.addInitScript(init)
-  await page.goto(site.address)
-  await page.waitForSelector('.sheet')
-  return page
-}
-
-async function read(page: Page, file: File): Promise<void> {
-  await page.setInputFiles('#open-file', file)
-  await page.waitForSelector('.report .solid:not([disabled])')
-}
-
-async function accepted(page: Page, file: File): Promise<void> {
-  await read(page, file)
-  await page.click('.report .solid')
-  await says(page, /^All \d+ panels can be flat/)
-}
-
-/** Waits until the answer in a sentence is like this. */
-async function says(page: Page, pattern: RegExp): Promise<string> {
-  const handle = await page.waitForFunction((source) => {
-    const text = document.querySelector('.verdict')?.textContent ?? ''
-    return document.querySelector('.facts .note') !== null && new RegExp(source).test(text) ? text : null
-  }, pattern.source)
-  return String(await handle.jsonValue())
-}
-
-async function downloaded(page: Page, word: string): Promise<string> {
-  await page.keyboard.press('t')
-  const [download] = await Promise.all([page.waitForEvent('download'), page.click(`dialog .word:text-is("${word}")`)])
-  const text = readFileSync(await download.path(), 'utf8')
-  await page.keyboard.press('Escape')
-  await page.waitForSelector('dialog', { state: 'detached' })
-  return text
-}
-
-/** Where a point of the skewed grid lies on the screen, by the drawing's own window. */
-async function onPlan(page: Page, m: number, n: number, x: number, y: number): Promise<[number, number]> {
-  const box = (await page.locator('.cell-plan canvas').boundingBox())!
-  const made = gridPlan(m, n, { bay: 1.5 })
-  for (let i = 0; i < made.nodeCount; i += 1) made.x[i] = made.x[i]! + 0.2 * made.y[i]!
-  const [px, py] = toSheet(fitted(made, planArea(box.width, box.height, true)), x + 0.2 * y, y)
-  return [box.x + px, box.y + py]
-}
-
-const freeWords = (count: number): RegExp => new RegExp(`${count} independent adjustments left`)
+beforeAll(raiseStage, 240_000)
+afterAll(strikeStage)
 
 test('a drawing with faults: its repairs are reported, it is accepted, and the answer has the freedom of an 8 x 5 grid, 11', async () => {
   const page = await opened()
@@ -146,7 +75,7 @@ test('a node dragged: held where the hand left it, exactly, and the panels stay 
   await page.mouse.click(x, y)
   const name = await page.textContent('.plate b')
   expect(name).toMatch(/^N\d+$/)
-  const handle = (await page.locator('.handle').boundingBox())!
+  const handle = (await page.locator('.cell-plan .handle').first().boundingBox())!
   await page.mouse.move(handle.x + 12, handle.y + 12)
   await page.mouse.down()
   for (let i = 1; i <= 6; i += 1) await page.mouse.move(handle.x + 12, handle.y + 12 - 5 * i)
@@ -216,7 +145,7 @@ test('a level rim leaves a grid nothing: the reason is read, panel by panel, and
 }, slow * 2)
 
 test('closed in mid-work: the browser kept the last step, the list offers it, and it goes on with the same answer', async () => {
-  const context = await browser.newContext({ viewport: { width: 1440, height: 900 }, acceptDownloads: true })
+  const context = await stage.browser.newContext({ viewport: { width: 1440, height: 900 }, acceptDownloads: true })
   const page = await opened(context)
   await accepted(page, grid(6, 4, 'kept.obj'))
   await page.click('.desk button:text-is("level at the datum")')
@@ -232,7 +161,7 @@ test('closed in mid-work: the browser kept the last step, the list offers it, an
 }, slow * 2)
 
 test('two tabs on one project keep one each', async () => {
-  const context = await browser.newContext({ viewport: { width: 1440, height: 900 } })
+  const context = await stage.browser.newContext({ viewport: { width: 1440, height: 900 } })
   for (const name of ['tab.obj', 'tab.obj']) await accepted(await opened(context), grid(4, 3, name))
   await new Promise((resolve) => setTimeout(resolve, 800))
   const third = await opened(context)
@@ -344,13 +273,5 @@ test('every command has a key and the keyboard reaches every pane', async () => 
 }, slow * 2)
 
 test('no error on the console, no request to another place, in all of the above', () => {
-  expect(wrong).toEqual([])
+  expect(stage.wrong).toEqual([])
 })
-
-function gradient({ nodes, faces }: ReturnType<typeof readObj>, panel: number): [number, number] {
-  const [a, b, c] = faces[panel]!.map((i) => nodes[i]!) as unknown as [number[], number[], number[]]
-  const [ux, uy, uz] = [b[0]! - a[0]!, b[1]! - a[1]!, b[2]! - a[2]!]
-  const [vx, vy, vz] = [c[0]! - a[0]!, c[1]! - a[1]!, c[2]! - a[2]!]
-  const det = ux * vy - uy * vx
-  return [(uz * vy - uy * vz) / det, (ux * vz - uz * vx) / det]
-}
