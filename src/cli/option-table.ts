@@ -51,7 +51,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'cure', value: 'CODE[:NAME]', repeatable: true, group: 'Judging and writing', help: 'apply a cure that check lists, like add-diagonals or "release:south gutter" (repeatable, in order)' },
   { name: 'flat', value: 'LENGTH', group: 'Judging and writing', help: 'out of flat that a panel may be (bare: mm; default 1)' },
   { name: 'full', value: null, group: 'Judging and writing', help: 'name frozen joints and flat groups in the summary' },
-  { name: 'out', value: 'DIR', group: 'Judging and writing', help: 'where raise writes: one plan into DIR, several into DIR/NAME' },
+  { name: 'out', value: 'DIR', group: 'Judging and writing', help: 'where raise writes, and read its report to be sent: one plan into DIR, several into DIR/NAME' },
   { name: 'overwrite', value: null, group: 'Judging and writing', help: 'replace files of an earlier run; foreign files always stay' },
   { name: 'near', value: null, group: 'Judging and writing', help: 'write the nearest roof even when its panels are not flat' },
   { name: 'decimals', value: 'N', group: 'Judging and writing', help: 'round x, y and z to N decimals (default: x, y exact, z to 1 um)' },
@@ -61,7 +61,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'help', value: null, group: 'This run', help: 'show this' },
 ]
 
-const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'plan-tolerance', 'brief', 'json', 'quiet', 'help']
+const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'levels-within', 'plan-tolerance', 'brief', 'out', 'overwrite', 'json', 'quiet', 'help']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {

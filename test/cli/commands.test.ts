@@ -100,7 +100,7 @@ describe('help', () => {
       expect(cli.run(['help', command]).out).toBe(out)
     }
     expect(cli.run(['check', '--help']).out).toContain('--overwrite')
-    expect(cli.run(['read', '--help']).out).not.toContain('--overwrite')
+    expect(cli.run(['read', '--help']).out).not.toContain('--near')
   })
 
   test('the schema of a brief is JSON', () => {
@@ -196,6 +196,30 @@ describe('ways in and out', () => {
   test('the brief holds, the options win', () => {
     expect(JSON.parse(cli.run(['check', 'bays.obj', '--brief', 'brief.json', '--json']).out)).toMatchObject({ roof: { riseAsked: 2 }, options: { brief: 'brief.json' } })
     expect(JSON.parse(cli.run(['check', 'bays.obj', '--brief', 'brief.json', '--rise', '1200mm', '--json']).out)).toMatchObject({ roof: { riseAsked: 1.2 } })
+  })
+})
+
+describe('the report of read', () => {
+  const files = ['reading.html', 'reading.md', 'reading.svg']
+  test('all files at the end or none; foreign files and inputs stay', () => {
+    cli.file('to-read.obj', gridObj(2, 1, 1))
+    const done = cli.run(['read', 'to-read.obj', '--out', 'report'])
+    expect([done.code, done.err]).toEqual([0, ''])
+    expect(done.out).toContain('Written to report: reading.html, reading.md, reading.svg.')
+    expect(readdirSync(join(cli.room, 'report')).sort()).toEqual(files)
+    expect(cli.run(['read', 'to-read.obj', '--out', 'report']).err).toContain('add --overwrite')
+    cli.file('report/own.txt', 'mine')
+    expect((JSON.parse(cli.run(['read', 'to-read.obj', '--out', 'report', '--overwrite', '--json']).out) as { files: string[] }).files).toEqual(files)
+    expect(readdirSync(join(cli.room, 'report')).sort()).toEqual(['own.txt', ...files])
+    expect(cli.run(['read', 'nowhere.obj', '--out', 'none']).code).toBe(2)
+    expect(readdirSync(cli.room)).not.toContain('none')
+  })
+  test('several plans: a folder each', () => {
+    cli.file('a.obj', gridObj(1, 1, 1))
+    cli.file('b.obj', gridObj(2, 2, 1))
+    expect(cli.run(['read', 'a.obj', 'nowhere.obj', 'b.obj', '--out', 'reports']).code).toBe(2)
+    expect(readdirSync(join(cli.room, 'reports')).sort()).toEqual(['a', 'b'])
+    expect(readdirSync(join(cli.room, 'reports', 'b')).sort()).toEqual(files)
   })
 })
 
