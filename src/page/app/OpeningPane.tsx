@@ -1,13 +1,21 @@
 /** A drawing that is read and not accepted: the plan as read, and the reader's report beside it. */
-import { useCallback, useRef, useState, type PointerEvent } from 'react'
+import { useCallback, useEffect, useRef, useState, type PointerEvent } from 'react'
 import { counted, figure } from '../../paper/drawing/figures.ts'
-import { readDrawing, readWindow } from '../../paper/drawing/read-drawing.ts'
+import { detailRadius } from '../../paper/drawing/detail-circle.ts'
+import { readDetail, readDrawing, readWindow } from '../../paper/drawing/read-drawing.ts'
 import { panned, toPlan, toSheet, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
+import type { LeftOut } from '../../base/repair.ts'
 import { sentence } from '../../base/result.ts'
 import { units } from '../../base/length.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
+import { looks, useLooks } from './looks.ts'
 import { panelAt } from './picking.ts'
+import type { Opening } from './state.ts'
+import { offered, ProposalList, Questions, withoutOptions } from './Proposals.tsx'
+
+/** Zooming to a repair magnifies the fitted plan so many times. */
+const zoomTimes = 6
 
 export function OpeningPlan() {
   const desk = useDesk()
@@ -17,11 +25,25 @@ export function OpeningPlan() {
   const shown = useRef<PlanWindow | null>(null)
   const [panel, setPanel] = useState(-1)
   const repair = opening?.chosenRepair ?? -1
+  const place = useLooks((state) => state.place)
+  const zooms = useLooks((state) => state.zooms)
+  const drawn = useDrawn(opening?.file ?? null, repair >= 0)
+  const sheet = useRef({ width: 0, height: 0 })
+  useEffect(() => { looks.update((state) => ({ ...state, place: 0 })) }, [repair])
+  useEffect(() => setWindow(null), [read?.plan])
+  useEffect(() => {
+    const where = read?.repairs[repair]?.where ?? []
+    if (zooms === 0 || read === null || where.length === 0) return
+    const fit = readWindow(read, sheet.current.width, sheet.current.height)
+    const [x, y] = where[place % where.length]
+    setWindow({ ...fit, scale: fit.scale * zoomTimes, centreX: x, centreY: y })
+  }, [zooms])
   const draw = useCallback((width: number, height: number) => {
     if (read === null) return null
     shown.current = window_ ?? readWindow(read, width, height)
-    return readDrawing(read, { width, height, window: shown.current, panel, repair })
-  }, [read, window_, panel, repair])
+    sheet.current = { width, height }
+    return readDrawing(read, { width, height, window: shown.current, panel, repair, place, drawn })
+  }, [read, window_, panel, repair, place, drawn])
   const last = useRef<readonly [number, number] | null>(null)
   const travelled = useRef(0)
   const onDown = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
@@ -45,6 +67,11 @@ export function OpeningPlan() {
     const wasClick = last.current !== null && travelled.current <= 4
     last.current = null
     if (!wasClick || read === null || shown.current === null) return
+    const detail = repair < 0 ? null : readDetail(read, shown.current, { repair, place, drawn, ...sheet.current })
+    if (detail !== null && Math.hypot(detail.x - x, detail.y - y) < detailRadius) {
+      zoomToRepair()
+      return
+    }
     const near = read.repairs.findIndex(({ where }) => where.slice(0, 3).some(([rx, ry]) => {
       const [px, py] = toSheet(shown.current as PlanWindow, rx, ry)
       return Math.hypot(px - x, py - y) < 8
@@ -75,7 +102,9 @@ export function ReaderReport() {
   if (opening === null) return null
   const { read, problem, options, layers, chosenRepair, file } = opening
   const questions = read?.questions ?? []
-  const proposals = read?.repairs.filter(({ state }) => state !== 'applied') ?? []
+  const unlayered = (read?.leftOut ?? []).filter(({ layer }) => !layers.includes(layer))
+  const proposals = offered(read?.repairs ?? [])
+  const done = (read?.repairs ?? []).map((repair, index) => ({ repair, index })).filter(({ repair }) => repair.state === 'applied')
   return (
     <section className="pane report" data-pane="list" aria-labelledby="report-title">
       <header>
@@ -84,12 +113,8 @@ export function ReaderReport() {
       </header>
       <div className="scroll">
         {problem !== null && <p className="problem" role="alert"><b>{sentence(problem)}</b></p>}
-        {questions.map((question) => (
-          <div key={question.code} className="entry question">
-            <p><b>{withoutOptions(question.message)}.</b></p>
-            <p>{question.options.map((option) => <button key={option} className="word" onClick={() => desk.answerQuestion(option)}>{option.replace(/^--/, '').replace('=', ' ')}</button>)}</p>
-          </div>
-        ))}
+        <Questions questions={questions} />
+        <ProposalList proposals={proposals} asked={questions.map(({ code }) => code)} />
         <dl className="entries">
           <dt>Unit</dt>
           <dd>
@@ -98,24 +123,21 @@ export function ReaderReport() {
               {units.map((unit) => <option key={unit} value={unit}>{unit}</option>)}
             </select>
           </dd>
-          {layers.some((layer) => layer !== '') && <><dt>Layers</dt><dd>{layers.map((layer) => {
-            const on = options.layers === null || options.layers.includes(layer)
-            return <label key={layer} className="layer"><input type="checkbox" checked={on} onChange={() => desk.switchLayer(layer)} /> {layer === '' ? '(none)' : layer}</label>
-          })}</dd></>}
+          {layers.some((layer) => layer !== '') && <><dt>Layers</dt><dd><Layers layers={layers} chosen={options.layers} leftOut={read?.leftOut ?? []} /></dd></>}
           <dt>Join ends</dt>
           <dd>within <SnapField value={options.snap_mm} onValue={(snap_mm) => desk.reopen({ snap_mm })} /> mm</dd>
-          {(read?.leftOut.length ?? 0) > 0 && <><dt>Left out</dt><dd>{read?.leftOut.map(({ kind, layer, count }) => <div key={`${kind} ${layer}`}>{figure(count)} {kind}{layer === '' ? '' : ` on ${layer}`}</div>)}</dd></>}
+          {unlayered.length > 0 && <><dt>Left out</dt><dd>{unlayered.map(({ kind, layer, count }) => <div key={`${kind} ${layer}`}>{figure(count)} {kind}{layer === '' ? '' : ` on ${layer}`}</div>)}</dd></>}
           {read?.notices.map((notice) => <div key={notice} className="wide">{withoutOptions(notice)}</div>)}
         </dl>
-        <h3>Repairs <span className="note">{figure(read?.repairs.length ?? 0)}{(read?.repairs.length ?? 0) > 0 ? ', all shown on the plan' : ''}</span></h3>
+        <h3>Repairs <span className="note">{figure(done.length)}{done.length > 0 ? ', all shown on the plan' : ''}</span></h3>
         <ol className="repairs">
-          {read?.repairs.map((repair, i) => (
-            <li key={i} className={chosenRepair === i ? 'chosen' : ''}>
-              <button aria-pressed={chosenRepair === i} onClick={() => desk.chooseRepair(i)}><b className="balloon">{i + 1}</b><span>{withoutOptions(repair.message)}{repair.count > 1 && !/\d/.test(repair.message) ? ` (${figure(repair.count)} places)` : ''}{repair.state === 'proposed' ? ' – proposed' : ''}</span></button>
+          {done.map(({ repair, index }) => (
+            <li key={index} className={chosenRepair === index ? 'chosen' : ''}>
+              <button aria-pressed={chosenRepair === index} onClick={() => desk.chooseRepair(index)}><b className="balloon">{index + 1}</b><span>{withoutOptions(repair.message)}{repair.count > 1 && !/\d/.test(repair.message) ? ` (${figure(repair.count)} places)` : ''}</span></button>
+              {chosenRepair === index && <Places count={repair.where.length} />}
             </li>
           ))}
         </ol>
-        {proposals.length > 0 && <p className="entry">{proposals.map(({ code, state }) => <button key={code} className="word" onClick={() => desk.reopen({ accept: state === 'accepted' ? options.accept.filter((c) => c !== code) : [...options.accept, code] })}>{state === 'accepted' ? `Take back: ${code}` : `Take: ${code}`}</button>)}</p>}
       </div>
       <footer>
         <button className="solid" data-first disabled={read === null || problem !== null || questions.length > 0} onClick={() => desk.accept()}>Accept the plan</button>
@@ -125,8 +147,51 @@ export function ReaderReport() {
   )
 }
 
-/** Readers name the command line's options in brackets; here the controls stand beside the sentence. */
-const withoutOptions = (text: string): string => text.replace(/ \([^()]*--[^()]*\)/g, '')
+/** The lines of the file as drawn, read once they are wanted. */
+function useDrawn(file: Opening['file'] | null, wanted: boolean): Float64Array | null {
+  const [known, setKnown] = useState<{ readonly file: Opening['file']; readonly lines: Float64Array | null } | null>(null)
+  useEffect(() => {
+    if (file === null || !wanted || known?.file === file) return
+    const stop = new AbortController()
+    void import('./drawn-lines.ts').then(({ drawnLines }) => drawnLines(file.name, file.bytes, stop.signal)).then((lines) => { if (!stop.signal.aborted) setKnown({ file, lines }) })
+    return () => stop.abort()
+  }, [file, wanted, known])
+  return known !== null && known.file === file ? known.lines : null
+}
+
+const zoomToRepair = (): void => looks.update((state) => ({ ...state, zooms: state.zooms + 1 }))
+
+/** Goes through the places of the chosen repair, and to them. */
+function Places({ count }: { readonly count: number }) {
+  const place = useLooks((state) => state.place)
+  if (count === 0) return null
+  const step = (by: number): void => looks.update((state) => ({ ...state, place: (state.place + by + count) % count }))
+  return (
+    <p className="answers">
+      {count > 1 && <><button className="word" onClick={() => step(-1)}>Before</button> <span className="note">place {(place % count) + 1} of {figure(count)}</span> <button className="word" onClick={() => step(1)}>Next</button> </>}
+      <button className="word" onClick={zoomToRepair}>Zoom to it</button>
+    </p>
+  )
+}
+
+/** Layers to be switched, each with what was left out on it; a layer of which nothing was chosen is off. */
+function Layers({ layers, chosen, leftOut }: { readonly layers: readonly string[]; readonly chosen: readonly string[] | null; readonly leftOut: readonly LeftOut[] }) {
+  const desk = useDesk()
+  const isOn = (layer: string): boolean => (chosen === null ? !leftOut.some((entry) => entry.layer === layer && / not (?:chosen|taken)|, /.test(entry.kind)) : chosen.includes(layer))
+  const turn = (layer: string): void => {
+    const next = layers.filter((other) => isOn(other) !== (other === layer))
+    desk.reopen({ layers: next.length === layers.length ? null : next })
+  }
+  return layers.map((layer) => {
+    const left = leftOut.filter((entry) => entry.layer === layer)
+    return (
+      <label key={layer} className="layer">
+        <input type="checkbox" checked={isOn(layer)} onChange={() => turn(layer)} /> {layer === '' ? '(none)' : layer}
+        {left.length > 0 && <small className="note">{left.map(({ kind, count }) => `${figure(count)} ${kind}`).join(', ')} left out</small>}
+      </label>
+    )
+  })
+}
 
 function SnapField({ value, onValue }: { readonly value: number | null; readonly onValue: (value: number | null) => void }) {
   const [text, setText] = useState(value === null ? '' : String(value))

@@ -1,8 +1,8 @@
-/** The empty sheet's lower right: how to begin, and the samples. */
+/** The empty sheet's lower right: how to begin, and what this browser kept. */
 import { useEffect, useState } from 'react'
 import { useDesk, useDeskState } from './context.ts'
 import type { Desk } from './desk.ts'
-import { samples, type Sample } from './samples.ts'
+import type { Sample } from './samples.ts'
 import { savedProjects, type Saved } from './autosave.ts'
 
 export async function openSample(desk: Desk, sample: Sample): Promise<void> {
@@ -24,10 +24,7 @@ export function Samples() {
           <h3>Go on with</h3>
           <ul className="samples">{saved.slice(0, 4).map((project) => <li key={project.id}><button className="word" onClick={() => desk.goOn(project)}>{project.name}</button> <span className="note">step {project.steps}, {project.at}</span></li>)}</ul>
         </>}
-        {samples.length > 0 && <h3>Or look at a sample</h3>}
-        <ul className="samples">{samples.map((sample) => (
-          <li key={sample.name}><button className="word" onClick={() => void openSample(desk, sample)}>{sample.name}</button> <span className="note">{sample.panels === '' || sample.panels === '0' ? '' : `${sample.panels} panels. `}{sample.note}</span></li>
-        ))}</ul>
+        <p className="entry note">Or look at one of the samples beside: each says why it is there.</p>
       </div>
     </section>
   )

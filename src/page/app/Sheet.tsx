@@ -1,5 +1,6 @@
 /** The sheet: one frame, its panes, and the tabs that a phone has in their place. */
 import { useEffect, useState, type DragEvent } from 'react'
+import { BesidePane } from './BesidePane.tsx'
 import { ChartPane } from './ChartPane.tsx'
 import { ComparePane } from './ComparePane.tsx'
 import { DeskPane } from './DeskPane.tsx'
@@ -9,6 +10,7 @@ import { OpeningPlan, ReaderReport } from './OpeningPane.tsx'
 import { PanelList } from './PanelList.tsx'
 import { PlanPane } from './PlanPane.tsx'
 import { RoofPane } from './RoofPane.tsx'
+import { SampleList } from './SampleList.tsx'
 import { Samples } from './Samples.tsx'
 import { StepsPane } from './StepsPane.tsx'
 import { TitleBlock } from './TitleBlock.tsx'
@@ -28,6 +30,7 @@ export function Sheet() {
   const empty = useDeskState((state) => state.doc === null && state.opening === null)
   const pane = useDeskState((state) => state.pane)
   const compared = useDeskState((state) => state.compared)
+  const beside = useDeskState((state) => state.beside)
   const [over, setOver] = useState(false)
   const [planSize, setPlanSize] = useState<Size>({ width: 0, height: 0 })
   useEffect(() => { document.documentElement.dataset.theme = theme }, [theme])
@@ -50,19 +53,19 @@ export function Sheet() {
     return () => window.removeEventListener('paste', onPaste)
   }, [desk])
   return (
-    <div className={`sheet${over ? ' over' : ''}${opening ? ' is-opening' : ''}`} data-shown={opening ? 'plan' : pane}
+    <div className={`sheet${over ? ' over' : ''}${opening ? ' is-opening' : empty ? ' is-empty' : ''}`} data-shown={opening ? 'plan' : pane}
       onDragOver={(event) => { event.preventDefault(); setOver(true) }} onDragLeave={(event) => { if (event.relatedTarget === null) setOver(false) }} onDrop={onDrop}>
       <Head />
       <StepsPane />
       {opening ? <OpeningPlan /> : (
         <>
           <div className="cell-plan"><PlanPane onSize={setPlanSize} /></div>
-          {compared === null ? <ChartPane /> : <ComparePane step={compared} />}
+          {beside !== null ? <BesidePane beside={beside} /> : compared === null ? <ChartPane /> : <ComparePane step={compared} />}
           <RoofPane planSize={planSize} />
           {empty ? <Samples /> : <DeskPane />}
         </>
       )}
-      {opening ? <ReaderReport /> : <section className="pane list" data-pane="list" aria-label="Panel list"><PanelList /></section>}
+      {opening ? <ReaderReport /> : <section className="pane list" data-pane="list" aria-label={empty ? 'Samples' : 'Panel list'}>{empty ? <SampleList /> : <PanelList />}</section>}
       <TitleBlock />
       <nav className="tabs-phone" aria-label="Drawings">
         {tabs.map(([name, title]) => <button key={name} aria-pressed={pane === name} onClick={() => desk.set({ pane: name })}>{title}</button>)}

@@ -74,7 +74,8 @@ function Verdict() {
     if (opening !== null) {
       if (opening.problem !== null) return { sign: 'not', first: [sentence(opening.problem)], second: ['The open project is untouched.'] }
       if (opening.read === null) return { sign: 'open', first: ['Reading the drawing.'], second: [] }
-      const { plan, repairs, questions } = opening.read
+      const { plan, questions } = opening.read
+      const repairs = opening.read.repairs.filter(({ state }) => state !== 'proposed')
       const voids = plan.rimIsVoid.reduce((sum, v) => sum + v, 0)
       return {
         sign: 'open', first: [`Read, not yet accepted: ${figure(plan.panelCount)} panels and ${figure(voids)} ${voids === 1 ? 'void' : 'voids'}, after ${figure(repairs.length)} ${repairs.length === 1 ? 'repair' : 'repairs'}.`],

@@ -9,9 +9,12 @@ export interface Looks {
   readonly axes: boolean
   /** A chain line runs from the selected panel of the roof up into the plan. */
   readonly chained: boolean
+  /** Which of its places the chosen repair is shown at, and how often it was asked to be zoomed to. */
+  readonly place: number
+  readonly zooms: number
 }
 
-export const looks = createStore<Looks>({ axes: true, chained: false })
+export const looks = createStore<Looks>({ axes: true, chained: false, place: 0, zooms: 0 })
 
 export const useLooks = <T>(pick: (state: Looks) => T): T => useStore(looks, pick)
 

@@ -4,6 +4,7 @@ import type { ReadPlan } from '../../plan/read-plan.ts'
 import { Batch, dots, label, moved, polyline, type DisplayList, type Item } from './display-list.ts'
 import { figure } from './figures.ts'
 import { northPoint, scaleBar } from './furniture.ts'
+import { detailAt, detailItems, type Detail } from './detail-circle.ts'
 import { centres, nodesOnSheet } from './plan-drawing.ts'
 import { panelArea } from './panel-readings.ts'
 import { fitted, toSheet, type PlanWindow } from './plan-window.ts'
@@ -14,12 +15,15 @@ export interface ReadDrawingOptions {
   readonly window: PlanWindow | null
   /** Panel under the pointer, -1: none. */
   readonly panel: number
-  /** Index of the repair that is asked about, -1: none. */
+  /** Index of the repair that is asked about, -1: none, and which of its places a detail is drawn of. */
   readonly repair: number
+  readonly place?: number
+  /** Lines as drawn, x0 y0 x1 y1 .., for the detail; null: not known. */
+  readonly drawn?: Float64Array | null
 }
 
-/** Places that are drawn for one repair: a hundred balloons say no more than thirty. */
-const mostPlaces = 30
+/** Places that are ringed for the chosen repair. */
+const mostPlaces = 2000
 
 export const readWindow = (read: ReadPlan, width: number, height: number): PlanWindow =>
   fitted(read.plan, { left: 40, top: 40, right: width - 56, bottom: height - 66 })
@@ -55,11 +59,25 @@ export function readDrawing(read: ReadPlan, options: ReadDrawingOptions): Displa
     items.push(label(x, y - 2, 'panel', { tone: 'hand', bold: true, anchor: 'middle', size: 11 }), label(x, y + 11, `${figure(area, 2)} m\u00b2`, { tone: 'hand', anchor: 'middle', size: 11 }))
   }
   items.push(...balloons(read, window, options))
+  const at = placeOf(read, options)
+  const detail = at === null ? null : readDetail(read, window, options)
+  if (at !== null && detail !== null) items.push(...detailItems(plan, window, at, read.repairs[options.repair].where, options.drawn ?? null, detail))
   items.push(...moved(scaleBar(plan.unit, window.scale).items, 40, height - 36), ...moved(northPoint().items, width - 40, 14))
   return {
     width, height, items, title: 'Plan as read',
     description: `${figure(plan.panelCount)} panels, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges; ${figure(read.repairs.length)} repairs.`,
   }
+}
+
+function placeOf({ repairs }: ReadPlan, { repair, place = 0 }: Pick<ReadDrawingOptions, 'repair' | 'place'>): readonly [number, number] | null {
+  const where = repairs[repair]?.where ?? []
+  return where.length === 0 ? null : where[place % where.length]
+}
+
+/** The detail circle of the chosen repair; null: none is drawn. */
+export function readDetail(read: ReadPlan, window: PlanWindow, options: Pick<ReadDrawingOptions, 'repair' | 'place' | 'width' | 'height' | 'drawn'>): Detail | null {
+  const at = placeOf(read, options)
+  return at === null || options.width < 380 ? null : detailAt(read.plan, window, at, options.drawn ?? null, options)
 }
 
 function voids({ plan }: ReadPlan, px: Float64Array): Item[] {
@@ -87,7 +105,7 @@ function voids({ plan }: ReadPlan, px: Float64Array): Item[] {
   return items
 }
 
-function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, width, height }: ReadDrawingOptions): Item[] {
+function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, place = 0, width, height }: ReadDrawingOptions): Item[] {
   const items: Item[] = []
   const leaders = new Batch()
   const spots: number[] = []
@@ -98,12 +116,14 @@ function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, width, h
     for (const [k, [x, y]] of repair.where.slice(0, chosen === i ? mostPlaces : 3).entries()) {
       const [px, py] = toSheet(window, x, y)
       if (px < -20 || py < -20 || px > width + 20 || py > height + 20) continue
+      spots.push(px, py)
+      // One balloon says which repair it is; its other places are ringed.
+      if (chosen === i && k !== place % repair.where.length) continue
       // Out of the middle, so that balloons stand clear of one another and of what they point at.
       const turn = Math.atan2(py - height / 2, px - width / 2) + (k % 3) * 0.7
       const bx = Math.max(12, Math.min(width - 12, px + 26 * Math.cos(turn)))
       const by = Math.max(12, Math.min(height - 12, py + 26 * Math.sin(turn)))
       leaders.segment(px, py, bx, by)
-      spots.push(px, py)
       ;(chosen === i ? filled : open).push(bx, by)
       words.push(label(bx, by + 4, String(i + 1), { size: 11, bold: true, anchor: 'middle', tone: chosen === i ? 'paper' : 'fault' }))
     }
