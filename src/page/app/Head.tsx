@@ -7,10 +7,12 @@ export function Head() {
   const name = useDeskState((state) => state.opening?.file.name ?? state.doc?.name ?? '')
   const opening = useDeskState((state) => state.opening !== null)
   const theme = useDeskState((state) => state.theme)
+  const elsewhere = useDeskState((state) => state.elsewhere)
   return (
     <header className="head">
       <h1>Panewise</h1>
       <span className="open-name">{name === '' ? 'no drawing open' : opening ? <>Opening a drawing <span className="note">{name}</span></> : name}</span>
+      {elsewhere !== '' && <span className="elsewhere" role="status">{elsewhere}</span>}
       <nav aria-label="Commands">
         {headCommands.map((key) => {
           const command = commands.find((entry) => entry.key === key)

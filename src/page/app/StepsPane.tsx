@@ -9,6 +9,7 @@ export function StepsPane() {
   const inHand = useDeskState((state) => state.inHand)
   const opening = useDeskState((state) => state.opening !== null)
   const compared = useDeskState((state) => state.compared)
+  const beside = useDeskState((state) => state.beside !== null)
   const mayUndo = useDeskState(canUndo)
   const mayRedo = useDeskState(canRedo)
   return (
@@ -20,6 +21,14 @@ export function StepsPane() {
         <button className="word" disabled={at < 0} aria-pressed={compared !== null} onClick={() => desk.compare(compared === null ? Math.max(0, at - 1) : null)}>
           {compared === null ? 'Compare with a step' : 'Stop comparing'} <kbd>C</kbd>
         </button>
+        <button className="word" disabled={at < 0} aria-pressed={beside} onClick={() => (beside ? void desk.compareWith(null) : document.querySelector<HTMLInputElement>('#beside-file')?.click())}>
+          {beside ? 'Stop comparing' : 'Compare with a project'}
+        </button>
+        <input id="beside-file" type="file" hidden accept=".json" onChange={(event) => {
+          const file = event.currentTarget.files?.[0]
+          event.currentTarget.value = ''
+          if (file !== undefined) void file.arrayBuffer().then((bytes) => desk.compareWith({ name: file.name, bytes: new Uint8Array(bytes) }))
+        }} />
       </header>
       <ol className="step-list" reversed aria-label="Steps, newest first">
         {opening && <li className="hand"><Triangle number={steps.length + 1} /><b>Opening</b><small>not accepted yet; the open project is untouched</small></li>}

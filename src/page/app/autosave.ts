@@ -1,9 +1,10 @@
 /**
  * Projects kept in the browser (IndexedDB), saved after every step, so that a crash loses at most the edit in hand. Each
- * tab writes under a number of its own: two tabs on one project do not overwrite each other.
+ * tab writes under a number of its own, which it holds by a lock: two tabs on one project do not overwrite each other.
  */
 import type { Desk } from './desk.ts'
 import { docText } from './project-file.ts'
+import { heldName, type HeldName } from './tabs.ts'
 
 export interface Saved {
   readonly id: string
@@ -43,7 +44,7 @@ export async function savedProjects(): Promise<readonly Saved[]> {
     const db = await opened()
     const request = db.transaction(table).objectStore(table).getAll()
     const all = await new Promise<Saved[]>((resolve, reject) => {
-      request.onsuccess = () => resolve(request.result as Saved[])
+      request.onsuccess = () => resolve((request.result as unknown[]).filter(isSaved))
       request.onerror = () => reject(request.error ?? new Error('not read'))
     })
     db.close()
@@ -51,6 +52,12 @@ export async function savedProjects(): Promise<readonly Saved[]> {
   } catch {
     return []
   }
+}
+
+/** What a broken store or another version left is not offered, and not touched. */
+function isSaved(record: unknown): record is Saved {
+  const { id, name, text, at, steps, when } = (record ?? {}) as Partial<Record<keyof Saved, unknown>>
+  return [id, name, text, at].every((value) => typeof value === 'string') && [steps, when].every((value) => typeof value === 'number')
 }
 
 async function save(project: Saved): Promise<void> {
@@ -61,7 +68,7 @@ async function save(project: Saved): Promise<void> {
     store.put(project)
     const keys = store.getAll()
     keys.onsuccess = () => {
-      for (const old of (keys.result as Saved[]).sort((a, b) => b.when - a.when).slice(mostKept)) store.delete(old.id)
+      for (const old of (keys.result as unknown[]).filter(isSaved).sort((a, b) => b.when - a.when).slice(mostKept)) store.delete(old.id)
     }
     await done(transaction)
   } finally {
@@ -69,30 +76,52 @@ async function save(project: Saved): Promise<void> {
   }
 }
 
-/** Saves every step of the desk; says on the sheet when it could not. */
+/**
+ * Saves every step of the desk; says on the sheet when it could not. A project that was gone on with keeps its number, if no
+ * other tab has it.
+ */
 export function keepSaved(desk: Desk): () => void {
   let last: unknown = null
-  let id = newId()
-  let doc0: unknown = null
+  let project = { first: null as unknown, id: '' }
+  let names: readonly HeldName[] = []
   let running: Promise<void> = Promise.resolve()
+
+  const begun = async (name: string, sha256: string | null, keptAs: string | null): Promise<string> => {
+    for (const held of names) held.release()
+    const source = sha256 === null ? null : await heldName(`panewise drawing ${name} ${sha256}`)
+    const own = keptAs === null ? null : await heldName(`panewise project ${keptAs}`)
+    let id = keptAs
+    if (id === null || own?.mine !== true) id = newId()
+    // The number is taken by this tab before anybody else can see it.
+    const fresh = id === keptAs ? null : await heldName(`panewise project ${id}`)
+    names = [source, own, fresh].filter((held) => held !== null)
+    desk.set({ elsewhere: own?.mine === false ? 'open in another tab too: kept here as a copy of its own' : source?.mine === false ? 'this drawing is open in another tab too: each keeps its own' : '' })
+    return id
+  }
+
   return desk.store.subscribe(() => {
-    const { steps, at, inHand } = desk.state
+    const { steps, at, inHand, keptAs } = desk.state
     const step = steps[at]
     if (step === undefined || inHand !== null || step === last) return
     last = step
-    // Another project gets a number of its own.
-    if (steps[0]?.doc.read !== doc0) {
-      doc0 = steps[0]?.doc.read
-      id = newId()
-    }
+    const isNew = steps[0] !== project.first
+    const mine = isNew ? { first: steps[0], id: '' } : project
+    project = mine
     const now = new Date()
     const time = `${String(now.getHours()).padStart(2, '0')}:${String(now.getMinutes()).padStart(2, '0')}`
-    const project = { id, name: step.doc.name, text: docText(step.doc), steps: at + 1, at: time, when: now.getTime() }
-    running = running.then(() => save(project)).then(
+    running = running.then(async () => {
+      if (isNew) mine.id = await begun(step.doc.name, step.doc.sha256, keptAs)
+      await save({ id: mine.id, name: step.doc.name, text: docText(step.doc), steps: at + 1, at: time, when: now.getTime() })
+    }).then(
       () => desk.set({ saved: `kept ${time}` }),
-      () => desk.set({ saved: 'not kept: storage is full or closed; take the project away' }),
+      (error: unknown) => desk.set({ saved: notKept(error) }),
     )
   })
+}
+
+function notKept(error: unknown): string {
+  const isFull = error instanceof DOMException && error.name === 'QuotaExceededError'
+  return `not kept: ${isFull ? 'the storage is full' : 'the storage is closed'}; take the project away`
 }
 
 function newId(): string {

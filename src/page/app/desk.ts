@@ -10,6 +10,7 @@ import { projectOf } from '../../plan/project/project-record.ts'
 import { asymmetry, imageName, symmetricConditions, symmetricHeights } from '../../plan/project/mirrored.ts'
 import { turnedFace, withVoids } from '../../plan/project/turned-face.ts'
 import type { MirrorLine } from '../../job/session.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
 import { briefInUnit, openBrief } from './brief-file.ts'
 import { Asking } from './asking.ts'
 import type { NamedBytes } from './engine.ts'
@@ -89,10 +90,10 @@ export class Desk extends Asking {
   }
 
   /** Goes on with a project that this browser kept. */
-  goOn(saved: { readonly name: string; readonly text: string }): void {
+  goOn(saved: { readonly id: string; readonly text: string }): void {
     const project = openProject('kept.panewise.json', new TextEncoder().encode(saved.text))
     if (project === null) return
-    if (project.ok) this.begin(project.value, 'Gone on with', 'as this browser kept it')
+    if (project.ok) this.begin(project.value, 'Gone on with', 'as this browser kept it', saved.id)
     else this.set({ problem: project.problem })
   }
 
@@ -111,8 +112,9 @@ export class Desk extends Asking {
     if (!made.ok) return this.set({ problem: made.problem })
     // The plan is another one where a face turned: what was picked on it is put down.
     const isOther = made.value.read !== doc.read
-    if (isOther) this.set({ selection: null, picked: [], answer: null })
+    if (isOther) this.set({ answer: null })
     this.take({ doc: made.value, what: name, before: 'brief laid over the plan' })
+    if (isOther) this.otherPlan(null)
   }
 
   /** A second surface for the roof to come near to: a file with heights, or the roof of another project. */
@@ -201,10 +203,10 @@ export class Desk extends Asking {
   }
 
   /** Starts anew with a document: its first step. */
-  begin(opened: Doc, what: string, before: string): void {
+  begin(opened: Doc, what: string, before: string, keptAs: string | null = null): void {
     // Edits of the page are in the plan's unit.
     const doc = { ...opened, brief: briefInUnit(opened.brief, opened.read.plan.unit) }
-    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '', saved: '' }))
+    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '', saved: '', keptAs }))
     void this.ask()
     void this.askMirrors()
   }
@@ -242,11 +244,20 @@ export class Desk extends Asking {
   }
 
   goTo(step: number): void {
+    const before = this.state.doc?.read
     this.store.update((state) => gone(state, step))
+    const { doc } = this.state
     // What was answered once is shown at once; the worker is asked all the same, since files and ways come from its last answer.
-    const known = this.state.doc === null ? undefined : this.answers.get(this.state.doc)
-    if (known !== undefined) this.set({ answer: known, ways: null })
+    const known = doc === null ? undefined : this.answers.get(doc)
+    if (known !== undefined) this.set({ answer: known, ways: null, releases: null })
+    if (doc?.read !== before) this.otherPlan(known ?? null)
     void this.ask()
+  }
+
+  /** Nothing that was picked or found on the plan before means anything on another. */
+  private otherPlan(answer: Answer | null): void {
+    this.set({ selection: null, picked: [], gathered: null, mirror: null, mirrors: null, answer })
+    void this.askMirrors()
   }
 
   /** Changes the brief as a named step. */
@@ -326,10 +337,10 @@ export class Desk extends Asking {
     const face = Array.from(doc.faces.isVoid.keys()).filter((f) => doc.faces.isVoid[f] === 0)[panel]
     const made = turnedFace(doc, face)
     if (!made.ok) return this.set({ problem: made.problem })
-    this.set({ selection: null, picked: [], gathered: null, mirror: null, mirrors: null, answer: null })
     const { project, released } = made.value
+    this.set({ answer: null })
     this.take({ doc: project, what: `${panelName(panel)} is a void`, before: released.length === 0 ? 'was a panel' : `${released.join(', ')} released` })
-    void this.askMirrors()
+    this.otherPlan(null)
   }
 
   /** Exact, or soft with a weight. */

@@ -90,6 +90,8 @@ export interface State {
   readonly filter: ListFilter
   readonly webgl: 'none' | 'software' | 'hardware'
   readonly saved: string
+  /** The number under which the browser kept the project that is gone on with; null: it is opened anew. */
+  readonly keptAs: string | null
   /** Step that the one in force is compared with, null: none. */
   readonly compared: number | null
   /** Another project beside the one in hand, null: none. */
@@ -124,6 +126,6 @@ export type ListFilter = 'all' | 'flagged' | 'group'
 export const initialState: State = {
   doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
   selection: null, picked: [], reading: 'slope', side: 'south', turned: null, views: 0, exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
-  desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', ways: null, compared: null,
+  desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', keptAs: null, ways: null, compared: null,
   beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '',
 }
