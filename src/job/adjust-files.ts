@@ -24,7 +24,7 @@ export function adjustSummary(adjusted: AdjustAnswer): Summary & { readonly adju
 
 /** A plan that could not be adjusted has its summary alone. */
 export function* adjustFiles(adjusted: AdjustAnswer): Steps<OutputFile[]> {
-  const { after, before, facts } = adjusted
+  const { after, drawn, facts } = adjusted
   const summary = adjustSummary(adjusted)
   const written: OutputFile[] = []
   if (facts.outcome === 'moved' || facts.outcome === 'lifts') {
@@ -32,7 +32,7 @@ export function* adjustFiles(adjusted: AdjustAnswer): Steps<OutputFile[]> {
     const comments = [`Panewise ${summary.version}, from ${summary.input.name}: the plan with its nodes moved`]
     written.push({ name: 'plan.obj', bytes: yield* writeObj({ plan, x: plan.x, y: plan.y, z: new Float64Array(plan.nodeCount), decimals: null, comments }) })
     written.push({ name: 'shifts.csv', bytes: yield* writeCsv(shiftTable(adjusted), after.wishes.csv) })
-    const drawing = shiftDrawing({ before: before.answer.plan, after: plan })
+    const drawing = shiftDrawing({ before: drawn, after: plan })
     written.push({ name: 'shifts.svg', bytes: new TextEncoder().encode(toSvg(drawing, themes.day)) })
     written.push(...(yield* filesOf(after)).slice(0, -1))
   }

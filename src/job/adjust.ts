@@ -1,15 +1,25 @@
 /** The job "adjust": the nearest plan that lifts as asked, its roof, and what moved; or why there is none. */
+import { assert } from '../base/assert.ts'
 import { conversion } from '../base/length.ts'
 import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
+import type { Plan } from '../plan/plan.ts'
 import type { Options } from '../plan/project/options.ts'
+import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import type { AdjustFacts } from '../roof/answer/adjust-facts.ts'
+import type { Verdict } from '../roof/answer/answer.ts'
 import { conditionRows } from '../roof/conditions/condition-rows.ts'
+import { eliminate } from '../roof/conditions/eliminate.ts'
+import { homogeneous } from '../roof/conditions/homogeneous.ts'
+import { rowCount } from '../roof/conditions/rows.ts'
 import type { PlanKeeps } from '../roof/cures/adjust.ts'
-import { movedNodes, type Moved, type MoveOutcome } from '../roof/cures/move-nodes.ts'
+import { movedNodes, type Moved, type MoveOutcome, type MoveQuestion } from '../roof/cures/move-nodes.ts'
 import { flatness } from '../roof/raise/flatness.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
+import { liftSpace, nothingHeld } from '../roof/stress/lift-space.ts'
+import { panelBases } from '../roof/stress/panel-bases.ts'
+import { tiltDimension } from '../roof/stress/tilts.ts'
 import { answerTo, openQuestion, questionOf, type Checked } from './check.ts'
 import { keepsOf } from './keeps.ts'
 import { withLevels } from './levels.ts'
@@ -19,8 +29,9 @@ import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
 import { targetOf } from './target.ts'
 
 export interface AdjustAnswer {
-  readonly before: Checked
-  /** The answer on the adjusted plan; the same as `before` where nothing moved. */
+  /** The plan as drawn. */
+  readonly drawn: Plan
+  /** The answer on the adjusted plan, or on the plan as drawn where nothing moved. */
   readonly after: Checked
   /** Move of each node of the plan, mm (length nodeCount each). */
   readonly dx_mm: Float64Array
@@ -41,23 +52,52 @@ export function* adjust(request: Request, version: string, sha256: string): Step
   if (!made.ok) return made
   const { read, brief, target } = made.value
   if (read.questions.length > 0) return openQuestion(request, read.questions)
-  const before = yield* answerTo({ request: asked, version, sha256, read, brief, target, free: null })
-  if (!before.ok) return before
+  const full = (plan: Plan): Steps<Result<Checked>> => answerTo({ request: asked, version, sha256, read: { ...read, plan }, brief, target, free: null })
+  const wishes = wishesOf(brief, options.value, read.plan.unit)
+  if (!wishes.ok) return wishes
   const keeps = keepsOf(read.plan, options.value)
   if (!keeps.ok) return keeps
-  if (before.value.answer.summary.verdict === 'lifts') return ok(unmoved(before.value, 'lifts', null))
-  const outcome = yield* moveOutcome(asked, read, target, before.value, keeps.value)
+  const glance = yield* liftsNowhere(read.plan, wishes.value)
+  if (!glance.ok) return glance
+  let before: Checked | null = null
+  if (glance.value === null) {
+    const made = yield* full(read.plan)
+    if (!made.ok) return made
+    before = made.value
+    if (before.answer.summary.verdict === 'lifts') return ok(unmoved(before, 'lifts', null))
+  }
+  const under = glance.value ?? before?.under
+  assert(under !== undefined, 'the plan was looked at')
+  const outcome = yield* moveOutcome(asked, read, target, { wishes: wishes.value, under }, keeps.value)
   if (!outcome.ok) return outcome
-  if (outcome.value.kind !== 'moved') return ok(unmoved(before.value, outcome.value.kind, outcome.value))
+  if (outcome.value.kind !== 'moved') {
+    const drawn = before === null ? yield* full(read.plan) : ok(before)
+    return drawn.ok ? ok(unmoved(drawn.value, outcome.value.kind, outcome.value)) : drawn
+  }
   const { moved } = outcome.value
-  const after = yield* answerTo({ request: asked, version, sha256, read: { ...read, plan: moved.plan }, brief, target, free: null })
+  const after = yield* full(moved.plan)
   if (!after.ok) return after
-  return ok(yield* answerOf(before.value, after.value, moved, options.value))
+  return ok(yield* answerOf(read.plan, before?.answer.summary.verdict ?? null, after.value, moved, options.value))
+}
+
+/**
+ * What moving nodes needs to know of a plan on which no joint folds in any roof: found by one factor, without frozen joints, gap
+ * and near roof. null: some joint may fold, so that the whole answer is wanted.
+ */
+function* liftsNowhere(plan: Plan, wishes: Wishes): Steps<Result<MoveQuestion['under'] | null>> {
+  const rows = conditionRows(plan, wishes.conditions, wishes.datum ?? 0)
+  if (!rows.ok) return rows
+  const { hard } = rows.value
+  if (wishes.pitch !== null || plan.jointCount === 0 || !homogeneous(hard)) return ok(null)
+  const held = rowCount(hard) === 0 ? null : eliminate(hard, plan.nodeCount, wishes.conditions.map(({ name }) => name))
+  const space = yield* liftSpace(plan, panelBases(plan), held?.elimination ?? nothingHeld(plan.nodeCount))
+  return ok(space.dimension > tiltDimension(plan, held === null ? null : hard) ? null : { space, rowClashes: held?.clashes ?? [] })
 }
 
 /** The cure "move nodes" for a plan that was read and checked. `byHand`: heights set by hand, as `answerTo` takes them. */
 export function* moveOutcome(
-  request: Request, read: ReadPlan, byHand: Float64Array | null, { wishes, under }: Checked, keeps: PlanKeeps,
+  request: Request, read: ReadPlan, byHand: Float64Array | null,
+  { wishes, under }: { readonly wishes: Wishes; readonly under: MoveQuestion['under'] }, keeps: PlanKeeps,
 ): Steps<Result<MoveOutcome>> {
   const { plan } = read
   const target = yield* targetOf(request, wishes, read, byHand)
@@ -74,7 +114,7 @@ function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found
     : found.kind === 'refused' ? found.refusal : found
   const corner = summary.roof?.cornerMax_mm ?? null
   return {
-    before, after: before, dx_mm: new Float64Array(plan.nodeCount), dy_mm: new Float64Array(plan.nodeCount),
+    drawn: plan, after: before, dx_mm: new Float64Array(plan.nodeCount), dy_mm: new Float64Array(plan.nodeCount),
     facts: {
       outcome, code: why?.code ?? null, reason: why?.message ?? null, cure: why?.cure ?? null, planVerdict: summary.verdict,
       largest_mm: 0, rms_mm: 0, count: 0, cornerBefore_mm: corner, cornerAfter_mm: corner, heightError: summary.roof?.heightError ?? null, held: null, iterations: 0,
@@ -82,8 +122,8 @@ function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found
   }
 }
 
-function* answerOf(before: Checked, after: Checked, moved: Moved, options: Options): Steps<AdjustAnswer> {
-  const { plan } = before.answer
+/** `verdict`: on the plan as drawn; null: no joint of it folds, and whether a near roof would do was not asked. */
+function* answerOf(plan: Plan, verdict: Verdict | null, after: Checked, moved: Moved, options: Options): Steps<AdjustAnswer> {
   const mm = conversion(plan.unit, 'mm')
   const dx_mm = moved.plan.x.map((x, n) => (x - plan.x[n]) * mm)
   const dy_mm = moved.plan.y.map((y, n) => (y - plan.y[n]) * mm)
@@ -94,16 +134,15 @@ function* answerOf(before: Checked, after: Checked, moved: Moved, options: Optio
     squares += shift * shift
     if (shift > counted_mm) count += 1
   }
-  const { summary } = before.answer
-  const noFold = summary.verdict === 'does not lift' || summary.verdict === 'lifts within tolerance'
+  const noFold = verdict === null || verdict === 'does not lift' || verdict === 'lifts within tolerance'
   const within = noFold && after.answer.summary.verdict === 'lifts' && largest <= (options.planTolerance_mm ?? defaultPlanTolerance_mm)
   // What the same heights would have been on the plan as drawn.
   const asDrawn = yield* flatness(plan, plan.x, plan.y, moved.adjustment.state.heights.map((height) => height * plan.frame.span))
   const { fixedCount, slidingCount, straightCount, active, iterations } = moved.adjustment
   return {
-    before, after, dx_mm, dy_mm,
+    drawn: plan, after, dx_mm, dy_mm,
     facts: {
-      outcome: 'moved', code: null, reason: null, cure: null, planVerdict: within ? 'lifts within plan tolerance' : summary.verdict,
+      outcome: 'moved', code: null, reason: null, cure: null, planVerdict: within ? 'lifts within plan tolerance' : verdict,
       largest_mm: largest, rms_mm: Math.sqrt(squares / plan.nodeCount), count,
       cornerBefore_mm: asDrawn.corner.reduce((most, corner) => Math.max(most, corner), 0) * mm,
       cornerAfter_mm: after.answer.summary.roof?.cornerMax_mm ?? null,

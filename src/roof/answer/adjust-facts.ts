@@ -9,8 +9,11 @@ export interface AdjustFacts {
   /** Why not, as a clause; null where it was done. */
   readonly reason: string | null
   readonly cure: string | null
-  /** Verdict on the plan as drawn: within its tolerance where no node moved by more. */
-  readonly planVerdict: Verdict
+  /**
+   * Verdict on the plan as drawn: within its tolerance where no node moved by more. null: no joint of it folds and nodes moved by
+   * more; whether a near roof would do was not asked (check says).
+   */
+  readonly planVerdict: Verdict | null
   readonly largest_mm: number
   readonly rms_mm: number
   /** Nodes that moved by more than 1 mm. */

@@ -12,6 +12,8 @@ export interface Bounds {
   readonly count: number
   /** Bounds from here on are edges and shifts; before them come the corners. */
   readonly cornersEnd: number
+  /** Edges so short that almost any adjustment comes to their limit. */
+  readonly likely: readonly number[]
   kindOf(bound: number): BoundKind
   /** Nodes of the quantity: corner (the one before, itself, the one after), edge (two), shift (one). */
   nodesOf(bound: number): readonly number[]
@@ -58,22 +60,24 @@ const straight = 1e-3
 
 export function bounds(plan: Plan, options: BoundOptions): Bounds {
   const { corner, panelStart, panelCount, work: drawn, origin, edgeCount, nodeCount } = plan
-  const nodes: number[] = []
-  const least: number[] = []
+  const nodes = new Int32Array(3 * corner.length)
+  const least = new Float64Array(corner.length)
   for (let p = 0; p < panelCount; p += 1) {
     const from = panelStart[p], count = panelStart[p + 1] - from
     for (let k = 0; k < count; k += 1) {
       const before = corner[from + ((k + count - 1) % count)], node = corner[from + k], after = corner[from + ((k + 1) % count)]
-      nodes.push(before, node, after)
+      nodes[3 * (from + k)] = before
+      nodes[3 * (from + k) + 1] = node
+      nodes[3 * (from + k) + 2] = after
       const isPoint = between(drawn, before, node) < onePoint || between(drawn, node, after) < onePoint
-      least.push(isPoint ? NaN : interiorAngle(drawn, before, node, after))
+      least[from + k] = isPoint ? NaN : interiorAngle(drawn, before, node, after)
     }
   }
   const corners = least.length
   const edges = edgeCount
   const shifts = options.largestShift === null ? 0 : nodeCount
-  const mostAngle = Float64Array.from(least, (angle) => (Math.PI - angle > straight ? Math.PI - Math.min(leastTurn, (Math.PI - angle) / 10) : Infinity))
-  const leastAngle = Float64Array.from(least, (angle) => Math.min(angle, Math.max(angleShare * angle, (1 + inside) * (options.leastAngle ?? 0))))
+  const mostAngle = least.map((angle) => (Math.PI - angle > straight ? Math.PI - Math.min(leastTurn, (Math.PI - angle) / 10) : Infinity))
+  const leastAngle = least.map((angle) => Math.min(angle, Math.max(angleShare * angle, (1 + inside) * (options.leastAngle ?? 0))))
   const leastLength = new Float64Array(edges)
   for (let e = 0; e < edges; e += 1) {
     const length = between(drawn, origin[2 * e], origin[2 * e + 1])
@@ -94,6 +98,7 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
   return {
     count: shiftFrom + shifts,
     cornersEnd: edgeFrom,
+    likely: shortEdges(plan).map((e) => edgeFrom + e),
     kindOf,
     nodesOf(bound) {
       switch (kindOf(bound)) {
@@ -174,6 +179,15 @@ export function bounds(plan: Plan, options: BoundOptions): Bounds {
 
 const between = (work: Float64Array, a: number, b: number): number => Math.hypot(work[2 * b] - work[2 * a], work[2 * b + 1] - work[2 * a + 1])
 
+/** Edges shorter than this share of the middle length are likely to come to their limit. */
+const likelyShare = 0.03
+
+function shortEdges({ work, origin, edgeCount }: Plan): number[] {
+  const length = Float64Array.from({ length: edgeCount }, (_, e) => between(work, origin[2 * e], origin[2 * e + 1]))
+  const below = likelyShare * length.slice().sort()[edgeCount >> 1]
+  return [...length.keys()].filter((e) => length[e] < below)
+}
+
 /** Angle inside the panel at `node`, 0 to 2 pi. */
 function interiorAngle(work: Float64Array, before: number, node: number, after: number): number {
   const ax = work[2 * after] - work[2 * node], ay = work[2 * after + 1] - work[2 * node + 1]
@@ -202,11 +216,14 @@ function angleGradient(work: Float64Array, before: number, node: number, after: 
 const give = 1e-3
 
 /**
- * The bounds of the active set as rows that bring each to its limit, scaled to size 1, and beyond it by its `lead`: what the
- * straight step was seen to miss it by, since angles at short edges turn on the way.
+ * A row for each of the listed bounds. Those that `isActive` says hold bring it to its limit, scaled to size 1, and beyond it
+ * by its `lead`: what the straight step was seen to miss it by, since angles at short edges turn on the way. The others say
+ * nothing (0 = 0): so the pattern stays while bounds join and leave, and nothing is ordered again.
  */
-export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], lead: ReadonlyMap<number, number>, toward: () => Float64Array): RowBlock {
-  const lists = active.map((bound) => all.nodesOf(bound))
+export function boundBlock(
+  plan: Plan, all: Bounds, listed: readonly number[], isActive: (bound: number) => boolean, lead: ReadonlyMap<number, number>, toward: () => Float64Array,
+): RowBlock {
+  const lists = listed.map((bound) => all.nodesOf(bound))
   const gradient = new Float64Array(6)
   return {
     counts: Int32Array.from(lists, (list) => list.length),
@@ -218,8 +235,15 @@ export function boundBlock(plan: Plan, all: Bounds, active: readonly number[], l
     give,
     fill({ work }, { cx, cy, right }, firstEntry, firstRow) {
       let e = firstEntry
-      active.forEach((bound, i) => {
+      listed.forEach((bound, i) => {
         const count = lists[i].length
+        if (!isActive(bound)) {
+          cx.fill(0, e, e + count)
+          cy.fill(0, e, e + count)
+          right[firstRow + i] = 0
+          e += count
+          return
+        }
         const slack = all.gradient(bound, work, toward(), gradient)
         let squares = 0
         for (let k = 0; k < 2 * count; k += 1) squares += gradient[k] ** 2

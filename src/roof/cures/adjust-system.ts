@@ -12,11 +12,11 @@ import { analyse } from '../../base/sparse/analyse.ts'
 import { cliquePattern, type CliquePattern } from '../../base/sparse/cliques.ts'
 import { factor, refactor, type Factor } from '../../base/sparse/factor.ts'
 import { multiply } from '../../base/sparse/multiply.ts'
-import { dissection } from '../../base/sparse/order.ts'
 import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Mobility } from './adjust-mobility.ts'
 import type { MoveRows, StackedRows } from './adjust-rows.ts'
+import { rowOrdering } from './adjust-order.ts'
 
 export interface MoveSystem {
   readonly stack: StackedRows
@@ -27,6 +27,8 @@ export interface MoveSystem {
   readonly rowOf: Int32Array
   readonly values: Float64Array
   readonly factor: Factor
+  /** What the factor answers to the rise's row; null: not asked since it was made. */
+  borderAnswer: Float64Array | null
 }
 
 /** Moves of the nodes: in plan x y x y .., and in height. */
@@ -44,8 +46,10 @@ export interface RiseRow {
 /** Share of the largest diagonal entry by which the matrix is raised: as tau is to the flatness form. */
 const raisedBy = 1e-13
 
-/** Rounds of refinement at most; with independent conditions the first ends it. */
-const mostRounds = 4
+/** Rounds of refinement at most; with independent conditions none is needed. */
+const mostRounds = 5
+/** A solution is taken as it is when it misses by less than this share of its right-hand side. */
+const enoughDigits = 1e-10
 
 /** A rise whose row the conditions answer by less than this share of its own size is theirs to say. */
 const leastAnswer = 1e-9
@@ -62,10 +66,11 @@ export function* moveSystem(stack: StackedRows, nodeCount: number, mobility: Mob
   const entry = new Int32Array(rows.node.length)
   for (let e = 0; e < rows.node.length; e += 1) entry[entryStart[rows.node[e] + 1]++] = e
   const byNode = entryStart.subarray(0, nodeCount + 1)
-  const cliques = cliquePattern(rowCount, byNode, entry.map((e) => rowOf[e]))
-  const analysis = analyse(cliques.pattern, yield* dissection(cliques.pattern, at))
+  const rowsByNode = entry.map((e) => rowOf[e])
+  const cliques = cliquePattern(rowCount, byNode, rowsByNode)
+  const analysis = analyse(cliques.pattern, yield* rowOrdering(rows, at, byNode, rowsByNode))
   const values = new Float64Array(cliques.pattern.row.length)
-  const system = { stack, cliques, entryStart: byNode, entry, rowOf, values }
+  const system = { stack, cliques, entryStart: byNode, entry, rowOf, values, borderAnswer: null }
   assemble(system, mobility)
   return { ...system, factor: yield* factor(analysis, raisedValues(cliques, values)) }
 }
@@ -73,10 +78,11 @@ export function* moveSystem(stack: StackedRows, nodeCount: number, mobility: Mob
 /** The factor at the rows' present values. */
 export function* refactored(system: MoveSystem, mobility: Mobility): Steps<void> {
   assemble(system, mobility)
+  system.borderAnswer = null
   yield* refactor(system.factor, raisedValues(system.cliques, system.values))
 }
 
-function assemble({ stack: { rows, give }, cliques, entryStart, entry, values }: Omit<MoveSystem, 'factor'>, mobility: Mobility): void {
+function assemble({ stack: { rows, give }, cliques, entryStart, entry, values }: Pick<MoveSystem, 'stack' | 'cliques' | 'entryStart' | 'entry' | 'values'>, mobility: Mobility): void {
   const { cx, cy, cz } = rows
   const { xx, xy, yy, zz } = mobility
   values.fill(0)
@@ -150,14 +156,22 @@ export interface LeastMove extends Moves {
 export function leastMove(system: MoveSystem, mobility: Mobility, right: Float64Array, rise: RiseRow | null): LeastMove {
   const { rows } = system.stack
   if (rise === null) {
-    const multipliers = refinedSolve(system, right)
+    const multipliers = refinedSolve(system, right, 1)
     return { ...movesOf(rows, mobility, multipliers), multipliers }
   }
-  // Border: b = J W^-1 c, d = c^T W^-1 c.
+  // Border: b = J W^-1 c, d = c^T W^-1 c. Any y1 gives the rise exactly, so that of an earlier state of the rows serves too.
   const free = rise.weight.map((weight, n) => weight * mobility.zz[n])
   const border = applied(rows, { plan: new Float64Array(2 * free.length), height: free })
-  const y0 = refinedSolve(system, right)
-  const y1 = refinedSolve(system, border)
+  let y0: Float64Array
+  if (system.borderAnswer === null) {
+    const both = new Float64Array(2 * right.length)
+    both.set(right)
+    both.set(border, right.length)
+    const answers = refinedSolve(system, both, 2)
+    y0 = answers.subarray(0, right.length)
+    system.borderAnswer = answers.slice(right.length)
+  } else y0 = refinedSolve(system, right, 1)
+  const y1 = system.borderAnswer
   const size = dot(rise.weight, free)
   const pivot = size - dot(border, y1)
   const share = pivot > leastAnswer * size ? (rise.value - dot(border, y0)) / pivot : 0
@@ -167,15 +181,17 @@ export function leastMove(system: MoveSystem, mobility: Mobility, right: Float64
   return { ...moves, multipliers }
 }
 
-function refinedSolve({ factor: factored, cliques: { pattern }, values }: MoveSystem, right: Float64Array): Float64Array {
-  let x = solve(factored, right)
-  let left = missing(right, multiply({ pattern, values }, x))
-  for (let round = 0; round < mostRounds && left.size > 0; round += 1) {
-    const correction = solve(factored, left.vector)
+/** Columns stored one after another; refined together until each misses by few digits, or no more is to be had. */
+function refinedSolve({ factor: factored, cliques: { pattern }, values }: MoveSystem, right: Float64Array, columns: number): Float64Array {
+  const matrix = { pattern, values }
+  let x = solve(factored, right, columns)
+  let left = missing(right, multiply(matrix, x, columns), columns)
+  for (let round = 0; round < mostRounds && left.share > enoughDigits; round += 1) {
+    const correction = solve(factored, left.vector, columns)
     const next = x.map((value, i) => value + correction[i])
-    const nextLeft = missing(right, multiply({ pattern, values }, next))
-    if (!(nextLeft.size < left.size)) break
-    const slow = nextLeft.size > left.size / 2
+    const nextLeft = missing(right, multiply(matrix, next, columns), columns)
+    if (!(nextLeft.share < left.share)) break
+    const slow = nextLeft.share > left.share / 2
     x = next
     left = nextLeft
     if (slow) break
@@ -183,8 +199,15 @@ function refinedSolve({ factor: factored, cliques: { pattern }, values }: MoveSy
   return x
 }
 
-function missing(right: Float64Array, product: Float64Array): { vector: Float64Array; size: number } {
+/** right - product, and its size as a share of right's in the column where that is largest. */
+function missing(right: Float64Array, product: Float64Array, columns: number): { vector: Float64Array; share: number } {
   const vector = right.map((value, i) => value - product[i])
-  return { vector, size: Math.sqrt(dot(vector, vector)) }
+  const rows = right.length / columns
+  let share = 0
+  for (let c = 0; c < columns; c += 1) {
+    const [off, of] = [vector.subarray(c * rows, (c + 1) * rows), right.subarray(c * rows, (c + 1) * rows)]
+    const size = dot(of, of)
+    if (size > 0) share = Math.max(share, Math.sqrt(dot(off, off) / size))
+  }
+  return { vector, share }
 }
-

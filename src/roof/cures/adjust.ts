@@ -19,7 +19,7 @@ import { boundBlock, bounds, type Bounds, type BoundKind, type BoundOptions } fr
 import { flatnessBlock, unflatness } from './adjust-flatness.ts'
 import { tiedBlock } from './adjust-held.ts'
 import { mobility, type MobilityFacts, type RimKeep } from './adjust-mobility.ts'
-import { filled, stacked, type RowBlock, type State } from './adjust-rows.ts'
+import { filled, stacked, type RowBlock, type StackedRows, type State } from './adjust-rows.ts'
 import { straightBlock, straightPasses } from './adjust-straight.ts'
 import { applied, leastMove, moveSystem, refactored, type LeastMove, type MoveSystem, type RiseRow } from './adjust-system.ts'
 
@@ -79,10 +79,14 @@ const unresolved = 1e-6
 /** What creeps is ended: in so many steps the merit has to fall by the first share, or the step by the second. */
 const leastGain = 0.02
 const leastSettling = 0.3
+/** The next step, foretold from the last two, has to be within this share of what counts as settled. */
+const surely = 0.5
 const patience = 8
 /** So many times `farBeyond` is out of reach. */
 const outOfReach = 3
 const mostHalvings = 12
+/** Bounds that a step leaves less than this share of their margin get a row, so that they may join without a new order. */
+const usedUp = 0.5
 /** Rounds of the active set within one step. */
 const mostRounds = 5
 /** Decrease that a step has to bring, as a share of the predicted one (Armijo 1966). */
@@ -113,9 +117,15 @@ export function* adjusted(question: AdjustQuestion): Steps<Adjustment> {
 class Run {
   state: State
   iterations = 0
-  active: number[] = []
   private system: MoveSystem | null = null
-  private builtFor = ''
+  /** Bounds that have a row in the system, ascending, and where; of them those that hold. */
+  private listed: readonly number[]
+  private placeOf = new Map<number, number>()
+  private readonly holds = new Set<number>()
+  /** Conditions other than flatness, stacked once. */
+  private readonly others: StackedRows
+  /** Whether bounds joined or left during the last step. */
+  private changed = false
   /** Where the last step would have gone. */
   private toward: Float64Array
   /** By bound: how far beyond its limit the step at hand aims (see `boundBlock`). */
@@ -142,6 +152,8 @@ class Run {
     this.blocks = blocks
     this.heightCost = areas.map((area) => shapeWeight * area)
     this.first = all.cornersEnd
+    this.listed = all.likely
+    this.others = stacked(blocks.slice(1))
     this.toward = anchor.work
     this.state = { work: anchor.work.slice(), heights: anchor.heights.slice() }
   }
@@ -157,6 +169,11 @@ class Run {
     return yield* this.walk(share, farBeyond)
   }
 
+  /** Bounds that hold, ascending. */
+  get active(): number[] {
+    return [...this.holds].sort((a, b) => a - b)
+  }
+
   private turnsCorners(): boolean {
     for (let bound = 0; bound < this.all.cornersEnd; bound += 1) if (this.all.slack(bound, this.state.work, this.state.work) < 0) return true
     return false
@@ -165,6 +182,7 @@ class Run {
   private *walk(share: number, farBeyond: number | null): Steps<Adjustment['ended']> {
     let merits: number[] = []
     let changes: number[] = []
+    let lifts: number[] = []
     let penalty = this.penalty
     for (let step = 0; step < mostSteps; step += 1) {
       yield { stage: 'Adjusting', done: 1 - 0.8 ** step }
@@ -177,11 +195,17 @@ class Run {
       const lift = rootMeanSquare(difference(taken.heights, this.state.heights))
       this.state = taken
       if (farBeyond !== null && largest(difference(taken.work, this.anchor.work)) > outOfReach * farBeyond) return 'far'
-      if (change <= share * size + flatEnough && lift <= share * size + flatEnough) return 'settled'
+      const limit = share * size + flatEnough
+      if (change <= limit && lift <= limit) return 'settled'
+      // Steps shrink at least as they did: the next one would be within.
+      const last = changes.length - 1
+      if (!this.changed && last >= 0 && change * change <= surely * limit * changes[last] && lift * lift <= surely * limit * lifts[last]) return 'settled'
+      lifts.push(lift)
       // Merits of different penalties do not compare.
       if (this.penalty > penalty) {
         merits = []
         changes = []
+        lifts = []
       }
       penalty = this.penalty
       merits.push(this.merit(taken))
@@ -197,7 +221,9 @@ class Run {
     this.lead.clear()
     let left = this.misfit(this.state)
     let fresh = false
-    for (let step = 0; step < 12 && left > flatEnough; step += 1) {
+    // Once every panel is flat to rounding, steps that help no more are not asked of another factor.
+    const nothing = flatEnough * (1 + this.plan.panelCount)
+    for (let step = 0; step < 12 && left > nothing / 10; step += 1) {
       yield { stage: 'Adjusting', done: 0.95 }
       const system = yield* this.prepared(fresh)
       // Bounds stay where they are: they give a little, and pushing them again would never end.
@@ -207,11 +233,11 @@ class Run {
       const next = moved(this.state, move, 1)
       const nextLeft = this.misfit(next)
       if (!(nextLeft < left)) {
-        if (fresh) return
+        if (fresh || left <= nothing) return
         fresh = true
         continue
       }
-      fresh = nextLeft > left / 10
+      fresh = nextLeft > left / 10 && nextLeft > nothing
       this.state = next
       left = nextLeft
     }
@@ -220,6 +246,7 @@ class Run {
   /** Where the linearised problem would go, bounds that it passes held: the move from the present state. */
   private *proposed(): Steps<LeastMove> {
     this.lead.clear()
+    this.changed = false
     for (let round = 0; ; round += 1) {
       const system = yield* this.prepared(true)
       const { rows } = system.stack
@@ -235,37 +262,51 @@ class Run {
       const { work } = moved(this.state, move, 1)
       this.toward = work
       // A bound that pulls the wrong way is let go, once a step; what the step would pass is held, or aimed at with a lead.
-      const kept = this.active.filter((bound, i) => round > 0 || total.multipliers[first + i] >= 0 || this.all.slack(bound, this.state.work, this.state.work) < 0)
-      const held = new Set(kept)
-      const passed: number[] = []
-      let isMissed = false
+      let isSame = true
+      if (round === 0) {
+        for (const bound of this.active) {
+          if (total.multipliers[first + (this.placeOf.get(bound) ?? 0)] >= 0 || this.all.slack(bound, this.state.work, this.state.work) < 0) continue
+          this.holds.delete(bound)
+          isSame = false
+        }
+      }
       for (let bound = this.first; bound < this.all.count; bound += 1) {
         const slack = this.all.slack(bound, work, this.state.work)
         if (slack >= 0) continue
-        if (!held.has(bound)) passed.push(bound)
-        else if (slack < this.all.aim(bound)) {
-          this.lead.set(bound, (this.lead.get(bound) ?? 0) - slack)
-          isMissed = true
-        }
+        if (!this.holds.has(bound)) this.holds.add(bound)
+        else if (slack < this.all.aim(bound)) this.lead.set(bound, (this.lead.get(bound) ?? 0) - slack)
+        else continue
+        isSame = false
       }
-      if (passed.length === 0 && !isMissed && kept.length === this.active.length) return move
-      this.active = [...kept, ...passed].sort((a, b) => a - b)
+      if (isSame) return move
+      this.changed = true
     }
   }
 
   /** The rows at the present state, and their factor (as it was, unless `fresh` or the rows are others). */
   private *prepared(fresh: boolean): Steps<MoveSystem> {
-    const key = this.active.join()
-    if (this.system === null || key !== this.builtFor) {
-      const stack = stacked([...this.blocks, boundBlock(this.plan, this.all, this.active, this.lead, () => this.toward)])
-      filled(stack, this.state)
-      this.system = yield* moveSystem(stack, this.plan.nodeCount, this.mobile)
-      this.builtFor = key
-    } else {
+    if (this.system !== null && [...this.holds].every((bound) => this.placeOf.has(bound))) {
       filled(this.system.stack, this.state)
       if (fresh) yield* refactored(this.system, this.mobile)
+      return this.system
     }
+    if (this.system !== null) this.listed = this.near()
+    this.placeOf = new Map(this.listed.map((bound, i) => [bound, i]))
+    const block = boundBlock(this.plan, this.all, this.listed, (bound) => this.holds.has(bound), this.lead, () => this.toward)
+    const stack = stacked([...this.blocks, block])
+    filled(stack, this.state)
+    this.system = yield* moveSystem(stack, this.plan.nodeCount, this.mobile)
     return this.system
+  }
+
+  /** The bounds that have a row, those that hold, and those that the step at hand brings half the way to their limit. */
+  private near(): number[] {
+    const { all, anchor, toward } = this
+    const near = new Set([...this.listed, ...this.holds])
+    for (let bound = this.first; bound < all.count; bound += 1) {
+      if (all.slack(bound, toward, this.state.work) < usedUp * all.slack(bound, anchor.work, anchor.work)) near.add(bound)
+    }
+    return [...near].sort((a, b) => a - b)
   }
 
   /** weight . (z - from) = weight . (target - from). */
@@ -330,9 +371,8 @@ class Run {
   /** Unflatness of the panels and what the other conditions miss. */
   private misfit(state: State): number {
     let sum = unflatness(this.plan, state.work, state.heights).sum
-    const others = stacked(this.blocks.slice(1))
-    filled(others, state)
-    for (const value of others.rows.right) sum += Math.abs(value)
+    filled(this.others, state)
+    for (const value of this.others.rows.right) sum += Math.abs(value)
     return sum
   }
 }

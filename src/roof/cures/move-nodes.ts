@@ -21,7 +21,7 @@ export interface MoveQuestion {
   readonly plan: Plan
   readonly rows: ConditionRows
   readonly conditions: readonly Condition[]
-  readonly under: UnderConditions
+  readonly under: Pick<UnderConditions, 'space' | 'rowClashes'>
   readonly areas: Float64Array
   readonly wish: Pick<RaiseQuestion, 'shape' | 'target' | 'rise' | 'rule' | 'pitched' | 'rows' | 'names' | 'within'>
   readonly keeps: PlanKeeps
