@@ -28,7 +28,8 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const plan = answer?.plan ?? null
   const withAxes = useLooks((state) => state.axes)
   const chained = useLooks((state) => state.chained)
-  const known = useMemo(() => (plan === null ? [] : axesFor(plan)), [plan])
+  const drawnAxes = useDeskState((state) => state.doc?.read.axes)
+  const known = useMemo(() => (plan === null ? none : axesFor(drawnAxes === undefined ? { plan } : { plan, axes: drawnAxes })), [plan, drawnAxes])
   const axes = withAxes ? known : none
   const [window_, setWindow] = useState<PlanWindow | null>(null)
   const shown = useRef<PlanWindow | null>(null)

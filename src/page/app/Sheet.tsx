@@ -9,6 +9,7 @@ import { Head } from './Head.tsx'
 import { OpeningPlan, ReaderReport } from './OpeningPane.tsx'
 import { PanelList } from './PanelList.tsx'
 import { PlanPane } from './PlanPane.tsx'
+import { PrintSheets } from './PrintSheets.tsx'
 import { RoofPane } from './RoofPane.tsx'
 import { SampleList } from './SampleList.tsx'
 import { Samples } from './Samples.tsx'
@@ -53,6 +54,7 @@ export function Sheet() {
     return () => window.removeEventListener('paste', onPaste)
   }, [desk])
   return (
+    <>
     <div className={`sheet${over ? ' over' : ''}${opening ? ' is-opening' : empty ? ' is-empty' : ''}`} data-shown={opening ? 'plan' : pane}
       onDragOver={(event) => { event.preventDefault(); setOver(true) }} onDragLeave={(event) => { if (event.relatedTarget === null) setOver(false) }} onDrop={onDrop}>
       <Head />
@@ -74,6 +76,8 @@ export function Sheet() {
       <Dialogs />
       {over && <p className="drop-here">Drop it: it is read here, on this computer.</p>}
     </div>
+    <PrintSheets />
+    </>
   )
 }
 

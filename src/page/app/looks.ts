@@ -2,6 +2,7 @@
 import type { Axis } from '../../plan/axes.ts'
 import { axesOfPlan } from '../../plan/axes.ts'
 import type { Plan } from '../../plan/plan.ts'
+import type { ReadPlan } from '../../plan/read-plan.ts'
 import { createStore, useStore } from './store.ts'
 
 export interface Looks {
@@ -20,8 +21,9 @@ export const useLooks = <T>(pick: (state: Looks) => T): T => useStore(looks, pic
 
 const axesKept = new WeakMap<Plan, readonly Axis[]>()
 
-/** The axes of a plan, worked out once. */
-export function axesFor(plan: Plan): readonly Axis[] {
+/** The axes that the drawing names, else those of the plan's own lines, worked out once. */
+export function axesFor({ plan, axes }: Pick<ReadPlan, 'plan' | 'axes'>): readonly Axis[] {
+  if (axes !== undefined && axes.length > 0) return axes
   const known = axesKept.get(plan)
   if (known !== undefined) return known
   const made = axesOfPlan(plan)

@@ -6,6 +6,7 @@ import type { Reading, ReadingName } from '../../paper/drawing/reading.ts'
 import { defaultFlat_mm } from '../../plan/project/wishes.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDeskState } from './context.ts'
+import type { Doc } from './state.ts'
 
 const jointsKept = new WeakMap<Answer, Joints>()
 const readingsKept = new WeakMap<Answer, Map<string, Reading>>()
@@ -28,6 +29,9 @@ export function readingFor(answer: Answer, name: ReadingName, leastSlope: number
   kept.set(key, made)
   return made
 }
+
+/** Least slope asked and flatness tolerance of a document. */
+export const limitsOf = ({ leastSlope, brief }: Doc): { leastSlope: number | null; flat_mm: number } => ({ leastSlope, flat_mm: brief.flat_mm ?? defaultFlat_mm })
 
 export function useLimits(): { leastSlope: number | null; flat_mm: number } {
   const leastSlope = useDeskState((state) => state.doc?.leastSlope ?? null)
