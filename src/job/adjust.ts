@@ -14,7 +14,8 @@ import { eliminate } from '../roof/conditions/eliminate.ts'
 import { homogeneous } from '../roof/conditions/homogeneous.ts'
 import { rowCount } from '../roof/conditions/rows.ts'
 import type { PlanKeeps } from '../roof/cures/adjust.ts'
-import { movedNodes, type Moved, type MoveOutcome, type MoveQuestion } from '../roof/cures/move-nodes.ts'
+import { movedWithin } from '../roof/cures/move-within.ts'
+import type { Moved, MoveOutcome, MoveQuestion } from '../roof/cures/move-nodes.ts'
 import { flatness } from '../roof/raise/flatness.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { liftSpace, nothingHeld } from '../roof/stress/lift-space.ts'
@@ -105,7 +106,7 @@ export function* moveOutcome(
   const rows = conditionRows(plan, wishes.conditions, wishes.datum ?? 0)
   if (!rows.ok) return rows
   const wish = questionOf(plan, wishes, rows.value, target.value.heights)
-  return ok(yield* movedNodes({ plan, rows: rows.value, conditions: wishes.conditions, under, areas: nodeAreas(plan), wish, keeps }))
+  return ok(yield* movedWithin({ plan, rows: rows.value, conditions: wishes.conditions, under, areas: nodeAreas(plan), wish, keeps }, wishes.datum ?? 0))
 }
 
 function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found: MoveOutcome | null): AdjustAnswer {

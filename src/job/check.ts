@@ -3,7 +3,7 @@ import type { Question } from '../base/repair.ts'
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { interiorNodeCount, voidCount, type Plan } from '../plan/plan.ts'
-import { jointName, panelName } from '../plan/names.ts'
+import { jointName, nodeName, panelName } from '../plan/names.ts'
 import type { Brief } from '../plan/project/brief.ts'
 import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
@@ -144,6 +144,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
       frozenJoints: sum(result.under.frozen),
       flatGroups: result.under.groupCount,
       clashes: result.clashes.map(({ conditions, misfit }) => ({ conditions, misfit_mm: misfit * span * mm })),
+      ...boundFacts(result, wishes, span * mm),
     },
     verdict: pieces.within === null ? result.verdict : 'lifts within plan tolerance',
     ...(pieces.within === null ? {} : { planShift: pieces.within }),
@@ -162,6 +163,13 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
     summary, plan, frozenFree: free.frozen, frozenHeld: result.under.frozen, flatGroup: result.under.groupOf,
     conditions: rows.held, roof,
   }
+}
+
+/** What bounds cost, and those that are missed; `mm`: a span. */
+function boundFacts({ prices, unmet }: Raised, { conditions }: Wishes, mm: number): Pick<Summary['held'], 'binding' | 'unmet'> {
+  const binding = prices.map(({ condition, node, rise, move }) => ({ condition: conditions[condition].name, at: nodeName(node), rise_mm: rise * mm, move_mm: move * mm }))
+  const missed = unmet.map(({ condition, miss }) => ({ condition: conditions[condition].name, at: miss.panel < 0 ? nodeName(miss.node) : panelName(miss.panel) }))
+  return { ...(binding.length > 0 ? { binding } : {}), ...(missed.length > 0 ? { unmet: missed } : {}) }
 }
 
 /** The facts of a plan as read. */

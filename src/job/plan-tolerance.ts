@@ -6,7 +6,7 @@ import type { Plan } from '../plan/plan.ts'
 import type { Options } from '../plan/project/options.ts'
 import type { Wishes } from '../plan/project/wishes.ts'
 import type { ConditionRows } from '../roof/conditions/condition-rows.ts'
-import { movedNodes } from '../roof/cures/move-nodes.ts'
+import { movedWithin } from '../roof/cures/move-within.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import type { Raised, RaiseQuestion } from '../roof/raise/raise.ts'
 import { keepsOf } from './keeps.ts'
@@ -30,10 +30,10 @@ export function* withinPlan(
   const keeps = keepsOf(plan, options)
   if (!keeps.ok) return keeps
   const mm = conversion(plan.unit, 'mm')
-  const found = yield* movedNodes({
+  const found = yield* movedWithin({
     plan, rows, conditions: wishes.conditions, under: result.under, areas: nodeAreas(plan), wish: question, keeps: keeps.value,
     farBeyond: tolerance_mm / mm / plan.frame.span,
-  })
+  }, wishes.datum ?? 0)
   if (found.kind !== 'moved') return ok(null)
   let largest = 0, squares = 0
   for (let n = 0; n < plan.nodeCount; n += 1) {

@@ -1,6 +1,6 @@
 /** Why the verdict is what it is: by propagation where it reaches, else by the clash, else by the count. */
 import { conversion } from '../base/length.ts'
-import { jointName, panelName } from '../plan/names.ts'
+import { jointName, nodeName, panelName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
 import type { Summary } from '../roof/answer/answer.ts'
 import type { ConditionRows } from '../roof/conditions/condition-rows.ts'
@@ -16,6 +16,8 @@ type Reason = Pick<Summary, 'reason' | 'reasonKind'>
 /** The reason as a clause without a full stop; null for a plan that lifts. `datum` in the plan's unit. */
 export function reasonFor(plan: Plan, free: FreeRim, result: Raised, rows: ConditionRows, datum: number): Reason {
   if (result.verdict === 'lifts') return { reason: null, reasonKind: null }
+  const unmet = unmetWords(result, rows)
+  if (unmet !== null) return { reason: unmet, reasonKind: 'clash' }
   const unfolding = unfoldingWords(plan, free, result, rows)
   if (unfolding !== null) return { reason: unfolding, reasonKind: 'clash' }
   if (rowCount(rows.hard) + rowCount(rows.signed) > 0) {
@@ -27,6 +29,13 @@ export function reasonFor(plan: Plan, free: FreeRim, result: Raised, rows: Condi
     if (forced !== null) return { reason: forced, reasonKind: 'propagation' }
   }
   return { reason: countWords(plan, result), reasonKind: 'rank' }
+}
+
+/** Slopes and ponds are no convex conditions: that none was found near the wish is all that is known. */
+function unmetWords({ unmet }: Raised, rows: ConditionRows): string | null {
+  if (unmet.length === 0) return null
+  const places = unmet.map(({ condition, miss }) => `"${rows.held[condition].name}" (missed most at ${miss.panel < 0 ? nodeName(miss.node) : panelName(miss.panel)})`)
+  return `no roof near the asked shape was found that keeps ${words(places)}`
 }
 
 /** A form force asked of a joint that cannot fold, which says more than the clash that it makes; null: there is none. */

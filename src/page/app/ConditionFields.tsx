@@ -60,5 +60,15 @@ export function askedWords(condition: Condition, mm: number): string {
     case 'coplanar': return 'one plane'
     case 'flush': return 'flush'
     case 'form-force': return typeof condition.force === 'string' ? condition.force : forceWords(condition.force)
+    case 'bounds': {
+      const [least, most] = [condition.least ?? null, condition.most ?? null].map((level) => (level === null ? null : `${signed(level * mm)} mm`))
+      return least === null ? `at most ${most ?? ''}` : most === null ? `at least ${least}` : `${least} to ${most}`
+    }
+    case 'one-way': return condition.fold.replace('-', ' ')
+    case 'slope': {
+      const [least, most] = [condition.least_deg ?? null, condition.most_deg ?? null].map((angle) => (angle === null ? null : `${figure(angle, 1)}°`))
+      return least === null ? `at most ${most ?? ''}` : most === null ? `at least ${least}` : `${least} to ${most}`
+    }
+    case 'no-ponding': return 'no ponding'
   }
 }

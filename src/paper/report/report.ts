@@ -2,7 +2,7 @@
  * What an answer says to people, in the order in which it is said. Made once as plain sentences and facts, so that the
  * terminal, a page and a file say the same words.
  */
-import type { Answer, PlanFacts, Verdict } from '../../roof/answer/answer.ts'
+import type { Answer, Binding, PlanFacts, Verdict } from '../../roof/answer/answer.ts'
 import { caution } from '../../roof/answer/caution.ts'
 import { drawingSentences, type DrawingNotes } from './drawing-sentences.ts'
 import { answerFacts, planFacts, type Fact } from './facts.ts'
@@ -63,12 +63,22 @@ function reasonSentences({ summary, conditions }: Answer): string[] {
     sentences.push(`${sentenceOf(`${listWords(names.map((name) => `"${name}"`))} ${names.length === 1 ? 'contradicts itself' : 'clash'} by ${misfit}`)}`)
   }
   if (conditions.length > 0) sentences.push(`${conditionsSentence(conditions)}`)
+  for (const binding of held.binding ?? []) sentences.push(bindingSentence(binding))
   if (!stress.decided) {
     const [fine, coarse] = stress.countAt ?? [stress.freedom, stress.freedom]
     sentences.push(`The count of independent adjustments is not decided: ${fine} or ${coarse}, as nearly flat counts as flat or not.`)
   }
   if (plan.parts > 1) sentences.push(`The plan falls into ${plan.parts} parts that no joint connects; each moves on its own.`)
   return sentences
+}
+
+/** Rises below this, in mm, are none. */
+const noRise_mm = 0.5
+
+function bindingSentence({ condition, at, rise_mm, move_mm }: Binding): string {
+  const without = `without it nodes would move by up to ${lengthWords(move_mm, 'mm')}`
+  if (rise_mm >= noRise_mm) return `"${condition}" binds at ${at} and costs ${lengthWords(rise_mm, 'mm')} of rise; ${without}.`
+  return `"${condition}" binds at ${at} and costs no rise; ${without}.`
 }
 
 /** How many conditions a sentence names. */

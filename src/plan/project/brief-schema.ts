@@ -139,6 +139,18 @@ export const briefSchema: SchemaDocument = {
             ],
           },
         }, ['force']),
+        kind('bounds', 'all nodes between two levels, or on one side of one', ['nodes', 'run', 'rim', 'panels'], {
+          least: number('no node lower than this level'),
+          most: number('no node higher than this level'),
+        }),
+        kind('one-way', 'joints, or all joints between two of the panels, fold one way', ['joints', 'panels'], {
+          fold: { type: 'string', enum: ['ridge', 'valley', 'no-ridge', 'no-valley'], description: 'ridge and valley: by at least 0.6 degrees; no-ridge and no-valley: a joint may stay flat' },
+        }, ['fold']),
+        kind('slope', 'no panel flatter or steeper than this', ['panels'], {
+          least_deg: { type: 'number', minimum: 0, exclusiveMaximum: 90, description: 'least slope, on the side to which the panel falls' },
+          most_deg: { type: 'number', exclusiveMinimum: 0, exclusiveMaximum: 90, description: 'largest slope' },
+        }),
+        kind('no-ponding', 'water runs off: no node inside, and no nodes at one level, lower than all their neighbours', ['panels'], {}),
         kind('profile', 'the nodes of a run, or nodes in order, held to a section', ['run', 'nodes'], {
           section: { $ref: '#/$defs/section' },
           level: number('level of both ends of an arc or pitch; default: the datum'),

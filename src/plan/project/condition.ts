@@ -123,6 +123,38 @@ export interface FormForceCondition extends Common {
   readonly force: number | Fold
 }
 
+/** All nodes between two levels; at least one of them is given. Both the same: that level. */
+export interface BoundsCondition extends Common {
+  readonly kind: 'bounds'
+  readonly at: AtNodes | AtRun | AtRim | AtPanels
+  readonly least?: number | null
+  readonly most?: number | null
+}
+
+/**
+ * Each of the joints, or every joint between two of the panels, folds one way: ridge and valley at least the fold
+ * `leastFold` of roof/conditions; no-valley and no-ridge leave it free to stay flat.
+ */
+export interface OneWayCondition extends Common {
+  readonly kind: 'one-way'
+  readonly at: AtJoints | AtPanels
+  readonly fold: 'ridge' | 'valley' | 'no-ridge' | 'no-valley'
+}
+
+/** No panel flatter than the one or steeper than the other; at least one of them is given. */
+export interface SlopeCondition extends Common {
+  readonly kind: 'slope'
+  readonly at: AtPanels
+  readonly least_deg?: number | null
+  readonly most_deg?: number | null
+}
+
+/** Water runs off every node of the panels: none is lower than or level with all its neighbours. */
+export interface NoPondingCondition extends Common {
+  readonly kind: 'no-ponding'
+  readonly at: AtPanels
+}
+
 export type Condition =
   | LevelCondition
   | FallCondition
@@ -133,11 +165,15 @@ export type Condition =
   | FlushCondition
   | ProfileCondition
   | FormForceCondition
+  | BoundsCondition
+  | OneWayCondition
+  | SlopeCondition
+  | NoPondingCondition
 
 export type ConditionKind = Condition['kind']
 
 /** Kinds that have their name and no code yet; a brief that uses one is refused by that name. */
-export const kindsNotBuilt: readonly string[] = ['bounds', 'one-way', 'slope']
+export const kindsNotBuilt: readonly string[] = []
 
 /**
  * The condition with all its lengths and points multiplied by `factor`: from the brief's unit to the plan's. Names,
@@ -150,6 +186,8 @@ export function inUnit(condition: Condition, factor: number): Condition {
     case 'level':
     case 'fall':
       return { ...condition, at: placeInUnit(condition.at, factor), level: length(condition.level) } as Condition
+    case 'bounds':
+      return { ...condition, at: placeInUnit(condition.at, factor), least: length(condition.least ?? null), most: length(condition.most ?? null) } as Condition
     case 'profile':
       return {
         ...condition,

@@ -47,11 +47,33 @@ export interface Clash {
   readonly misfit_mm: number
 }
 
+/** A hard condition that holds the roof at a bound, and what it costs. */
+export interface Binding {
+  readonly condition: string
+  /** Where: the node of the row that is at its bound. */
+  readonly at: string
+  /** How much more the roof would rise without it; 0 or less: the rise is had all the same. */
+  readonly rise_mm: number
+  /** The largest move of a node without it. */
+  readonly move_mm: number
+}
+
+/** A hard condition that no roof near the asked one was found to keep. */
+export interface Unmet {
+  readonly condition: string
+  /** The panel or node that misses it most. */
+  readonly at: string
+}
+
 export interface HeldFacts {
   readonly freedomLeft: number | null
   readonly frozenJoints: number
   readonly flatGroups: number
   readonly clashes: readonly Clash[]
+  /** Conditions that bound one side and hold the roof, the dearest first; absent: none does. */
+  readonly binding?: readonly Binding[]
+  /** Absent: all are kept, or they clash. */
+  readonly unmet?: readonly Unmet[]
   /** Conditions that stand in the way together, none of them to be spared; only where cures were looked for and some do. */
   readonly blocking?: Blocking
 }

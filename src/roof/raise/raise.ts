@@ -5,23 +5,20 @@
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { ConditionRows } from '../conditions/condition-rows.ts'
-import { joined, rowCount } from '../conditions/rows.ts'
 import { dualWalk } from '../stress/dual-walk.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
-import { flatGroups } from '../stress/frozen-joints.ts'
 import { stressOfGradients } from '../stress/forces.ts'
 import type { LiftSpace } from '../stress/lift-space.ts'
 import { panelPlanes, squaredResidual } from '../stress/panel-bases.ts'
-import { clashOf, sparedClashes, type FoundClash } from './clash.ts'
+import type { FoundClash } from './clash.ts'
+import { choiceWithin, keptBy, prices, type Price, type Unmet } from './inequalities.ts'
 import { integrate } from './integrate.ts'
 import { broughtFlat } from './nearest.ts'
 import { nearRoof } from './near-roof.ts'
-import { oneSided, type OneSided } from './one-sided.ts'
-import { outerRimNodes, type RiseRule } from './rise.ts'
-import { roofOfChoice } from './roof-of-choice.ts'
+import { outerRimNodes, riseOf, type RiseRule } from './rise.ts'
 import { shapeHeights, type Shape } from './shapes.ts'
-import { metricOf, type Metric } from './soft.ts'
-import { underConditions, type UnderConditions } from './under-conditions.ts'
+import { metricOf } from './soft.ts'
+import type { UnderConditions } from './under-conditions.ts'
 
 export interface RaiseQuestion {
   readonly rows: ConditionRows
@@ -59,6 +56,10 @@ export interface Raised {
   readonly riseAsked: number | null
   readonly roof: RaisedRoof | null
   readonly notices: readonly string[]
+  /** Hard conditions that the roof misses: no roof near the wish was found that keeps them. */
+  readonly unmet: readonly Unmet[]
+  /** What hard conditions that are at their bounds cost, the dearest first. */
+  readonly prices: readonly Price[]
 }
 
 /** `known`: the space of an earlier answer about the same plan, see `underConditions`. */
@@ -66,7 +67,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
   const { rows, rule } = question
   const { wish, rise } = wishOf(plan, question)
   const metric = metricOf(areas, rows.soft)
-  const { under, sides, clashes } = yield* keptBy(plan, free, areas, question, wish, metric, known)
+  const { under, sides, clashes } = yield* keptBy(plan, free, areas, rows, question.names, wish, metric, known)
 
   const folding = plan.jointCount - under.frozen.reduce((sum, value) => sum + value, 0)
   const lifts = under.start !== null && (folding === plan.jointCount || question.pitched)
@@ -75,18 +76,22 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
       space: under.space, tilts: under.tilts, areas, metric, sides, rim: outerRimNodes(plan),
       scaleFree: under.scaleFree && sides === null && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
     }
-    const choice = yield* roofOfChoice(ground, under.start, { heights: wish, rise, rule, settle: question.target === null })
-    return {
-      under, clashes, verdict: lifts ? 'lifts' : 'lifts in part', riseAsked: rise,
-      roof: yield* exactRoof(plan, free, under, choice.heights, wish, areas), notices: choice.notice === null ? [] : [choice.notice],
+    const asked = { heights: wish, rise, rule, settle: question.target === null }
+    const within = yield* choiceWithin(ground, under.start, asked, rows)
+    const { choice, unmet } = within
+    const made = {
+      under, clashes, riseAsked: rise, unmet, roof: yield* exactRoof(plan, free, under, choice.heights, wish, areas),
+      notices: choice.notice === null ? [] : [choice.notice],
     }
+    if (unmet.length > 0) return { ...made, verdict: 'does not lift', prices: [] }
+    return { ...made, verdict: lifts ? 'lifts' : 'lifts in part', prices: yield* prices(ground, under.start, asked, within, (heights) => riseOf(heights, ground.rim, rule)) }
   }
   // Rows that contradict each other leave nothing to come near to.
-  if (under.rowClashes.length > 0) return { under, clashes, verdict: 'does not lift', riseAsked: rise, roof: null, notices: [] }
+  if (under.rowClashes.length > 0) return { under, clashes, verdict: 'does not lift', riseAsked: rise, roof: null, notices: [], unmet: [], prices: [] }
   const near = yield* nearRoof(under.space, wish, areas, question.within)
   return {
     under, clashes, verdict: near.within ? 'lifts within tolerance' : 'does not lift', riseAsked: rise,
-    roof: roofOf(plan, free, near.heights, wish, areas, false), notices: [],
+    roof: roofOf(plan, free, near.heights, wish, areas, false), notices: [], unmet: [], prices: [],
   }
 }
 
@@ -98,33 +103,6 @@ export function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Arra
   const rise = question.rise ?? shorterSide / 10
   const amplitude = question.rule.down ? -rise : rise
   return { wish: heights.map((height) => amplitude * height), rise }
-}
-
-interface Kept {
-  readonly under: UnderConditions
-  /** null: no condition bounds one side, or no roof is left. */
-  readonly sides: OneSided | null
-  readonly clashes: readonly FoundClash[]
-}
-
-/** What the hard conditions leave, equalities first and then what bounds one side; or the clash among them. */
-function* keptBy(
-  plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, wish: Float64Array, metric: Metric, known: LiftSpace | null,
-): Steps<Kept> {
-  const { rows, names } = question
-  const under = yield* underConditions(plan, free, rows.hard, names, wish, areas, known)
-  if (under.rowClashes.length > 0) return { under, sides: null, clashes: yield* sparedClashes(plan, rows.hard, names, under.rowClashes) }
-  if (under.start === null) return { under, sides: null, clashes: [yield* clashOf(plan, free, rows.hard, names, areas)] }
-  if (rowCount(rows.signed) === 0) return { under, sides: null, clashes: [] }
-  const sides = oneSided(under.space, metric, rows.signed)
-  const { broken } = yield* sides.held(under.start)
-  if (broken.length === 0) return { under, sides, clashes: [] }
-  // The broken ones held at their bounds clash like any others, and the near roof comes near to them.
-  const hard = joined(rows.hard, rows.signed, broken)
-  const bound = yield* underConditions(plan, free, hard, names, wish, areas)
-  const clashes = bound.rowClashes.length > 0 ? yield* sparedClashes(plan, hard, names, bound.rowClashes) : [yield* clashOf(plan, free, hard, names, areas)]
-  const frozen = new Uint8Array(plan.jointCount).fill(1)
-  return { under: { ...bound, start: null, freedomLeft: null, frozen, ...flatGroups(plan, frozen) }, sides: null, clashes }
 }
 
 /**

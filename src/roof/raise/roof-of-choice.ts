@@ -94,7 +94,7 @@ function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: nu
   const scale = riseOf(direction, rim, { ...wish.rule, datum: null }) + spread(direction)
   if (!(scale > 1e-12 * (spread(rest) + asked))) return { heights: yield* at(0), notice, kept }
   const unit = asked / scale
-  const a = yield* amplitudeFor(riseAt, asked, unit)
+  const a = yield* amplitudeFor(riseAt, asked, unit, ground.sides !== null)
   return { heights: yield* at(a), notice, kept }
 }
 
@@ -107,9 +107,10 @@ function* onSides({ sides }: Ground, heights: Float64Array): Steps<Float64Array>
  * Smallest a >= 0 with rise(a) = asked for a convex rise; where the rise is above the asked one all the way, the a of the
  * least rise; where it never gets there (the peak is held, by conditions that bound one side too), `unit`.
  */
-function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit: number): Steps<number> {
+function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit: number, isBounded: boolean): Steps<number> {
   let low = 0
   let high = unit
+  let goal = asked
   if ((yield* riseAt(0)) > asked) {
     // Above already: walk down the convex valley on the side where it falls.
     let left = -64 * unit, right = 64 * unit
@@ -123,17 +124,26 @@ function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit
     low = bottom
     high = 0
   } else {
-    let doublings = 0
-    while (doublings < 60 && (yield* riseAt(high)) < asked) {
+    // Within bounds the rise may come to an end: once doubling the wish four times brings nothing, that end is gone for.
+    let doublings = 0, idle = 0, last = -Infinity
+    for (;;) {
+      const rise = yield* riseAt(high)
+      if (rise >= asked) break
+      idle = isBounded && rise <= last + 1e-9 * asked ? idle + 1 : 0
+      last = Math.max(last, rise)
+      if (doublings === 60) return unit
+      if (idle === 4) {
+        goal = last * (1 - 1e-9)
+        break
+      }
       high *= 2
       doublings += 1
     }
-    if (doublings === 60) return unit
   }
   for (let k = 0; k < 100; k += 1) {
     const middle = (low + high) / 2
     if (middle === low || middle === high) break
-    if ((yield* riseAt(middle)) < asked) low = middle
+    if ((yield* riseAt(middle)) < goal) low = middle
     else high = middle
   }
   return (low + high) / 2
