@@ -6,10 +6,10 @@ export interface File {
   readonly buffer: Buffer
 }
 
-/** m x n bays of 1.5 m as OBJ, skewed by a fifth. Its freedom with a free rim is m + n - 2 (z = f(x) + g(y), tilts not counted). */
-export function grid(m: number, n: number, name = 'grid.obj'): File {
+/** m x n bays of 1.5 m as OBJ, skewed by a fifth, with heights z. Its freedom with a free rim is m + n - 2 (z = f(x) + g(y), tilts not counted). */
+export function grid(m: number, n: number, name = 'grid.obj', z: (i: number, j: number) => number = () => 0, skew = 0.2): File {
   const lines = ['# unit: m']
-  for (let j = 0; j <= n; j += 1) for (let i = 0; i <= m; i += 1) lines.push(`v ${1.5 * i + 0.3 * j} ${1.5 * j} 0`)
+  for (let j = 0; j <= n; j += 1) for (let i = 0; i <= m; i += 1) lines.push(`v ${1.5 * i + 1.5 * skew * j} ${1.5 * j} ${z(i, j)}`)
   for (let j = 0; j < n; j += 1) {
     for (let i = 0; i < m; i += 1) {
       const a = j * (m + 1) + i + 1
@@ -70,3 +70,5 @@ export function gradient({ nodes, faces }: ReturnType<typeof readObj>, panel: nu
   const det = ux * vy - uy * vx
   return [(uz * vy - uy * vz) / det, (ux * vz - uz * vx) / det]
 }
+
+export const project = (text: string, name = 'other.panewise.json'): File => ({ name, mimeType: 'application/json', buffer: Buffer.from(text) })

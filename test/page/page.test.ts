@@ -2,6 +2,8 @@
 import { afterAll, beforeAll, expect, test } from 'vitest'
 import { startBrowser } from './chromium.ts'
 import { broken, faulty, fourthCorner_mm, gradient, grid, readObj, type File } from './drawings.ts'
+import { keepingTests } from './keeping.ts'
+import { shapingTests } from './shaping.ts'
 import { accepted, downloaded, freeWords, onPlan, opened, raiseStage, read, says, slow, stage, strikeStage } from './stage.ts'
 
 beforeAll(raiseStage, 240_000)
@@ -160,24 +162,17 @@ test('closed in mid-work: the browser kept the last step, the list offers it, an
   await context.close()
 }, slow * 2)
 
-test('two tabs on one project keep one each', async () => {
-  const context = await stage.browser.newContext({ viewport: { width: 1440, height: 900 } })
-  for (const name of ['tab.obj', 'tab.obj']) await accepted(await opened(context), grid(4, 3, name))
-  await new Promise((resolve) => setTimeout(resolve, 800))
-  const third = await opened(context)
-  await third.waitForSelector('.samples button:text-is("tab.obj")')
-  expect(await third.locator('.samples button:text-is("tab.obj")').count()).toBe(2)
-  await context.close()
-}, slow * 2)
-
-test('storage that is full or closed is said, and the work goes on', async () => {
+test('storage that is closed is said, and the work goes on', async () => {
   const page = await opened(undefined, () => {
-    Object.defineProperty(window, 'indexedDB', { value: { open: () => { throw new Error('full') } } })
+    Object.defineProperty(window, 'indexedDB', { value: { open: () => { throw new Error('closed') } } })
   })
   await accepted(page, grid(4, 3))
   await page.waitForFunction(() => document.querySelector('.facts')?.textContent?.includes('not kept'))
   await page.context().close()
 }, slow)
+
+shapingTests()
+keepingTests()
 
 test('names with markup stay text', async () => {
   const page = await opened()

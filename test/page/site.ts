@@ -19,7 +19,7 @@ export async function builtSite(): Promise<Site> {
   // In a process of its own, as the build runs for users: within the test runner its helper functions come out rewritten.
   const root = join(import.meta.dirname, '..', '..')
   const words = [join(root, 'node_modules', 'vite', 'bin', 'vite.js'), 'build', '--mode', 'page', '--outDir', folder, '--emptyOutDir', '--logLevel', 'error']
-  const { NODE_ENV: _, ...env } = process.env
+  const env = { ...process.env, NODE_ENV: 'production' }
   const code = await new Promise<number | null>((resolve) => spawn(process.execPath, words, { cwd: root, env, stdio: ['ignore', 'ignore', 'inherit'] }).on('close', resolve))
   if (code !== 0) throw new Error('The page could not be built.')
   const server = createServer((request, response) => {

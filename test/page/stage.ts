@@ -3,6 +3,7 @@ import { readFileSync } from 'node:fs'
 import type { Browser, BrowserContext, Page } from 'playwright-core'
 import { planArea } from '../../src/paper/drawing/plan-drawing.ts'
 import { fitted, toSheet } from '../../src/paper/drawing/plan-window.ts'
+import type { Plan } from '../../src/plan/plan.ts'
 import { grid as gridPlan } from '../make/plans.ts'
 import { startBrowser } from './chromium.ts'
 import type { File } from './drawings.ts'
@@ -73,10 +74,15 @@ export async function downloaded(page: Page, word: string): Promise<string> {
 }
 
 /** Where a point of the skewed grid lies on the screen, by the drawing's own window; `skew` as `grid` of drawings.ts has it. */
-export async function onPlan(page: Page, m: number, n: number, x: number, y: number, skew = 0.2): Promise<[number, number]> {
-  const box = (await page.locator('.cell-plan canvas').boundingBox())!
+export function onPlan(page: Page, m: number, n: number, x: number, y: number, skew = 0.2): Promise<[number, number]> {
   const made = gridPlan(m, n, { bay: 1.5 })
   for (let i = 0; i < made.nodeCount; i += 1) made.x[i] = made.x[i]! + skew * made.y[i]!
-  const [px, py] = toSheet(fitted(made, planArea(box.width, box.height, true)), x + skew * y, y)
+  return onPlanOf(page, made, x + skew * y, y)
+}
+
+/** The same for any plan. */
+export async function onPlanOf(page: Page, plan: Plan, x: number, y: number): Promise<[number, number]> {
+  const box = (await page.locator('.cell-plan canvas').boundingBox())!
+  const [px, py] = toSheet(fitted(plan, planArea(box.width, box.height, true)), x, y)
   return [box.x + px, box.y + py]
 }

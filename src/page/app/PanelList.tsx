@@ -96,8 +96,8 @@ export function PanelList() {
   )
 }
 
-/** Millimetres in a list: never "0.00", which nothing made is; a triangle is flat by nature. */
-const hundredths = (mm: number): string => (mm === 0 ? '0' : mm < 0.01 ? '< 0.01' : figure(mm, 2))
+/** Millimetres in a list: never "0.00", which nothing made is. */
+const hundredths = (mm: number): string => (mm < 0.01 ? '<0.01' : figure(mm, 2))
 
 function flagWords(flag: number, over: number) {
   if (flag === 0) return null

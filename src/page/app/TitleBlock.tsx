@@ -32,10 +32,7 @@ export function TitleBlock() {
       <dl className="facts">
         <div>
           <dt>Drawing</dt><dd className="clip" title={opening?.file.name ?? doc?.name}>{opening?.file.name ?? doc?.name ?? '\u2013'}{doc === null && opening === null ? '' : `, ${unit}`}</dd>
-          <dt>Springing</dt>
-          <dd>{doc === null || opening !== null ? 'lowest of the rim' : <LengthField label="" named="Springing" bare="mm" to={unit} empty="lowest of rim" start={doc.brief.datum === null ? '' : typable(doc.brief.datum * mm)}
-            onValue={(datum) => desk.take({ doc: withDatum(doc, datum), what: `Springing at ${figure(datum * mm)} mm`, before: doc.brief.datum === null ? 'was the lowest of the rim' : `was ${figure(doc.brief.datum * mm)} mm` })}
-            onClear={() => doc.brief.datum !== null && desk.take({ doc: withDatum(doc, null), what: 'Springing at the lowest of the rim', before: `was ${figure(doc.brief.datum * mm)} mm` })} />}</dd>
+          <dt>Rim, mm</dt><dd className="clip">{answer === null || opening !== null ? 'not yet raised' : rimWords(answer)}</dd>
         </div>
         <div>
           <dt>Rise over springing</dt>
@@ -43,7 +40,10 @@ export function TitleBlock() {
             ? <LengthField label="" named="Rise over springing" bare="mm" to={unit} start={typable(rise * mm)} onValue={(value) => value > 0 && desk.brief({ rise: value }, `Rise ${figure(value * mm)} mm`, `was ${figure(rise * mm)} mm`)}
               onClear={() => doc.brief.rise !== null && desk.take({ doc: withRise(doc, null), what: 'Rise as it comes', before: `was ${figure(rise * mm)} mm` })} />
             : 'not yet raised'}</dd>
-          <dt>Rim, mm</dt><dd className="clip">{answer === null || opening !== null ? 'not yet raised' : rimWords(answer)}</dd>
+          <dt>Springing</dt>
+          <dd>{doc === null || opening !== null ? 'lowest of the rim' : <LengthField label="" named="Springing, empty for the lowest node of the rim" bare="mm" to={unit} empty="lowest" start={doc.brief.datum === null ? '' : typable(doc.brief.datum * mm)}
+            onValue={(datum) => desk.take({ doc: withDatum(doc, datum), what: `Springing at ${figure(datum * mm)} mm`, before: doc.brief.datum === null ? 'was the lowest of the rim' : `was ${figure(doc.brief.datum * mm)} mm` })}
+            onClear={() => doc.brief.datum !== null && desk.take({ doc: withDatum(doc, null), what: 'Springing at the lowest of the rim', before: `was ${figure(doc.brief.datum * mm)} mm` })} />}</dd>
         </div>
         <div>
           <dt>Flat within, mm</dt>

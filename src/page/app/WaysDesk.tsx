@@ -54,14 +54,14 @@ function WayCard({ number, way, answer }: { readonly number: number; readonly wa
     setValue(0)
   }
   const picture = useMemo(() => wayPicture(plan, way), [plan, way])
-  const rise = value < 0 ? way.riseDown * -value : way.riseUp * (value === 0 ? 100 : value)
+  const rise = value < 0 ? way.riseDown * -value : way.riseUp * value
   return (
     <li>
       <span>{number}</span><span className="note">{value === 0 ? '' : signed(value)}</span>
       <svg viewBox="0 0 84 46" aria-hidden="true">{picture.panels.map(({ d, shade }, i) => <path key={i} d={d} style={{ fillOpacity: shade }} />)}<circle className="peak" cx={picture.peak[0]} cy={picture.peak[1]} r={3} /></svg>
       <input type="range" min={-most} max={most} step={1} value={value} aria-label={`Way ${number}, mm at its peak, ${nodeName(way.peak)}`} onChange={(event) => move(Number(event.target.value))} onPointerUp={drop} onKeyUp={(event) => { if (/^(?:Arrow|Page|Home|End)/.test(event.key)) drop() }} />
       <NumberField label="" named={`Way ${number}, mm`} empty="mm" start="" onValue={(amount) => { move(amount); drop() }} />
-      <small className="note">{value === 0 ? `${nodeName(way.peak)}; rise ${signed(rise)} mm for 100` : `rise ${signed(rise)} mm`}</small>
+      <small className="note">{value === 0 ? nodeName(way.peak) : `rise ${signed(rise)}`}</small>
     </li>
   )
 }
