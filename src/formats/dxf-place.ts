@@ -12,6 +12,7 @@ import { tilted } from './dxf-head.ts'
 import { after, inPlace, placedPoint, shift, type Placing } from './dxf-placing.ts'
 import type { Common, Insert, Mesh, Path, Shape, Text } from './dxf-shapes.ts'
 import { DxfSheet } from './dxf-sheet.ts'
+import { farthest } from './text-number.ts'
 
 /** Entities that a drawing may come to once its blocks are unfolded. */
 export const mostEntities = 1_000_000
@@ -118,7 +119,7 @@ class Placer {
     }
     const size = Math.sqrt(Math.abs(placing[0] * placing[5] - placing[1] * placing[4]))
     this.sheet.sketch.text({
-      text, at: inPlan(at), middle: inPlan(middle), height: height * size, layer, kind, tag, block: block === null ? null : inPlan(block),
+      text, at: inPlan(at), middle: inPlan(middle), height: height * size, layer, kind, tag, block: block === null ? null : placedPoint(placing, ...block),
     })
   }
 
@@ -170,6 +171,9 @@ class Placer {
     if (around.open.length >= deepest) return trouble(insert, 'too-deep', `its block is nested more than ${deepest} deep`, cure)
     const { columns, rows, columnStep, rowStep } = insert
     if (columns * rows > mostEntities) return tooMany(insert)
+    // The block's own point is where its base point comes to.
+    const [px, py, pz] = placedPoint(around.placing, ...placedPoint(insert.placing, 0, 0, 0))
+    if (around.open.length === 0 && pz !== 0 && Math.abs(px) <= farthest && Math.abs(py) <= farthest) sheet.sketch.block({ name: block.name, at: [px, py, pz], layer })
     const open = [...around.open, key]
     const look = this.drawn(insert, layer, around.look)
     const [x, y, z] = block.base

@@ -4,7 +4,7 @@
  */
 import type { Unit } from '../base/length.ts'
 import type { LeftOut, Repair } from '../base/repair.ts'
-import type { DrawnCircle, DrawnText, Drawing, Look, Loops } from '../plan/drawing.ts'
+import type { DrawnCircle, DrawnText, Drawing, Look, Loops, PlacedBlock } from '../plan/drawing.ts'
 import { Doubles, Integers } from '../base/growing.ts'
 
 /** Closed polygons being collected; see Loops. */
@@ -52,6 +52,7 @@ export class Sketch {
   private readonly lookIndex = new Map<string, number>()
   private readonly texts: DrawnText[] = []
   private readonly circles: DrawnCircle[] = []
+  private readonly blocks: PlacedBlock[] = []
   private readonly markPoint = new Integers()
   private readonly markLayer = new Integers()
   private readonly leftOutCounts = new Map<string, { kind: string; layer: string; count: number }>()
@@ -124,6 +125,10 @@ export class Sketch {
     this.texts.push(text)
   }
 
+  block(block: PlacedBlock): void {
+    this.blocks.push(block)
+  }
+
   circle(circle: DrawnCircle): void {
     this.circles.push(circle)
   }
@@ -174,6 +179,7 @@ export class Sketch {
       ...(this.looks.length === 0 ? {} : { looks: this.looks, segmentLook: this.segmentLook.array() }),
       ...(this.texts.length === 0 ? {} : { texts: this.texts }),
       ...(this.circles.length === 0 ? {} : { circles: this.circles }),
+      ...(this.blocks.length === 0 ? {} : { blocks: this.blocks }),
       leftOut: this.leftOut,
       repairs: this.repairs,
     }

@@ -7,6 +7,7 @@ import type { FormatOptions } from '../formats/format.ts'
 import type { Drawing } from '../plan/drawing.ts'
 import { emptyBrief, readBrief, type Brief } from '../plan/project/brief.ts'
 import type { Options } from '../plan/project/options.ts'
+import { withDrawnLevels } from '../plan/project/drawn-level-conditions.ts'
 import { readOptionsOf } from '../plan/project/wishes.ts'
 import { planOfLines } from '../plan/which-lines.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
@@ -44,7 +45,13 @@ export function* reading(request: Request): Steps<Result<Reading>> {
   if (!drawing.ok) return drawing
   const read = yield* planOfLines(drawing.value, readOptionsOf(brief.value, request.options, statedUnit(drawing.value)))
   if (!read.ok) return { ok: false, problem: placed(read.problem, { file: request.source.name }) }
-  return ok({ brief: brief.value, read: read.value, target: null, layers: drawing.value.layers })
+  // A list of levels takes the place of those in the drawing.
+  const { levels = [], plan, notices } = read.value
+  if (request.options.levels !== null && levels.length > 0) {
+    const said = 'The levels in the drawing are not held, since --levels gives others.'
+    return ok({ brief: brief.value, read: { ...read.value, levels: [], notices: [...notices, said] }, target: null, layers: drawing.value.layers })
+  }
+  return ok({ brief: withDrawnLevels(brief.value, levels, plan.unit), read: read.value, target: null, layers: drawing.value.layers })
 }
 
 /** What readers of formats need to know of the options. */

@@ -40,6 +40,8 @@ export interface Drawing {
   readonly texts?: readonly DrawnText[]
   /** Whole circles: each is an outline too, chorded. */
   readonly circles?: readonly DrawnCircle[]
+  /** Blocks of the model that stand off level 0. */
+  readonly blocks?: readonly PlacedBlock[]
   readonly leftOut: readonly LeftOut[]
   /** What reading itself had to do: code "chords", "flattened". */
   readonly repairs: readonly Repair[]
@@ -68,7 +70,13 @@ export interface DrawnText {
   readonly kind: string
   /** Attributes of a block: the attribute's name, and where the block stands. */
   readonly tag: string | null
-  readonly block: readonly [x: number, y: number] | null
+  readonly block: readonly [x: number, y: number, z: number] | null
+}
+
+export interface PlacedBlock {
+  readonly name: string
+  readonly at: readonly [x: number, y: number, z: number]
+  readonly layer: string
 }
 
 export interface DrawnCircle {

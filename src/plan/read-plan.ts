@@ -14,6 +14,8 @@ export interface ReadPlan {
   readonly barWidth?: Float64Array
   /** Building axes that the drawing names, in the plan's unit and place; absent where it names none. */
   readonly axes?: readonly Axis[]
+  /** Levels of the drawing that hold, by node; absent where it states none. */
+  readonly levels?: readonly NodeLevel[]
   /** How exactly the drawing seems to be drawn. */
   readonly exactness?: Exactness
   readonly repairs: readonly Repair[]
@@ -21,6 +23,16 @@ export interface ReadPlan {
   readonly leftOut: readonly LeftOut[]
   /** Sentences that belong to no repair. */
   readonly notices: readonly string[]
+}
+
+/** A level that a drawing states for a node. */
+export interface NodeLevel {
+  readonly node: number
+  /** What the drawing calls it; null: nothing. */
+  readonly name: string | null
+  readonly at: readonly [x: number, y: number]
+  /** In the plan's unit. */
+  readonly level: number
 }
 
 /** How a drawing is to be read; lengths in mm as named, points in the drawing's own coordinates and unit. */
@@ -48,6 +60,8 @@ export interface ReadOptions {
   readonly window?: readonly [readonly [number, number], readonly [number, number]] | null
   /** Only what lies inside this closed line is read: the largest on a layer, or the smallest round a point of the plan's coordinates. */
   readonly inside?: string | readonly [number, number] | null
+  /** How far a level may lie from its node, in mm; null: the default. */
+  readonly levelsWithin_mm?: number | null
   /** Two points of the drawing, in its own coordinates, and their true distance: a number in the plan's unit, or as typed. */
   readonly scaleFrom?: { readonly from: readonly [number, number]; readonly to: readonly [number, number]; readonly length: number | string } | null
 }

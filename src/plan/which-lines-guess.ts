@@ -14,7 +14,7 @@ import type { Drawing } from './drawing.ts'
 import { lineFrame } from './line-work-frame.ts'
 import { counted } from './line-work-words.ts'
 import type { DrawingUnit } from './unit-of-drawing.ts'
-import { onLayers, part, type Kept } from './which-lines-part.ts'
+import { part, type Kept } from './which-lines-part.ts'
 import { linesMeasured, score, type Box, type Group, type Measure } from './which-lines-measure.ts'
 
 export interface Guess {
@@ -39,64 +39,144 @@ export interface Measuring {
   readonly metres: number
 }
 
-/** More layers than these without a panel on any of them are not tried together. */
-const mostTogether = 12
+/** More layers than these that bound no panel each are not tried together: every one of them is tried without. */
+const mostTogether = 6
 
 /** The layers to read; null where there is nothing to choose. */
 export function* layersGuess(drawing: Drawing, how: Measuring): Steps<Guess | null> {
-  const used = layersWithLines(drawing)
+  const classes = classesOf(drawing)
+  const used = classes.list.map((_, c) => c)
   if (used.length < 2) return null
-  const measured = function* (takes: (layer: number) => boolean): Steps<Measure | null> {
-    return yield* measure(part(drawing, onLayers(drawing, takes)), how)
+  const kept = (takes: (c: number) => boolean): Kept => {
+    const by = (list: Int32Array): Uint8Array => Uint8Array.from(list, (c) => (takes(c) ? 1 : 0))
+    return { segments: by(classes.segments), outlines: by(classes.outlines), holes: by(classes.holes) }
+  }
+  const measured = function* (takes: (c: number) => boolean): Steps<Measure | null> {
+    return yield* measure(part(drawing, kept(takes)), how)
   }
   const alone = new Map<number, Measure>()
-  for (const layer of used) {
-    const own = yield* measured((l) => l === layer)
-    if (own !== null) alone.set(layer, own)
+  for (const c of used) {
+    const own = yield* measured((k) => k === c)
+    if (own !== null) alone.set(c, own)
   }
   const whole = alone.size === used.length ? yield* measured(() => true) : null
-  const sum = [...alone.values()].reduce((total, { panels }) => total + panels, 0)
-  if (whole !== null && isClean(whole) && whole.groups.length === 1 && whole.panels >= sum) return null
+  const sumOf = (of: (own: Measure) => number): number => [...alone.values()].reduce((total, own) => total + of(own), 0)
+  if (whole !== null && isClean(whole) && whole.groups.length === 1 && whole.bends <= sumOf(({ bends }) => bends) && whole.panels >= sumOf(({ panels }) => panels) && whole.area >= (1 - cleanShare) * sumOf(({ area }) => area)) return null
 
-  const scores = new Map([...alone].map(([layer, own]) => [layer, score(own)]))
+  const scores = new Map([...alone].map(([c, own]) => [c, score(own)]))
   const byScore = (p: number, q: number): number => (scores.get(q) ?? 0) - (scores.get(p) ?? 0) || p - q
   const order = [...alone.keys()].sort(byScore)
-  let taken: Set<number>
-  let own: Measure
   const [first] = order
   const best = first === undefined ? undefined : alone.get(first)
-  if (best === undefined) return null
-  if (best.groups.length === 0) {
-    const together = yield* lessLayers(used, whole, measured)
-    if (together === null) return null
-    ;({ taken, own } = together)
-  } else {
-    taken = new Set([first])
-    own = best
-    for (const layer of order.slice(1)) {
-      const other = alone.get(layer)
-      if (other === undefined || (other.panels > 0 && !areAlike(own.size, other.size))) continue
-      const both = yield* measured((l) => taken.has(l) || l === layer)
-      if (both === null || !completes(own, other, both)) continue
-      taken.add(layer)
-      own = both
+  if (first === undefined || best === undefined) return null
+  let choice: Choice | null = best.groups.length === 0 ? null : { taken: new Set([first]), own: best }
+  if (choice !== null) choice = yield* completed(choice, order, alone, measured)
+  // Joints may share out over layers of which none bounds a face.
+  const open = used.filter((c) => (alone.get(c)?.groups.length ?? 0) === 0)
+  const together = yield* lessClasses(open, measured)
+  let rival = 0
+  if (together !== null && (choice === null || score(together.own) > score(choice.own))) {
+    rival = choice === null ? 0 : score(choice.own)
+    choice = yield* completed(together, order, alone, measured)
+  }
+  if (choice === null) return null
+  const { taken, own } = choice
+  const rest = used.filter((c) => !taken.has(c))
+  if (rest.length === 0) return null
+  const [next] = rest.filter((c) => (scores.get(c) ?? 0) > 0).sort(byScore)
+  const nextScore = Math.max(rival, next === undefined ? 0 : (scores.get(next) ?? 0))
+  const chosen = used.filter((c) => taken.has(c))
+  const names = listed(chosen.map((c) => classes.list[c].name))
+  const what = `${chosen.length === 1 ? 'layer' : 'layers'} ${names} ${chosen.length === 1 ? 'is' : 'are'} read: ${counted(own.panels, 'face', 'faces')} that look like panels`
+  const then = next === undefined ? 'no other layer has any' : `the next best, ${classes.list[next].name}, has ${alone.get(next)?.groups[0]?.panels ?? 0}`
+  return {
+    kept: kept((c) => taken.has(c)), isOpen: 2 * nextScore >= score(own), words: `${what}; ${then}`,
+    options: next === undefined ? [] : [optionsFor(chosen.map((c) => classes.list[c])), optionsFor([classes.list[next]])],
+    why: 'layer not read', where: own.groups.map(({ box }) => centre(box)),
+  }
+}
+
+interface Choice {
+  readonly taken: Set<number>
+  readonly own: Measure
+}
+
+type Measures = (takes: (c: number) => boolean) => Steps<Measure | null>
+
+/** A choice with all that completes it. */
+function* completed({ taken, own }: Choice, order: readonly number[], alone: ReadonlyMap<number, Measure>, measured: Measures): Steps<Choice> {
+  let at: Choice = { taken, own }
+  for (const c of order) {
+    const other = alone.get(c)
+    if (at.taken.has(c) || other === undefined || (other.panels > 0 && !areAlike(at.own.size, other.size))) continue
+    const before = at.taken
+    const both = yield* measured((k) => before.has(k) || k === c)
+    if (both !== null && completes(at.own, other, both)) at = { taken: new Set([...before, c]), own: both }
+  }
+  return at
+}
+
+/** Lines of one layer; of one look on it, where a layer has a few. */
+interface LineClass {
+  /** "GLAZING", "0 in colour 5". */
+  readonly name: string
+  readonly layer: string
+  readonly colour: string | null
+  readonly lineType: string | null
+}
+
+interface Classes {
+  readonly list: readonly LineClass[]
+  /** Class of each segment, outline and hole. */
+  readonly segments: Int32Array
+  readonly outlines: Int32Array
+  readonly holes: Int32Array
+}
+
+/** A layer with more looks than these is drawn by hand and means nothing by them. */
+const mostLooks = 4
+
+function classesOf({ layers, looks = [], segmentLayer, segmentLook, outlines, holes }: Drawing): Classes {
+  const lookOf = (look: number | undefined): string => {
+    const known = looks[look ?? 0]
+    return known === undefined ? '' : `${known.colour}\n${known.lineType}`
+  }
+  const met = new Map<number, Map<string, number>>()
+  const note = (layer: number, look: number | undefined): void => {
+    const own = met.get(layer) ?? new Map<string, number>()
+    met.set(layer, own)
+    if (!own.has(lookOf(look))) own.set(lookOf(look), -1)
+  }
+  segmentLayer.forEach((layer, i) => { note(layer, segmentLook?.[i]) })
+  for (const { layer, look } of [outlines, holes]) layer.forEach((l, i) => { note(l, look?.[i]) })
+  const list: LineClass[] = []
+  for (const [layer, own] of [...met].sort(([p], [q]) => p - q)) {
+    const isSplit = own.size > 1 && own.size <= mostLooks
+    for (const look of own.keys()) {
+      if (!isSplit && [...own.values()].some((c) => c >= 0)) {
+        own.set(look, list.length - 1)
+        continue
+      }
+      const [colour = '', lineType = ''] = look.split('\n')
+      const sameColour = [...own.keys()].every((each) => each.split('\n')[0] === colour)
+      const said = sameColour ? `in line type ${lineType}` : `in colour ${colour}`
+      own.set(look, list.push({ name: isSplit ? `${layers[layer]} ${said}` : layers[layer], layer: layers[layer], colour: isSplit && !sameColour ? colour : null, lineType: isSplit && sameColour ? lineType : null }) - 1)
     }
   }
-  const rest = used.filter((layer) => !taken.has(layer))
-  if (rest.length === 0) return null
-  const name = (layer: number): string => drawing.layers[layer]
-  const [next] = rest.filter((layer) => (scores.get(layer) ?? 0) > 0).sort(byScore)
-  const nextPanels = next === undefined ? 0 : (alone.get(next)?.groups[0]?.panels ?? 0)
-  const nextScore = next === undefined ? 0 : (scores.get(next) ?? 0)
-  const isOpen = next !== undefined && 2 * nextScore >= score(own)
-  const names = listed([...taken].sort((p, q) => p - q).map(name))
-  const what = `${taken.size === 1 ? 'layer' : 'layers'} ${names} ${taken.size === 1 ? 'is' : 'are'} read: ${counted(own.panels, 'face', 'faces')} that look like panels`
-  const then = next === undefined ? 'no other layer has any' : `the next best, ${name(next)}, has ${nextPanels}`
-  const layer = (l: number): string => `--layer ${quotedOption(name(l))}`
+  const classOf = (layer: number, look: number | undefined): number => met.get(layer)?.get(lookOf(look)) ?? 0
   return {
-    kept: onLayers(drawing, (l) => taken.has(l)), isOpen, words: `${what}; ${then}`,
-    options: next === undefined ? [] : [[...taken].map(layer).join(' '), layer(next)], why: 'layer not read', where: own.groups.map(({ box }) => centre(box)),
+    list, segments: Int32Array.from(segmentLayer, (layer, i) => classOf(layer, segmentLook?.[i])),
+    outlines: Int32Array.from(outlines.layer, (layer, i) => classOf(layer, outlines.look?.[i])), holes: Int32Array.from(holes.layer, (layer, i) => classOf(layer, holes.look?.[i])),
   }
+}
+
+/** The options that choose these lines. */
+function optionsFor(list: readonly LineClass[]): string {
+  const distinct = (of: (each: LineClass) => string | null): string[] => [...new Set(list.map(of).filter((value) => value !== null))]
+  return [
+    ...distinct(({ layer }) => (layer === '' ? null : layer)).map((layer) => `--layer ${quotedOption(layer)}`),
+    ...distinct(({ colour }) => colour).map((colour) => `--colour ${colour}`), ...distinct(({ lineType }) => lineType).map((name) => `--line-type ${quotedOption(name)}`),
+  ].join(' ')
 }
 
 /** The figures to read among those of one choice of layers; null where all are. */
@@ -130,30 +210,31 @@ function* measure(drawing: Drawing, { unit, snap_mm, tolerance_mm, metres }: Mea
   return frame.ok ? yield* linesMeasured(drawing, frame.value, metres) : null
 }
 
-function layersWithLines({ segmentLayer, outlines, holes }: Drawing): number[] {
-  return [...new Set([...segmentLayer, ...outlines.layer, ...holes.layer])].sort((p, q) => p - q)
-}
-
-/** All layers less those that spoil the whole, one after another, for plans whose lines share out over several layers. */
-function* lessLayers(
-  used: readonly number[], whole: Measure | null, measured: (takes: (layer: number) => boolean) => Steps<Measure | null>,
-): Steps<{ taken: Set<number>; own: Measure } | null> {
-  if (used.length > mostTogether) return null
-  let taken = new Set(used)
-  let own = whole
-  for (;;) {
-    let best: { layer: number; own: Measure } | null = null
-    for (const layer of taken) {
-      const less = yield* measured((l) => taken.has(l) && l !== layer)
-      if (less !== null && score(less) > (best === null ? (own === null ? 0 : score(own) * (1 + 1e-9)) : score(best.own))) best = { layer, own: less }
+/** Classes without a face of their own, less those that spoil what they bound together, one after another; null where that is nothing. */
+function* lessClasses(open: readonly number[], measured: Measures): Steps<Choice | null> {
+  if (open.length < 2 || open.length > mostTogether) return null
+  let taken = new Set(open)
+  let own = yield* measured((c) => taken.has(c))
+  while (taken.size > 2) {
+    let best: Choice | null = null
+    for (const out of taken) {
+      const before = taken
+      const less = yield* measured((c) => before.has(c) && c !== out)
+      // Of equals the one with fewer lines, and what is clean before what is more.
+      if (less !== null && less.panels > 0 && (best === null ? own === null || rank(less) >= rank(own) : rank(less) > rank(best.own))) {
+        best = { taken: new Set([...before].filter((c) => c !== out)), own: less }
+      }
     }
     if (best === null) break
-    const { layer } = best
-    taken = new Set([...taken].filter((l) => l !== layer))
-    own = best.own
+    ;({ taken, own } = best)
   }
   return own === null || own.panels === 0 ? null : { taken, own }
 }
+
+const rank = (own: Measure): number => score(own) * (own.loose <= cleanShare * own.length && own.bends === 0 ? cleanerCounts : 1)
+
+/** Clean lines count as this many times what bounds more panels with ends left over. */
+const cleanerCounts = 2
 
 const isClean = ({ length, loose, panels, faces }: Measure): boolean => loose <= cleanShare * length && panels >= (1 - cleanShare) * faces
 
@@ -163,8 +244,8 @@ const isClean = ({ length, loose, panels, faces }: Measure): boolean => loose <=
  */
 function completes(own: Measure, other: Measure, both: Measure): boolean {
   const added = both.panels - own.panels
-  if (added <= 0 || both.loose - own.loose > cleanShare * other.length || both.groups.length >= own.groups.length + other.groups.length + (other.panels > 0 ? 0 : 1)) return false
-  if (other.panels > 0) return added >= other.panels
+  if (added <= 0 || both.bends > own.bends + other.bends || both.loose - own.loose > cleanShare * other.length || both.groups.length >= own.groups.length + other.groups.length + (other.panels > 0 ? 0 : 1)) return false
+  if (other.panels > 0) return added >= other.panels && both.area >= (own.area + other.area) * (1 - cleanShare)
   return own.loose > cleanShare * own.length || both.area <= own.area * (1 + cleanShare)
 }
 

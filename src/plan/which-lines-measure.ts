@@ -7,7 +7,7 @@
  * Tried and dropped: the sum of areas in place of the count. A room or a title block outweighs a roof so.
  */
 import { disjointSets } from '../base/disjoint-sets.ts'
-import { alikeSizes, leastCompact, likeSizes, nearShare, panelSizes_m } from '../base/geometry/tolerance.ts'
+import { alikeSizes, cornerSine, leastCompact, likeSizes, nearShare, panelSizes_m } from '../base/geometry/tolerance.ts'
 import { Integers } from '../base/growing.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
@@ -24,6 +24,8 @@ export interface Measure {
   /** Length of all lines, and of those that bound no face, in the plan's unit. */
   readonly length: number
   readonly loose: number
+  /** Corners of lines inside the plan where nothing else meets: joints meet, furniture has corners of its own. */
+  readonly bends: number
   /** Area of all faces; how many there are. */
   readonly area: number
   readonly faces: number
@@ -158,7 +160,7 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
   })
   const { outlines, holes } = drawing
   return {
-    panels: groups.reduce((sum, { panels }) => sum + panels, 0), length, loose: length - bound, area, faces: faces.size.length,
+    bends: bendsOf(graph, cycles), panels: groups.reduce((sum, { panels }) => sum + panels, 0), length, loose: length - bound, area, faces: faces.size.length,
     size: middle(groups.length === 0 ? [] : (counted.get(order[0])?.sizes ?? [])), groups,
     groupOfSegment: groupOfLine.slice(outlines.point.length + holes.point.length), groupOfOutline: ofLoops(0, outlines.start), groupOfHole: ofLoops(outlines.point.length, holes.start),
   }
@@ -180,6 +182,26 @@ function lineEnds({ outlines, holes, segments }: Drawing): { a: Int32Array; b: I
     b.push(segments[i + 1])
   }
   return { a: a.array(), b: b.array() }
+}
+
+/** Nodes where two edges meet at an angle, faces on both sides. */
+function bendsOf({ x, y, origin, alive, degree, edgeCount }: Graph, cycles: Cycles): number {
+  const first = new Int32Array(x.length).fill(-1)
+  let count = 0
+  for (let e = 0; e < edgeCount; e += 1) {
+    if (alive[e] === 0 || !(cycles.area[cycles.of[2 * e]] > 0 && cycles.area[cycles.of[2 * e + 1]] > 0)) continue
+    for (const node of [origin[2 * e], origin[2 * e + 1]]) {
+      if (degree[node] !== 2) continue
+      const other = origin[2 * e] === node ? origin[2 * e + 1] : origin[2 * e]
+      if (first[node] < 0) {
+        first[node] = other
+        continue
+      }
+      const ux = x[first[node]] - x[node], uy = y[first[node]] - y[node], vx = x[other] - x[node], vy = y[other] - y[node]
+      if (Math.abs(ux * vy - uy * vx) > cornerSine * Math.sqrt((ux * ux + uy * uy) * (vx * vx + vy * vy))) count += 1
+    }
+  }
+  return count
 }
 
 /** Counter-clockwise cycles: 4 pi A / P^2 says how compact each is. */

@@ -13,12 +13,6 @@ export function all({ segmentLayer, outlines, holes }: Drawing): Kept {
   return { segments: new Uint8Array(segmentLayer.length).fill(1), outlines: new Uint8Array(outlines.layer.length).fill(1), holes: new Uint8Array(holes.layer.length).fill(1) }
 }
 
-/** What stays by its layer. */
-export function onLayers({ segmentLayer, outlines, holes }: Drawing, takes: (layer: number) => boolean): Kept {
-  const byLayer = (layers: Int32Array): Uint8Array => Uint8Array.from(layers, (layer) => (takes(layer) ? 1 : 0))
-  return { segments: byLayer(segmentLayer), outlines: byLayer(outlines.layer), holes: byLayer(holes.layer) }
-}
-
 export function isEmpty({ segments, outlines }: Kept): boolean {
   return !segments.includes(1) && !outlines.includes(1)
 }

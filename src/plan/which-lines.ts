@@ -3,12 +3,15 @@
  * of the lines chosen. What the user states is taken as it is; where nothing is stated a guess is made, and said.
  */
 import type { LeftOut, Question, Repair } from '../base/repair.ts'
-import { snap_mm as defaultTolerance_mm } from '../base/geometry/tolerance.ts'
-import { metres } from '../base/length.ts'
+import { pointWithin_mm, snap_mm as defaultTolerance_mm } from '../base/geometry/tolerance.ts'
+import { conversion, metres } from '../base/length.ts'
 import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
-import type { Drawing } from './drawing.ts'
+import type { Drawing, DrawnText } from './drawing.ts'
+import { drawnLevels, type DrawnLevels } from './levels-drawn.ts'
+import { matchedLevels } from './levels-matched.ts'
 import { planFromDrawing } from './from-drawing.ts'
+import { chordsKept } from './which-lines-chords.ts'
 import { leaves, takes } from './office-reduced.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
 import { unitOfDrawing } from './unit-of-drawing.ts'
@@ -30,6 +33,9 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
 
   const axes = drawnAxes(given)
   let drawing = axes === null ? given : withoutAxes(given, axes, said)
+  const levels = drawnLevels(drawing, factor, unit.value.unit)
+  drawing = part(drawing, levels.kept)
+  const found: Found = { axes, levels, options, factor }
   const stated = statedLines(drawing, options, factor)
   if (!stated.ok) return stated
   if (stated.value !== null) {
@@ -40,29 +46,34 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
   const layers = isFree && options.layers === undefined && !leaves(options, 'which-lines') ? yield* layersGuess(drawing, how) : null
   const before = drawing
   if (layers !== null && (!layers.isOpen || takes(options, 'which-lines'))) drawing = part(drawing, layers.kept)
-  let read = yield* planFromDrawing({ ...drawing, leftOut: [] }, options)
+  let read = yield* planFromDrawing(asRead(drawing, given), options)
   if (!read.ok && layers !== null && drawing === before) {
     // All lines together are no plan, so that the question stands beside the best guess.
-    const best = yield* planFromDrawing({ ...part(drawing, layers.kept), leftOut: [] }, options)
+    const best = yield* planFromDrawing(asRead(part(drawing, layers.kept), given), options)
     if (best.ok) read = best
   } else if (!read.ok && drawing !== before) {
     // A guess that gives no plan is none.
-    const whole = yield* planFromDrawing({ ...before, leftOut: [] }, options)
-    if (whole.ok) return ok(finished(whole.value, said, axes, factor))
+    const whole = yield* planFromDrawing(asRead(before, given), options)
+    if (whole.ok) return ok(finished(whole.value, said, found))
   }
   if (layers !== null) say(layers, before, options, said)
   if (isFree && !leaves(options, 'which-lines') && (layers === null || !layers.isOpen || takes(options, 'which-lines')) && (!read.ok || read.value.plan.partCount > 1)) {
     const figures = yield* figuresGuess(drawing, how)
     if (figures !== null && !isEmpty(figures.kept)) {
       const taken = !figures.isOpen || takes(options, 'which-lines')
-      const again = yield* planFromDrawing({ ...part(drawing, figures.kept), leftOut: [] }, options)
+      const again = yield* planFromDrawing(asRead(part(drawing, figures.kept), given), options)
       if (again.ok) {
         say(figures, drawing, options, said)
         if (taken || !read.ok) read = again
       }
     }
   }
-  return read.ok ? ok(finished(read.value, said, axes, factor)) : read
+  return read.ok ? ok(finished(read.value, said, found)) : read
+}
+
+/** The lines chosen, with what was said of reading them alone; what was left out of the whole is said apart. */
+function asRead(drawing: Drawing, given: Drawing): Drawing {
+  return { ...drawing, leftOut: [], repairs: drawing.segments.length === given.segments.length && drawing.outlines.point.length === given.outlines.point.length ? given.repairs : chordsKept(drawing) }
 }
 
 interface Said {
@@ -87,25 +98,44 @@ function say({ kept, isOpen, words, options: ways, why, where }: Guess, drawing:
 
 /** The drawing without the lines of its axes; their names are no longer left out. */
 function withoutAxes(drawing: Drawing, axes: DrawnAxes, said: Said): Drawing {
-  for (const { kind, layer } of axes.names) {
-    const k = said.leftOut.findIndex((each) => each.kind === kind && each.layer.toLowerCase() === layer.toLowerCase())
-    if (k < 0) continue
-    const { count } = said.leftOut[k]
-    if (count > 1) said.leftOut[k] = { ...said.leftOut[k], count: count - 1 }
-    else said.leftOut.splice(k, 1)
-  }
+  notLeftOut(axes.names, said.leftOut)
   said.notices.push(`${axes.words}; their lines bound no panels.`)
   const rest = part(drawing, axes.kept)
   // Where the joints are drawn on nothing but the axes there is no plan without them.
   return isEmpty(axes.kept) ? drawing : rest
 }
 
-function finished(read: ReadPlan, said: Said, axes: DrawnAxes | null, factor: number): ReadPlan {
+/** Words that are taken after all. */
+function notLeftOut(texts: readonly DrawnText[], leftOut: LeftOut[]): void {
+  for (const { kind, layer } of texts) {
+    const k = leftOut.findIndex((each) => each.kind === kind && each.layer.toLowerCase() === layer.toLowerCase())
+    if (k < 0) continue
+    const { count } = leftOut[k]
+    if (count > 1) leftOut[k] = { ...leftOut[k], count: count - 1 }
+    else leftOut.splice(k, 1)
+  }
+}
+
+interface Found {
+  readonly axes: DrawnAxes | null
+  readonly levels: DrawnLevels
+  readonly options: ReadOptions
+  /** From the drawing's numbers to the plan's. */
+  readonly factor: number
+}
+
+function finished(read: ReadPlan, said: Said, { axes, levels, options, factor }: Found): ReadPlan {
   const scaled = ([x, y]: readonly [number, number]): [number, number] => [x * factor, y * factor]
+  const mm = conversion(read.plan.unit, 'mm')
+  const matched = matchedLevels(levels, read.plan, (options.levelsWithin_mm ?? pointWithin_mm) / mm, mm, options)
+  if (takes(options, 'levels')) notLeftOut(levels.words.map(({ text }) => text), said.leftOut)
   return {
     ...read,
-    repairs: [...said.repairs, ...read.repairs], questions: [...said.questions, ...read.questions],
+    repairs: [...said.repairs, ...read.repairs, ...matched.repairs],
+    // What else there is to ask is about lines that may not be the ones.
+    questions: said.questions.length > 0 ? said.questions : read.questions,
     leftOut: [...said.leftOut, ...read.leftOut], notices: [...said.notices, ...read.notices],
     ...(axes === null ? {} : { axes: axes.axes.map(({ name, from, to }) => ({ name, from: scaled(from), to: scaled(to) })) }),
+    ...(matched.levels.length === 0 ? {} : { levels: matched.levels }),
   }
 }

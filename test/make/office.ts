@@ -2,6 +2,7 @@
 import { random } from '../../src/base/random.ts'
 import { dxfText, type Written } from '../formats/dxf-writer.ts'
 import type { Point, Sketch } from '../plan/drawings.ts'
+import { sheetFiles } from './office-sheets.ts'
 import { grid } from './plans.ts'
 import { bond, skewGrid, ways } from './spoilt.ts'
 
@@ -62,5 +63,6 @@ export function officeFiles(): ReadonlyMap<string, string> {
     ['crooked.dxf', dxf(shaken(drawn('outlines', grid(7, 4, { bay: 1.2 }), 1), 11), 1000, 4)],
     ['unit-wrong.dxf', dxf(drawn('single lines', grid(5, 4, { bay: 1.5 }), 1), 1000, 6)],
     ['unscaled.dxf', dxf(drawn('single lines', grid(5, 4, { bay: 1.5 }), 1), 100 / 7.5, null)],
+    ...sheetFiles(),
   ])
 }

@@ -174,3 +174,6 @@ export const axisRadii = 6
 
 /** Share of the circle's radius by which the line of an axis may miss its circle or its middle. */
 export const axisOff = 0.15
+
+/** Sine of the turn from which two lines meet at a corner rather than follow a curve: 17 degrees, twice the turn of a chord of 5 mm sagitta at 1 m radius. */
+export const cornerSine = 0.3

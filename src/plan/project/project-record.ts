@@ -7,6 +7,7 @@ import { ok, type Result } from '../../base/result.ts'
 import { drawnFaces, faceAt, nodePoints, planOfFaces, type DrawnFaces } from '../drawn-faces.ts'
 import type { ReadPlan } from '../read-plan.ts'
 import type { Brief } from './brief.ts'
+import { withDrawnLevels } from './drawn-level-conditions.ts'
 
 export interface Project {
   /** The drawing that the plan was read from, by its file name, and the SHA-256 of its bytes; null: not known. */
@@ -38,11 +39,12 @@ export type Asked = Pick<Project, 'name' | 'sha256' | 'brief' | 'target' | 'leas
  * the brief that the plan has.
  */
 export function projectOf(read: ReadPlan, { name, sha256, brief, target, leastSlope }: Asked): Project {
-  const kept: ReadPlan = { ...read, repairs: read.repairs.filter(({ state }) => state !== 'proposed'), questions: [] }
+  const { levels = [], ...rest } = read
+  const kept: ReadPlan = { ...rest, repairs: read.repairs.filter(({ state }) => state !== 'proposed'), questions: [] }
   const faces = drawnFaces(read.plan, read.heights)
   const factor = conversion(brief.unit ?? faces.unit, faces.unit)
   const voids = (brief.voids ?? []).filter(([x, y]) => faces.isVoid[faceAt(faces, x * factor, y * factor)] === 0)
-  return { name, sha256, faces, read: kept, brief: { ...withoutLines(brief), voids: voids.length === 0 ? null : voids }, target, leastSlope }
+  return { name, sha256, faces, read: kept, brief: { ...withDrawnLevels(withoutLines(brief), levels, read.plan.unit), voids: voids.length === 0 ? null : voids }, target, leastSlope }
 }
 
 /** A plan that was accepted needs no choice of lines. */
@@ -51,12 +53,12 @@ function withoutLines(brief: Brief): Brief {
 }
 
 /** The plan of faces, read as a drawing of which reading had this to say. */
-export function readFaces(faces: DrawnFaces, said: Pick<ReadPlan, 'repairs' | 'leftOut' | 'notices'>): Result<ReadPlan> {
+export function readFaces(faces: DrawnFaces, said: Pick<ReadPlan, 'repairs' | 'leftOut' | 'notices' | 'axes'>): Result<ReadPlan> {
   const plan = planOfFaces(faces)
   if (!plan.ok) return plan
-  const { repairs, leftOut, notices } = said
+  const { repairs, leftOut, notices, axes } = said
   const marks = { points: new Float64Array(), layer: new Int32Array(), layers: [] }
-  return ok({ plan: plan.value, heights: atNodes(faces.heights, nodePoints(faces)), marks, repairs, questions: [], leftOut, notices })
+  return ok({ plan: plan.value, heights: atNodes(faces.heights, nodePoints(faces)), marks, ...(axes === undefined ? {} : { axes }), repairs, questions: [], leftOut, notices })
 }
 
 /** Values of points, taken to the nodes of a plan. */

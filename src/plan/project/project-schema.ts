@@ -34,6 +34,9 @@ export const projectSchema: SchemaDocument = {
     ),
     voids: listOf({ type: 'number', minimum: 1, description: 'a face, by its number in the list of faces' }, 'the faces that carry no panel'),
     heights: listOf(heightOrNone, 'the heights that the drawing gave, one entry a node'),
+    axes: listOf(record('a building axis', {
+      name: text('its name'), from: { $ref: '#/$defs/point' }, to: { $ref: '#/$defs/point' },
+    }, ['name', 'from', 'to']), 'building axes that the drawing names, in the plan\'s unit and place; they bound no panels'),
     reading: record('what reading the drawing did', {
       repairs: listOf(record('a repair', {
         code: text('its kind'), state: { type: 'string', enum: ['applied', 'accepted'], description: 'done of itself, or on a proposal that was taken' },

@@ -22,6 +22,7 @@ export function projectText({ name, sha256, faces, read, brief, target, leastSlo
     faces: Array.from(isVoid, (_, f) => numbers(corner.subarray(start[f], start[f + 1]))),
     voids: voids.length === 0 ? undefined : voids,
     heights: list(faces.heights),
+    axes: read.axes?.map(({ name, from, to }) => ({ name, from, to })),
     reading: said ? { repairs, leftOut, notices } : undefined,
     brief: writtenBrief(brief),
     target: list(atPoints(target, nodePoints(faces), x.length)),

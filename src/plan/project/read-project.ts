@@ -2,6 +2,7 @@
 import { conversion, isUnit } from '../../base/length.ts'
 import { fail, ok, placed, type Problem, type Result } from '../../base/result.ts'
 import type { LeftOut, Repair } from '../../base/repair.ts'
+import type { Axis } from '../axes.ts'
 import { nodePoints, type DrawnFaces } from '../drawn-faces.ts'
 import { briefOf } from './brief.ts'
 import { placedIn, readJson } from './json-text.ts'
@@ -45,6 +46,7 @@ interface WrittenProject {
   readonly voids?: readonly number[]
   readonly heights?: readonly (number | null)[]
   readonly reading?: { readonly repairs?: readonly Repair[]; readonly leftOut?: readonly LeftOut[]; readonly notices?: readonly string[] }
+  readonly axes?: readonly Axis[]
   readonly brief: unknown
   readonly target?: readonly (number | null)[]
   readonly least_slope_deg?: number
@@ -79,7 +81,7 @@ function projectIn(written: WrittenProject): Result<Project> {
     if (list !== undefined && list.length !== count) return damaged(`there are ${count} nodes and ${list.length} ${field === 'heights' ? 'heights' : 'target heights'}`, field)
   }
   const { repairs = [], leftOut = [], notices = [] } = written.reading ?? {}
-  const read = readFaces(faces.value, { repairs, leftOut, notices })
+  const read = readFaces(faces.value, { repairs, leftOut, notices, ...(written.axes === undefined ? {} : { axes: written.axes }) })
   if (!read.ok) return read
   const project: Project = {
     name: written.source.name, sha256: written.source.sha256 ?? null, faces: faces.value, read: read.value, brief: { ...brief.value, voids: null },

@@ -86,10 +86,12 @@ export function wishesOf(brief: Brief, options: Options, unit: Unit): Result<Wis
 export function readOptionsOf(brief: Brief, options: Options, fileUnit: Unit | null): ReadOptions {
   const unit = options.unit ?? fileUnit ?? 'm'
   const factor = conversion(brief.unit ?? unit, unit)
+  const within = options.levelsWithin === null ? null : parsedLength(options.levelsWithin, '--levels-within', unit)
+  const levelsWithin = within !== null && within.ok ? within.value : null
   const voids = options.voids ?? (brief.voids ?? []).map(([x, y]): Point => [x * factor, y * factor])
   return {
     unit: options.unit, scale: options.scale, snap_mm: options.snap_mm, voids, accept: options.accept, leave: options.leave, scaleFrom: options.scaleFrom,
-    planTolerance_mm: options.planTolerance_mm, ...linesOf(brief, options, factor),
+    planTolerance_mm: options.planTolerance_mm, levelsWithin_mm: typeof levelsWithin === 'number' && levelsWithin > 0 ? levelsWithin * conversion(unit, 'mm') : null, ...linesOf(brief, options, factor),
   }
 }
 
