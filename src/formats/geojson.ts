@@ -168,7 +168,7 @@ class GeoJsonReader {
     if (this.problem !== null) return
     const [first] = points
     const last = points[points.length - 1]
-    if (points.length < 4) this.refuse(positions, `a ring needs four positions or more, it has ${points.length}`)
+    if (points.length === 0) this.refuse(positions, 'a ring needs four positions or more, it has 0')
     else if (sketch.x(first) !== sketch.x(last) || sketch.y(first) !== sketch.y(last) || sketch.z(first) !== sketch.z(last)) {
       this.refuse(positions, 'the ring is not closed', 'repeat its first position at its end')
     } else {
@@ -177,7 +177,8 @@ class GeoJsonReader {
         const before = points[(i + points.length - 1) % points.length]
         return sketch.x(point) !== sketch.x(before) || sketch.y(point) !== sketch.y(before) || sketch.z(point) !== sketch.z(before)
       })
-      if (corners.length < 3) this.refuse(positions, 'the ring has fewer than three different corners', 'leave it out')
+      // What is left of an islet when a map is simplified: there and back.
+      if (corners.length < 3) sketch.leaveOut('ring without area', this.layer)
       else into.add(corners, sketch.layer(this.layer), line)
     }
   }

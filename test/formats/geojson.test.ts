@@ -218,11 +218,11 @@ test('what is wrong is said with the path of the value and its line', () => {
     ],
     [
       '{"type":"MultiPolygon","coordinates":[[[[0,0],[1,0],[0,0]]]]}',
-      'line 1, coordinates[0][0]: a ring needs four positions or more, it has 3; correct it, or export the file again.',
+      'the file has no geometry that can be taken, only 1 x ring without area; export the panels as Polygon or their edges as LineString.',
     ],
     [
       '{"type":"Polygon","coordinates":[[[0,0],[1,0],[0,0],[0,0]]]}',
-      'line 1, coordinates[0]: the ring has fewer than three different corners; leave it out.',
+      'the file has no geometry that can be taken, only 1 x ring without area; export the panels as Polygon or their edges as LineString.',
     ],
     [
       '{"type":"LineString","coordinates":[[0,0]]}',
