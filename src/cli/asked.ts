@@ -168,7 +168,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   const record: Record<string, unknown> = {}
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
-    const recorded = ['brief', 'levels', 'target'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
+    const recorded = ['brief', 'levels', 'target', 'densities'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
     record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay', 'cure'].includes(name) ? recorded : recorded[0]
   }
   return record

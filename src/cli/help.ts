@@ -5,6 +5,7 @@ const purpose: Readonly<Record<Command, string>> = {
   read: 'Reads a plan and says what it holds, what was repaired and what is open.',
   check: 'Says whether a plan can be raised into a roof of flat panels under the given conditions. Writes nothing.',
   adjust: 'Moves nodes, as little as can be, until the plan lifts as asked; writes plan.obj, the roof and its lists, shifts.csv and shifts.svg.',
+  balance: 'Keeps the outer rim and lets the other nodes go where their edges balance, so that the plan lifts; writes what adjust writes.',
   raise: 'Raises a plan and writes the roof (roof.obj), the lists (panels.csv, joints.csv, nodes.csv) and summary.json.',
 }
 
@@ -14,6 +15,7 @@ export const usage = `panewise turns the plan of a glazed roof into a roof of fl
   panewise check PLAN...            whether it can be raised
   panewise raise PLAN... --out DIR  the roof and its lists
   panewise adjust PLAN --out DIR    the nearest plan that lifts, and its roof
+  panewise balance PLAN --out DIR   a plan that lifts by construction, from densities
   panewise COMMAND --help           the options of a command
   panewise help brief               the schema of a brief (JSON Schema)
   panewise help formats             what is read of which format
@@ -31,7 +33,7 @@ export function commandHelp(command: Command): string {
     const lines = entries.filter((entry) => entry.group === group).map((entry) => `  ${synopsis(entry).padEnd(width)}  ${entry.help}`)
     return `${group}\n${lines.join('\n')}\n`
   })
-  const out = command === 'raise' || command === 'adjust' ? ' --out DIR' : ''
+  const out = command === 'raise' || command === 'adjust' || command === 'balance' ? ' --out DIR' : ''
   const tried = command === 'check' ? 'The options of raise are known here too, so that a command line can be tried before it writes.\n' : ''
   return (
     `panewise ${command} PLAN...${out} [options]\n\n${purpose[command]}\n${tried}\n${blocks.join('\n')}\n` +

@@ -4,6 +4,7 @@ import { fail, type Problem } from '../base/result.ts'
 import { version } from '../job/run.ts'
 import { adjustPlans } from './adjust.ts'
 import { parseWords, unknownCommand } from './arguments.ts'
+import { balancePlans } from './balance.ts'
 import { checkPlans } from './check.ts'
 import { gaveUp, type Run } from './each-plan.ts'
 import { badUse, stopped, type ExitCode } from './exit-code.ts'
@@ -14,7 +15,7 @@ import { raisePlans } from './raise.ts'
 import { readPlans } from './read.ts'
 import { Screen } from './screen.ts'
 
-const work: Readonly<Record<Command, (run: Run) => Promise<ExitCode>>> = { read: readPlans, check: checkPlans, raise: raisePlans, adjust: adjustPlans }
+const work: Readonly<Record<Command, (run: Run) => Promise<ExitCode>>> = { read: readPlans, check: checkPlans, raise: raisePlans, adjust: adjustPlans, balance: balancePlans }
 
 /** Exit code of a process that was asked to end (SIGTERM): 128 and the signal's number, as shells count. */
 const ended = 143
@@ -53,7 +54,7 @@ async function main(words: readonly string[]): Promise<number> {
   for (const signal of ['SIGTERM', 'SIGHUP'] as const) process.once(signal, stop(ended))
   const exit = await work[command]({ args: args.value, screen, signal: controller.signal })
   if (exit === stopped) {
-    gaveUp(screen, fail('cancelled', command === 'raise' || command === 'adjust' ? 'stopped, nothing was written' : 'stopped').problem)
+    gaveUp(screen, fail('cancelled', command === 'raise' || command === 'adjust' || command === 'balance' ? 'stopped, nothing was written' : 'stopped').problem)
     return bySignal
   }
   return screen.failed ? badUse : exit

@@ -3,7 +3,7 @@ import type { Source } from '../formats/format.ts'
 import type { Options } from '../plan/project/options.ts'
 
 export interface Request {
-  readonly command: 'read' | 'check' | 'raise' | 'adjust'
+  readonly command: 'read' | 'check' | 'raise' | 'adjust' | 'balance'
   readonly source: Source
   readonly options: Options
   /** A brief as text, and the name it goes by. */

@@ -10,6 +10,8 @@ import type { ReadPlan } from '../plan/read-plan.ts'
 import { linearSolver } from '../roof/cures/linear-program.ts'
 import { adjust, type AdjustAnswer } from './adjust.ts'
 import { adjustFiles } from './adjust-files.ts'
+import { balance, type BalanceAnswer, type Densities } from './balance.ts'
+import { balanceFiles } from './balance-files.ts'
 import { check, planFacts, type Checked } from './check.ts'
 import type { OutputFile } from './files.ts'
 import { withOneWay } from './one-way.ts'
@@ -68,6 +70,18 @@ export async function adjustPlan(request: Request, options: DriveOptions = {}): 
 /** The files of an adjusted plan. */
 export async function adjustedFiles(adjusted: AdjustAnswer, options: DriveOptions = {}): Promise<Result<OutputFile[]>> {
   const made = await drive(adjustFiles(adjusted), options)
+  return made === cancelled ? fail('cancelled', 'stopped before the end') : ok(made)
+}
+
+/** Reads, balances the plan by force densities, and checks it; nothing is written. */
+export async function balancePlan(request: Request, densities: Densities, options: DriveOptions = {}): Promise<Result<BalanceAnswer>> {
+  const sha256 = await sha256Of(request.source.bytes)
+  return driven(balance(request, densities, version, sha256), options)
+}
+
+/** The files of a balanced plan. */
+export async function balancedFiles(balanced: BalanceAnswer, options: DriveOptions = {}): Promise<Result<OutputFile[]>> {
+  const made = await drive(balanceFiles(balanced), options)
   return made === cancelled ? fail('cancelled', 'stopped before the end') : ok(made)
 }
 

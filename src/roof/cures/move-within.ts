@@ -37,12 +37,9 @@ export function* movedWithin(question: MoveQuestion, datum: number): Steps<MoveO
     const values = valuesOf(list, heights)
     const over = passedRows(list, values)
     if (over.length === 0) return outcome
-    const share = round === 0 ? lowered(list, values, over) : null
-    if (share !== null) {
-      const rise = share * (wishOf(plan, wish).rise ?? 0)
-      const lower: MoveOutcome = yield* movedNodes({ ...question, wish: { ...wish, rise } })
-      const kept = lower.kind === 'moved' ? rowsOn(lower.moved, conditions, datum, plan.frame.span) : null
-      if (lower.kind === 'moved' && kept !== null && passedRows(kept.list, valuesOf(kept.list, kept.heights)).length === 0) return lower
+    if (round === 0) {
+      const lower: MoveOutcome | null = yield* loweredUntilKept(question, datum, { list, values, over })
+      if (lower !== null) return lower
     }
     for (const row of over) passed.add(keyOf(list, row))
     all.push(joined(rowList().rows(), { ...list, value: list.value.map((value) => value - inside) }, over))
@@ -58,6 +55,32 @@ export function* movedWithin(question: MoveQuestion, datum: number): Steps<MoveO
 /** Hard rows beyond their bounds. */
 const passedRows = (list: ConditionRows['signed'], values: Float64Array): number[] =>
   [...values.keys()].filter((row) => !Number.isFinite(list.softWeight[row]) && values[row] - list.value[row] > clashHeight)
+
+/** Tries of a lower rise: heights follow the rise nearly, so each is nearer than the last. */
+const mostTries = 4
+
+/** The plan adjusted to the highest rise at which no row is passed, as near as a few tries come to it; null: a rise does not do it. */
+function* loweredUntilKept(question: MoveQuestion, datum: number, first: { list: ConditionRows['signed']; values: Float64Array; over: readonly number[] }): Steps<MoveOutcome | null> {
+  const { plan, wish, conditions } = question
+  let { list, values, over } = first
+  let rise = wishOf(plan, wish).rise ?? 0
+  for (let tried = 0; tried < mostTries; tried += 1) {
+    const share = lowered(list, values, over)
+    if (share === null) return null
+    rise *= share * (1 - lowering)
+    const outcome = yield* movedNodes({ ...question, wish: { ...wish, rise } })
+    const kept = outcome.kind === 'moved' ? rowsOn(outcome.moved, conditions, datum, plan.frame.span) : null
+    if (kept === null) return null
+    list = kept.list
+    values = valuesOf(list, kept.heights)
+    over = passedRows(list, values)
+    if (over.length === 0) return outcome
+  }
+  return null
+}
+
+/** A little lower than the share says: the roof of a lower rise is not quite the same roof. */
+const lowering = 1e-4
 
 /** A lower rise than this share of the asked one is no answer. */
 const leastRise = 0.1

@@ -1,0 +1,123 @@
+/** The job "balance": the rim stays, the other nodes go where their edges balance, and the plan lifts by construction. */
+import { conversion } from '../base/length.ts'
+import { fail, ok, type Result } from '../base/result.ts'
+import type { Steps } from '../base/steps.ts'
+import { densitiesFromCsv, type ListedDensity } from '../formats/densities-csv.ts'
+import { decodedText } from '../formats/text-encoding.ts'
+import { jointName, panelName } from '../plan/names.ts'
+import type { Plan } from '../plan/plan.ts'
+import type { NamedFile } from '../plan/project/options.ts'
+import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
+import type { BalanceFacts } from '../roof/answer/balance-facts.ts'
+import { balanced, bearingEdges } from '../roof/cures/balance.ts'
+import { fittedDensities, lengthDensities, uniformDensities } from '../roof/cures/balance-densities.ts'
+import { coordinatesOf, movedPlan } from '../roof/cures/moved-plan.ts'
+import { integrate } from '../roof/raise/integrate.ts'
+import { nodeAreas } from '../roof/raise/nearest.ts'
+import { outerRimNodes, riseOf } from '../roof/raise/rise.ts'
+import { shapeHeights } from '../roof/raise/shapes.ts'
+import { dualWalk } from '../roof/stress/dual-walk.ts'
+import { lessTilt } from '../roof/stress/tilt-part.ts'
+import { answerTo, openQuestion, type Checked } from './check.ts'
+import { withLevels } from './levels.ts'
+import { reading } from './reading.ts'
+import type { Request } from './request.ts'
+
+export type Densities = 'uniform' | 'fit' | 'length' | NamedFile
+
+export interface BalanceAnswer {
+  readonly drawn: Plan
+  /** The answer on the balanced plan, or on the plan as drawn where balancing threw panels over each other. */
+  readonly after: Checked
+  readonly dx_mm: Float64Array
+  readonly dy_mm: Float64Array
+  readonly facts: BalanceFacts
+}
+
+/** Moves below this, in mm, are none that anybody could set out. */
+const counted_mm = 1
+
+export function* balance(request: Request, densities: Densities, version: string, sha256: string): Steps<Result<BalanceAnswer>> {
+  const options = yield* withLevels(request)
+  if (!options.ok) return options
+  const made = yield* reading({ ...request, options: options.value })
+  if (!made.ok) return made
+  const { read, brief } = made.value
+  if (read.questions.length > 0) return openQuestion(request, read.questions)
+  const { plan } = read
+  const wishes = wishesOf(brief, options.value, plan.unit)
+  if (!wishes.ok) return wishes
+  const density = yield* densityOf(plan, densities)
+  if (!density.ok) return density
+  const kind = typeof densities === 'string' ? densities : 'typed'
+  const asked = { ...request, options: { ...options.value, planTolerance_mm: 0 } }
+  const found = yield* balanced(plan, density.value)
+  if (found === null) return fail('no-balance', 'these densities leave a node without a place', null, 'use densities of one sign, or others')
+  const { x, y } = coordinatesOf(plan, found.work)
+  const next = found.crossed.length === 0 ? movedPlan(plan, x, y) : null
+  if (next === null || !next.ok) {
+    const after = yield* answerTo({ request: asked, version, sha256, read, brief, free: null })
+    if (!after.ok) return after
+    const crossed = Array.from(found.crossed, panelName)
+    const zero = new Float64Array(plan.nodeCount)
+    return ok({ drawn: plan, after: after.value, dx_mm: zero, dy_mm: zero, facts: { outcome: 'crossed', densities: kind, crossed, largest_mm: 0, rms_mm: 0, count: 0 } })
+  }
+  const target = heightsOf(next.value, density.value, wishes.value)
+  const heldHeights = { ...asked, options: { ...asked.options, shape: null, target: null } }
+  const after = yield* answerTo({ request: heldHeights, version, sha256, read: { ...read, plan: next.value }, brief: { ...brief, shape: null }, target, free: null })
+  if (!after.ok) return after
+  const mm = conversion(plan.unit, 'mm')
+  const dx_mm = x.map((value, n) => (value - plan.x[n]) * mm)
+  const dy_mm = y.map((value, n) => (value - plan.y[n]) * mm)
+  let largest = 0, squares = 0, count = 0
+  for (let n = 0; n < plan.nodeCount; n += 1) {
+    const shift = Math.hypot(dx_mm[n], dy_mm[n])
+    largest = Math.max(largest, shift)
+    squares += shift * shift
+    if (shift > counted_mm) count += 1
+  }
+  return ok({
+    drawn: plan, after: after.value, dx_mm, dy_mm,
+    facts: { outcome: 'balanced', densities: kind, crossed: [], largest_mm: largest, rms_mm: Math.sqrt(squares / plan.nodeCount), count },
+  })
+}
+
+function* densityOf(plan: Plan, densities: Densities): Steps<Result<Float64Array>> {
+  if (densities === 'uniform') return ok(uniformDensities(plan))
+  if (densities === 'length') return ok(lengthDensities(plan))
+  if (densities === 'fit') return ok(yield* fittedDensities(plan))
+  const text = decodedText(densities)
+  if (!text.ok) return text
+  const listed = densitiesFromCsv(text.value, densities.name)
+  return listed.ok ? typedDensities(plan, listed.value, densities.name) : listed
+}
+
+/** Densities as typed, later rows over earlier ones; edges that no row names bear 1. */
+function typedDensities(plan: Plan, listed: readonly ListedDensity[], file: string): Result<Float64Array> {
+  const density = uniformDensities(plan)
+  for (const { line, from, to, density: value } of listed) {
+    if (from === null) {
+      for (const edge of bearingEdges(plan)) density[edge] = value
+      continue
+    }
+    const wrong = [from, to].find((joint) => joint >= plan.jointCount)
+    if (wrong !== undefined) {
+      return fail('no-such-joint', `there is no joint "${jointName(wrong)}"`, { file, line }, `the plan has joints ${jointName(0)} to ${jointName(plan.jointCount - 1)}`)
+    }
+    for (let joint = from; joint <= to; joint += 1) density[joint] = value
+  }
+  return ok(density)
+}
+
+/** Heights in the plan's unit that these stresses raise, at the asked rise, the way that is asked for (up, or hanging). */
+function heightsOf(plan: Plan, density: Float64Array, wishes: Wishes): Float64Array {
+  const { heights } = integrate(plan, density.subarray(0, plan.jointCount), dualWalk(plan), new Float64Array(3 * plan.partCount))
+  const level = lessTilt(plan, heights, nodeAreas(plan))
+  const rim = outerRimNodes(plan)
+  // Densities > 0 are valleys: turned over they are a dome.
+  const way = level.map((height) => (wishes.down ? height : -height))
+  const rise = riseOf(way, rim, { down: wishes.down, datum: null })
+  const asked = wishes.rise ?? (shapeHeights(plan, 'dome').shorterSide * plan.frame.span) / 10
+  const low = rim.reduce((least, node) => (wishes.down ? Math.max(least, way[node]) : Math.min(least, way[node])), wishes.down ? -Infinity : Infinity)
+  return way.map((height) => (rise > 0 ? ((height - low) * asked) / rise : 0) + (wishes.datum ?? 0))
+}
