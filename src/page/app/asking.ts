@@ -77,6 +77,7 @@ export class Asking {
       this.set({ problem: result.problem, fresh: true })
       return
     }
+    performance.measure('answer', { start: performance.now() - answerMs, end: performance.now() })
     // The plan stays here: it does not come back with every answer.
     const answer = { ...result.value, plan: doc.read.plan }
     this.answers.set(doc, answer)

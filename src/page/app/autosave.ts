@@ -3,7 +3,7 @@
  * tab writes under a number of its own, which it holds by a lock: two tabs on one project do not overwrite each other.
  */
 import type { Desk } from './desk.ts'
-import { docText } from './project-file.ts'
+import { keptText } from './project-file.ts'
 import { heldName, type HeldName } from './tabs.ts'
 
 export interface Saved {
@@ -110,8 +110,10 @@ export function keepSaved(desk: Desk): () => void {
     const now = new Date()
     const time = `${String(now.getHours()).padStart(2, '0')}:${String(now.getMinutes()).padStart(2, '0')}`
     running = running.then(async () => {
+      // In a task of its own: the step is drawn first.
+      await new Promise((resolve) => setTimeout(resolve))
       if (isNew) mine.id = await begun(step.doc.name, step.doc.sha256, keptAs)
-      await save({ id: mine.id, name: step.doc.name, text: docText(step.doc), steps: at + 1, at: time, when: now.getTime() })
+      await save({ id: mine.id, name: step.doc.name, text: keptText(step.doc), steps: at + 1, at: time, when: now.getTime() })
     }).then(
       () => desk.set({ saved: `kept ${time}` }),
       (error: unknown) => desk.set({ saved: notKept(error) }),

@@ -1,6 +1,6 @@
 /** Documents to and from project files; other JSON is left to the readers of drawings. */
 import { fail, type Result } from '../../base/result.ts'
-import { projectText } from '../../plan/project/project-text.ts'
+import { projectLine, projectText } from '../../plan/project/project-text.ts'
 import { documentKind, readProject } from '../../plan/project/read-project.ts'
 import type { Doc } from './state.ts'
 
@@ -13,6 +13,9 @@ export function openProject(name: string, bytes: Uint8Array): Result<Doc> | null
 }
 
 export const docText: (doc: Doc) => string = projectText
+
+/** What the browser keeps. */
+export const keptText: (doc: Doc) => string = projectLine
 
 /** The name of the file to save to: the drawing's, without its ending. */
 export const projectName = (doc: Doc): string => `${doc.name.replace(/(\.panewise)?\.[a-z0-9]{1,8}$/i, '')}.panewise.json`

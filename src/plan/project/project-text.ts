@@ -5,7 +5,12 @@ import { atPoints, type Project } from './project-record.ts'
 import { projectVersion } from './project-schema.ts'
 import { nodePoints } from '../drawn-faces.ts'
 
-export function projectText({ name, sha256, faces, read, brief, target, leastSlope }: Project): string {
+export const projectText = (project: Project): string => documentText(writtenProject(project))
+
+/** The same on one line, a tenth of the work: what is kept after every step. It reads back as the same project. */
+export const projectLine = (project: Project): string => JSON.stringify(writtenProject(project))
+
+function writtenProject({ name, sha256, faces, read, brief, target, leastSlope }: Project): object {
   const { unit, x, y, start, corner, isVoid } = faces
   const list = (values: Float64Array | null): (number | null)[] | undefined =>
     values === null ? undefined : Array.from(values, (value) => (Number.isNaN(value) ? null : value))
@@ -13,7 +18,7 @@ export function projectText({ name, sha256, faces, read, brief, target, leastSlo
   const voids = numbers(isVoid.keys()).filter((number) => isVoid[number - 1] === 1)
   const { repairs, leftOut, notices } = read
   const said = repairs.length + leftOut.length + notices.length > 0
-  return documentText({
+  return {
     panewise: 'project',
     version: projectVersion,
     source: { name, sha256: sha256 ?? undefined },
@@ -27,5 +32,5 @@ export function projectText({ name, sha256, faces, read, brief, target, leastSlo
     brief: writtenBrief(brief),
     target: list(atPoints(target, nodePoints(faces), x.length)),
     least_slope_deg: leastSlope ?? undefined,
-  })
+  }
 }

@@ -6,7 +6,7 @@ import { emptyBrief } from '../../../src/plan/project/brief.ts'
 import { heldForce, heldNode } from '../../../src/plan/project/edits.ts'
 import { projectOf, type Project } from '../../../src/plan/project/project-record.ts'
 import { projectSchema } from '../../../src/plan/project/project-schema.ts'
-import { projectText } from '../../../src/plan/project/project-text.ts'
+import { projectLine, projectText } from '../../../src/plan/project/project-text.ts'
 import { documentKind, readProject } from '../../../src/plan/project/read-project.ts'
 import { misfit } from '../../../src/plan/project/schema.ts'
 import { grid } from '../../make/plans.ts'
@@ -36,6 +36,8 @@ describe('the file', () => {
     if (!read.ok) throw new Error(sentence(read.problem))
     expect(read.value).toEqual(whole())
     expect(projectText(read.value)).toBe(text)
+    const line = readProject(projectLine(read.value), 'it')
+    expect(line.ok && projectText(line.value)).toBe(text)
     expect(read.value.brief.voids).toBeNull()
     expect(read.value.read.repairs.map(({ code }) => code)).toEqual(['joined'])
     expect(documentKind(text)).toBe('project')
