@@ -51,7 +51,7 @@ test('values as people type them', async () => {
   if (!result.ok) throw new Error(sentence(result.problem))
   expect(result.value.options).toEqual({
     unit: 'mm', scale: 50, layers: ['A,B', 'C'], snap_mm: 0, sagitta_mm: 10, voids: [[-3, 4], [1.5, -2]], accept: ['all'], leave: [], scaleFrom: null,
-    rim: { level: '+3.2m' }, datum: '-1.5', levels: null, levelsWithin: '10cm', pitch_deg: 12.5, bearing_deg: -90,
+    rim: { level: '+3.2m' }, datum: '-1.5', levels: null, oneWay: null, levelsWithin: '10cm', pitch_deg: 12.5, bearing_deg: -90,
     rise: '2,4 m', down: true, shape: 'barrel', target: 'none', flat_mm: expect.closeTo(1.27, 12) as number, decimals: 0, near: true, csv: 'semicolon', full: true, keeps: noKeeps, planTolerance_mm: null,
   })
   expect(result.value.given).toMatchObject({ rise: '2,4 m', void: ['-3,4', '1,5;-2'], layer: ['A,B', 'C'], down: true })

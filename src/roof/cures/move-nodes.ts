@@ -188,13 +188,15 @@ function kept(plan: Plan, a: Float64Array, b: Float64Array, areas: Float64Array)
 function nodesKnownByPlace(plan: Plan, rows: ConditionRows, conditions: readonly Condition[]): readonly number[] {
   const nodes = new Set<number>()
   rows.held.forEach(({ kind, soft, nodes: held }, index) => {
-    if (soft) return
+    // Folds, slopes and ponds are asked of panels and joints, wherever these go.
+    if (soft || kind === 'one-way' || kind === 'slope' || kind === 'no-ponding') return
     const { at } = conditions[index] as { at?: object }
-    const isLevel = kind === 'level' || kind === 'equal'
+    const isLevel = kind === 'level' || kind === 'equal' || kind === 'bounds'
     const byName = at !== undefined && 'nodes' in at && (at.nodes as readonly unknown[]).every((place) => typeof place === 'string')
     const byRim = at !== undefined && 'rim' in at
     const onRim = at !== undefined && 'run' in at && held.every((node) => plan.rimPasses[node] > 0)
-    if (isLevel && (byName || byRim || onRim)) return
+    const byPanels = kind === 'bounds' && at !== undefined && 'panels' in at
+    if (isLevel && (byName || byRim || onRim || byPanels)) return
     for (const node of held) nodes.add(node)
   })
   return [...nodes]
