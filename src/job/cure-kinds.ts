@@ -10,11 +10,12 @@ import type { Condition } from '../plan/project/condition.ts'
 import type { Cure, CureCode } from '../roof/answer/cure.ts'
 import { addedDiagonals } from '../roof/cures/diagonals.ts'
 import { dividedPlan } from '../roof/cures/diagonals-plan.ts'
-import { packedRim } from '../roof/cures/pack-rim.ts'
+import { packedRim, type PackedRim } from '../roof/cures/pack-rim.ts'
 import { withoutFrozen } from '../roof/cures/remove-joints.ts'
 import { conditionsThatFlatten } from '../roof/cures/smallest-clash.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { wishOf } from '../roof/raise/raise.ts'
+import { outerRimNodes, riseOf } from '../roof/raise/rise.ts'
 import { moveOutcome } from './adjust.ts'
 import { questionOf, type Checked, type PlanQuestion } from './check.ts'
 import { withConditionsOf, withPlan } from './cure-question.ts'
@@ -90,8 +91,23 @@ function* packRim(question: PlanQuestion, checked: Checked): Steps<Result<readon
   if (wishes.pitch !== null) return ok([])
   const { wish, rise } = wishOf(plan, asked.value)
   const names = wishes.conditions.map(({ name }) => name)
-  const found = yield* packedRim({ plan, free, hard: rows.hard, names, areas: nodeAreas(plan), wish, rise, rule: asked.value.rule })
-  if (found === null) return ok([])
+  const { rule } = asked.value
+  const whole = rise ?? riseOf(wish, outerRimNodes(plan), rule)
+  const rim = { plan, free, hard: rows.hard, names, areas: nodeAreas(plan), wish, rule }
+  // Levels that clash are packed until they do not, where nobody asked for a rise; a roof that folds nothing then is no cure.
+  const rises = checked.under.start === null && wishes.rise === null ? [null, whole] : [whole]
+  const tried: Attempt[] = []
+  for (const each of rises) {
+    const found = yield* packedRim({ ...rim, rise: each })
+    if (found !== null) tried.push(packing(question, checked, found))
+  }
+  return ok(tried)
+}
+
+function packing(question: PlanQuestion, checked: Checked, found: PackedRim): Attempt {
+  const { plan } = question.read
+  const { wishes, rows } = checked
+  const names = wishes.conditions.map(({ name }) => name)
   const { span } = plan.frame
   const datum = wishes.datum ?? 0
   const taken = new Set(found.conditions)
@@ -108,14 +124,14 @@ function* packRim(question: PlanQuestion, checked: Checked): Steps<Result<readon
   }
   const by_mm = found.corrections.map((value) => value * span * conversion(plan.unit, 'mm'))
   const order = largestFirst(by_mm.map(Math.abs), 0)
-  return ok([{
+  return {
     figures: {
       code: 'pack-rim', name: null, ...sizesOf(by_mm), where: order.map((k) => nodeName(found.nodes[k])),
       packing: [...by_mm.keys()].sort((a, b) => Math.abs(by_mm[b]) - Math.abs(by_mm[a]) || a - b).map((k) => ({ node: nodeName(found.nodes[k]), by_mm: by_mm[k] })),
       least_mm: found.least * span * conversion(plan.unit, 'mm'),
     },
     next: withConditionsOf(question, checked, [...wishes.conditions.filter((_, index) => !taken.has(index)), ...levels]), changesPlan: false,
-  }])
+  }
 }
 
 /** Where nothing folds, or the asked rise cannot be had. */
@@ -190,9 +206,9 @@ function* worthReleasing({ read }: PlanQuestion, checked: Checked): Steps<readon
   return [...new Set(rows.hard.condition)].sort((a, b) => a - b).map((index) => names[index]).slice(0, mostReleased)
 }
 
-/** No roof, or none with a fold. */
-export function foldsNothing({ under, answer }: Checked): boolean {
-  return under.start === null || answer.summary.held.frozenJoints === answer.plan.jointCount
+/** No roof, or none with a fold where there are joints. */
+export function foldsNothing({ answer: { summary: { verdict } } }: Checked): boolean {
+  return verdict !== 'lifts' && verdict !== 'lifts in part'
 }
 
 const leastMissing = 1e-3

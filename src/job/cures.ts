@@ -52,6 +52,8 @@ export function* curesOfKind(code: CureCode, question: PlanQuestion, checked: Ch
     // A change that the job refuses (a place that is gone) is no cure.
     if (!after.ok || !(attempt.next === null || helps(code, checked, after.value))) continue
     found.push({ cure: cureOf(checked, attempt, after.value), attempt })
+    // The rim is packed in one way: the first that helps.
+    if (code === 'pack-rim') break
   }
   return ok(found)
 }
@@ -94,7 +96,7 @@ function withoutTolerance(question: PlanQuestion): PlanQuestion {
  * leaving joints out help as far as fewer stay unfolded.
  */
 function helps(code: CureCode, before: Checked, after: Checked): boolean {
-  if (after.under.start === null || foldsNothing(after)) return false
+  if (foldsNothing(after)) return false
   if (foldsNothing(before)) return true
   const [a, b] = [before.answer.summary, after.answer.summary]
   const lessFrozen = (code === 'release' || code === 'remove-joints') && b.held.frozenJoints < a.held.frozenJoints

@@ -51,6 +51,7 @@ export function divisiblePanels(plan: Plan, bases: PanelBases): DivisiblePanel[]
 /** Orthonormal N (k x (k - 3)): unit vectors less what the affine functions and the vectors before have of them, largest first. */
 function conditionsOf(plan: Plan, { e }: PanelBases, p: number): Float64Array {
   const from = plan.panelStart[p], k = plan.panelStart[p + 1] - from
+  if (k === 4) return conditionOfQuad(plan, from)
   const taken: Float64Array[] = [
     new Float64Array(k).fill(1 / Math.sqrt(k)),
     Float64Array.from({ length: k }, (_, c) => e[2 * (from + c)]),
@@ -79,6 +80,17 @@ function conditionsOf(plan: Plan, { e }: PanelBases, p: number): Float64Array {
   const basis = new Float64Array(k * (k - 3))
   for (let r = 0; r < k - 3; r += 1) for (let c = 0; c < k; c += 1) basis[c * (k - 3) + r] = taken[3 + r][c]
   return basis
+}
+
+/** Of a quad: each corner's weight is the area of the triangle of the other three, with signs in turn. */
+function conditionOfQuad({ corner, work }: Plan, from: number): Float64Array {
+  const area = (i: number, j: number, k: number): number => {
+    const [a, b, c] = [2 * corner[from + i], 2 * corner[from + j], 2 * corner[from + k]]
+    return (work[b] - work[a]) * (work[c + 1] - work[a + 1]) - (work[b + 1] - work[a + 1]) * (work[c] - work[a])
+  }
+  const weights = [area(1, 2, 3), -area(0, 2, 3), area(0, 1, 3), -area(0, 1, 2)]
+  const size = Math.hypot(...weights)
+  return Float64Array.from(weights, (weight) => weight / size)
 }
 
 /** All diagonals that run inside the panel and leave a panel on both sides. */

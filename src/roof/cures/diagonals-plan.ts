@@ -1,4 +1,7 @@
-/** A plan with panels divided by diagonals: all nodes as they were; one piece keeps the panel's name, the others come last. */
+/**
+ * A plan with panels divided by diagonals: one piece keeps the panel's name, the others come last; nodes are numbered by first
+ * use again, as a reader of the new plan will.
+ */
 import type { Result } from '../../base/result.ts'
 import { ok } from '../../base/result.ts'
 import type { Plan } from '../../plan/plan.ts'
@@ -29,7 +32,7 @@ export function dividedPlan(plan: Plan, diagonals: readonly Diagonal[]): Result<
   const corners = loops.map((loop, k) => loop.map((c) => plan.corner[plan.panelStart[owner[k]] + c]))
   const start = Int32Array.from([0, ...corners.map((loop) => loop.length)])
   for (let k = 1; k < start.length; k += 1) start[k] += start[k - 1]
-  const made = planFromFaces({ unit: plan.unit, x: plan.x, y: plan.y, start, corner: Int32Array.from(corners.flat()), ordered: true })
+  const made = planFromFaces({ unit: plan.unit, x: plan.x, y: plan.y, start, corner: Int32Array.from(corners.flat()) })
   if (!made.ok) return made
   return ok({ plan: made.value.plan, nodeFrom: made.value.pointOfNode, panelsFrom: owner.map((panel) => [panel]) })
 }

@@ -15,9 +15,11 @@ import type { Steps } from '../../base/steps.ts'
 import { expand, reduce, type LiftSpace } from '../stress/lift-space.ts'
 import type { DividedForm } from './diagonals-form.ts'
 
-/** Steps with p = 1 and with p = 1/2: past these the order of the folds no longer changes (12 x 8 bays, 200 to 2,000 cells). */
-const convexSteps = 8
-const sparseSteps = 14
+/** Steps with p = 1 and with p = 1/2: past these the order of the folds hardly changes (bays and cells, 70 to 2,000 panels). */
+const convexSteps = 4
+const sparseSteps = 9
+/** eps falls by this a step. */
+const narrowing = 1 / 4
 /** Folds below this share of the largest are none: it bounds the weights, and with them the condition of K. */
 const leastShare = 1e-4
 /** What keeps K regular over the lifts that are there already, in spans: far below any W. */
@@ -28,8 +30,11 @@ export interface SparseFolds {
   readonly folds: readonly Float64Array[]
 }
 
-/** `pull`: b = T^T t'' by heights (length nodeCount), null: no rise is asked and h0 alone forces the folds. */
-export function* sparseFolds(space: LiftSpace, form: DividedForm, pull: Float64Array | null): Steps<SparseFolds> {
+/**
+ * `pull`: b = T^T t'' by heights (length nodeCount), null: no rise is asked and h0 alone forces the folds. null comes back as
+ * soon as the folds are spread over more than `most` diagonals.
+ */
+export function* sparseFolds(space: LiftSpace, form: DividedForm, pull: Float64Array | null, most: number): Steps<SparseFolds | null> {
   const { elimination, analysis } = space
   const { panels } = form
   let folds: Float64Array[] = panels.map(({ diagonals }) => new Float64Array(diagonals.length).fill(1))
@@ -64,9 +69,22 @@ export function* sparseFolds(space: LiftSpace, form: DividedForm, pull: Float64A
     })
     if (!(largest > 0)) break
     folds = folds.map((list) => list.map((c) => c / largest))
-    eps = Math.max(eps / 2, leastShare)
+    eps = Math.max(eps * narrowing, leastShare)
+    if (step >= convexSteps + 2 && spread(folds) > most) return null
   }
   return { folds }
+}
+
+/** Over how many the folds are spread: (sum c)^2 / sum c^2. */
+function spread(folds: readonly Float64Array[]): number {
+  let sum = 0, squares = 0
+  for (const list of folds) {
+    for (const c of list) {
+      sum += c
+      squares += c * c
+    }
+  }
+  return squares > 0 ? (sum * sum) / squares : 0
 }
 
 /** V diag(w) V^T (m x m). */

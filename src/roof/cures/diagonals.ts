@@ -33,6 +33,11 @@ export interface DiagonalQuestion {
   readonly down: boolean
 }
 
+/** Diagonals are a cure when they are few: at most so many, or so many of the panels. */
+const leastDiagonals = 8
+const mostShare = 0.25
+/** So many times as many are tried together, most of which are then not needed. */
+const mostTried = 4
 /** A wish that leaves less than this share of itself beyond the lifts asks for no diagonals. */
 const leastPull = 1e-6
 /** Cosine between what the wish asks and what the diagonals give below which they do not serve it: one corner folded off costs next to nothing. */
@@ -51,8 +56,10 @@ export function* addedDiagonals(question: DiagonalQuestion): Steps<AddedDiagonal
   const form = dividedForm(space, panels, (heights) => applyForm(plan, bases, heights))
   const pull = start === null ? null : beyondLifts(space, start, wish)
   if (start !== null && pull === null) return null
-  const { folds } = yield* sparseFolds(space, form, pull)
-  const ranked = ranking(form, folds)
+  const most = Math.max(leastDiagonals, Math.floor(mostShare * plan.panelCount))
+  const sparse = yield* sparseFolds(space, form, pull, most)
+  if (sparse === null) return null
+  const ranked = ranking(form, sparse.folds)
   if (ranked.length === 0) return null
   const trial = trialOf(space, form, pull)
   let taken: Chosen | null = null
@@ -60,10 +67,10 @@ export function* addedDiagonals(question: DiagonalQuestion): Steps<AddedDiagonal
     yield { stage: 'Trying diagonals', done: Math.min(1, count / ranked.length) }
     const set = withoutCrossings(form, ranked.slice(0, count))
     taken = yield* trial(set)
-    if (taken !== null || count === ranked.length) break
+    if (taken !== null || count === ranked.length || count > mostTried * most) break
   }
   if (taken === null) return null
-  return { diagonals: turned(plan, form, taken, down) }
+  return taken.set.length > most ? null : { diagonals: turned(plan, form, taken, down) }
 }
 
 /** t'' = wish less its nearest lift, in the heights that the conditions leave; null: nothing is left of it. */

@@ -13,7 +13,7 @@ export interface Minimax {
 }
 
 /** The gap between largest and least at which the steps end, as a share. */
-const closeEnough = 1e-3
+const closeEnough = 2e-3
 /** Towards `anchor`, of the mean square of A: it settles what the largest errors leave open and costs the bound 1e-6. */
 const settling = 1e-9
 
@@ -48,43 +48,63 @@ export function minimax(
 }
 
 /**
- * Of all b with |A_k . b - r_k| <= most the one nearest to `anchor`: a penalty on what is over, its active rows found by Newton
- * steps on the piecewise quadratic (Pinar, Zenios, SIAM J. Optim. 4 (1994)); what stays over is about 1 / `firm` of a row's pull.
+ * Of all b with |A_k . b - r_k| <= most the one nearest to `anchor`, near enough: minimise
+ *     |b - anchor|^2 + firm * sum (|e_k| - most)_+^2
+ * by Newton steps with halving on the piecewise quadratic, `firm` rising (Pinar, Zenios, SIAM J. Optim. 4 (1994)).
+ * Returns `start`, which keeps the bound, where the steps do not come within `over` of it.
  */
 export function nearestWithin(a: Float64Array, right: Float64Array, columns: number, anchor: Float64Array, start: Float64Array, most: number): Float64Array {
   const rows = right.length
-  const square = a.reduce((sum, value) => sum + value * value, 0) / Math.max(1, rows * columns)
+  const errors = (b: Float64Array): Float64Array => right.map((r, k) => {
+    let e = -r
+    for (let i = 0; i < columns; i += 1) e += a[k * columns + i] * b[i]
+    return e
+  })
+  const value = (b: Float64Array, e: Float64Array, firm: number): number =>
+    b.reduce((sum, x, i) => sum + (x - anchor[i]) ** 2, 0) + firm * e.reduce((sum, each) => sum + Math.max(0, Math.abs(each) - most) ** 2, 0)
   let b = start
-  let before = ''
-  for (let step = 0; step < mostNewtonSteps; step += 1) {
-    const w = new Float64Array(rows)
-    const goal = right.slice()
-    for (let k = 0; k < rows; k += 1) {
-      let e = -right[k]
-      for (let i = 0; i < columns; i += 1) e += a[k * columns + i] * b[i]
-      // Rows at the bound are held to it; at the start, where all lie within, the largest ones are.
-      if (Math.abs(e) < most * (step === 0 ? heldShare : 1 - 1e-12)) continue
-      w[k] = firm
-      goal[k] = right[k] + Math.sign(e) * most
+  let e = errors(b)
+  for (const firm of firmness) {
+    let now = value(b, e, firm)
+    for (let step = 0; step < mostNewtonSteps; step += 1) {
+      const w = new Float64Array(rows)
+      const goal = right.slice()
+      e.forEach((each, k) => {
+        if (Math.abs(each) <= most) return
+        w[k] = firm
+        goal[k] = right[k] + Math.sign(each) * most
+      })
+      const full = weighted(a, goal, columns, anchor, w, 1)
+      let share = 1
+      let next = full, nextErrors = errors(next), then = value(next, nextErrors, firm)
+      while (then > now && share > 1e-3) {
+        share /= 2
+        next = b.map((x, i) => x + share * (full[i] - x))
+        nextErrors = errors(next)
+        then = value(next, nextErrors, firm)
+      }
+      if (!(then < now * (1 - 1e-9))) break
+      b = next
+      e = nextErrors
+      now = then
     }
-    const active = w.join()
-    if (step > 0 && active === before) break
-    before = active
-    b = weighted(a, goal, columns, anchor, w, square)
   }
-  return b
+  return e.every((each) => Math.abs(each) <= (1 + over) * most) ? b : start
 }
 
-const firm = 1e7
-const heldShare = 0.999
-const mostNewtonSteps = 40
+const firmness = [1e2, 1e4, 1e6]
+const mostNewtonSteps = 8
+const over = 3e-3
+
+/** Weights below this count for nothing: they fall by a share a step and would cost as much as the others. */
+const idle = 1e-9
 
 /** (A^T W A + eta I) b = A^T W r + eta anchor, by Cholesky. */
 function weighted(a: Float64Array, right: Float64Array, n: number, anchor: Float64Array, w: Float64Array, eta: number): Float64Array {
   const m = new Float64Array(n * n)
   const x = anchor.map((value) => eta * value)
   for (let k = 0; k < right.length; k += 1) {
-    if (w[k] === 0) continue
+    if (w[k] < idle) continue
     const row = k * n
     for (let i = 0; i < n; i += 1) {
       const f = w[k] * a[row + i]

@@ -8,14 +8,16 @@
  * shoulders and every rim node ends at the bound.
  */
 import { dot } from '../../base/dot.ts'
+import { tau } from '../../base/geometry/tolerance.ts'
 import { gaussians } from '../../base/random.ts'
+import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { joined, rowCount, rowList, type Rows } from '../conditions/rows.ts'
 import { outerRimNodes, riseOf, type RiseRule } from '../raise/rise.ts'
 import { feasibleRoof } from '../raise/under-conditions.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
-import { projected, type LiftSpace } from '../stress/lift-space.ts'
+import { expand, flattened, projected, reduce, type LiftSpace } from '../stress/lift-space.ts'
 import { minimax, nearestWithin, type Minimax } from './pack-rim-minimax.ts'
 
 export interface PackedRim {
@@ -38,24 +40,29 @@ export interface PackQuestion {
   readonly names: readonly string[]
   readonly areas: Float64Array
   readonly wish: Float64Array
-  /** null: the wish's own. */
+  /** null: whatever the least correction leaves. */
   readonly rise: number | null
   readonly rule: RiseRule
 }
 
-/** Numbers in a basis of the lifts (nodes x lifts), and in making it orthonormal (nodes x lifts^2), beyond which this is not tried. */
+/** Numbers in a basis of the lifts (nodes x lifts), and in its inner products (nodes x lifts^2), beyond which this is not tried. */
 const mostNumbers = 8e6
-const mostProducts = 6e8
+const mostProducts = 1.2e9
 /** A peak that lifts follow less than this cannot be raised. */
 const leastRise = 1e-6
-const mostRiseSteps = 6
+const mostRiseSteps = 8
 /** Where the search for the peak begins: a rim that gives way takes up a quarter of the rise on rectangular grids. */
 const peakShare = 0.75
 const farthestPeak = 10
 /** A peak held by another condition gives way to the next highest node. */
 const mostPeaks = 8
-const firstSteps = 120
-const laterSteps = 25
+const firstSteps = 40
+const laterSteps = 15
+const roughSteps = 6
+/** Where the rough search ends. */
+const roughWithin = 0.02
+/** What the rise may miss the asked one by: a tenth of a millimetre of a metre, far below what is set out. */
+const riseWithin = 1e-4
 /** What the largest correction may be over the least found, so that roofs are left to choose from. */
 const slack = 2e-3
 
@@ -72,53 +79,69 @@ export function* packedRim({ plan, free, hard, names, areas, wish, rise, rule }:
   if (found === null) return null
   const { peak, lift } = found
   const basis = yield* basisAlong(space, lift)
-  const along = basis[peak]
+  const along = lift[peak] / basis.scale
 
   // z = start + B a with a_0 set by the rise, so the unknowns are a_1 .. a_{d-1}.
   const count = held.rows.length
   const a = new Float64Array(count * (d - 1))
-  for (let k = 0; k < count; k += 1) for (let i = 1; i < d; i += 1) a[k * (d - 1) + i - 1] = basis[i * n + held.node[k]]
+  const first0 = new Float64Array(count)
+  for (let k = 0; k < count; k += 1) {
+    const row = basis.coordinates(basis.at(held.node[k]))
+    first0[k] = row[0]
+    a.set(row.subarray(1), k * (d - 1))
+  }
   // The wish stands so that its rim is as far above the levels as below.
   const { middle, level } = middles(held, wish)
-  const anchor = Float64Array.from({ length: d - 1 }, (_, i) => {
-    let sum = 0
-    for (let k = 0; k < n; k += 1) sum += basis[(i + 1) * n + k] * (wish[k] - middle + level - start[k])
-    return sum
-  })
+  const anchor = basis.coordinates(basis.along(wish.map((height, k) => height - middle + level - start[k]))).slice(1)
+  if (rise === null) {
+    const rows = Float64Array.from({ length: count * d }, (_, e) => (e % d === 0 ? first0[e / d] : a[Math.floor(e / d) * (d - 1) + (e % d) - 1]))
+    const right = Float64Array.from({ length: count }, (_, k) => held.level[k] - start[held.node[k]])
+    const near = basis.coordinates(basis.along(wish.map((height, k) => height - middle + level - start[k])))
+    const { b, largest, least } = minimax(rows, right, d, near, null, firstSteps)
+    const change = basis.heights(nearestWithin(rows, right, d, near, b, (1 + slack) * largest))
+    return packedBy(hard, held, flattened(space, start.map((height, k) => height + change[k])), least)
+  }
   let last: Minimax | null = null
-  /** The roof whose peak is so far above the levels. */
-  const at = (above: number): { heights: Float64Array; found: Minimax } => {
+  /** The roof whose peak is so far above the levels; `fine`: of those that share the largest correction the one nearest to the wish. */
+  const at = (above: number, steps: number, fine: boolean): { heights: Float64Array; found: Minimax } => {
     const first = (level + above - start[peak]) / along
-    const right = Float64Array.from({ length: count }, (_, k) => held.level[k] - start[held.node[k]] - first * basis[held.node[k]])
-    const found = minimax(a, right, d - 1, anchor, last?.weights ?? null, last === null ? firstSteps : laterSteps)
+    const right = Float64Array.from({ length: count }, (_, k) => held.level[k] - start[held.node[k]] - first * first0[k])
+    const found = minimax(a, right, d - 1, anchor, last?.weights ?? null, steps)
     last = found
-    // Many roofs share the least largest correction: of those the one nearest to the wish.
-    const b = nearestWithin(a, right, d - 1, anchor, found.b, (1 + slack) * found.largest)
-    const heights = start.map((height, i) => height + first * basis[i])
-    for (let i = 1; i < d; i += 1) for (let k = 0; k < n; k += 1) heights[k] += b[i - 1] * basis[i * n + k]
-    return { heights, found }
+    const b = fine ? nearestWithin(a, right, d - 1, anchor, found.b, (1 + slack) * found.largest) : found.b
+    const change = basis.heights(Float64Array.from({ length: d }, (_, i) => (i === 0 ? first : b[i - 1])))
+    return { heights: flattened(space, start.map((height, k) => height + change[k])), found }
   }
   const rim = outerRimNodes(plan)
-  const asked = (rule.down ? -1 : 1) * (rise ?? riseOf(wish, rim, rule))
-  // Secant on the rise, which grows with the peak and all but linearly.
-  let before = 0, riseBefore = riseOf(at(0).heights, rim, rule)
+  const asked = (rule.down ? -1 : 1) * rise
+  // Secant on the rise, which grows with the peak and all but linearly; roughly first, then with the roof that is given out.
+  let before = 0, riseBefore = riseOf(at(0, roughSteps, false).heights, rim, rule)
   let above = peakShare * asked
-  let chosen = at(above)
-  for (let step = 0; step < mostRiseSteps; step += 1) {
+  let chosen = at(above, roughSteps, false)
+  for (let step = 0, fine = false; step < mostRiseSteps; step += 1) {
     yield { stage: 'Packing the rim', done: step / mostRiseSteps }
     const now = riseOf(chosen.heights, rim, rule)
-    if (Math.abs(now - Math.abs(asked)) <= 1e-6 * Math.abs(asked) || !(Math.abs(now - riseBefore) > 0)) break
-    const next = above + ((Math.abs(asked) - now) * (above - before)) / (now - riseBefore)
+    const off = Math.abs(asked) - now
+    const near: boolean = Math.abs(off) <= (fine ? riseWithin : roughWithin) * Math.abs(asked)
+    if ((near && fine) || (now === riseBefore && !near)) break
+    const next = near ? above : above + (off * (above - before)) / (now - riseBefore)
     if (!(next * asked > 0) || Math.abs(next) > farthestPeak * Math.abs(asked)) break
-    before = above
-    riseBefore = now
-    above = next
-    chosen = at(above)
+    if (!near) {
+      before = above
+      riseBefore = now
+      above = next
+    }
+    chosen = at(above, fine ? laterSteps : near ? firstSteps : roughSteps, fine || near)
+    fine ||= near
   }
-  const { nodes, corrections } = corrected(held, chosen.heights)
+  return packedBy(hard, held, chosen.heights, chosen.found.least)
+}
+
+function packedBy(hard: Rows, held: HeldAtRim, heights: Float64Array, least: number): PackedRim {
+  const { nodes, corrections } = corrected(held, heights)
   return {
-    heights: chosen.heights, nodes, corrections, conditions: [...new Set(held.rows.map((r) => hard.condition[r]))],
-    largest: corrections.reduce((most, value) => Math.max(most, Math.abs(value)), 0), least: chosen.found.least,
+    heights, nodes, corrections, conditions: [...new Set(held.rows.map((r) => hard.condition[r]))],
+    largest: corrections.reduce((most, value) => Math.max(most, Math.abs(value)), 0), least,
   }
 }
 
@@ -175,29 +198,69 @@ function corrected(held: HeldAtRim, heights: Float64Array): { nodes: Int32Array;
   return { nodes, corrections: Float64Array.from(nodes, (node) => by.get(node) ?? 0) }
 }
 
-/** Orthonormal lifts (d of length n, one after another): the first along the one given. */
-function* basisAlong(space: LiftSpace, first: Float64Array): Steps<Float64Array> {
+/** -tau T K^-1 T^T h: lifts but for tau / lambda, 1e-7 on usual plans, which is taken out of the roof in the end. */
+function nearlyLifts({ elimination, factor }: LiftSpace, heights: Float64Array, columns: number): Float64Array {
+  return expand(elimination, solve(factor, reduce(elimination, heights, columns), columns), columns).map((value) => -tau * value)
+}
+
+/** Orthonormal lifts q_0 .. q_{d-1} = R L^-T, kept as the lifts R at hand and their Gram matrix's factor L. */
+interface LiftBasis {
+  /** Length of the first lift at hand, q_0 times this. */
+  readonly scale: number
+  /** Row of R at a node, and R^T h for heights h (length d each). */
+  at(node: number): Float64Array
+  along(heights: Float64Array): Float64Array
+  /** L^-1 x: from R^T h to the q's. */
+  coordinates(x: Float64Array): Float64Array
+  /** sum c_i q_i (length nodeCount). */
+  heights(c: Float64Array): Float64Array
+}
+
+/** All lifts of the space, the first along the one given; the others random ones, whose Gram matrix is well enough conditioned. */
+function* basisAlong(space: LiftSpace, first: Float64Array): Steps<LiftBasis> {
   const n = first.length, d = space.dimension
-  const basis = new Float64Array(n * d)
-  basis.set(first)
+  const lifts = new Float64Array(n * d)
+  lifts.set(first)
   const chunk = 8
   for (let from = 1; from < d; from += chunk) {
     yield { stage: 'Packing the rim', done: from / d }
     const columns = Math.min(chunk, d - from)
-    basis.set(projected(space, gaussians(n * columns, 7 + from), columns), from * n)
+    lifts.set(nearlyLifts(space, gaussians(n * columns, 7 + from), columns), from * n)
   }
+  const column = (i: number): Float64Array => lifts.subarray(i * n, (i + 1) * n)
+  const lower = new Float64Array(d * d)
   for (let i = 0; i < d; i += 1) {
     if (i % 16 === 0) yield { stage: 'Packing the rim', done: i / d }
-    const v = basis.subarray(i * n, (i + 1) * n)
-    for (let pass = 0; pass < 2; pass += 1) {
-      for (let j = 0; j < i; j += 1) {
-        const u = basis.subarray(j * n, (j + 1) * n)
-        const share = dot(u, v)
-        for (let k = 0; k < n; k += 1) v[k] -= share * u[k]
-      }
+    for (let j = 0; j <= i; j += 1) {
+      let sum = dot(column(i), column(j))
+      for (let k = 0; k < j; k += 1) sum -= lower[i * d + k] * lower[j * d + k]
+      lower[i * d + j] = i === j ? Math.sqrt(Math.max(sum, 1e-300)) : sum / lower[j * d + j]
     }
-    const size = Math.sqrt(dot(v, v))
-    for (let k = 0; k < n; k += 1) v[k] /= size
   }
-  return basis
+  return {
+    scale: lower[0],
+    at: (node) => Float64Array.from({ length: d }, (_, i) => lifts[i * n + node]),
+    along: (heights) => Float64Array.from({ length: d }, (_, i) => dot(column(i), heights)),
+    coordinates(x) {
+      const c = x.slice()
+      for (let i = 0; i < d; i += 1) {
+        for (let k = 0; k < i; k += 1) c[i] -= lower[i * d + k] * c[k]
+        c[i] /= lower[i * d + i]
+      }
+      return c
+    },
+    heights(c) {
+      const x = c.slice()
+      for (let i = d - 1; i >= 0; i -= 1) {
+        x[i] /= lower[i * d + i]
+        for (let k = 0; k < i; k += 1) x[k] -= lower[i * d + k] * x[i]
+      }
+      const out = new Float64Array(n)
+      for (let i = 0; i < d; i += 1) {
+        const lift = column(i)
+        for (let k = 0; k < n; k += 1) out[k] += x[i] * lift[k]
+      }
+      return out
+    },
+  }
 }

@@ -32,7 +32,7 @@ export function withoutFrozen(plan: Plan, frozen: Uint8Array, keep: Uint8Array):
   const corners = loops.map((loop) => loop.filter((n) => straight[n] === 0))
   const start = Int32Array.from([0, ...corners.map((loop) => loop.length)])
   for (let k = 1; k < start.length; k += 1) start[k] += start[k - 1]
-  const made = planFromFaces({ unit: plan.unit, x: plan.x, y: plan.y, start, corner: Int32Array.from(corners.flat()), ordered: true })
+  const made = planFromFaces({ unit: plan.unit, x: plan.x, y: plan.y, start, corner: Int32Array.from(corners.flat()) })
   if (!made.ok) return made
   return ok({ plan: made.value.plan, nodeFrom: made.value.pointOfNode, panelsFrom: groups, joints })
 }
