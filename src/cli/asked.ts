@@ -8,7 +8,7 @@ import { decodedText } from '../formats/text-encoding.ts'
 import type { Source } from '../formats/format.ts'
 import type { Request } from '../job/request.ts'
 import { shapes } from '../plan/project/brief.ts'
-import { noOptions, type Options } from '../plan/project/options.ts'
+import { keptPatterns, noOptions, type Options } from '../plan/project/options.ts'
 import type { Arguments } from './arguments.ts'
 import { readInput } from './read-input.ts'
 import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedColour, typedInside, typedScale, typedScaleFrom, typedUnit, typedWindow, typedWord } from './typed-values.ts'
@@ -102,6 +102,8 @@ function typedOptions(values: Arguments['values']): Result<Options> {
       largestShift: take('largest-shift', typedLength),
       leastEdge: take('least-edge', typedLength),
       leastCorner_deg: take('least-corner', typedDegrees),
+      keep: several('keep', (text, option) => typedWord(text, keptPatterns, option)) ?? [],
+      keepShape: values.get('keep-shape') ?? [],
     },
     planTolerance_mm: take('plan-tolerance', (text, option) => typedMillimetres(text, option, false)),
     flat_mm: take('flat', (text, option) => typedMillimetres(text, option, true)),
@@ -169,7 +171,7 @@ function given({ values }: Arguments): Record<string, unknown> {
   for (const [name, texts] of values) {
     if (notRecorded.includes(name)) continue
     const recorded = ['brief', 'levels', 'target', 'densities'].includes(name) ? texts.map((text) => text.replace(/^.*[\\/]/, '')) : texts
-    record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay', 'cure'].includes(name) ? recorded : recorded[0]
+    record[name] = recorded.length === 0 ? true : ['layer', 'colour', 'line-type', 'void', 'accept', 'leave', 'stay', 'cure', 'keep', 'keep-shape'].includes(name) ? recorded : recorded[0]
   }
   return record
 }

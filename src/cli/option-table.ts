@@ -45,6 +45,8 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'stay', value: 'NODE', repeatable: true, group: 'What the plan keeps', help: 'this node stays where it is, like N4 (repeatable)' },
   { name: 'rim-nodes', value: 'slide|fixed|free', group: 'What the plan keeps', help: 'rim nodes slide along straight rim lines (default), stay, or move freely' },
   { name: 'bend', value: null, group: 'What the plan keeps', help: 'straight joint runs may bend' },
+  { name: 'keep', value: 'bays|symmetry|axes', repeatable: true, group: 'What the plan keeps', help: 'equal bays stay equal; a symmetric plan stays so; nodes slide along building axes (repeatable)' },
+  { name: 'keep-shape', value: 'PANEL', repeatable: true, group: 'What the plan keeps', help: 'this panel keeps its shape in the plan, like P4 (repeatable)' },
   { name: 'largest-shift', value: 'LENGTH', group: 'What the plan keeps', help: 'no node moves by more' },
   { name: 'least-edge', value: 'LENGTH', group: 'What the plan keeps', help: 'no edge gets shorter (default: a quarter of what it is)' },
   { name: 'least-corner', value: 'DEGREES', group: 'What the plan keeps', help: 'no corner gets sharper (default: half of what it is)' },

@@ -139,7 +139,7 @@ function* answerOf(plan: Plan, verdict: Verdict | null, after: Checked, moved: M
   const within = noFold && after.answer.summary.verdict === 'lifts' && largest <= (options.planTolerance_mm ?? defaultPlanTolerance_mm)
   // What the same heights would have been on the plan as drawn.
   const asDrawn = yield* flatness(plan, plan.x, plan.y, moved.adjustment.state.heights.map((height) => height * plan.frame.span))
-  const { fixedCount, slidingCount, straightCount, active, iterations } = moved.adjustment
+  const { fixedCount, slidingCount, straightCount, bayCount, mirrorCount, shapeCount, active, iterations } = moved.adjustment
   return {
     drawn: plan, after, dx_mm, dy_mm,
     facts: {
@@ -148,7 +148,7 @@ function* answerOf(plan: Plan, verdict: Verdict | null, after: Checked, moved: M
       cornerBefore_mm: asDrawn.corner.reduce((most, corner) => Math.max(most, corner), 0) * mm,
       cornerAfter_mm: after.answer.summary.roof?.cornerMax_mm ?? null,
       heightError: moved.heightError * plan.frame.span,
-      held: { fixed: fixedCount, sliding: slidingCount, byConditions: moved.placed, straight: straightCount, limits: active.length }, iterations,
+      held: { fixed: fixedCount, sliding: slidingCount, byConditions: moved.placed, straight: straightCount, limits: active.length, bays: bayCount, mirrorLines: mirrorCount, shapes: shapeCount }, iterations,
     },
   }
 }

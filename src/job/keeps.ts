@@ -14,6 +14,12 @@ export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {
     if (node < 0 || node >= plan.nodeCount) return fail('no-such-node', `the plan has no node ${name}`, { field: '--stay' }, `its nodes are N1 to N${plan.nodeCount}`)
     fixed.push(node)
   }
+  const shapes: number[] = []
+  for (const name of keeps.keepShape) {
+    const panel = indexOfName(name, 'P')
+    if (panel < 0 || panel >= plan.panelCount) return fail('no-such-panel', `the plan has no panel ${name}`, { field: '--keep-shape' }, `its panels are P1 to P${plan.panelCount}`)
+    shapes.push(panel)
+  }
   const { span } = plan.frame
   const lengths: (number | null)[] = []
   for (const [option, typed] of [['--largest-shift', keeps.largestShift], ['--least-edge', keeps.leastEdge]] as const) {
@@ -25,7 +31,8 @@ export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {
   const corner = keeps.leastCorner_deg
   if (corner !== null && !(corner > 0 && corner < 60)) return fail('out-of-range', `a least corner is between 0 and 60 degrees, not ${corner}`, { field: '--least-corner' })
   return ok({
-    rim: keeps.rimNodes, fixed, straight: !keeps.bend, largestShift: lengths[0], leastEdge: lengths[1],
+    rim: keeps.rimNodes, fixed, shapes, bays: keeps.keep.includes('bays'), symmetry: keeps.keep.includes('symmetry'), axes: keeps.keep.includes('axes'),
+    straight: !keeps.bend, largestShift: lengths[0], leastEdge: lengths[1],
     leastAngle: corner === null ? null : (corner * Math.PI) / 180,
   })
 }

@@ -8,7 +8,7 @@ import { nodeAreas } from '../../src/roof/raise/nearest.ts'
 import { raise, type Asked } from './raise.ts'
 
 export const keepsOf = (keeps: Partial<PlanKeeps> = {}): PlanKeeps => ({
-  rim: 'slide', fixed: [], straight: true, leastEdge: null, leastAngle: null, largestShift: null, ...keeps,
+  rim: 'slide', fixed: [], straight: true, leastEdge: null, leastAngle: null, largestShift: null, bays: false, symmetry: false, axes: false, shapes: [], ...keeps,
 })
 
 /** `target`: heights in spans per node. */
@@ -55,7 +55,7 @@ export function newlyReflex(plan: Plan, moved: Plan): number {
   return count
 }
 
-/** Hexagonal cells, flat to flat 1, as they tile `columns` by `rows`, stretched by `wide` along x. */
+/** Hexagonal cells, flat to flat 1, as they tile `columns` by `rows`. */
 export function hexagons(columns: number, rows: number): { points: [number, number][]; faces: number[][] } {
   const points: [number, number][] = []
   const known = new Map<string, number>()
@@ -66,7 +66,8 @@ export function hexagons(columns: number, rows: number): { points: [number, numb
       const cx = i + (j % 2) / 2, cy = j * 1.5 * r
       faces.push(Array.from({ length: 6 }, (_, k) => {
         const [x, y] = [cx + r * Math.cos(((2 * k + 1) * Math.PI) / 6), cy + r * Math.sin(((2 * k + 1) * Math.PI) / 6)]
-        const key = `${x.toFixed(6)} ${y.toFixed(6)}`
+        // Rounded numbers, since the text of -0.0000001 is not that of 0.
+        const key = `${Math.round(1e6 * x)} ${Math.round(1e6 * y)}`
         const at = known.get(key) ?? points.push([x, y]) - 1
         known.set(key, at)
         return at

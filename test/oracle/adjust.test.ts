@@ -21,7 +21,7 @@ const moved = plan([[0, 0], [12, 0], [0, 12], [2, 2], [10, 1], [2.5, 8]], faces)
 const nodeAt = (x: number, y: number): number => [...moved.x.keys()].find((n) => moved.x[n] === x && moved.y[n] === y)!
 const lifted = new Map([['2 2', 2], ['10 1', 1], ['2.5 8', 2]])
 
-const keeps: PlanKeeps = { rim: 'fixed', fixed: [], straight: true, leastEdge: null, leastAngle: null, largestShift: null }
+const keeps: PlanKeeps = { rim: 'fixed', fixed: [], straight: true, leastEdge: null, leastAngle: null, largestShift: null, bays: false, symmetry: false, axes: false, shapes: [] }
 
 function frustum(fixed: readonly number[], shapeWeight: number): Adjustment {
   const rows = conditionRows(moved, [level('rim', { rim: 'outer' })], 0)

@@ -30,8 +30,11 @@ function movedSentences({ summary: { plan } }: Answer, facts: AdjustFacts): stri
   const { held } = facts
   if (held !== null) {
     const parts = [
-      `${counted(held.fixed, 'node')} stayed`, `${held.sliding} slid along rim lines`,
+      `${counted(held.fixed, 'node')} stayed`, `${held.sliding} slid along lines`,
       ...(held.straight > 0 ? [`${counted(held.straight, 'straight run')} through nodes kept`] : []),
+      ...(held.bays > 0 ? [`${counted(held.bays, 'node')} kept in the middle of equal bays`] : []),
+      ...(held.mirrorLines > 0 ? [`symmetric about ${counted(held.mirrorLines, 'line')}`] : []),
+      ...(held.shapes > 0 ? [`${counted(held.shapes, 'panel')} kept ${held.shapes === 1 ? 'its' : 'their'} shape in the plan`] : []),
       ...(held.limits > 0 ? [`${counted(held.limits, 'edge or corner', 'edges or corners')} at the limit`] : []),
     ]
     sentences.push(sentenceOf(parts.join(', ')))

@@ -42,9 +42,16 @@ export interface KeepOptions {
   readonly largestShift: TypedLength | null
   readonly leastEdge: TypedLength | null
   readonly leastCorner_deg: number | null
+  /** What else the plan keeps where it has it: equal bays, symmetry, nodes on building axes (they slide along them). */
+  readonly keep: readonly KeptPattern[]
+  /** Panels that keep their shape in the plan, by name. */
+  readonly keepShape: readonly string[]
 }
 
-export const noKeeps: KeepOptions = { stay: [], rimNodes: 'slide', bend: false, largestShift: null, leastEdge: null, leastCorner_deg: null }
+export const keptPatterns = ['bays', 'symmetry', 'axes'] as const
+export type KeptPattern = (typeof keptPatterns)[number]
+
+export const noKeeps: KeepOptions = { stay: [], rimNodes: 'slide', bend: false, largestShift: null, leastEdge: null, leastCorner_deg: null, keep: [], keepShape: [] }
 
 /** In the drawing's own coordinates and unit; the length as typed. */
 export interface ScaleFrom {

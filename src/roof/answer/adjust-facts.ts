@@ -22,6 +22,16 @@ export interface AdjustFacts {
   readonly cornerAfter_mm: number | null
   /** RMS distance from the heights that were come near to, in the plan's unit. */
   readonly heightError: number | null
-  readonly held: { readonly fixed: number; readonly sliding: number; readonly byConditions: number; readonly straight: number; readonly limits: number } | null
+  readonly held: {
+    readonly fixed: number
+    readonly sliding: number
+    readonly byConditions: number
+    readonly straight: number
+    readonly limits: number
+    /** Nodes kept in the middle of their neighbours, mirror lines, panels that kept their shape. */
+    readonly bays: number
+    readonly mirrorLines: number
+    readonly shapes: number
+  } | null
   readonly iterations: number
 }

@@ -4,6 +4,7 @@
  */
 import { runWithin, runWithin_mm } from '../../base/geometry/tolerance.ts'
 import { conversion } from '../../base/length.ts'
+import { axesOfPlan, runOfAxis } from '../../plan/axes.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Elimination } from '../conditions/eliminate.ts'
 
@@ -18,6 +19,14 @@ export interface Mobility {
 /** What rim nodes do: slide along rim lines that run straight through them (corners stay), stay, or move as they like. */
 export type RimKeep = 'slide' | 'fixed' | 'free'
 
+export interface MobilityKeeps {
+  readonly rim: RimKeep
+  /** Nodes that stay where they are. */
+  readonly fixed: readonly number[]
+  /** Whether nodes on building axes slide along them; where two cross, the node stays. */
+  readonly axes: boolean
+}
+
 export interface MobilityFacts extends Mobility {
   /** Nodes that stay where they are, and nodes that slide. */
   readonly fixedCount: number
@@ -25,7 +34,7 @@ export interface MobilityFacts extends Mobility {
 }
 
 export function mobility(
-  plan: Plan, rim: RimKeep, fixed: Iterable<number>, elimination: Elimination, areas: Float64Array, shapeWeight: number,
+  plan: Plan, { rim, fixed, axes }: MobilityKeeps, elimination: Elimination, areas: Float64Array, shapeWeight: number,
 ): MobilityFacts {
   const { nodeCount } = plan
   const xx = new Float64Array(nodeCount).fill(1)
@@ -43,6 +52,7 @@ export function mobility(
       if (plan.rimPasses[node] > 0) settle(node, lines === null ? 0 : lines[2 * node], lines === null ? 0 : lines[2 * node + 1])
     }
   }
+  if (axes) slideOnAxes(plan, { xx, xy, yy }, settle)
   for (const node of fixed) settle(node, 0, 0)
   let fixedCount = 0, slidingCount = 0
   for (let node = 0; node < nodeCount; node += 1) {
@@ -53,6 +63,24 @@ export function mobility(
   }
   return { xx, xy, yy, zz, fixedCount, slidingCount }
 }
+
+/** Nodes on a building axis that also slide along another line stay where they are. */
+function slideOnAxes(plan: Plan, { xx, xy, yy }: Omit<Mobility, 'zz'>, settle: (node: number, dx: number, dy: number) => void): void {
+  for (const axis of axesOfPlan(plan)) {
+    const length = Math.hypot(axis.to[0] - axis.from[0], axis.to[1] - axis.from[1])
+    const dx = (axis.to[0] - axis.from[0]) / length, dy = (axis.to[1] - axis.from[1]) / length
+    for (const node of runOfAxis(plan, axis)) {
+      const isFree = xx[node] * yy[node] - xy[node] ** 2 > 0.5
+      // What its present line leaves of the axis' direction, squared: all of it when they are one line.
+      const left = xx[node] * dx * dx + 2 * xy[node] * dx * dy + yy[node] * dy * dy
+      if (isFree) settle(node, dx, dy)
+      else if (left < sameLine) settle(node, 0, 0)
+    }
+  }
+}
+
+/** Squared cosine of the angle (3 degrees) within which a rim line and an axis are one. */
+const sameLine = 0.997
 
 /** Direction of the straight rim line through each node, x y x y ..; 0 0 at corners, at pinch nodes and inside (length 2 * nodeCount). */
 function rimLines(plan: Plan): Float64Array {

@@ -12,24 +12,31 @@
  * posed (one corner panel folded off costs next to nothing), so w is kept.
  */
 import { dot } from '../../base/dot.ts'
+import { conversion } from '../../base/length.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Elimination } from '../conditions/eliminate.ts'
+import { baysBlock, baysKept } from './adjust-bays.ts'
 import { boundBlock, bounds, type Bounds, type BoundKind, type BoundOptions } from './adjust-bounds.ts'
 import { flatnessBlock, unflatness } from './adjust-flatness.ts'
 import { tiedBlock } from './adjust-held.ts'
-import { mobility, type MobilityFacts, type RimKeep } from './adjust-mobility.ts'
+import { mobility, type MobilityFacts, type MobilityKeeps } from './adjust-mobility.ts'
 import { filled, stacked, type RowBlock, type StackedRows, type State } from './adjust-rows.ts'
+import { distanceBlock, heldDistances } from './adjust-shapes.ts'
 import { straightBlock, straightPasses } from './adjust-straight.ts'
+import { mirrorBlock, mirrored } from './adjust-symmetry.ts'
 import { applied, leastMove, moveSystem, refactored, type LeastMove, type MoveSystem, type RiseRow } from './adjust-system.ts'
 
 /** What the plan has to keep while it is adjusted. */
-export interface PlanKeeps extends BoundOptions {
-  readonly rim: RimKeep
-  /** Nodes that stay where they are. */
-  readonly fixed: readonly number[]
+export interface PlanKeeps extends BoundOptions, MobilityKeeps {
   /** Whether straight joint runs stay straight. */
   readonly straight: boolean
+  /** Whether bays that are equal as drawn stay equal. */
+  readonly bays: boolean
+  /** Whether what is symmetric as drawn stays symmetric. */
+  readonly symmetry: boolean
+  /** Panels that keep their shape in the plan. */
+  readonly shapes: readonly number[]
 }
 
 export interface AdjustQuestion {
@@ -64,11 +71,18 @@ export interface Adjustment {
   readonly fixedCount: number
   readonly slidingCount: number
   readonly straightCount: number
+  /** Nodes kept in the middle of their neighbours, mirror lines kept, panels that kept their shape. */
+  readonly bayCount: number
+  readonly mirrorCount: number
+  readonly shapeCount: number
   /** Bounds that hold at the end, by kind: how many, and the first corners or edges in question as nodes. */
   readonly active: readonly { readonly kind: BoundKind; readonly nodes: readonly number[] }[]
   /** Bounds that it passes: the plan may not be given out. */
   readonly broken: readonly { readonly kind: BoundKind; readonly nodes: readonly number[] }[]
 }
+
+/** What is within this of equal, or of symmetric, was meant so: what drawings are exact to (our own choice, as the plan tolerance is). */
+const keptWithin_mm = 1
 
 /** Relative change of the shifts at which they count as settled; their sum of squares is then right to about its square. */
 export const settled = 1e-3
@@ -96,19 +110,28 @@ const flatEnough = 1e-15
 
 export function* adjusted(question: AdjustQuestion): Steps<Adjustment> {
   const { plan, target, elimination, areas, shapeWeight, keeps } = question
-  const mobile = mobility(plan, keeps.rim, keeps.fixed, elimination, areas, shapeWeight)
+  const mobile = mobility(plan, keeps, elimination, areas, shapeWeight)
+  const mayMove = (node: number): boolean => mobile.xx[node] + mobile.yy[node] > 0
   const all = bounds(plan, keeps)
   const passes = keeps.straight ? straightPasses(plan) : new Int32Array(0)
-  const fixedBlocks = [flatnessBlock(plan), straightBlock(plan, passes), tiedBlock(plan, elimination)]
+  const withinPlan = (keptWithin_mm * conversion('mm', plan.unit)) / plan.frame.span
+  const bays = keeps.bays ? yield* baysKept(plan, withinPlan, mayMove) : null
+  const mirrors = keeps.symmetry ? yield* mirrored(plan, keptWithin_mm, mayMove) : null
+  const fixedBlocks = [
+    flatnessBlock(plan), straightBlock(plan, passes), tiedBlock(plan, elimination),
+    ...(bays === null ? [] : [baysBlock(plan, bays)]), ...(mirrors === null ? [] : [mirrorBlock(plan, mirrors)]),
+    ...(keeps.shapes.length === 0 ? [] : [distanceBlock(plan, heldDistances(plan, keeps.shapes, mayMove))]),
+  ]
   const anchor: State = { work: plan.work, heights: target }
   const rise = question.riseWeight
-  const run = new Run(plan, anchor, rise, mobile, all, fixedBlocks, shapeWeight, areas)
+  const run = new Run(plan, anchor, rise, mobile, all, fixedBlocks, shapeWeight, areas, mirrors?.home ?? null)
   const ended = yield* run.settle(question.settle ?? settled, question.farBeyond ?? null)
   if (ended !== 'far') yield* run.polish()
   const named = (bound: number): Adjustment['active'][number] => ({ kind: all.kindOf(bound), nodes: all.nodesOf(bound) })
   return {
     state: run.state, ended, iterations: run.iterations, unflat: unflatness(plan, run.state.work, run.state.heights).largest,
     fixedCount: mobile.fixedCount, slidingCount: mobile.slidingCount, straightCount: passes.length / 3,
+    bayCount: (bays?.along.length ?? 0) / 2, mirrorCount: mirrors?.lines.length ?? 0, shapeCount: keeps.shapes.length,
     active: run.active.map(named),
     broken: Array.from({ length: all.count }, (_, bound) => bound).filter((bound) => all.broken(bound, run.state.work)).map(named),
   }
@@ -140,10 +163,13 @@ class Run {
   private readonly all: Bounds
   private readonly blocks: readonly RowBlock[]
   private readonly heightCost: Float64Array
+  private readonly home: Int32Array | null
 
   constructor(
     plan: Plan, anchor: State, rise: Float64Array | null, mobile: MobilityFacts, all: Bounds, blocks: readonly RowBlock[], shapeWeight: number, areas: Float64Array,
+    home: Int32Array | null,
   ) {
+    this.home = home
     this.plan = plan
     this.anchor = anchor
     this.rise = rise
@@ -200,7 +226,6 @@ class Run {
       // Steps shrink at least as they did: the next one would be within.
       const last = changes.length - 1
       if (!this.changed && last >= 0 && change * change <= surely * limit * changes[last] && lift * lift <= surely * limit * lifts[last]) return 'settled'
-      lifts.push(lift)
       // Merits of different penalties do not compare.
       if (this.penalty > penalty) {
         merits = []
@@ -211,6 +236,7 @@ class Run {
       merits.push(this.merit(taken))
       const now = merits.length - 1
       changes.push(change)
+      lifts.push(lift)
       if (now >= patience && merits[now] > (1 - leastGain) * merits[now - patience] && change > leastSettling * changes[now - patience]) return 'slow'
     }
     return 'slow'
@@ -294,6 +320,7 @@ class Run {
     this.placeOf = new Map(this.listed.map((bound, i) => [bound, i]))
     const block = boundBlock(this.plan, this.all, this.listed, (bound) => this.holds.has(bound), this.lead, () => this.toward)
     const stack = stacked([...this.blocks, block])
+    if (this.home !== null) placedAtHome(stack, this.home, this.anchor.work)
     filled(stack, this.state)
     this.system = yield* moveSystem(stack, this.plan.nodeCount, this.mobile)
     return this.system
@@ -379,6 +406,16 @@ class Run {
 
 function moved(state: State, move: LeastMove, share: number): State {
   return { work: state.work.map((value, i) => value + share * move.plan[i]), heights: state.heights.map((value, i) => value + share * move.height[i]) }
+}
+
+/** Rows about nodes and rows about their images are neighbours: a symmetric plan is ordered folded onto itself. */
+function placedAtHome({ rows: { start, node }, at }: StackedRows, home: Int32Array, work: Float64Array): void {
+  for (let r = 0; r + 1 < start.length; r += 1) {
+    at.fill(0, 2 * r, 2 * r + 2)
+    for (let e = start[r]; e < start[r + 1]; e += 1) {
+      for (const axis of [0, 1]) at[2 * r + axis] += work[2 * home[node[e]] + axis] / (start[r + 1] - start[r])
+    }
+  }
 }
 
 /** No smaller than the 2-norm of any panel's multipliers: its k - 3 rows have k entries each. */
