@@ -48,9 +48,9 @@ export function drawnLevels(drawing: Drawing, factor: number, unit: Unit): Drawn
   for (const level of blockLevels(drawing, factor, inWords)) found.push(level)
   const words: (DrawnLevel & { isSure: boolean; text: DrawnText })[] = []
   const figures = figuresOf(drawing)
-  const takeOut = ({ crosses, outline }: Figure): void => {
+  const takeOut = ({ crosses, outline, isSymbol }: Figure): void => {
     for (const i of crosses) kept.segments[i] = 0
-    if (outline >= 0) kept.outlines[outline] = 0
+    if (outline >= 0 && isSymbol) kept.outlines[outline] = 0
   }
   for (const { at: [[x, y]] } of found) for (const figure of figuresAt(figures, [x / factor, y / factor])) takeOut(figure)
   for (const text of drawing.texts ?? []) {
@@ -60,7 +60,8 @@ export function drawnLevels(drawing: Drawing, factor: number, unit: Unit): Drawn
     const isSure = match[1] !== undefined
     if (own.length === 0 && !isSure) continue
     const value = Number(match[2].replace(',', '.')) * (match[1] === '-' || match[1] === '\u2212' ? -1 : 1)
-    if (isSure) own.forEach(takeOut)
+    // A circle or triangle on the layer of the words is their symbol; bars and panes may be as small.
+    if (isSure) own.filter(({ outline }) => outline < 0 || drawing.layers[drawing.outlines.layer[outline]] === text.layer).forEach(takeOut)
     const places = [...own.flatMap((figure) => figure.at), text.at].map(([x, y]): [number, number] => [x * factor, y * factor])
     words.push({ name: text.text, at: places, level: value * inWords, isSure, text })
   }
@@ -117,6 +118,8 @@ interface Figure {
   readonly crosses: readonly number[]
   /** -1: none. */
   readonly outline: number
+  /** Whether the outline is a circle or a triangle. */
+  readonly isSymbol: boolean
 }
 
 /** Everything small in the drawing, sorted by x. */
@@ -135,13 +138,13 @@ function figuresOf({ points, segments, outlines, marks, circles = [], texts = []
     const known = middles.get(key)
     if (known === undefined) middles.set(key, [i])
     else known.push(i)
-    found.push({ at: [middle, p, q], size, crosses: [], outline: -1 })
+    found.push({ at: [middle, p, q], size, crosses: [], outline: -1, isSymbol: false })
   }
   for (const own of middles.values()) {
     if (own.length < 2) continue
     const [i] = own
     const p = at(segments[2 * i]), q = at(segments[2 * i + 1])
-    found.push({ at: [[(p[0] + q[0]) / 2, (p[1] + q[1]) / 2]], size: Math.hypot(q[0] - p[0], q[1] - p[1]), crosses: own, outline: -1 })
+    found.push({ at: [[(p[0] + q[0]) / 2, (p[1] + q[1]) / 2]], size: Math.hypot(q[0] - p[0], q[1] - p[1]), crosses: own, outline: -1, isSymbol: false })
   }
   const round = new Map(circles.map((circle) => [circle.point, circle]))
   for (let l = 0; l < outlines.layer.length; l += 1) {
@@ -149,9 +152,9 @@ function figuresOf({ points, segments, outlines, marks, circles = [], texts = []
     const circle = round.get(outlines.point[outlines.start[l]])
     const size = circle === undefined ? Math.max(...corners.map(([x, y]) => Math.max(Math.abs(x - corners[0][0]), Math.abs(y - corners[0][1])))) : 2 * circle.radius
     if (size > figureSize * highest) continue
-    found.push({ at: circle === undefined ? corners : [circle.at], size, crosses: [], outline: l })
+    found.push({ at: circle === undefined ? corners : [circle.at], size, crosses: [], outline: l, isSymbol: circle !== undefined || corners.length === 3 })
   }
-  for (const point of marks) found.push({ at: [at(point)], size: 0, crosses: [], outline: -1 })
+  for (const point of marks) found.push({ at: [at(point)], size: 0, crosses: [], outline: -1, isSymbol: false })
   return found.sort((f, g) => f.at[0][0] - g.at[0][0] || f.at[0][1] - g.at[0][1])
 }
 

@@ -28,7 +28,8 @@ const longestName = 5
 interface Bubble {
   readonly circle: DrawnCircle
   readonly name: string
-  readonly text: DrawnText
+  /** Its words, several where the axis is drawn twice. */
+  readonly words: readonly DrawnText[]
 }
 
 interface Stretch {
@@ -51,19 +52,20 @@ export function drawnAxes(drawing: Drawing): DrawnAxes | null {
   const pointLoop = new Map<number, number>()
   drawing.outlines.start.forEach((k, l) => { if (l < drawing.outlines.layer.length) pointLoop.set(drawing.outlines.point[k], l) })
   const ends = endsOf(drawing)
-  for (const { circle, name, text } of bubbles) {
-    const stretch = lineFrom(drawing, circle, ends)
-    if (stretch === null) continue
+  for (const { circle, name, words } of bubbles) {
+    const [stretch, ...again] = linesFrom(drawing, circle, ends)
+    if (stretch === undefined) continue
     const loop = pointLoop.get(circle.point)
     if (loop !== undefined) kept.outlines[loop] = 0
-    names.push(text)
-    for (const i of stretch.pieces) {
+    for (const word of words) if (!names.includes(word)) names.push(word)
+    for (const i of [stretch, ...again].flatMap(({ pieces }) => pieces)) {
       used.add(i)
       looks.add(lookOf(i))
     }
     shortest = Math.min(shortest, distance(stretch.a, stretch.b))
     const axis = upperOrLeftFirst(name, stretch.a, stretch.b)
-    const key = [...stretch.pieces].sort((p, q) => p - q).join(' ')
+    // Drawn twice it is one axis; with a circle at both ends too.
+    const key = [axis.from, axis.to].map((end) => end.map((value) => Math.round(value / (axisOff * circle.radius))).join(' ')).join(' ')
     const known = found.get(key)
     // With a circle at both ends the one at the upper or left end names it.
     const isNamedAtStart = axis.from === stretch.a
@@ -96,7 +98,7 @@ function bubblesOf({ circles = [], texts = [] }: Drawing): Bubble[] {
     for (let k = low; k < order.length && order[k].middle[0] <= circle.at[0] + circle.radius; k += 1) {
       if (distance(order[k].middle, circle.at) <= circle.radius || distance(order[k].at, circle.at) <= circle.radius * 1e-3) inside.push(order[k])
     }
-    if (inside.length === 1) found.push({ circle, name: inside[0].text, text: inside[0] })
+    if (inside.length > 0 && inside.every(({ text }) => text === inside[0].text)) found.push({ circle, name: inside[0].text, words: inside })
   }
   return found
 }
@@ -114,10 +116,10 @@ function endsOf({ points, segments }: Drawing): Ends {
   return { x: Float64Array.from(end, (e) => points[3 * segments[e]]), end }
 }
 
-/** The line that a circle ends: from the circle outwards, with all its pieces; null where none is long enough. */
-function lineFrom(drawing: Drawing, { at, radius }: DrawnCircle, ends: Ends): Stretch | null {
+/** The lines that a circle ends, the longest first (drawn twice there are two): from the circle outwards, with all their pieces. */
+function linesFrom(drawing: Drawing, { at, radius }: DrawnCircle, ends: Ends): Stretch[] {
   const off = axisOff * radius
-  let best: Stretch | null = null
+  const found: Stretch[] = []
   for (const e of endsNear(drawing, ends, at, radius + off)) {
     const near = endPoint(drawing, e), far = endPoint(drawing, e ^ 1)
     const gap = distance(near, at)
@@ -129,9 +131,9 @@ function lineFrom(drawing: Drawing, { at, radius }: DrawnCircle, ends: Ends): St
     if (Math.abs((at[0] - near[0]) * u[1] - (at[1] - near[1]) * u[0]) > off || (near[0] - at[0]) * u[0] + (near[1] - at[1]) * u[1] < -off) continue
     const stretch = withPieces(drawing, ends, e, u, off)
     if (distance(stretch.a, stretch.b) < axisRadii * radius) continue
-    if (best === null || distance(stretch.a, stretch.b) > distance(best.a, best.b)) best = stretch
+    found.push(stretch)
   }
-  return best
+  return found.sort((s, t) => distance(t.a, t.b) - distance(s.a, s.b))
 }
 
 /** A line with the pieces that go on behind it, on its layer, each within a gap of twice the piece before. */

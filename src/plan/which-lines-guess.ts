@@ -9,6 +9,7 @@
  * the snap distance of furniture joins what is no roof's.
  */
 import { alikeSizes, cleanShare, sameExtent } from '../base/geometry/tolerance.ts'
+import { metres, units } from '../base/length.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Drawing } from './drawing.ts'
 import { lineFrame } from './line-work-frame.ts'
@@ -44,6 +45,19 @@ const mostTogether = 6
 
 /** The layers to read; null where there is nothing to choose. */
 export function* layersGuess(drawing: Drawing, how: Measuring): Steps<Guess | null> {
+  for (const metres of likelyMetres(how)) {
+    const found = yield* layersOf(drawing, { ...how, metres })
+    if (found !== 'no panels') return found
+  }
+  return null
+}
+
+/** The unit stated, then the others: a file's word is often wrong, and in a wrong unit nothing looks like a panel. */
+function likelyMetres({ unit, metres: stated }: Measuring): number[] {
+  return unit.statedBy === 'user' ? [stated] : [stated, ...units.map((each) => metres[each]).filter((each) => each !== stated)]
+}
+
+function* layersOf(drawing: Drawing, how: Measuring): Steps<Guess | null | 'no panels'> {
   const classes = classesOf(drawing)
   const used = classes.list.map((_, c) => c)
   if (used.length < 2) return null
@@ -61,14 +75,16 @@ export function* layersGuess(drawing: Drawing, how: Measuring): Steps<Guess | nu
   }
   const whole = alone.size === used.length ? yield* measured(() => true) : null
   const sumOf = (of: (own: Measure) => number): number => [...alone.values()].reduce((total, own) => total + of(own), 0)
-  if (whole !== null && isClean(whole) && whole.groups.length === 1 && whole.bends <= sumOf(({ bends }) => bends) && whole.panels >= sumOf(({ panels }) => panels) && whole.area >= (1 - cleanShare) * sumOf(({ area }) => area)) return null
+  // Loose ends of a small layer are few among all: they count against that layer.
+  const shortest = Math.min(...[...alone.values()].map(({ length }) => length))
+  if (whole !== null && isClean(whole) && whole.loose <= cleanShare * shortest && whole.groups.length === 1 && whole.bends <= sumOf(({ bends }) => bends) && whole.panels >= sumOf(({ panels }) => panels) && whole.area >= (1 - cleanShare) * sumOf(({ area }) => area)) return null
 
   const scores = new Map([...alone].map(([c, own]) => [c, score(own)]))
   const byScore = (p: number, q: number): number => (scores.get(q) ?? 0) - (scores.get(p) ?? 0) || p - q
   const order = [...alone.keys()].sort(byScore)
   const [first] = order
   const best = first === undefined ? undefined : alone.get(first)
-  if (first === undefined || best === undefined) return null
+  if (first === undefined || best === undefined) return 'no panels'
   let choice: Choice | null = best.groups.length === 0 ? null : { taken: new Set([first]), own: best }
   if (choice !== null) choice = yield* completed(choice, order, alone, measured)
   // Joints may share out over layers of which none bounds a face.
@@ -79,7 +95,7 @@ export function* layersGuess(drawing: Drawing, how: Measuring): Steps<Guess | nu
     rival = choice === null ? 0 : score(choice.own)
     choice = yield* completed(together, order, alone, measured)
   }
-  if (choice === null) return null
+  if (choice === null) return 'no panels'
   const { taken, own } = choice
   const rest = used.filter((c) => !taken.has(c))
   if (rest.length === 0) return null
@@ -181,13 +197,14 @@ function optionsFor(list: readonly LineClass[]): string {
 
 /** The figures to read among those of one choice of layers; null where all are. */
 export function* figuresGuess(drawing: Drawing, how: Measuring): Steps<Guess | null> {
-  const found = yield* measure(drawing, how)
+  let found: Measure | null = null
+  for (const metres of likelyMetres(how)) if (found === null || found.panels === 0) found = yield* measure(drawing, { ...how, metres })
   if (found === null || found.panels === 0) return null
   const { groups, groupOfSegment, groupOfOutline, groupOfHole } = found
   const [first] = groups
-  // Figures of the roof's own kind are further parts of it; copies of it in a row are other storeys, or other states.
+  // What lies inside the roof belongs to it. Figures of its own kind are further parts of it; copies of it in a row are other storeys, or other states.
   const copies = groups.slice(1).filter((group) => isCopy(first, group))
-  const parts = new Set(groups.flatMap((group, k) => (k === 0 || (isPart(first, group) && !copies.includes(group)) ? [k] : [])))
+  const parts = new Set(groups.flatMap((group, k) => (k === 0 || (!group.isSheet && ( isInside(first, group) || (isPart(first, group) && !copies.includes(group)))) ? [k] : [])))
   const [rival] = groups.filter((_, k) => !parts.has(k))
   const takes = (group: number): 0 | 1 => (group >= 0 ? parts.has(group) : group !== -2) ? 1 : 0
   const kept: Kept = { segments: Uint8Array.from(groupOfSegment, takes), outlines: Uint8Array.from(groupOfOutline, takes), holes: Uint8Array.from(groupOfHole, takes) }
@@ -195,7 +212,7 @@ export function* figuresGuess(drawing: Drawing, how: Measuring): Steps<Guess | n
   if (rival === undefined && !isAside) return null
   const main = groups.filter((_, k) => parts.has(k))
   const panels = main.reduce((sum, group) => sum + group.panels, 0)
-  const isOpen = rival !== undefined && 2 * rival.panels * (1 - rival.loose) >= first.panels * (1 - first.loose)
+  const isOpen = rival !== undefined && !rival.isSheet && 2 * rival.panels * (1 - rival.loose) >= first.panels * (1 - first.loose)
   const what = `the figure ${placed(first.box)} is read: ${counted(panels, 'face', 'faces')} that look like panels`
   const then = rival === undefined ? 'no other has any' : `the next best, ${placed(rival.box)}, has ${rival.panels}`
   return {
@@ -258,6 +275,9 @@ function isCopy(first: Group, group: Group): boolean {
   const same = Math.abs(group.box.right - group.box.left - width) <= off && Math.abs(group.box.high - group.box.low - depth) <= off
   return same && (Math.abs(group.box.left - first.box.left) <= off || Math.abs(group.box.low - first.box.low) <= off)
 }
+
+const isInside = ({ box }: Group, group: Group): boolean =>
+  group.box.left >= box.left && group.box.right <= box.right && group.box.low >= box.low && group.box.high <= box.high
 
 /** Whether a figure is of the first one's kind: clean, and its panels of about the same size. */
 function isPart(first: Group, group: Group): boolean {

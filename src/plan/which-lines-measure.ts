@@ -48,8 +48,12 @@ export interface Group {
   readonly faces: number
   readonly loose: number
   readonly size: number
-  /** Of its panels, in the drawing's own coordinates times the unit's factor. */
+  /** Of its panels, in plan coordinates .. */
   readonly box: Box
+  /** .. and of all its lines. */
+  readonly around: Box
+  /** Whether its lines go round another group beside its panels: the frame of a sheet with its title block. */
+  readonly isSheet: boolean
 }
 
 export interface Box {
@@ -59,8 +63,8 @@ export interface Box {
   readonly high: number
 }
 
-/** Faces of the largest group that look like panels, less the share of lines that bound nothing: many columns are many small groups. */
-export const score = ({ groups, length, loose }: Measure): number => (groups.length === 0 ? 0 : groups[0].panels * (1 - loose / length))
+/** Faces of the largest group that look like panels, less its share of lines that bound nothing: many columns are many small groups. */
+export const score = ({ groups }: Measure): number => (groups.length === 0 ? 0 : groups[0].panels * (1 - groups[0].loose))
 
 interface Faces {
   readonly cycle: Int32Array
@@ -128,7 +132,14 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
       own.box[2 + k] = Math.max(own.box[2 + k], faces.box[4 * f + 2 + k])
     }
   }
-  const order = [...counted.keys()].sort((p, q) => (counted.get(q)?.panels ?? 0) - (counted.get(p)?.panels ?? 0) || p - q)
+  const around = boxesOfGroups(graph, component.root, groupAt)
+  const isSheet = (group: number): boolean => {
+    const [outer, own] = [around.get(group), counted.get(group)?.box]
+    if (outer === undefined || own === undefined) return false
+    return [...counted].some(([other, { box }]) => other !== group && holds(outer, around.get(other) ?? box) && !holds(own, box))
+  }
+  const sheets = new Set([...counted.keys()].filter(isSheet))
+  const order = [...counted.keys()].sort((p, q) => Number(sheets.has(p)) - Number(sheets.has(q)) || (counted.get(q)?.panels ?? 0) - (counted.get(p)?.panels ?? 0) || p - q)
   const rank = new Map(order.map((group, k) => [group, k]))
   const lengths = new Float64Array(order.length), bounds = new Float64Array(order.length)
   for (let e = 0; e < graph.edgeCount; e += 1) {
@@ -137,16 +148,17 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
     lengths[k] += graph.length(e)
     if (graph.alive[e] === 1) bounds[k] += graph.length(e)
   }
+  const placed = ([left, low, right, high]: readonly number[]): Box => ({ left: left + frame.centreX, low: low + frame.centreY, right: right + frame.centreX, high: high + frame.centreY })
   const groups = order.map((group, k): Group => {
     const own = counted.get(group)
     const [left, low, right, high] = own?.box ?? [0, 0, 0, 0]
     return {
       panels: own?.panels ?? 0, faces: own?.faces ?? 0, loose: lengths[k] === 0 ? 0 : 1 - bounds[k] / lengths[k], size: middle(own?.sizes ?? []),
-      box: { left: left + frame.centreX, low: low + frame.centreY, right: right + frame.centreX, high: high + frame.centreY },
+      box: placed([left, low, right, high]), around: placed(around.get(group) ?? [left, low, right, high]), isSheet: sheets.has(group),
     }
   })
 
-  const aside = figuresAside(graph, component.root, groupAt, order.map((group) => counted.get(group)?.box ?? []))
+  const aside = figuresAside(graph, component.root, groupAt, order.map((group) => counted.get(group)?.box ?? []), nearShare * (groups[0]?.size ?? 0))
   const single = singlePanels(faces, figureOf, groupAt, groups[0]?.size ?? 0)
   const groupOfLine = new Int32Array(lines).fill(-1)
   for (let i = 0; i < lines; i += 1) {
@@ -255,24 +267,45 @@ function clusters({ size, box, isCompact }: Faces, metres: number): { cluster: I
   return { cluster: Int32Array.from({ length: count }, (_, f) => sets.root(f)), isPanel }
 }
 
-/** Figures without a group whose box holds that of the first group (frames of sheets), or meets that of none. */
-function figuresAside(graph: Graph, root: (node: number) => number, groupAt: (figure: number) => number, groups: readonly (readonly number[])[]): Set<number> {
+type Corners = [left: number, low: number, right: number, high: number]
+
+function boxesOfGroups(graph: Graph, root: (node: number) => number, groupAt: (figure: number) => number): Map<number, Corners> {
+  const boxes = new Map<number, Corners>()
+  for (let node = 0; node < graph.x.length; node += 1) {
+    const group = groupAt(root(node))
+    if (group < 0) continue
+    const box = boxes.get(group) ?? [Infinity, Infinity, -Infinity, -Infinity]
+    boxes.set(group, box)
+    widen(box, graph.x[node], graph.y[node])
+  }
+  return boxes
+}
+
+function widen(box: Corners, x: number, y: number): void {
+  box[0] = Math.min(box[0], x)
+  box[1] = Math.min(box[1], y)
+  box[2] = Math.max(box[2], x)
+  box[3] = Math.max(box[3], y)
+}
+
+const holds = (outer: readonly number[], inner: readonly number[]): boolean => outer[0] < inner[0] && outer[1] < inner[1] && outer[2] > inner[2] && outer[3] > inner[3]
+
+/** Figures without a group whose box holds that of the first group and reaches farther on a side than a rim's bar does (frames of sheets), or meets that of none. */
+function figuresAside(graph: Graph, root: (node: number) => number, groupAt: (figure: number) => number, groups: readonly (readonly number[])[], reach: number): Set<number> {
   const found = new Set<number>()
   const [first] = groups
   if (first === undefined) return found
-  const boxes = new Map<number, [number, number, number, number]>()
+  const boxes = new Map<number, Corners>()
   for (let node = 0; node < graph.x.length; node += 1) {
     const figure = root(node)
     if (groupAt(figure) >= 0) continue
     const box = boxes.get(figure) ?? [Infinity, Infinity, -Infinity, -Infinity]
     boxes.set(figure, box)
-    box[0] = Math.min(box[0], graph.x[node])
-    box[1] = Math.min(box[1], graph.y[node])
-    box[2] = Math.max(box[2], graph.x[node])
-    box[3] = Math.max(box[3], graph.y[node])
+    widen(box, graph.x[node], graph.y[node])
   }
   for (const [figure, [left, low, right, high]] of boxes) {
-    const isRound = left < first[0] && low < first[1] && right > first[2] && high > first[3]
+    const isRound = holds([left, low, right, high], first)
+      && Math.max(first[0] - left, first[1] - low, right - first[2], high - first[3]) > reach
     if (isRound || groups.every((box) => right < box[0] || left > box[2] || high < box[1] || low > box[3])) found.add(figure)
   }
   return found

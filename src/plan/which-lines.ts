@@ -47,27 +47,29 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
   const before = drawing
   if (layers !== null && (!layers.isOpen || takes(options, 'which-lines'))) drawing = part(drawing, layers.kept)
   let read = yield* planFromDrawing(asRead(drawing, given), options)
-  if (!read.ok && layers !== null && drawing === before) {
+  const isAsked = layers !== null && layers.isOpen && !takes(options, 'which-lines')
+  if (isAsked && !read.ok) {
     // All lines together are no plan, so that the question stands beside the best guess.
-    const best = yield* planFromDrawing(asRead(part(drawing, layers.kept), given), options)
-    if (best.ok) read = best
-  } else if (!read.ok && drawing !== before) {
+    drawing = part(before, layers.kept)
+    read = yield* planFromDrawing(asRead(drawing, given), options)
+  }
+  if (isFree && !leaves(options, 'which-lines') && !(isAsked && read.ok) && (!read.ok || read.value.plan.partCount > 1)) {
+    const figures = yield* figuresGuess(drawing, how)
+    if (figures !== null && !isEmpty(figures.kept)) {
+      const isTaken = !figures.isOpen || takes(options, 'which-lines')
+      const again = yield* planFromDrawing(asRead(part(drawing, figures.kept), given), options)
+      if (again.ok) {
+        if (!isAsked) say(figures, drawing, options, said)
+        if (isTaken || !read.ok) read = again
+      }
+    }
+  }
+  if (!read.ok && drawing !== before) {
     // A guess that gives no plan is none.
     const whole = yield* planFromDrawing(asRead(before, given), options)
     if (whole.ok) return ok(finished(whole.value, said, found))
   }
   if (layers !== null) say(layers, before, options, said)
-  if (isFree && !leaves(options, 'which-lines') && (layers === null || !layers.isOpen || takes(options, 'which-lines')) && (!read.ok || read.value.plan.partCount > 1)) {
-    const figures = yield* figuresGuess(drawing, how)
-    if (figures !== null && !isEmpty(figures.kept)) {
-      const taken = !figures.isOpen || takes(options, 'which-lines')
-      const again = yield* planFromDrawing(asRead(part(drawing, figures.kept), given), options)
-      if (again.ok) {
-        say(figures, drawing, options, said)
-        if (taken || !read.ok) read = again
-      }
-    }
-  }
   return read.ok ? ok(finished(read.value, said, found)) : read
 }
 

@@ -7,6 +7,7 @@ import type { Plan } from '../../src/plan/plan.ts'
 import type { ReadPlan } from '../../src/plan/read-plan.ts'
 import { reading, type Point, type Segment, type Sketch } from '../plan/drawings.ts'
 import { cells, grid, honeycomb, plan, type Points } from './plans.ts'
+import { besideFaults, besideOnPoints } from './spoilt-beside.ts'
 
 type Random = () => number
 
@@ -199,11 +200,15 @@ export const ways: readonly Way[] = [
 /** Faults on top of any drawing. */
 export interface Fault {
   readonly name: string
+  /** Whether a question is right for small plans: the fault looks as much like panels as they do. */
+  readonly mayAsk?: true
+  /** Something beside the panels rather than a fault of theirs. */
+  readonly isBeside?: true
   readonly spoil: (sketch: Sketch, next: Random) => Spoilt
 }
 
 /** A spoilt drawing; `move` says where a point of the clean plan is now. */
-interface Spoilt {
+export interface Spoilt {
   readonly sketch: Sketch
   readonly move?: (p: Point) => Point
 }
@@ -212,12 +217,14 @@ const onPoints = (sketch: Sketch, change: (p: Point) => Point): Sketch => ({
   ...sketch,
   ...(sketch.lines === undefined ? {} : { lines: sketch.lines.map(([p, q]): Segment => [change(p), change(q)]) }),
   ...(sketch.outlines === undefined ? {} : { outlines: sketch.outlines.map((o) => o.map((p) => change([p[0], p[1]]))) }),
+  ...(sketch.beside === undefined ? {} : { beside: sketch.beside.map((each) => besideOnPoints(each, change)) }),
 })
 
 const survey = ([x, y]: Point): Point => [x + 3512345.25, y + 5412345.75]
 
 export const faults: readonly Fault[] = [
   { name: 'no fault', spoil: (sketch) => ({ sketch }) },
+  ...besideFaults,
   { name: 'rounded to 0.1 mm', spoil: (sketch) => ({ sketch: onPoints(sketch, ([x, y]) => [Math.round(x * 1e4) / 1e4, Math.round(y * 1e4) / 1e4]) }) },
   { name: 'ends off by 0.3 mm', spoil: (sketch, next) => ({ sketch: onPoints(sketch, ([x, y]) => [x + 3e-4 * (2 * next() - 1), y + 3e-4 * (2 * next() - 1)]) }) },
   { name: 'sixteen digits', spoil: (sketch, next) => ({ sketch: onPoints(sketch, ([x, y]) => [x * (1 + 2e-16 * (next() - 0.5)), y + 1e-15 * next()]) }) },
@@ -270,8 +277,15 @@ export function outcome(reads: (accept: readonly string[]) => ReadPlan | null, f
   const first = reads([])
   if (first === null) return 'refused'
   if (first.questions.length === 0) return fits(first.plan) ? 'clean' : 'wrong'
-  const second = reads(first.questions.map(({ code }) => code))
-  return second !== null && second.questions.length === 0 && fits(second.plan) ? 'clean once asked' : 'asked'
+  // A question about the lines comes before those about what they are.
+  const codes = first.questions.map(({ code }) => code)
+  for (let round = 0; round < 3; round += 1) {
+    const next = reads(codes)
+    if (next === null) return 'asked'
+    if (next.questions.length === 0) return fits(next.plan) ? 'clean once asked' : 'asked'
+    codes.push(...next.questions.map(({ code }) => code))
+  }
+  return 'asked'
 }
 
 /** How far from its clean place a node may be read, in metres: twice what the roughest fault moves a line's end. */

@@ -2,9 +2,9 @@
 import type { Unit } from '../../src/base/length.ts'
 import { finish } from '../../src/base/steps.ts'
 import type { Result } from '../../src/base/result.ts'
-import type { Drawing, Loops } from '../../src/plan/drawing.ts'
-import { planFromDrawing } from '../../src/plan/from-drawing.ts'
+import type { Drawing, DrawnCircle, DrawnText, Loops } from '../../src/plan/drawing.ts'
 import type { ReadOptions, ReadPlan } from '../../src/plan/read-plan.ts'
+import { planOfLines } from '../../src/plan/which-lines.ts'
 
 export type Point = readonly [number, number]
 export type Point3 = readonly [number, number, number]
@@ -18,6 +18,18 @@ export interface Sketch {
   readonly unit?: Unit | null
   readonly onPaper?: boolean
   readonly format?: string
+  /** What stands beside the lines above, each on a layer ("": theirs). */
+  readonly beside?: readonly Beside[]
+}
+
+export interface Beside {
+  readonly layer: string
+  readonly lines?: readonly Segment[]
+  readonly outlines?: readonly (readonly Point[])[]
+  /** Circles, chorded in sixteen. */
+  readonly circles?: readonly { readonly at: Point; readonly radius: number }[]
+  /** Anchored at their middles. */
+  readonly texts?: readonly { readonly text: string; readonly at: Point; readonly height: number }[]
 }
 
 /** Every corner is a point of its own, as line drawings have it; outline i is on line 10 + i of the file, segment i on 1000 + i. */
@@ -41,23 +53,35 @@ export function drawing(sketch: Sketch): Drawing {
       layer: new Int32Array(list.length), line: Int32Array.from(list, (_, i) => 10 + i),
     }
   }
-  const outlines = loops(sketch.outlines ?? [])
+  const beside = sketch.beside ?? []
+  const layers = ['', ...new Set(beside.map(({ layer }) => layer).filter((layer) => layer !== ''))]
+  const layerOf = ({ layer }: Beside): number => layers.indexOf(layer)
+  const circles: DrawnCircle[] = []
+  const texts = beside.flatMap(({ layer, texts: own = [] }) => own.map(({ text, at, height }): DrawnText => ({ text, at, middle: at, height, layer, kind: 'TEXT', tag: null, block: null })))
+  const ring = ({ at: [x, y], radius }: { at: Point; radius: number }): Point[] => Array.from({ length: 16 }, (_, k) => [x + radius * Math.cos((k * Math.PI) / 8), y + radius * Math.sin((k * Math.PI) / 8)])
+  const ownOutlines = sketch.outlines ?? []
+  const besideOutlines = beside.flatMap((each) => [...(each.outlines ?? []).map((outline) => ({ outline, circle: null, layer: layerOf(each) })), ...(each.circles ?? []).map((circle) => ({ outline: ring(circle), circle, layer: layerOf(each) }))])
+  const made = loops([...ownOutlines, ...besideOutlines.map(({ outline }) => outline)])
+  const outlines: Loops = { ...made, layer: Int32Array.from([...ownOutlines.map(() => 0), ...besideOutlines.map(({ layer }) => layer)]) }
+  besideOutlines.forEach(({ circle }, k) => { if (circle !== null) circles.push({ ...circle, point: made.point[made.start[ownOutlines.length + k]!]! }) })
   const holes = loops(sketch.holes ?? [])
-  const lines = sketch.lines ?? []
+  const ownLines = sketch.lines ?? []
+  const lines = [...ownLines, ...beside.flatMap((each) => each.lines ?? [])]
+  const segmentLayer = Int32Array.from([...ownLines.map(() => 0), ...beside.flatMap((each) => (each.lines ?? []).map(() => layerOf(each)))])
   const segments = Int32Array.from(lines.flatMap(([p, q]) => [point(p), point(q)]))
   const marks = Int32Array.from((sketch.marks ?? []).map(point))
   return {
     format: sketch.format ?? 'DXF', unit: sketch.unit === undefined ? 'm' : sketch.unit, onPaper: sketch.onPaper ?? false,
-    points: Float64Array.from(points), hasHeight: Uint8Array.from(hasHeight), layers: [''], outlines, holes,
-    segments, segmentLayer: new Int32Array(lines.length), segmentLine: Int32Array.from(lines, (_, i) => 1000 + i),
-    marks, markLayer: new Int32Array(marks.length), leftOut: [], repairs: [],
+    points: Float64Array.from(points), hasHeight: Uint8Array.from(hasHeight), layers, outlines, holes,
+    segments, segmentLayer, segmentLine: Int32Array.from(lines, (_, i) => 1000 + i),
+    marks, markLayer: new Int32Array(marks.length), leftOut: [], repairs: [], ...(texts.length === 0 ? {} : { texts }), ...(circles.length === 0 ? {} : { circles }),
   }
 }
 
 export const plainly: ReadOptions = { unit: null, scale: null, snap_mm: null, voids: [], accept: [] }
 
 export function reading(sketch: Sketch, options: Partial<ReadOptions> = {}): Result<ReadPlan> {
-  return finish(planFromDrawing(drawing(sketch), { ...plainly, ...options }))
+  return finish(planOfLines(drawing(sketch), { ...plainly, ...options }))
 }
 
 /** The plan read; throws with the problem's message when there is none. */
