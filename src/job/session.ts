@@ -9,8 +9,10 @@ import { noOptions, type NamedFile, type Options } from '../plan/project/options
 import { wishesOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import { mirrorLines, type MirrorLine } from '../plan/symmetry.ts'
+import type { Cure } from '../roof/answer/cure.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
 import { answerTo, type Checked, type PlanQuestion } from './check.ts'
+import { curesOf, type CuresFound } from './cures.ts'
 import { filesOf, type OutputFile } from './files.ts'
 import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
 import { releasesOf, type Release } from './releases.ts'
@@ -21,10 +23,25 @@ import { whyFrozen, type FrozenReason } from './why-frozen.ts'
 
 export type { FrozenReason, MirrorLine, Release, Way }
 
+/** The cures as plain records. */
+export interface CureList extends Pick<CuresFound, 'answer' | 'asDrawn' | 'blocking'> {
+  readonly cures: readonly Cure[]
+}
+
+export interface AppliedCure {
+  readonly read: ReadPlan
+  readonly brief: Brief
+  readonly options: Options
+  readonly target: Float64Array | null
+  /** Whether nodes, panels or joints are others than before. */
+  readonly changesPlan: boolean
+}
+
 export class Session {
   private free: FreeRim | null = null
   private last: Checked | null = null
   private question: PlanQuestion | null = null
+  private found: CuresFound | null = null
   private readonly read: ReadPlan
   private readonly name: string
 
@@ -49,6 +66,7 @@ export class Session {
       this.free = made.value.free
       this.last = made.value
       this.question = question
+      this.found = null
     }
     return made
   }
@@ -71,6 +89,25 @@ export class Session {
     if (this.last === null || this.question === null) return fail('no-answer', 'there is no answer yet')
     const made = await drive(releasesOf(this.question, this.last), driven)
     return made === cancelled ? fail('cancelled', 'stopped before the end') : made
+  }
+
+  /** What it takes where the last answer is not a plain yes; see `Cure`. */
+  async cures(driven: DriveOptions = {}): Promise<Result<CureList>> {
+    if (this.last === null || this.question === null) return fail('no-answer', 'there is no answer yet')
+    const made = await drive(curesOf(this.question, this.last), driven)
+    if (made === cancelled) return fail('cancelled', 'stopped before the end')
+    if (!made.ok) return made
+    this.found = made.value
+    const { answer, asDrawn, blocking, cures } = made.value
+    return ok({ answer, asDrawn, blocking, cures: cures.map(({ cure }) => cure) })
+  }
+
+  /** Plan, brief and options with one of the cures of `cures` applied, for a session of its own; the older ones are the undo. */
+  applied({ code, name }: Pick<Cure, 'code' | 'name'>): Result<AppliedCure> {
+    const chosen = this.found?.cures.find(({ cure }) => cure.code === code && cure.name === name)
+    if (chosen === undefined || this.question === null) return fail('no-such-cure', 'this cure was not offered')
+    const { read, brief, target = null, request } = chosen.attempt.next ?? this.question
+    return ok({ read, brief, options: request.options, target, changesPlan: chosen.attempt.changesPlan })
   }
 
   /** Lines that the plan is symmetric about, within what a drawing is exact to. */
