@@ -17,7 +17,7 @@ import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, ty
 export type Asked = Omit<Request, 'source'>
 
 /** Options of this run that no answer depends on: they are not recorded. */
-const notRecorded: readonly string[] = ['out', 'overwrite', 'json', 'quiet', 'help']
+const notRecorded: readonly string[] = ['out', 'overwrite', 'at-once', 'json', 'quiet', 'help']
 
 /** Reads all values; files that options name are read too. */
 export async function asked(args: Arguments): Promise<Result<Asked>> {

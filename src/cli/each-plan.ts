@@ -1,6 +1,6 @@
 /** One plan after the other through the same work, going on after a bad one; the worst exit code is the run's. */
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
-import type { DriveOptions } from '../base/steps.ts'
+import type { DriveOptions, Progress } from '../base/steps.ts'
 import type { Request } from '../job/request.ts'
 import { reportText, reportUnder } from '../paper/report/report-text.ts'
 import type { Report } from '../paper/report/report.ts'
@@ -23,6 +23,8 @@ export interface Run {
   readonly args: Arguments
   readonly screen: Screen
   readonly signal: AbortSignal
+  /** The program's own file, which threads run too. */
+  readonly script: URL
 }
 
 export interface Hearing {
@@ -32,11 +34,14 @@ export interface Hearing {
   conclude?(): Result<null>
 }
 
+/** Plans that are begun before the one whose turn it is to be printed has ended, for each that is worked on at a time. */
+const begunAhead = 2
+
 /**
  * Works through all plans and prints what became of them. A run that was stopped prints nothing more, and a folder that
  * cannot be written ends it.
  */
-export async function eachPlan({ args, screen, signal }: Run, work: Work, hearing: Hearing = {}): Promise<ExitCode> {
+export async function eachPlan({ args, screen, signal }: Run, work: Work, hearing: Hearing = {}, atOnce = 1): Promise<ExitCode> {
   const { plans } = args
   const useless = badWords(args)
   if (useless !== null) return gaveUp(screen, useless)
@@ -46,12 +51,22 @@ export async function eachPlan({ args, screen, signal }: Run, work: Work, hearin
   const records: unknown[] = []
   const exits: ExitCode[] = []
   let caution: string | null = null
+  let shown: { at: number; bar: ReturnType<Screen['bar']> } | null = null
+  const begun: ReturnType<typeof begin>[] = []
+  const begin = async (at: number) => {
+    const source = await readInput(plans[at])
+    const onProgress = (progress: Progress): void => {
+      if (shown?.at === at) shown.bar.show(progress)
+    }
+    return { source, outcome: source.ok ? await work({ ...request.value, source: source.value }, at, { signal, onProgress }) : source }
+  }
   for (const [at, path] of plans.entries()) {
     const bar = screen.bar()
-    const source = await readInput(path)
-    const outcome = source.ok
-      ? await work({ ...request.value, source: source.value }, at, { signal, onProgress: (progress) => bar.show(progress) })
-      : source
+    shown = { at, bar }
+    // Those that run ahead may fail before they are waited for; that is heard of when their turn comes.
+    while (begun.length < plans.length && begun.length < at + (atOnce > 1 ? begunAhead * atOnce : 1)) begun.push(begin(begun.length))
+    for (const each of begun.slice(at)) each.catch(() => {})
+    const { source, outcome } = await begun[at]
     bar.clear()
     if (signal.aborted || (!outcome.ok && outcome.problem.code === 'cancelled')) return stopped
     if (outcome.ok) {

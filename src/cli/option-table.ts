@@ -59,6 +59,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'near', value: null, group: 'Judging and writing', help: 'write the nearest roof even when its panels are not flat' },
   { name: 'decimals', value: 'N', group: 'Judging and writing', help: 'round x, y and z to N decimals (default: x, y exact, z to 1 um)' },
   { name: 'csv', value: 'comma|semicolon', group: 'Judging and writing', help: 'lists with commas, or with semicolons and decimal commas' },
+  { name: 'at-once', value: 'N', group: 'This run', help: 'how many of several plans are raised at a time (default: one for each core)' },
   { name: 'json', value: null, group: 'This run', help: 'print one JSON object and nothing else' },
   { name: 'quiet', value: null, group: 'This run', help: 'print nothing but errors; the exit code has the verdict' },
   { name: 'help', value: null, group: 'This run', help: 'show this' },
@@ -67,11 +68,11 @@ export const optionTable: readonly OptionEntry[] = [
 const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'levels-within', 'plan-tolerance', 'brief', 'out', 'overwrite', 'json', 'quiet', 'help']
 
 /** Options that say nothing to balancing: the densities shape the roof. */
-const notBalancing: readonly string[] = ['near', 'cure', 'one-way', 'shape', 'target']
+const notBalancing: readonly string[] = ['near', 'cure', 'one-way', 'shape', 'target', 'at-once']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {
   if (command === 'read') return optionTable.filter(({ name }) => forReading.includes(name))
   if (command === 'balance') return optionTable.filter(({ name, group }) => group !== 'What the plan keeps' && !notBalancing.includes(name))
-  return command === 'adjust' ? optionTable.filter(({ name }) => !['near', 'cure', 'one-way', 'densities'].includes(name)) : optionTable.filter(({ name, group }) => name !== 'densities' && (name === 'plan-tolerance' || group !== 'What the plan keeps'))
+  return command === 'adjust' ? optionTable.filter(({ name }) => !['near', 'cure', 'one-way', 'densities', 'at-once'].includes(name)) : optionTable.filter(({ name, group }) => name !== 'densities' && (name === 'plan-tolerance' || group !== 'What the plan keeps'))
 }

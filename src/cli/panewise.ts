@@ -2,6 +2,7 @@
 /** The command line: the first word chooses what is done; the exit code is the verdict. */
 import { fail, type Problem } from '../base/result.ts'
 import { version } from '../job/run.ts'
+import { answerInThread, isThread } from '../job/worker/node-pool.ts'
 import { adjustPlans } from './adjust.ts'
 import { parseWords, unknownCommand } from './arguments.ts'
 import { balancePlans } from './balance.ts'
@@ -12,6 +13,7 @@ import { commandHelp, usage } from './help.ts'
 import { helpTopic } from './help-topics.ts'
 import { commands, type Command } from './option-table.ts'
 import { raisePlans } from './raise.ts'
+import { raisedPlan, type RaiseTask } from './raised-plan.ts'
 import { readPlans } from './read.ts'
 import { Screen } from './screen.ts'
 
@@ -52,7 +54,7 @@ async function main(words: readonly string[]): Promise<number> {
   // Once: a second Ctrl-C ends the process where it stands; what lies aside is removed by the next run.
   process.once('SIGINT', stop(stopped))
   for (const signal of ['SIGTERM', 'SIGHUP'] as const) process.once(signal, stop(ended))
-  const exit = await work[command]({ args: args.value, screen, signal: controller.signal })
+  const exit = await work[command]({ args: args.value, screen, signal: controller.signal, script: new URL(import.meta.url) })
   if (exit === stopped) {
     gaveUp(screen, fail('cancelled', command === 'raise' || command === 'adjust' || command === 'balance' ? 'stopped, nothing was written' : 'stopped').problem)
     return bySignal
@@ -76,7 +78,8 @@ function help(screen: Screen, [topic]: readonly string[]): number {
 
 const problemOf = (failed: { readonly ok: boolean; readonly problem?: Problem }): Problem => failed.problem ?? fail('unknown-command', 'no such command').problem
 
-try {
+if (isThread) answerInThread((task: RaiseTask, onProgress) => raisedPlan(task, { onProgress }))
+else try {
   process.exitCode = await main(process.argv.slice(2))
 } catch (error) {
   // A broken invariant of ours: one sentence for the user; the trace only for whoever asks for it.

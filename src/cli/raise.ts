@@ -2,8 +2,6 @@
 import { realpathSync } from 'node:fs'
 import { join } from 'node:path'
 import { fail, ok, type Problem, type Result } from '../base/result.ts'
-import { finish } from '../base/steps.ts'
-import { writeCsv, type CsvStyle } from '../formats/write-csv.ts'
 import { solvedFileNames, solvedFiles, solvedSummary } from '../job/cure-files.ts'
 import { fileNames, type OutputFile } from '../job/files.ts'
 import { solve } from '../job/run.ts'
@@ -11,16 +9,23 @@ import { solvedReport } from '../paper/report/cure-report.ts'
 import type { Report } from '../paper/report/report.ts'
 import type { Arguments } from './arguments.ts'
 import { eachPlan, gaveUp, type Run } from './each-plan.ts'
-import { badUse, exitCodeOf, type ExitCode } from './exit-code.ts'
-import { overview, type OverviewRow } from './overview.ts'
+import { exitCodeOf, type ExitCode } from './exit-code.ts'
 import { overviewName, planFolders } from './plan-folders.ts'
+import { plansAtOnce, raiseSeveral } from './raise-several.ts'
+import { typedCount } from './typed-values.ts'
 import { openOutput, type Output } from './write-safely.ts'
+
+/** More threads than this are a slip of the keyboard. */
+const mostAtOnce = 256
 
 /** One plan: into DIR. Several: into DIR/NAME, with an overview in DIR, going on after a plan that cannot be read. */
 export async function raisePlans(run: Run): Promise<ExitCode> {
   const { args, screen } = run
   const folder = args.values.get('out')?.[0]
   if (folder === undefined) return gaveUp(screen, fail('no-out', 'raise needs a folder to write into', null, 'add --out DIR').problem)
+  const atOnceText = args.values.get('at-once')?.[0]
+  const atOnce = atOnceText === undefined ? ok(null) : typedCount(atOnceText, mostAtOnce, '--at-once')
+  if (!atOnce.ok) return gaveUp(screen, atOnce.problem)
   const isOne = args.plans.length <= 1
   const folders = isOne ? [''] : planFolders(args.plans)
   // A plan.obj is ours only where a cure may write one: it is what people call their drawings.
@@ -31,7 +36,7 @@ export async function raisePlans(run: Run): Promise<ExitCode> {
   const output = openOutput(folder, { overwrite: args.values.has('overwrite'), owned })
   if (!output.ok) return gaveUp(screen, output.problem)
   try {
-    return await (isOne ? raiseOne(run, folder, output.value) : raiseSeveral(run, folders, output.value))
+    return await (isOne ? raiseOne(run, folder, output.value) : raiseSeveral(run, folders, output.value, plansAtOnce(atOnce.value, args.plans.length), putAll))
   } finally {
     output.value.discard()
   }
@@ -73,35 +78,6 @@ function raiseOne(run: Run, folder: string, output: Output): Promise<ExitCode> {
       exit: exitCodeOf(answer.summary.verdict),
     })
   })
-}
-
-function raiseSeveral(run: Run, folders: readonly string[], output: Output): Promise<ExitCode> {
-  const { plans } = run.args
-  const rows: OverviewRow[] = []
-  let csv: CsvStyle = 'comma'
-  return eachPlan(
-    run,
-    async (request, at, drive) => {
-      csv = request.options.csv
-      const solved = await solve(request, run.args.values.get('cure') ?? [], drive)
-      if (!solved.ok) return solved
-      const made = await solvedFiles(solved.value, drive)
-      if (!made.ok) return made
-      const put = putAll(output, folders[at], made.value)
-      if (!put.ok) return put
-      const { answer } = solved.value.checked
-      const exit = exitCodeOf(answer.summary.verdict)
-      rows.push({ plan: plans[at], folder: folders[at], exit, summary: answer.summary, problem: null })
-      return ok({ record: { folder: folders[at], ...solvedSummary(solved.value) }, report: solvedReport(answer), exit })
-    },
-    {
-      failed: (at, problem) => rows.push({ plan: plans[at], folder: '', exit: badUse, summary: null, problem }),
-      conclude: () => {
-        const put = output.put(overviewName, finish(writeCsv(overview(rows), csv)))
-        return put.ok ? output.commit() : put
-      },
-    },
-  )
 }
 
 export function putAll(output: Output, folder: string, made: readonly OutputFile[]): Result<null> {

@@ -61,3 +61,29 @@ test('bounds in a brief hold and say what they cost', () => {
   expect(record.held.binding).toMatchObject([{ condition: 'envelope' }])
   expect(record.held.binding[0].rise_mm).toBeCloseTo(600, 0)
 })
+
+test('several plans: a bad one stops no other, and two at a time write the bytes of one at a time', () => {
+  const words = ['raise', 'bays.obj', 'broken.obj', 'twisted.obj', 'control.obj', '--unit', 'm']
+  const one = cli.run([...words, '--out', 'one', '--at-once', '1'])
+  const two = cli.run([...words, '--out', 'two', '--at-once', '2'])
+  expect([one.code, two.code]).toEqual([2, 2])
+  expect(two.out).toBe(one.out)
+  expect(two.err).toBe(one.err)
+  expect(one.err).toContain('broken.obj, line 2')
+  const files = (folder: string): string[] => readdirSync(join(cli.room, folder), { recursive: true }).map(String).sort()
+  expect(files('two')).toEqual(files('one'))
+  expect(files('one').filter((name) => name.endsWith('roof.obj'))).toHaveLength(3)
+  for (const name of files('one').filter((each) => each.includes('.'))) expect(readFileSync(join(cli.room, 'two', name)).equals(readFileSync(join(cli.room, 'one', name)))).toBe(true)
+  const rows = readCsv(readFileSync(join(cli.room, 'one/summary.csv'), 'utf8'))
+  expect(rows.map((row) => row[0]).filter((cell) => cell !== '').slice(0, 5)).toEqual(['plan', 'bays.obj', 'broken.obj', 'twisted.obj', 'control.obj'])
+})
+
+test('several plans stopped on the way: every thread ends and nothing is written', async () => {
+  cli.file('large.obj', gridObj(70, 60, 1.5))
+  const child = cli.start(['raise', 'large.obj', 'bays.obj', 'large.obj', '--unit', 'm', '--out', 'stopped', '--at-once', '2'])
+  const ended = new Promise<number | null>((resolve) => child.on('close', resolve))
+  while (!readdirSync(cli.room).some((name) => name.includes('stopped.panewise-'))) await new Promise((resolve) => setTimeout(resolve, 5))
+  child.kill('SIGINT')
+  expect(await ended).toBe(130)
+  expect(readdirSync(cli.room).filter((name) => name.includes('stopped'))).toEqual([])
+})
