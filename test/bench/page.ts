@@ -16,7 +16,7 @@ import { startBrowser } from '../page/chromium.ts'
 import { benchPlan, kinds, type Kind } from './solver-plans.ts'
 
 const head = 'date,commit,processor,plan,panels,webgl,open_ms,first_answer_ms,answer_ms,answer_worst_ms,frame_ms,frame_worst_ms,longest_task_open_ms,longest_task_drag_ms'
-const moves = 16
+const moves = 48
 
 /** What the page's own measures say, by name, and what it did not hear through. */
 interface Seen {

@@ -30,6 +30,15 @@ export function ConditionFields({ condition, unit }: { readonly condition: Condi
       </>}
       {condition.kind === 'profile' && 'arc' in condition.section && <LengthField label="rise" bare="mm" to={unit} start={typable(condition.section.arc.rise * mm)} onValue={(rise) => change({ ...condition, section: { arc: { rise } } })} />}
       {condition.kind === 'profile' && 'pitch_deg' in condition.section && <NumberField label="pitch °" start={typable(condition.section.pitch_deg, 1)} from={-89} below={90} onValue={(pitch_deg) => change({ ...condition, section: { pitch_deg } })} />}
+      {condition.kind === 'bounds' && (['least', 'most'] as const).map((end) => (
+        <LengthField key={end} label={end === 'least' ? 'no lower than' : 'no higher than'} bare="mm" to={unit} start={typeof condition[end] === 'number' ? typable(condition[end] * mm) : ''}
+          onValue={(value) => change({ ...condition, [end]: value })} {...(typeof condition[end === 'least' ? 'most' : 'least'] !== 'number' ? {} : { onClear: () => change({ ...condition, [end]: null }) })} />
+      ))}
+      {condition.kind === 'slope' && (['least_deg', 'most_deg'] as const).map((end) => (
+        <NumberField key={end} label={end === 'least_deg' ? 'at least °' : 'at most °'} from={0} below={90} start={typeof condition[end] === 'number' ? typable(condition[end], 1) : ''}
+          onValue={(value) => change({ ...condition, [end]: value })} {...(typeof condition[end === 'least_deg' ? 'most_deg' : 'least_deg'] !== 'number' ? {} : { onClear: () => change({ ...condition, [end]: null }) })} />
+      ))}
+      {condition.kind === 'one-way' && (['ridge', 'valley', 'no-valley', 'no-ridge'] as const).map((fold) => <button key={fold} className="word" aria-pressed={condition.fold === fold} onClick={() => change({ ...condition, fold })}>{fold.replace('-', ' ')}</button>)}
       <Weight condition={condition} />
       <button className="word" onClick={() => desk.locate(condition)}>Show</button>
       <button className="word" onClick={() => desk.release([name])}>Release</button>

@@ -6,7 +6,7 @@ import type { Answer } from '../../roof/answer/answer.ts'
 import type { Release } from '../../job/session.ts'
 import { ConditionFields, askedWords } from './ConditionFields.tsx'
 import { useDesk, useDeskState } from './context.ts'
-import { LengthField, typable } from './Fields.tsx'
+import { LengthField, NumberField, typable } from './Fields.tsx'
 import { rimsOf } from './rims.ts'
 
 export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
@@ -21,6 +21,7 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
   return (
     <>
       <RimRows answer={answer} />
+      <AllPanels answer={answer} />
       {conditions.length === 0 ? <p className="entry note">Nothing is held. Select a node, a joint or a panel on the plan and hold it; Shift and a second node picks a run; Ctrl and click, or G, gathers several.</p> : (
         <table className="conditions">
           <thead><tr><th>Held</th><th>asked</th><th>how</th><th /></tr></thead>
@@ -87,6 +88,31 @@ function releaseWords({ verdict, freedomLeft }: Release): string {
     case 'lifts within tolerance': return 'the nearest roof is flat within the tolerance'
     case 'does not lift': return 'still no joint folds'
   }
+}
+
+/** What is asked of the whole roof: bounds on its levels and slopes, water that runs off, folds that go one way. */
+function AllPanels({ answer }: { readonly answer: Answer }) {
+  const desk = useDesk()
+  const conditions = useDeskState((state) => state.doc?.brief.conditions)
+  const { unit } = answer.plan
+  const mm = conversion(unit, 'mm')
+  const at = { panels: 'all' } as const
+  const held = (name: string) => conditions?.find((condition) => condition.name === name)
+  const ponding = { name: 'no ponding', kind: 'no-ponding', at, soft: null } as const
+  const valleys = { name: 'no valleys', kind: 'one-way', at, fold: 'no-valley', soft: null } as const
+  const bounds = held('levels of the roof')
+  const [least, most] = bounds?.kind === 'bounds' ? [bounds.least ?? null, bounds.most ?? null] : [null, null]
+  const slope = held('slopes of the roof')
+  return (
+    <div className="entry switch" role="group" aria-label="All panels">
+      <span>All panels</span>
+      {[ponding, valleys].map((condition) => <button key={condition.name} aria-pressed={held(condition.name) !== undefined} className={held(condition.name) !== undefined ? 'chosen' : ''} onClick={() => (held(condition.name) !== undefined ? desk.release([condition.name]) : desk.condition(condition, condition.name))}>{condition.name}</button>)}
+      <NumberField label="slope at least °" start={slope?.kind === 'slope' && typeof slope.least_deg === 'number' ? typable(slope.least_deg, 1) : ''} from={0} below={90} onClear={() => slope !== undefined && desk.release([slope.name])}
+        onValue={(least_deg) => desk.condition({ name: 'slopes of the roof', kind: 'slope', at, least_deg, most_deg: slope?.kind === 'slope' ? (slope.most_deg ?? null) : null, soft: null }, `Slopes of at least ${figure(least_deg, 1)}°`)} />
+      <LengthField label="no higher than" bare="mm" to={unit} start={most === null ? '' : typable(most * mm)} onClear={() => bounds !== undefined && desk.release([bounds.name])}
+        onValue={(value) => desk.condition({ name: 'levels of the roof', kind: 'bounds', at, least, most: value, soft: null }, `No higher than ${figure(value * mm)} mm`)} />
+    </div>
+  )
 }
 
 /** Each rim: free, at the datum, at a level that is typed, at one level wherever. */

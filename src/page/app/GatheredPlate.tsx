@@ -50,16 +50,19 @@ export function GatheredPlate({ gathered, answer, window, size }: Placed & { rea
       <div className="plate" style={plateAt(lastX, lastY, size)} role="group" aria-label={`${figure(indices.length)} ${kind}s gathered`}>
         <b>{shortList(names)}</b>
         {kind === 'panel' && <>
-          <p>{word('In one plane', () => take('one plane', { kind: 'coplanar', at: panels }))}</p>
+          <p>{word('In one plane', () => take('one plane', { kind: 'coplanar', at: panels }))}{word('No ponding', () => take('no ponding', { kind: 'no-ponding', at: panels }))}{word('No valley between', () => take('no valley', { kind: 'one-way', at: panels, fold: 'no-valley' }))}</p>
+          <NumberField label="at least °" start="" from={0} below={90} onValue={(least_deg) => take(`least slope ${figure(least_deg, 1)}°`, { kind: 'slope', at: panels, least_deg, most_deg: null })} />
           <NumberField label="slope of each °" start={typable(slope, 1)} from={0} below={90} onValue={(pitch_deg) => take(`slope ${figure(pitch_deg, 1)}° ${compassPoint(bearing)}`, { kind: 'plane', at: panels, pitch_deg, bearing_deg: bearing })} />
           <LengthField label="level at" bare="mm" to={plan.unit} start="" onValue={(value) => take(`level ${signed(value * mm)} mm`, { kind: 'level', at: panels, level: value })} />
         </>}
         {kind === 'node' && <>
           <p>{word('At one level, wherever', () => take('one level', { kind: 'equal', at: nodes }))}{word('At the datum', () => take('at the datum', { kind: 'level', at: nodes, level: null }))}</p>
           <LengthField label="level at" bare="mm" to={plan.unit} start={typable(level * mm)} onValue={(value) => take(`level ${signed(value * mm)} mm`, { kind: 'level', at: nodes, level: value })} />
+          <LengthField label="no lower than" bare="mm" to={plan.unit} start="" onValue={(least) => take(`lowest ${signed(least * mm)} mm`, { kind: 'bounds', at: nodes, least, most: null })} />
+          <LengthField label="no higher than" bare="mm" to={plan.unit} start="" onValue={(most) => take(`highest ${signed(most * mm)} mm`, { kind: 'bounds', at: nodes, least: null, most })} />
         </>}
         {kind === 'joint' && <>
-          <p>{word('flush', () => take('flush', { kind: 'flush', at: joints }))}{(['ridge', 'valley'] as const).map((fold) => word(fold, () => take(fold, { kind: 'form-force', at: joints, force: fold })))}</p>
+          <p>{word('flush', () => take('flush', { kind: 'flush', at: joints }))}{(['ridge', 'valley'] as const).map((fold) => word(fold, () => take(fold, { kind: 'form-force', at: joints, force: fold })))}{word('no valley', () => take('no valley', { kind: 'one-way', at: joints, fold: 'no-valley' }))}</p>
           <NumberField label="force of each" start="" onValue={(force) => take(`force ${figure(force, 3)}`, { kind: 'form-force', at: joints, force })} />
         </>}
         <p>{word('Put down', () => desk.set({ gathered: null }))}</p>
