@@ -56,6 +56,25 @@ test('a plan that almost lifts: the plan moved, its roof, the moves as list and 
   expect(again.stress.residual).toBeLessThan(1e-12)
 })
 
+test('what is to be kept is told to the job: a panel that keeps its shape, and one that is not there', () => {
+  panewise.file('cells.obj', cellsObj)
+  const ran = panewise.run(['adjust', 'cells.obj', '--out', 'kept', '--keep', 'bays', '--keep', 'axes', '--keep-shape', 'P20', '--json'])
+  expect(ran.code).toBe(0)
+  expect(JSON.parse(ran.out).adjusted.held.shapes).toBe(1)
+  const places = (text: string): number[][] => text.split('\n').filter((line) => line.startsWith('v ')).map((line) => line.split(' ').slice(1, 3).map(Number))
+  const [before, after] = [places(cellsObj), places(textOf('kept/plan.obj'))]
+  const nodes = [...drawn.corner.slice(drawn.panelStart[19], drawn.panelStart[20])]
+  const length = (of: number[][], k: number): number => {
+    const [a, b] = [of[nodes[k]!]!, of[nodes[(k + 1) % nodes.length]!]!]
+    return Math.hypot(a[0]! - b[0]!, a[1]! - b[1]!)
+  }
+  nodes.forEach((_, k) => expect(length(after, k)).toBeCloseTo(length(before, k), 9))
+  const missing = panewise.run(['adjust', 'cells.obj', '--out', 'missing', '--keep-shape', 'P900'])
+  expect(missing.code).toBe(2)
+  expect(missing.err).toMatch(/no panel P900/)
+  expect(panewise.run(['adjust', 'cells.obj', '--out', 'missing', '--keep', 'colour']).code).toBe(2)
+})
+
 test('within the plan tolerance check says so, with the shift', () => {
   panewise.file('cells.obj', cellsObj)
   const wide = panewise.run(['check', 'cells.obj', '--plan-tolerance', '50', '--json'])

@@ -105,6 +105,13 @@ describe('refused or failed', () => {
     if (found.kind === 'failed') expect(found.message).toMatch(/out of flat|another roof/)
   })
 
+  test('a soft target that ends in another roof: cells whose nodes stay lift to their own dome and to no steeper-sided one', () => {
+    const plan = cells(60, 4)
+    const found = outcome(plan, { target: heightsOf(plan, (x, y) => rise * (1 - (x * x + y * y) ** 2 / 0.1)) }, { fixed: [...plan.x.keys()] })
+    expect(found.kind).toBe('failed')
+    if (found.kind === 'failed') expect(found.message).toMatch(/another roof: it misses the asked heights by \d+/)
+  })
+
   test('nodes that may not move as far as they would have to', () => {
     const { plan } = jittered(cells(60, 4), 0.05, 2)
     const free = movedPlanOf(plan, { target: heightsOf(plan, paraboloid) })
