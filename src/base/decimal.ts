@@ -26,6 +26,19 @@ export function rounded(value: number, decimals: number): number {
   return value < 0 && result !== 0 ? -result : result
 }
 
+/** `rounded` of each value. */
+export function allRounded(values: Float64Array, decimals: number): Float64Array {
+  const scale = 10 ** decimals
+  const out = values.slice()
+  for (let i = 0; i < out.length; i += 1) {
+    const scaled = Math.abs(out[i]) * scale
+    if (!(scaled < exactIntegers)) continue
+    const result = Math.round(scaled) / scale
+    out[i] = out[i] < 0 && result !== 0 ? -result : result
+  }
+  return out
+}
+
 /** The shortest digits that read back as exactly this double, without an exponent. */
 export function shortest(value: number): string {
   assert(Number.isFinite(value), 'a number to be written is finite')

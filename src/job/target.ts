@@ -48,13 +48,14 @@ const flat = 'all nodes have the same'
 
 /** Why these heights are no target, as a clause; null: they are one. */
 function whyNot(plan: Plan, heights: Float64Array): string | null {
-  const known = heights.filter((height) => !Number.isNaN(height))
-  let low = Infinity, high = -Infinity
-  for (const height of known) {
-    low = Math.min(low, height)
-    high = Math.max(high, height)
+  let known = 0, low = Infinity, high = -Infinity
+  for (let i = 0; i < heights.length; i += 1) {
+    if (Number.isNaN(heights[i])) continue
+    known += 1
+    if (heights[i] < low) low = heights[i]
+    if (heights[i] > high) high = heights[i]
   }
-  if (known.length < leastShare * plan.nodeCount) return `only ${known.length} of ${plan.nodeCount} nodes have one`
+  if (known < leastShare * plan.nodeCount) return `only ${known} of ${plan.nodeCount} nodes have one`
   const range_mm = (high - low) * conversion(plan.unit, 'mm')
   if (range_mm <= leastRange_mm) return range_mm === 0 ? flat : `they differ by ${range_mm.toPrecision(2)} mm only`
   if (high - low <= leastRangeOfSpan * plan.frame.span) return `they differ by ${range_mm.toPrecision(3)} mm, less than a thousandth of the span`

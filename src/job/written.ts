@@ -1,5 +1,5 @@
 /** The coordinates that leave the tool, rounded as they are written, and how flat the panels are there. */
-import { micrometreDecimals, rounded } from '../base/decimal.ts'
+import { allRounded, micrometreDecimals } from '../base/decimal.ts'
 import { conversion } from '../base/length.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Plan } from '../plan/plan.ts'
@@ -19,15 +19,20 @@ export interface Written {
 
 /** `heights` in the plan's unit; `decimals` null: x and y as read, z to 1 um; else all three to so many. */
 export function* writtenCoordinates(plan: Plan, heights: Float64Array, decimals: number | null): Steps<Written> {
-  const z = heights.map((value) => rounded(value, decimals ?? micrometreDecimals[plan.unit]))
-  const x = decimals === null ? plan.x : plan.x.map((value) => rounded(value, decimals))
-  const y = decimals === null ? plan.y : plan.y.map((value) => rounded(value, decimals))
+  const z = allRounded(heights, decimals ?? micrometreDecimals[plan.unit])
+  const x = decimals === null ? plan.x : allRounded(plan.x, decimals)
+  const y = decimals === null ? plan.y : allRounded(plan.y, decimals)
   const mm = conversion(plan.unit, 'mm')
   const flat = yield* flatness(plan, x, y, z)
   return {
-    x, y, z, flat: { corner: flat.corner.map((value) => value * mm), zone: flat.zone.map((value) => value * mm) },
+    x, y, z, flat: { corner: times(flat.corner, mm), zone: times(flat.zone, mm) },
     exactMax: largestZone(plan, plan.x, plan.y, heights) * mm,
   }
+}
+
+function times(values: Float64Array, factor: number): Float64Array {
+  for (let i = 0; i < values.length; i += 1) values[i] *= factor
+  return values
 }
 
 /** The flatness figures of a summary; at most ten panels that are over the tolerance, worst first. */

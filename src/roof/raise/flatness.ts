@@ -2,6 +2,7 @@
 import { cornerDeviation } from '../../base/geometry/corner-deviation.ts'
 import { leastSquaresZone } from '../../base/geometry/least-squares-plane.ts'
 import { minimumZone } from '../../base/geometry/minimum-zone.ts'
+import { nearlyFlat } from '../../base/geometry/nearly-flat.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 
@@ -18,6 +19,7 @@ export interface Flatness {
 export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float64Array): Steps<Flatness> {
   const corner = new Float64Array(plan.panelCount)
   const zone = new Float64Array(plan.panelCount)
+  const both = new Float64Array(2)
   let points = new Float64Array(3 * 16)
   for (let p = 0; p < plan.panelCount; p += 1) {
     if ((p & 4095) === 0) yield { stage: 'Measuring flatness', done: p / plan.panelCount }
@@ -25,8 +27,13 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
     if (count === 3) continue
     if (points.length < 3 * count) points = new Float64Array(6 * count)
     cornersAbout(plan, p, x, y, z, points)
-    corner[p] = cornerDeviation(points, 0, count)
-    zone[p] = minimumZone(points, 0, count)
+    if (nearlyFlat(points, 0, count, both)) {
+      corner[p] = both[0]
+      zone[p] = both[1]
+    } else {
+      corner[p] = cornerDeviation(points, 0, count)
+      zone[p] = minimumZone(points, 0, count)
+    }
   }
   return { corner, zone }
 }
@@ -43,6 +50,23 @@ function cornersAbout(plan: Plan, panel: number, x: Float64Array, y: Float64Arra
   }
 }
 
+/** Range of the vertical distances of the corners from the plane through three of them: no less than the minimum zone. */
+function verticalSpread(p: Float64Array, count: number): number {
+  const b = 3 * (count >> 1 === 1 ? 1 : Math.floor(count / 3)), c = 3 * (count - 1)
+  const det = p[b] * p[c + 1] - p[b + 1] * p[c]
+  const gx = (p[b + 2] * p[c + 1] - p[c + 2] * p[b + 1]) / det
+  const gy = (p[b] * p[c + 2] - p[c] * p[b + 2]) / det
+  let low = 0, high = 0
+  for (let k = 3; k < 3 * count; k += 3) {
+    const off = p[k + 2] - gx * p[k] - gy * p[k + 1]
+    if (off < low) low = off
+    else if (off > high) high = off
+    // Three corners in a line have no plane of their own.
+    else if (!(off <= high)) return Infinity
+  }
+  return high - low
+}
+
 /**
  * The largest minimum zone of all panels; once it is over `enough` the search may stop and return what it has. A panel's
  * least-squares zone is an upper bound, so only panels that could exceed the largest so far are measured in full.
@@ -50,13 +74,16 @@ function cornersAbout(plan: Plan, panel: number, x: Float64Array, y: Float64Arra
 export function largestZone(plan: Plan, x: Float64Array, y: Float64Array, z: Float64Array, enough = Infinity): number {
   let points = new Float64Array(3 * 16)
   const plane = new Float64Array(6)
+  const both = new Float64Array(2)
   let most = 0
   for (let p = 0; p < plan.panelCount && most <= enough; p += 1) {
     const from = plan.panelStart[p], count = plan.panelStart[p + 1] - from
     if (count === 3) continue
     if (points.length < 3 * count) points = new Float64Array(6 * count)
     cornersAbout(plan, p, x, y, z, points)
-    if (leastSquaresZone(points, 0, count, plane) > most) most = Math.max(most, minimumZone(points, 0, count))
+    if (verticalSpread(points, count) <= most) continue
+    if (nearlyFlat(points, 0, count, both)) most = Math.max(most, both[1])
+    else if (leastSquaresZone(points, 0, count, plane) > most) most = Math.max(most, minimumZone(points, 0, count))
   }
   return most
 }

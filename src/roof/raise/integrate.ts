@@ -28,7 +28,8 @@ export function integrate(plan: Plan, stress: Float64Array, walk: DualWalk, root
     gradient[2 * panel + 1] = rootPlane[3 * part + 1]
     constant[panel] = rootPlane[3 * part + 2]
   })
-  for (const half of walk.half) {
+  for (let step = 0; step < walk.half.length; step += 1) {
+    const half = walk.half[step]
     const from = panelOf[half], to = panelOf[half ^ 1]
     const a = origin[half], b = origin[half ^ 1]
     const ax = work[2 * a], ay = work[2 * a + 1], bx = work[2 * b], by = work[2 * b + 1]

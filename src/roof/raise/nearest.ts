@@ -8,16 +8,26 @@
  * Tried and dropped: a factor of Q - tau M (area in the shift): a second factor, and its count is wrong on graded plans.
  */
 import { dot } from '../../base/dot.ts'
-import { nearestShare, tau } from '../../base/geometry/tolerance.ts'
+import { epsilon, nearestShare, tau } from '../../base/geometry/tolerance.ts'
+import type { Factor } from '../../base/sparse/factor.ts'
 import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
-import { expand, projected, reduce, type LiftSpace } from '../stress/lift-space.ts'
+import { addTo, liftBasis, minus, nearestOfFew } from '../stress/lift-basis.ts'
+import { expand, projected, pulledIn, reduce, type LiftSpace } from '../stress/lift-space.ts'
 import { applyForm } from '../stress/panel-bases.ts'
 import type { Metric } from './soft.ts'
 
 /** Plan area that belongs to each node (an equal share of its panels), scaled to mean 1 (length nodeCount). */
 export function nodeAreas(plan: Plan): Float64Array {
+  const known = areasOf.get(plan) ?? newAreas(plan)
+  areasOf.set(plan, known)
+  return known
+}
+
+const areasOf = new WeakMap<Plan, Float64Array>()
+
+function newAreas(plan: Plan): Float64Array {
   const areas = new Float64Array(plan.nodeCount)
   const { panelStart, corner, work } = plan
   for (let p = 0; p < plan.panelCount; p += 1) {
@@ -49,15 +59,26 @@ export function* roofUnderConditions(space: LiftSpace, wish: Float64Array): Step
   return yield* broughtFlat(space, h.map((height, i) => height + h0[i]), 3)
 }
 
-/** The same roof with what is unflat in it taken out `steps` times. */
+/** The same roof with what is unflat in it taken out `steps` times, or until a step takes out next to nothing. */
 export function* broughtFlat(space: LiftSpace, heights: Float64Array, steps: number): Steps<Float64Array> {
   let h = heights
   for (let step = 0; step < steps; step += 1) {
     yield { stage: 'Raising', done: step / (2 * steps) }
     const unflat = unflatPart(space, h)
-    if (unflat !== null) h = h.map((height, i) => height - unflat[i])
+    if (unflat === null) continue
+    h = minus(h, unflat)
+    if (largest(unflat) <= nothingLeft * largest(h)) break
   }
   return h
+}
+
+/** A step takes out all but tau / lambda, 3e-4 at most: after one this small the rest is rounding. */
+const nothingLeft = 1e-13
+
+function largest(values: Float64Array): number {
+  let most = 0
+  for (let i = 0; i < values.length; i += 1) most = Math.max(most, Math.abs(values[i]))
+  return most
 }
 
 /**
@@ -67,6 +88,7 @@ export function* broughtFlat(space: LiftSpace, heights: Float64Array, steps: num
  */
 function unflatPart(space: LiftSpace, heights: Float64Array): Float64Array | null {
   let part = unflat(space, heights)
+  if (space.probe !== null && space.dimension * space.probe.quotient <= exactLift) return part
   for (let pass = 0; pass < mostPasses; pass += 1) {
     const again = unflat(space, part)
     let change = 0, size = 0
@@ -83,6 +105,8 @@ function unflatPart(space: LiftSpace, heights: Float64Array): Float64Array | nul
 const unflat = (space: LiftSpace, heights: Float64Array): Float64Array =>
   expand(space.elimination, solve(space.factor, reduce(space.elimination, applyForm(space.plan, space.bases, heights))))
 
+/** Lifts at or below this share of tau, in all, are exact: of them nothing is taken that counts. */
+const exactLift = 1e-10 * tau
 const mostPasses = 4
 const settledShare = 1e-2
 
@@ -92,14 +116,19 @@ const settledShare = 1e-2
  */
 export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metric, wish: Float64Array, zeroSoft: boolean): Steps<Float64Array> {
   if (space.dimension === 0) return roof
-  const n = roof.length
+  const basis = liftBasis(space)
   const pull = metric.pull(wish, zeroSoft)
+  if (basis !== null) return nearestOfFew(basis, roof, (heights) => metric.apply(heights), pull)
+  const shape = linearIn(space, roof, metric, wish)
+  const before = shape === null ? null : scaledAnswer(space, shape)
+  if (before !== null) return before
   // The nearest in plain least squares is a good start: areas differ little.
-  const begin = projected(space, wish.map((height, i) => height - roof[i]))
-  const h = roof.map((height, i) => height + begin[i])
+  const h = projected(space, minus(wish, roof))
+  addTo(h, roof, 1)
   const kept = metric.apply(h)
-  let residual = kept.map((value, i) => pull[i] - value)
+  let residual = minus(pull, kept)
   let g = projected(space, residual)
+  const isLean = leavesLittle(space)
   const direction = g.slice()
   let size = dot(residual, g)
   const whole = dot(h, kept)
@@ -111,16 +140,66 @@ export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metri
     if (!(curvature > 0)) break
     const length = dot(residual, direction) / curvature
     const before = residual
-    residual = before.map((value, i) => value - length * turned[i])
-    for (let i = 0; i < n; i += 1) h[i] += length * direction[i]
-    g = projected(space, residual)
+    residual = before.slice()
+    addTo(residual, turned, -length)
+    addTo(h, direction, length)
+    if (isLean) {
+      // K y = r says r - Q y = -tau y = g: what is no lift goes out of the residual, as exactly as Q y holds no lift, and so
+      // what one solve leaves of it shrinks with the steps (the residual update of Gould, Hribar and Nocedal).
+      g = pulledIn(space, residual)
+      addTo(residual, applyForm(space.plan, space.bases, g), 1 / tau)
+    } else g = projected(space, residual)
     // Polak and Ribiere's share: the projection is good to 1e-3 only, and this form forgives it.
     const share = (dot(residual, g) - dot(before, g)) / size
     size = dot(residual, g)
-    for (let i = 0; i < n; i += 1) direction[i] = g[i] + share * direction[i]
+    for (let i = 0; i < direction.length; i += 1) direction[i] = g[i] + share * direction[i]
   }
-  return yield* broughtFlat(space, h, 1)
+  const nearest = yield* broughtFlat(space, h, 1)
+  if (shape !== null) remember(space, shape, nearest)
+  return nearest
 }
+
+/** What an answer is linear in: the wish, where the conditions ask for nothing but zero, or what they ask for, where nothing is wished. */
+interface Shape {
+  readonly of: 'wish' | 'conditions'
+  readonly areas: Float64Array
+  readonly heights: Float64Array
+}
+
+function linearIn(space: LiftSpace, roof: Float64Array, { plain: areas }: Metric, wish: Float64Array): Shape | null {
+  if (areas === undefined) return null
+  if (isZero(roof)) return { of: 'wish', areas, heights: wish }
+  return isZero(wish) ? { of: 'conditions', areas, heights: space.elimination.particular } : null
+}
+
+const isZero = (values: Float64Array): boolean => values.every((value) => value === 0)
+
+/** The last answers off a factor: they serve multiples of what they are linear in, as another rise or a level that is moved. */
+const lastAnswers = new WeakMap<Factor, Map<Shape['of'], Shape & { readonly nearest: Float64Array }>>()
+
+function remember(space: LiftSpace, shape: Shape, nearest: Float64Array): void {
+  const last = lastAnswers.get(space.factor) ?? new Map<Shape['of'], Shape & { readonly nearest: Float64Array }>()
+  lastAnswers.set(space.factor, last.set(shape.of, { ...shape, heights: shape.heights.slice(), nearest: nearest.slice() }))
+}
+
+/** The answer to a multiple of the last shape, but for rounding; null: it is none. */
+function scaledAnswer(space: LiftSpace, { of, areas, heights }: Shape): Float64Array | null {
+  const last = lastAnswers.get(space.factor)?.get(of)
+  if (last === undefined || last.areas !== areas) return null
+  let peak = 0
+  for (let i = 1; i < heights.length; i += 1) if (Math.abs(last.heights[i]) > Math.abs(last.heights[peak])) peak = i
+  if (last.heights[peak] === 0) return null
+  const scale = heights[peak] / last.heights[peak]
+  const rounding = 4 * epsilon * Math.abs(heights[peak])
+  for (let i = 0; i < heights.length; i += 1) if (!(Math.abs(heights[i] - scale * last.heights[i]) <= rounding)) return null
+  const out = last.nearest.slice()
+  for (let i = 0; i < out.length; i += 1) out[i] *= scale
+  return out
+}
+
+/** Whether one solve leaves so little that is no lift, tau / lambda of the nearest near lift, that one more at the end takes it out. */
+const leavesLittle = ({ probe }: LiftSpace): boolean => probe !== null && dot(probe.rest, probe.rest) <= leanShare ** 2 * dot(probe.lift, probe.lift)
+const leanShare = 1e-6
 
 /**
  * Whether g is the projection of the residual r, `along` = r.g: then r.g = g.g, or less where rounded coordinates make lifts

@@ -2,7 +2,7 @@
  * One roof out of many: the nearest to the wish under the conditions, brought to the asked rise by scale where the
  * conditions leave the scale free, else by the amplitude of the wish. Working heights: (z - datum) / span.
  */
-import { keptShare } from '../../base/geometry/tolerance.ts'
+import { epsilon, keptShare } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { LiftSpace } from '../stress/lift-space.ts'
 import { smoothestLifts } from '../stress/smoothest-lifts.ts'
@@ -140,11 +140,29 @@ function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit
       doublings += 1
     }
   }
+  // Regula falsi, with the end that stays halved (the Illinois rule: Dowell, Jarratt, BIT 11, 1971): the rise is made of
+  // straight pieces, so a few steps find the one that crosses the goal and one more ends on it; halving took fifty.
+  let below = (yield* riseAt(low)) - goal, above = (yield* riseAt(high)) - goal
+  let stayed = 0
   for (let k = 0; k < 100; k += 1) {
     const middle = (low + high) / 2
     if (middle === low || middle === high) break
-    if ((yield* riseAt(middle)) < goal) low = middle
-    else high = middle
+    const crossing = low - (below * (high - low)) / (above - below)
+    // Within bounds the rise levels out, where secants creep: there halving serves.
+    const a = !isBounded && (crossing - low) * (crossing - high) < 0 ? crossing : middle
+    const off = (yield* riseAt(a)) - goal
+    if (!isBounded && Math.abs(off) <= 4 * epsilon * asked) return a
+    if (off < 0) {
+      low = a
+      below = off
+      if (stayed === 1) above /= 2
+      stayed = 1
+    } else {
+      high = a
+      above = off
+      if (stayed === -1) below /= 2
+      stayed = -1
+    }
   }
   return (low + high) / 2
 }

@@ -12,6 +12,8 @@ export interface Metric {
   apply(heights: Float64Array): Float64Array
   /** M t + C^T W d for the wish t; `zero` takes the soft values d as 0. */
   pull(wish: Float64Array, zero: boolean): Float64Array
+  /** The areas where they are all there is to it. */
+  readonly plain?: Float64Array
 }
 
 /** What each row counts: its condition's weight, shared among the condition's rows; see above. */
@@ -27,8 +29,10 @@ export function metricOf(areas: Float64Array, soft: SoftRows): Metric {
     for (let k = soft.start[r]; k < soft.start[r + 1]; k += 1) out[soft.node[k]] += amount * soft.weight[k]
   }
   return {
+    ...(rowCount(soft) === 0 ? { plain: areas } : {}),
     apply(heights) {
-      const out = heights.map((height, i) => areas[i] * height)
+      const out = heights.slice()
+      for (let i = 0; i < out.length; i += 1) out[i] *= areas[i]
       for (let r = 0; r < rowCount(soft); r += 1) {
         let value = 0
         for (let k = soft.start[r]; k < soft.start[r + 1]; k += 1) value += soft.weight[k] * heights[soft.node[k]]
@@ -37,7 +41,8 @@ export function metricOf(areas: Float64Array, soft: SoftRows): Metric {
       return out
     },
     pull(wish, zero) {
-      const out = wish.map((height, i) => areas[i] * height)
+      const out = wish.slice()
+      for (let i = 0; i < out.length; i += 1) out[i] *= areas[i]
       if (!zero) for (let r = 0; r < rowCount(soft); r += 1) spread(out, r, weight[r] * soft.value[r])
       return out
     },

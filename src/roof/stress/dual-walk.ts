@@ -11,7 +11,16 @@ export interface DualWalk {
   readonly half: Int32Array
 }
 
+/** Found once a plan. */
 export function dualWalk(plan: Plan): DualWalk {
+  const known = walkOf.get(plan) ?? newWalk(plan)
+  walkOf.set(plan, known)
+  return known
+}
+
+const walkOf = new WeakMap<Plan, DualWalk>()
+
+function newWalk(plan: Plan): DualWalk {
   const root = middlePanels(plan)
   const seen = new Uint8Array(plan.panelCount)
   const queue = new Int32Array(plan.panelCount)

@@ -28,10 +28,10 @@ export function frozenJoints(space: LiftSpace, tilts: number, roof: Float64Array
     const least = Math.max(frozenShare * rms(force), noise)
     for (let j = 0; j < plan.jointCount; j += 1) if (Math.abs(force[j]) > least) frozen[j] = 0
   }
-  if (space.dimension > tilts) {
-    const probes = projected(space, gaussians(2 * plan.nodeCount, 20), 2)
-    mark(probes.subarray(0, plan.nodeCount))
-    mark(probes.subarray(plan.nodeCount))
+  if (space.probe !== null && space.dimension > tilts) {
+    mark(space.probe.lift)
+    // What has folded needs no second look.
+    if (frozen.includes(1)) mark(projected(space, gaussians(plan.nodeCount, 21)))
   }
   if (roof !== null) mark(roof)
   return frozen

@@ -38,11 +38,12 @@ export function* smallestNearLift(space: LiftSpace, off: Factor = space.factor, 
   if (space.dimension >= n) return null
   const basis: Float64Array[] = []
   const formed: Float64Array[] = []
-  let vector = gaussians(n, 7)
+  const isOwn = off === space.factor && passes === 1 && space.probe !== null
+  let vector = isOwn ? space.probe.rest : gaussians(n, 7)
   let found = Infinity
   for (let step = 0; step < mostSteps; step += 1) {
     yield { stage: 'Measuring the gap', done: step / mostSteps }
-    const direction = newDirection(basis, filtered(space, off, passes, vector))
+    const direction = newDirection(basis, step === 0 && isOwn ? space.probe.rest : filtered(space, off, passes, vector))
     if (direction === null) break
     basis.push(direction)
     formed.push(applyForm(space.plan, space.bases, direction))

@@ -15,11 +15,13 @@ import { factor, type Factor } from '../../base/sparse/factor.ts'
 import { inertia } from '../../base/sparse/inertia.ts'
 import { dissection } from '../../base/sparse/order.ts'
 import { solve } from '../../base/sparse/solve.ts'
+import { dot } from '../../base/dot.ts'
 import { tau } from '../../base/geometry/tolerance.ts'
+import { gaussians } from '../../base/random.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { Elimination } from '../conditions/eliminate.ts'
-import { applyForm, type PanelBases } from './panel-bases.ts'
+import { applyForm, squaredResidual, type PanelBases } from './panel-bases.ts'
 
 export interface LiftSpace {
   readonly plan: Plan
@@ -31,6 +33,18 @@ export interface LiftSpace {
   readonly factor: Factor
   /** Lifts that keep the conditions with all their values zero, tilts included. */
   readonly dimension: number
+  /** A random lift; null where there is none. */
+  readonly probe: Probe | null
+}
+
+/** Random heights projected: two solves, which say what several questions ask first. */
+export interface Probe {
+  /** The lift they come to (length nodeCount) .. */
+  readonly lift: Float64Array
+  /** .. and what the second solve took out of it: -tau T K^-1 T^T Q T K^-1 T^T of the heights, made of near lifts mostly. */
+  readonly rest: Float64Array
+  /** |N^T h|^2 / |h|^2 of the lift: how exactly the plan's lifts lift, as eigenvalues are; rounding squared where they do. */
+  readonly quotient: number
 }
 
 /** Q and the metric under an elimination: one clique of unknowns a panel, then one a node. */
@@ -61,7 +75,17 @@ export function* liftSpace(plan: Plan, bases: PanelBases, elimination: Eliminati
   const shifted = weightedForm(plan, elimination, form, null, -tau, 1)
   const factored = yield* factor(analysis, shifted)
   const { negative, zero } = inertia(factored)
-  return { plan, bases, elimination, form, analysis, factor: factored, dimension: negative + zero }
+  const space = { plan, bases, elimination, form, analysis, factor: factored, dimension: negative + zero, probe: null }
+  yield { stage: 'Factoring', done: 1 }
+  return { ...space, probe: space.dimension === 0 ? null : probeOf(space) }
+}
+
+function probeOf(space: LiftSpace): Probe {
+  const { plan, bases, elimination } = space
+  const lift = pulledIn(space, gaussians(plan.nodeCount, 7))
+  const rest = expand(elimination, solve(space.factor, reduce(elimination, applyForm(plan, bases, lift))))
+  for (let i = 0; i < lift.length; i += 1) lift[i] -= rest[i]
+  return { lift, rest, quotient: squaredResidual(plan, bases, lift) / dot(lift, lift) }
 }
 
 /** T^T Q T by panels: with B = I - 11^T/k - e1 e1^T - e2 e2^T and T_p the panel's rows of T, the block is T_p^T B T_p. */
@@ -216,6 +240,13 @@ export function flattened(space: LiftSpace, heights: Float64Array, columns = 1):
   for (let column = 0; column < columns; column += 1) formed.set(applyForm(plan, bases, heights.subarray(column * n, (column + 1) * n)), column * n)
   const correction = expand(elimination, solve(space.factor, reduce(elimination, formed, columns), columns), columns)
   return heights.map((height, i) => height - correction[i])
+}
+
+/** -tau T K^-1 T^T h, by one solve: the projection, but that what is no lift is left at tau / lambda of itself. */
+export function pulledIn(space: LiftSpace, heights: Float64Array): Float64Array {
+  const y = solve(space.factor, reduce(space.elimination, heights))
+  for (let i = 0; i < y.length; i += 1) y[i] *= -tau
+  return expand(space.elimination, y)
 }
 
 /**

@@ -12,7 +12,9 @@ export function lessTilt(plan: Plan, heights: Float64Array, areas: Float64Array)
     for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) partOfNode[plan.corner[c]] = plan.partOf[p]
   }
   const planes = partPlanes(plan, heights, Int32Array.from({ length: plan.nodeCount }, (_, i) => i), partOfNode, areas)
-  return heights.map((height, i) => height - at(planes, plan, partOfNode[i], i))
+  const out = heights.slice()
+  for (let i = 0; i < out.length; i += 1) out[i] -= at(planes, plan, partOfNode[i], i)
+  return out
 }
 
 /** Whether the corners of each part, shared nodes too, lie within `tolerance` of one plane: then no joint folds. */
@@ -27,8 +29,10 @@ export function isTilt(plan: Plan, heights: Float64Array, tolerance: number): bo
 /** Mean x, mean y, mean height, gx, gy of each part (length 5 * partCount). */
 type Planes = Float64Array
 
-const at = (planes: Planes, { work }: Plan, part: number, node: number): number =>
-  planes[5 * part + 2] + planes[5 * part + 3] * (work[2 * node] - planes[5 * part]) + planes[5 * part + 4] * (work[2 * node + 1] - planes[5 * part + 1])
+function at(planes: Planes, plan: Plan, part: number, node: number): number {
+  const { work } = plan
+  return planes[5 * part + 2] + planes[5 * part + 3] * (work[2 * node] - planes[5 * part]) + planes[5 * part + 4] * (work[2 * node + 1] - planes[5 * part + 1])
+}
 
 /** Least-squares planes through the heights of the nodes listed, each with its part; `areas` by node, null: all alike. */
 function partPlanes(plan: Plan, heights: Float64Array, nodes: Int32Array, parts: Int32Array, areas: Float64Array | null): Planes {
