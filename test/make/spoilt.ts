@@ -220,11 +220,44 @@ const onPoints = (sketch: Sketch, change: (p: Point) => Point): Sketch => ({
   ...(sketch.beside === undefined ? {} : { beside: sketch.beside.map((each) => besideOnPoints(each, change)) }),
 })
 
+/** A place well inside some pane or outline of the sketch: next to the middle of a side, a third of its length away from it. */
+function someInside(sketch: Sketch, next: Random): Point {
+  const middle = (points: readonly Point[]): Point => [points.reduce((sum, p) => sum + p[0], 0) / points.length, points.reduce((sum, p) => sum + p[1], 0) / points.length]
+  const outlines = (sketch.outlines ?? []).map((o) => o.map((p): Point => [p[0], p[1]]))
+  // The widest of some outlines is a pane; among lines, the place of some that is farthest from all ends and middles.
+  const marks = (sketch.lines ?? []).flatMap(([p, q]) => [p, q, middle([p, q])])
+  const all = [...outlines.flat(), ...marks]
+  const [low, high] = [[Math.min(...all.map((p) => p[0])), Math.min(...all.map((p) => p[1]))], [Math.max(...all.map((p) => p[0])), Math.max(...all.map((p) => p[1]))]]
+  const sides = [...(sketch.lines ?? []), ...outlines.flatMap(closed)]
+  const off = (at: Point): number => Math.min(...sides.map(([p, q]) => {
+    const [ux, uy] = [q[0] - p[0], q[1] - p[1]]
+    const share = Math.max(0, Math.min(1, ((at[0] - p[0]) * ux + (at[1] - p[1]) * uy) / (ux * ux + uy * uy)))
+    return Math.hypot(at[0] - p[0] - share * ux, at[1] - p[1] - share * uy)
+  }))
+  const tried = Array.from({ length: 30 }, (): Point => [low[0]! + next() * (high[0]! - low[0]!), low[1]! + next() * (high[1]! - low[1]!)])
+  return tried.reduce((best, at) => (off(at) > off(best) ? at : best))
+}
+
 const survey = ([x, y]: Point): Point => [x + 3512345.25, y + 5412345.75]
 
 export const faults: readonly Fault[] = [
   { name: 'no fault', spoil: (sketch) => ({ sketch }) },
   ...besideFaults,
+  {
+    // Nodes moved, the same in every line that ends there: before faults that move each end by itself.
+    name: 'nodes set by hand to 0.4 mm',
+    spoil: (sketch, next) => {
+      const shifts = new Map<string, Point>()
+      return {
+        sketch: onPoints(sketch, ([x, y]) => {
+          const key = `${Math.round(1e6 * x)} ${Math.round(1e6 * y)}`
+          const shift = shifts.get(key) ?? [4e-4 * (2 * next() - 1), 4e-4 * (2 * next() - 1)]
+          shifts.set(key, shift)
+          return [x + shift[0], y + shift[1]]
+        }),
+      }
+    },
+  },
   { name: 'rounded to 0.1 mm', spoil: (sketch) => ({ sketch: onPoints(sketch, ([x, y]) => [Math.round(x * 1e4) / 1e4, Math.round(y * 1e4) / 1e4]) }) },
   { name: 'ends off by 0.3 mm', spoil: (sketch, next) => ({ sketch: onPoints(sketch, ([x, y]) => [x + 3e-4 * (2 * next() - 1), y + 3e-4 * (2 * next() - 1)]) }) },
   { name: 'sixteen digits', spoil: (sketch, next) => ({ sketch: onPoints(sketch, ([x, y]) => [x * (1 + 2e-16 * (next() - 0.5)), y + 1e-15 * next()]) }) },
@@ -244,20 +277,82 @@ export const faults: readonly Fault[] = [
       return { sketch: { ...sketch, ...(sketch.lines === undefined ? {} : { lines: sketch.lines.flatMap(twice) }) } }
     },
   },
+  { name: 'seen from below', spoil: (sketch) => ({ sketch: onPoints(sketch, ([x, y]) => [-x, y]), move: ([x, y]) => [-x, y] }) },
+  {
+    // Lines broken at a place between their ends, as trimming and exploding leave them.
+    name: 'lines in pieces',
+    spoil: (sketch, next) => {
+      const pieces = ([p, q]: Segment): Segment[] => {
+        if (next() < 0.5) return [[p, q]]
+        const share = 0.2 + 0.6 * next()
+        const middle: Point = [p[0] + share * (q[0] - p[0]), p[1] + share * (q[1] - p[1])]
+        return [[p, middle], [middle, q]]
+      }
+      return { sketch: { ...sketch, ...(sketch.lines === undefined ? {} : { lines: sketch.lines.flatMap(pieces) }) } }
+    },
+  },
+  {
+    name: 'half of it rounded to 0.1 mm',
+    spoil: (sketch, next) => ({ sketch: onPoints(sketch, ([x, y]) => (next() < 0.5 ? [x, y] : [Math.round(x * 1e4) / 1e4, Math.round(y * 1e4) / 1e4])) }),
+  },
+  {
+    // A line left behind, kilometres away.
+    name: 'something far away',
+    spoil: (sketch) => ({ sketch: { ...sketch, lines: [...(sketch.lines ?? []), [[9000, 7000], [9004, 7000]]] } }),
+  },
+  {
+    // Strokes of an exploded hatch in the middle of a pane, touching nothing.
+    name: 'strokes in a pane',
+    spoil: (sketch, next) => {
+      const at = someInside(sketch, next)
+      const strokes = Array.from({ length: 5 }, (_, k): Segment => [[at[0] - 0.05, at[1] + 0.01 * k], [at[0] + 0.05, at[1] + 0.01 * k]])
+      return { sketch: { ...sketch, lines: [...(sketch.lines ?? []), ...strokes] } }
+    },
+  },
+  {
+    // A sliver of 0.2 mm along a line or side that is there.
+    name: 'a sliver',
+    spoil: (sketch, next) => {
+      const sides = [...(sketch.lines ?? []), ...(sketch.outlines ?? []).flatMap((o) => closed(o.map((p): Point => [p[0], p[1]])))]
+      const [p, q] = sides[Math.floor(next() * sides.length)]!
+      const length = Math.hypot(q[0] - p[0], q[1] - p[1])
+      const off: Point = [p[0] + (q[0] - p[0]) / 2 - (2e-4 * (q[1] - p[1])) / length, p[1] + (q[1] - p[1]) / 2 + (2e-4 * (q[0] - p[0])) / length]
+      if (sketch.outlines !== undefined && sketch.lines === undefined) return { sketch: { ...sketch, outlines: [...sketch.outlines, [p, q, off]] } }
+      return { sketch: { ...sketch, lines: [...(sketch.lines ?? []), [p, off], [off, q]] } }
+    },
+  },
   {
     name: 'unit in the header wrong',
     spoil: (sketch) => ({ sketch: onPoints({ ...sketch, unit: 'm' }, ([x, y]) => [1000 * x, 1000 * y]), move: ([x, y]) => [1000 * x, 1000 * y] }),
   },
 ]
 
-/** Whether the plan read is the clean one: the same panels (by their nodes, in any order), nodes within `within` after `move`. */
+/** Nodes where one edge was only drawn in two pieces: two edges, and no farther than `within` from the line past it. */
+function inBetween(p: Plan, within: number): Set<number> {
+  const beside = new Map<number, number[]>()
+  for (let h = 0; h < p.origin.length; h += 1) beside.set(p.origin[h]!, [...(beside.get(p.origin[h]!) ?? []), p.origin[h ^ 1]!])
+  const out = new Set<number>()
+  for (const [n, ends] of beside) {
+    if (ends.length !== 2) continue
+    const [[ax, ay], [bx, by], [x, y]] = [pointOf(p, ends[0]!), pointOf(p, ends[1]!), pointOf(p, n)]
+    if (Math.abs((bx - ax) * (y - ay) - (by - ay) * (x - ax)) <= within * Math.hypot(bx - ax, by - ay) && (x - ax) * (x - bx) + (y - ay) * (y - by) < 0) out.add(n)
+  }
+  return out
+}
+
+/**
+ * Whether the plan read is the clean one: the same panels (by their nodes, in any order), nodes within `within` after `move`.
+ * A node in the middle of an edge that was drawn in two pieces is as drawn and changes no panel.
+ */
 export function isClean(clean: Plan, read: Plan, within: number, move: (p: Point) => Point = (p) => p): boolean {
-  if (read.panelCount !== clean.panelCount || read.nodeCount !== clean.nodeCount) return false
+  const extra = inBetween(read, within)
+  if (read.panelCount !== clean.panelCount || read.nodeCount - extra.size !== clean.nodeCount) return false
   const nodeOf: number[] = []
   for (let n = 0; n < clean.nodeCount; n += 1) {
     const [x, y] = move(pointOf(clean, n))
     let best = -1, least = within
     for (let m = 0; m < read.nodeCount; m += 1) {
+      if (extra.has(m)) continue
       const off = Math.hypot(read.x[m]! - x, read.y[m]! - y)
       if (off <= least) [best, least] = [m, off]
     }
@@ -265,7 +360,7 @@ export function isClean(clean: Plan, read: Plan, within: number, move: (p: Point
     nodeOf.push(best)
   }
   const key = (nodes: readonly number[]): string => [...nodes].sort((a, b) => a - b).join(' ')
-  const panels = new Set(Array.from({ length: read.panelCount }, (_, p) => key(ring(read, p))))
+  const panels = new Set(Array.from({ length: read.panelCount }, (_, p) => key(ring(read, p).filter((m) => !extra.has(m)))))
   return Array.from({ length: clean.panelCount }, (_, p) => key(ring(clean, p).map((n) => nodeOf[n]!))).every((k) => panels.has(k))
 }
 
