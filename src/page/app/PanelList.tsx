@@ -103,7 +103,7 @@ function flagWords(flag: number, over: number) {
   if (flag === 0) return null
   return (
     <>
-      {(flag & 1) === 1 && <span title="under the least slope"><svg width="22" height="9" aria-hidden="true"><path d="M1 2h8M12 2h8M5 7h8" /></svg><span className="unseen">under the least slope</span></span>}
+      {(flag & 1) === 1 && <span title="under the least slope"><svg width={flag === 3 ? 11 : 22} height="9" aria-hidden="true"><path d={flag === 3 ? 'M1 2h6M3 7h6' : 'M1 2h8M12 2h8M5 7h8'} /></svg><span className="unseen">under the least slope</span></span>}
       {(flag & 2) === 2 && <b>+{figure(over, over < 9.95 ? 1 : 0)}</b>}
     </>
   )

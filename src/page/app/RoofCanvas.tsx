@@ -89,13 +89,16 @@ class Boundary extends Component<{ readonly onFail: () => void; readonly childre
   }
 }
 
+/** Width in px that the rise takes beside the roof. */
+const riseRoom = 66
+
 /** Scale of the plan beside: parallel views share it. */
 export function roofScale(answer: Answer, size: Size, planSize: Size): { scale: number; shift: number } {
   const onPlan = planSize.width > 0 && planSize.height > 0
   const area = onPlan ? planArea(planSize.width, planSize.height, true) : planArea(size.width, size.height, false)
   const window = fitted(answer.plan, area)
   const fits = onPlan && size.width === planSize.width
-  const scale = Math.min(window.scale, (0.94 * size.width * window.scale) / Math.max(1, area.right - area.left), (1.45 * (size.height - 66)) / Math.max(1, planHeight(answer)))
+  const scale = Math.min(window.scale, ((size.width - (onPlan ? 0.06 * size.width : 2 * riseRoom)) * window.scale) / Math.max(1, area.right - area.left), (1.45 * (size.height - 66)) / Math.max(1, planHeight(answer)))
   return { scale: fits && scale >= window.scale * 0.8 ? window.scale : scale, shift: fits ? window.middleX - size.width / 2 : 0 }
 }
 
