@@ -82,13 +82,13 @@ function* moveNodes(question: PlanQuestion, checked: Checked): Steps<Result<read
   }])
 }
 
-/** Levels held at the rim become the packed ones, node by node. */
+/** Where nothing folds, or the asked rise cannot be had: levels held at the rim become the packed ones, node by node. */
 function* packRim(question: PlanQuestion, checked: Checked): Steps<Result<readonly Attempt[]>> {
   const { plan } = question.read
   const { wishes, rows, free } = checked
   const asked = yield* askedOf(question, checked)
   if (!asked.ok) return asked
-  if (wishes.pitch !== null) return ok([])
+  if (wishes.pitch !== null || !(foldsNothing(checked) || missesRise(checked))) return ok([])
   const { wish, rise } = wishOf(plan, asked.value)
   const names = wishes.conditions.map(({ name }) => name)
   const { rule } = asked.value

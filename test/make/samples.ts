@@ -371,7 +371,8 @@ function readme(): string {
     ...samples().map(line),
     '',
     'The files are made by `test/make/samples.ts` (`node test/make/write-samples.mjs` writes them again); the SVG and the',
-    'GeoJSON plan are drawn by hand. `test/samples.test.ts` holds every line above.',
+    'GeoJSON plan are drawn by hand. `test/samples.test.ts` holds every line above. What it takes to make the others lift, with',
+    'figures, stands in `cures.md`.',
     '',
   ].join('\n')
 }
