@@ -95,6 +95,7 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     rise: take('rise', typedLength),
     down: has('down'),
     shape: take('shape', (text, option) => typedWord(text, shapes, option)),
+    ...(has('few-folds') ? { fewestFolds: true } : {}),
     keeps: {
       stay: values.get('stay') ?? [],
       rimNodes: take('rim-nodes', (text, option) => typedWord(text, ['slide', 'fixed', 'free'] as const, option)) ?? 'slide',

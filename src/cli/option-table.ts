@@ -41,6 +41,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'down', value: null, group: 'What it should look like', help: 'the roof hangs from its rim' },
   { name: 'shape', value: 'SHAPE', group: 'What it should look like', help: 'dome (default), barrel, pitched or hipped' },
   { name: 'target', value: 'FILE|input|none', group: 'What it should look like', help: 'come near to the heights of a file, of the plan itself, or of neither' },
+  { name: 'few-folds', value: null, group: 'What it should look like', help: 'fold along few joints, as gables and hips do (approximate)' },
   { name: 'densities', value: 'uniform|fit|length|FILE', group: 'What it should look like', help: 'what edges bear while balancing: fit (default) comes near to the plan, length gives all the same force, FILE is a list joint,density' },
   { name: 'stay', value: 'NODE', repeatable: true, group: 'What the plan keeps', help: 'this node stays where it is, like N4 (repeatable)' },
   { name: 'rim-nodes', value: 'slide|fixed|free', group: 'What the plan keeps', help: 'rim nodes slide along straight rim lines (default), stay, or move freely' },
@@ -68,11 +69,11 @@ export const optionTable: readonly OptionEntry[] = [
 const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'levels-within', 'plan-tolerance', 'brief', 'out', 'overwrite', 'json', 'quiet', 'help']
 
 /** Options that say nothing to balancing: the densities shape the roof. */
-const notBalancing: readonly string[] = ['near', 'cure', 'one-way', 'shape', 'target', 'at-once']
+const notBalancing: readonly string[] = ['near', 'cure', 'one-way', 'few-folds', 'shape', 'target', 'at-once']
 
 /** The options that a command knows; check takes those of raise, so that a command line can be tried before it writes. */
 export function optionsOf(command: Command): readonly OptionEntry[] {
   if (command === 'read') return optionTable.filter(({ name }) => forReading.includes(name))
   if (command === 'balance') return optionTable.filter(({ name, group }) => group !== 'What the plan keeps' && !notBalancing.includes(name))
-  return command === 'adjust' ? optionTable.filter(({ name }) => !['near', 'cure', 'one-way', 'densities', 'at-once'].includes(name)) : optionTable.filter(({ name, group }) => name !== 'densities' && (name === 'plan-tolerance' || group !== 'What the plan keeps'))
+  return command === 'adjust' ? optionTable.filter(({ name }) => !['near', 'cure', 'one-way', 'few-folds', 'densities', 'at-once'].includes(name)) : optionTable.filter(({ name, group }) => name !== 'densities' && (name === 'plan-tolerance' || group !== 'What the plan keeps'))
 }

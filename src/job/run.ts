@@ -13,6 +13,7 @@ import { adjustFiles } from './adjust-files.ts'
 import { balance, type BalanceAnswer, type Densities } from './balance.ts'
 import { balanceFiles } from './balance-files.ts'
 import { check, planFacts, type Checked } from './check.ts'
+import { withFewestFolds } from './fewest-folds.ts'
 import type { OutputFile } from './files.ts'
 import { withOneWay } from './one-way.ts'
 import { reading } from './reading.ts'
@@ -52,7 +53,8 @@ export async function run(request: Request, options: DriveOptions = {}): Promise
 export async function solve(request: Request, cures: readonly string[], options: DriveOptions = {}): Promise<Result<Solved>> {
   const sha256 = await sha256Of(request.source.bytes)
   let solved = await driven(solvedWith(request, version, sha256, cures), options)
-  const { oneWay } = request.options
+  const { oneWay, fewestFolds = false } = request.options
+  if (solved.ok && fewestFolds) solved = await driven(withFewestFolds(solved.value, await linearSolver()), options)
   if (solved.ok && oneWay !== null) {
     const asked = await driven(withOneWay(solved.value.checked, oneWay, await linearSolver()), options)
     if (!asked.ok) return asked

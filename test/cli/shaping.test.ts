@@ -87,3 +87,12 @@ test('several plans stopped on the way: every thread ends and nothing is written
   expect(await ended).toBe(130)
   expect(readdirSync(cli.room).filter((name) => name.includes('stopped'))).toEqual([])
 })
+
+test('few folds: a pitched wish over bays folds along the ridge alone', () => {
+  cli.file('four.obj', gridObj(6, 4, 1.5))
+  cli.file('eaves.json', JSON.stringify({ panewise: 'brief', version: 1, unit: 'm', datum: 0, rise: 1, shape: 'pitched', conditions: [{ kind: 'level', at: { run: [[0, 0], [9, 0]] } }, { kind: 'level', at: { run: [[0, 6], [9, 6]] } }] }))
+  const done = cli.run(['raise', 'four.obj', '--unit', 'm', '--brief', 'eaves.json', '--few-folds', '--out', 'few', '--json'])
+  const record = JSON.parse(done.out)
+  expect(record.notices.join()).toContain('Folded along 6 of 38 joints')
+  expect(record.roof.rise).toBeCloseTo(1, 6)
+})

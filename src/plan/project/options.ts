@@ -102,6 +102,8 @@ export interface Options {
   readonly rise: TypedLength | null
   readonly down: boolean
   readonly shape: Shape | null
+  /** The roof folded along few joints (absent: the nearest one). */
+  readonly fewestFolds?: boolean
   /** input: the heights in the drawing; none: not even those; or another file. */
   readonly target: 'input' | 'none' | NamedFile | null
 
