@@ -17,21 +17,22 @@ const room = mkdtempSync(join(tmpdir(), 'adjust-'))
 spawnSync('npx', ['vite', 'build', '--mode', 'cli', '--outDir', join(room, 'built')], { cwd: root })
 symlinkSync(join(root, 'node_modules'), join(room, 'built/node_modules'))
 
-/** Processor seconds of the fastest run (user and system), and the text of the last. */
-function timed(runs: number, command: string, words: readonly string[]): { seconds: number; megabytes: number; out: string } {
-  let seconds = Infinity, megabytes = 0, out = ''
+/** Processor seconds (user and system) and elapsed seconds of the fastest run, and the text of the last. */
+function timed(runs: number, command: string, words: readonly string[]): { seconds: number; elapsed: number; megabytes: number; out: string } {
+  let seconds = Infinity, elapsed = Infinity, megabytes = 0, out = ''
   for (let k = 0; k < runs; k += 1) {
-    const ran = spawnSync('/usr/bin/time', ['-f', '@%U %S %M', command, ...words], { encoding: 'utf8', maxBuffer: 1 << 28 })
-    const [user, system, kilobytes] = (/@([\d.]+) ([\d.]+) (\d+)/.exec(ran.stderr) ?? []).slice(1).map(Number)
+    const ran = spawnSync('/usr/bin/time', ['-f', '@%U %S %M %e', command, ...words], { encoding: 'utf8', maxBuffer: 1 << 28 })
+    const [user, system, kilobytes, wall] = (/@([\d.]+) ([\d.]+) (\d+) ([\d.]+)/.exec(ran.stderr) ?? []).slice(1).map(Number)
     seconds = Math.min(seconds, (user ?? NaN) + (system ?? NaN))
+    elapsed = Math.min(elapsed, wall ?? NaN)
     megabytes = Math.round((kilobytes ?? NaN) / 1024)
     out = ran.stdout
   }
-  return { seconds, megabytes, out }
+  return { seconds, elapsed, megabytes, out }
 }
 
 if (!existsSync(file)) {
-  writeFileSync(file, 'commit,processor,panels,check_s,adjust_s,adjust_mb,iterations,rms_mm,limits,scipy_s,scipy_mb,scipy_iterations,scipy_rms_mm,to_scipy\n')
+  writeFileSync(file, 'commit,processor,panels,check_s,adjust_s,adjust_mb,iterations,rms_mm,limits,scipy_s,scipy_mb,scipy_iterations,scipy_rms_mm,to_scipy,adjust_elapsed_s,scipy_elapsed_s,to_scipy_elapsed\n')
 }
 const commit = spawnSync('git', ['rev-parse', '--short', 'HEAD'], { cwd: root, encoding: 'utf8' }).stdout.trim()
 for (const count of counts) {
@@ -45,12 +46,12 @@ for (const count of counts) {
   const check = timed(3, process.execPath, [program, 'check', path, '--plan-tolerance', '0', '--json'])
   const ours = timed(3, process.execPath, [program, 'adjust', path, '--out', join(room, 'out'), '--overwrite', '--json'])
   const { adjusted } = JSON.parse(ours.out) as { adjusted: { iterations: number; rms_mm: number; held: { limits: number } } }
-  const theirs = timed(1, 'python3', [join(here, 'adjust-scipy.py'), path, join(room, 'scipy.obj')])
+  const theirs = timed(2, 'python3', [join(here, 'adjust-scipy.py'), path, join(room, 'scipy.obj')])
   const [iterations, rms] = theirs.out.split(',')
   const row = [
     commit, cpus()[0]?.model.split(' ').slice(0, 2).join(' ') ?? '', plan.panelCount, check.seconds.toFixed(2), ours.seconds.toFixed(2), ours.megabytes,
     adjusted.iterations, adjusted.rms_mm.toFixed(4), adjusted.held.limits, theirs.seconds.toFixed(2), theirs.megabytes, iterations, rms,
-    (ours.seconds / theirs.seconds).toFixed(2),
+    (ours.seconds / theirs.seconds).toFixed(2), ours.elapsed.toFixed(2), theirs.elapsed.toFixed(2), (ours.elapsed / theirs.elapsed).toFixed(2),
   ].join(',')
   appendFileSync(file, `${row}\n`)
   process.stdout.write(`${row}\n`)
