@@ -27,19 +27,15 @@ export function shiftDrawing({ before, after }: Shifts): DisplayList {
   const from = nodesOnSheet(before, window)
   const to = nodesOnSheet(after, window)
   const mm = metres[before.unit] * 1000
-  let largest = 0, worst = 0
-  for (let n = 0; n < before.nodeCount; n += 1) {
-    const shift = Math.hypot(after.x[n] - before.x[n], after.y[n] - before.y[n])
-    if (shift > largest) {
-      largest = shift
-      worst = n
-    }
-  }
-  const factor = exaggeration(largest * window.scale, medianPanelWidth(before) * window.scale)
+  const shifts = before.x.map((x, n) => Math.hypot(after.x[n] - x, after.y[n] - before.y[n]))
+  const worst = shifts.reduce((most, shift, n) => (shift > shifts[most] ? n : most), 0)
+  const largest = shifts[worst]
+  const factor = exaggeration(shifts, medianPanelWidth(before))
   const items: Item[] = [
     edges(before, from, 'before'), ...(factor === null ? [] : exaggerated(from, to, factor)),
     rimEdges(before, from),
   ]
+  if (factor !== null) items.push(label(from[2 * worst] + 5, from[2 * worst + 1] - 5, nodeName(worst), { tone: 'ink', size: 11 }))
   const words = factor === null
     ? 'No node moved.'
     : `Moves drawn ${factor} times as long as they are. The largest: ${nodeName(worst)}, ${significant(largest * mm, 2)} mm.`
@@ -51,15 +47,21 @@ export function shiftDrawing({ before, after }: Shifts): DisplayList {
   return { width, height, items, title: 'Moved nodes', description: words }
 }
 
-/** 1, 2 or 5 times a power of ten, so that the longest move is about half a panel wide; null: nothing moved. */
-function exaggeration(largestPx: number, panelPx: number): number | null {
-  if (!(largestPx > 0)) return null
-  const wanted = (0.6 * panelPx) / largestPx
+/**
+ * 1, 2 or 5 times a power of ten, so that all but the longest moves are up to about half a panel wide: one node that goes far
+ * must not make dots of all others, and may cross three panels. null: nothing moved.
+ */
+function exaggeration(shifts: Float64Array, panel: number): number | null {
+  const moves = shifts.filter((shift) => shift > 0).sort()
+  if (moves.length === 0) return null
+  const wanted = Math.min((0.6 * panel) / moves[Math.floor(nearlyAll * (moves.length - 1))], (3 * panel) / moves[moves.length - 1])
   if (wanted <= 1) return 1
   const decade = 10 ** Math.floor(Math.log10(wanted))
   const step = wanted / decade
   return decade * (step >= 5 ? 5 : step >= 2 ? 2 : 1)
 }
+
+const nearlyAll = 0.95
 
 /** Moves below this, drawn, are dots. */
 const shortest = 0.7
