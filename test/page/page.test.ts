@@ -2,6 +2,7 @@
 import { afterAll, beforeAll, expect, test } from 'vitest'
 import { startBrowser } from './chromium.ts'
 import { broken, faulty, fourthCorner_mm, gradient, grid, readObj, type File } from './drawings.ts'
+import { drawnTests } from './drawn.ts'
 import { keepingTests } from './keeping.ts'
 import { shapingTests } from './shaping.ts'
 import { accepted, downloaded, freeWords, onPlan, opened, raiseStage, read, says, slow, stage, strikeStage } from './stage.ts'
@@ -172,6 +173,7 @@ test('storage that is closed is said, and the work goes on', async () => {
 }, slow)
 
 shapingTests()
+drawnTests()
 keepingTests()
 
 test('names with markup stay text', async () => {
