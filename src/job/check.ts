@@ -161,7 +161,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
     }
   return {
     summary, plan, frozenFree: free.frozen, frozenHeld: result.under.frozen, flatGroup: result.under.groupOf,
-    conditions: rows.held, roof,
+    conditions: rows.held, roof, ...(read.barWidth === undefined ? {} : { barWidth: read.barWidth }),
   }
 }
 

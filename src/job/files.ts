@@ -48,7 +48,7 @@ export function* filesOf(checked: Checked): Steps<OutputFile[]> {
       const about = [`The roof in which the weakest of the chosen joints folds most: ${summary.oneWay?.joints ?? 0} joints, all ridges.`, caution]
       files.push({ name: 'one-way.obj', bytes: yield* writeObj({ plan, ...oneWay, decimals: wishes.decimals, comments: [comments[0], ...about] }) })
     }
-    const { panels, joints, nodes } = yield* lists(plan, roof)
+    const { panels, joints, nodes } = yield* lists(plan, roof, answer.barWidth ?? null)
     files.push({ name: 'panels.csv', bytes: yield* writeCsv(panels, wishes.csv) })
     files.push({ name: 'joints.csv', bytes: yield* writeCsv(joints, wishes.csv) })
     files.push({ name: 'nodes.csv', bytes: yield* writeCsv(nodes, wishes.csv) })

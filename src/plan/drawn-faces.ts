@@ -20,10 +20,12 @@ export interface DrawnFaces {
   readonly start: Int32Array
   readonly corner: Int32Array
   readonly isVoid: Uint8Array
+  /** Width of the bar along each side, from corner k to the next of its face (as long as `corner`, NaN: none); absent: no bars. */
+  readonly barWidth?: Float64Array
 }
 
 /** The panels of a plan as its first faces, then the regions that its void loops bound; `heights` as `ReadPlan` has them. */
-export function drawnFaces(plan: Plan, heights: Float64Array | null): DrawnFaces {
+export function drawnFaces(plan: Plan, heights: Float64Array | null, barWidth?: Float64Array): DrawnFaces {
   const loops = Array.from(plan.rimIsVoid.keys()).filter((loop) => plan.rimIsVoid[loop] === 1)
   const voids = loops.map((loop) => plan.rimHalf.subarray(plan.rimStart[loop], plan.rimStart[loop + 1]))
   const start = new Int32Array(plan.panelCount + voids.length + 1)
@@ -34,7 +36,8 @@ export function drawnFaces(plan: Plan, heights: Float64Array | null): DrawnFaces
   // A void lies on the left of its loop, so the loop's own order is counter-clockwise round it.
   voids.forEach((halves, k) => corner.set(halves.map((half) => plan.origin[half]), start[plan.panelCount + k]))
   const isVoid = new Uint8Array(start.length - 1).fill(1, plan.panelCount)
-  return { unit: plan.unit, x: plan.x, y: plan.y, heights, start, corner, isVoid }
+  const widths = barWidth === undefined ? {} : { barWidth: Float64Array.from([...plan.cornerHalf, ...voids.flatMap((halves) => [...halves])], (half) => barWidth[half >> 1]) }
+  return { unit: plan.unit, x: plan.x, y: plan.y, heights, start, corner, isVoid, ...widths }
 }
 
 /** The plan of the faces that are no voids. Fails as `planFromFaces` does. */
@@ -48,6 +51,17 @@ export function planOfFaces({ unit, x, y, start, corner, isVoid }: DrawnFaces): 
   }
   const made = planFromFaces({ unit, x, y, start: Int32Array.from(panelStart), corner: Int32Array.from(panelCorner), ordered: true })
   return made.ok ? ok(made.value.plan) : made
+}
+
+/** Widths of bars by edge of that plan, NaN: none; undefined where the faces have none. */
+export function barWidthsOf({ start, corner, isVoid, barWidth }: DrawnFaces, plan: Plan, pointOfNode: Int32Array): Float64Array | undefined {
+  if (barWidth === undefined) return undefined
+  const bySide = new Map<string, number>()
+  const key = (p: number, q: number): string => (p < q ? `${p} ${q}` : `${q} ${p}`)
+  for (let f = 0; f < isVoid.length; f += 1) {
+    for (let k = start[f]; k < start[f + 1]; k += 1) if (!Number.isNaN(barWidth[k])) bySide.set(key(corner[k], corner[k + 1 < start[f + 1] ? k + 1 : start[f]]), barWidth[k])
+  }
+  return Float64Array.from({ length: plan.edgeCount }, (_, e) => bySide.get(key(pointOfNode[plan.origin[2 * e]], pointOfNode[plan.origin[2 * e + 1]])) ?? NaN)
 }
 
 /** The point behind each node of that plan. */

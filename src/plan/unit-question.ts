@@ -7,7 +7,7 @@ import { conversion, units, type Unit } from '../base/length.ts'
 import type { Question } from '../base/repair.ts'
 
 /** Shortest and longest edge, and the usual one, in metres. */
-const shortest_m = 0.1
+export const shortest_m = 0.1
 export const longest_m = 20
 const usual_m = 1.5
 

@@ -14,6 +14,7 @@ import { planFromDrawing } from './from-drawing.ts'
 import { chordsKept } from './which-lines-chords.ts'
 import { leaves, takes } from './office-reduced.ts'
 import type { ReadOptions, ReadPlan } from './read-plan.ts'
+import { unitByEnds } from './unit-by-ends.ts'
 import { unitOfDrawing } from './unit-of-drawing.ts'
 import { drawnAxes, type DrawnAxes } from './which-lines-axes.ts'
 import { figuresGuess, layersGuess, type Guess, type Measuring } from './which-lines-guess.ts'
@@ -69,6 +70,7 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
     const whole = yield* planFromDrawing(asRead(before, given), options)
     if (whole.ok) return ok(finished(whole.value, said, found))
   }
+  if (unit.value.statedBy !== 'user' && !given.onPaper) read = yield* unitByEnds(asRead(drawing, given), read, unit.value.unit, options)
   if (layers !== null) say(layers, before, options, said)
   return read.ok ? ok(finished(read.value, said, found)) : read
 }

@@ -4,7 +4,7 @@
  */
 import { conversion } from '../../base/length.ts'
 import { ok, type Result } from '../../base/result.ts'
-import { drawnFaces, faceAt, nodePoints, planOfFaces, type DrawnFaces } from '../drawn-faces.ts'
+import { barWidthsOf, drawnFaces, faceAt, nodePoints, planOfFaces, type DrawnFaces } from '../drawn-faces.ts'
 import type { ReadPlan } from '../read-plan.ts'
 import type { Brief } from './brief.ts'
 import { withDrawnLevels } from './drawn-level-conditions.ts'
@@ -41,7 +41,7 @@ export type Asked = Pick<Project, 'name' | 'sha256' | 'brief' | 'target' | 'leas
 export function projectOf(read: ReadPlan, { name, sha256, brief, target, leastSlope }: Asked): Project {
   const { levels = [], ...rest } = read
   const kept: ReadPlan = { ...rest, repairs: read.repairs.filter(({ state }) => state !== 'proposed'), questions: [] }
-  const faces = drawnFaces(read.plan, read.heights)
+  const faces = drawnFaces(read.plan, read.heights, read.barWidth)
   const factor = conversion(brief.unit ?? faces.unit, faces.unit)
   const voids = (brief.voids ?? []).filter(([x, y]) => faces.isVoid[faceAt(faces, x * factor, y * factor)] === 0)
   return { name, sha256, faces, read: kept, brief: { ...withDrawnLevels(withoutLines(brief), levels, read.plan.unit), voids: voids.length === 0 ? null : voids }, target, leastSlope }
@@ -58,7 +58,9 @@ export function readFaces(faces: DrawnFaces, said: Pick<ReadPlan, 'repairs' | 'l
   if (!plan.ok) return plan
   const { repairs, leftOut, notices, axes } = said
   const marks = { points: new Float64Array(), layer: new Int32Array(), layers: [] }
-  return ok({ plan: plan.value, heights: atNodes(faces.heights, nodePoints(faces)), marks, ...(axes === undefined ? {} : { axes }), repairs, questions: [], leftOut, notices })
+  const points = nodePoints(faces)
+  const barWidth = barWidthsOf(faces, plan.value, points)
+  return ok({ plan: plan.value, heights: atNodes(faces.heights, points), marks, ...(barWidth === undefined ? {} : { barWidth }), ...(axes === undefined ? {} : { axes }), repairs, questions: [], leftOut, notices })
 }
 
 /** Values of points, taken to the nodes of a plan. */

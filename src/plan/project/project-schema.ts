@@ -34,6 +34,7 @@ export const projectSchema: SchemaDocument = {
     ),
     voids: listOf({ type: 'number', minimum: 1, description: 'a face, by its number in the list of faces' }, 'the faces that carry no panel'),
     heights: listOf(heightOrNone, 'the heights that the drawing gave, one entry a node'),
+    bar_widths: listOf(listOf(heightOrNone, 'one entry a side, from its corner to the next; null: a single line'), 'widths of the bars along the sides of each face, in "unit"'),
     axes: listOf(record('a building axis', {
       name: text('its name'), from: { $ref: '#/$defs/point' }, to: { $ref: '#/$defs/point' },
     }, ['name', 'from', 'to']), 'building axes that the drawing names, in the plan\'s unit and place; they bound no panels'),

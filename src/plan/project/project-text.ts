@@ -27,6 +27,7 @@ function writtenProject({ name, sha256, faces, read, brief, target, leastSlope }
     faces: Array.from(isVoid, (_, f) => numbers(corner.subarray(start[f], start[f + 1]))),
     voids: voids.length === 0 ? undefined : voids,
     heights: list(faces.heights),
+    bar_widths: faces.barWidth === undefined ? undefined : Array.from(isVoid, (_, f) => list(faces.barWidth?.subarray(start[f], start[f + 1]) ?? null)),
     axes: read.axes?.map(({ name, from, to }) => ({ name, from, to })),
     reading: said ? { repairs, leftOut, notices } : undefined,
     brief: writtenBrief(brief),

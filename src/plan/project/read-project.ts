@@ -46,6 +46,7 @@ interface WrittenProject {
   readonly voids?: readonly number[]
   readonly heights?: readonly (number | null)[]
   readonly reading?: { readonly repairs?: readonly Repair[]; readonly leftOut?: readonly LeftOut[]; readonly notices?: readonly string[] }
+  readonly bar_widths?: readonly (readonly (number | null)[])[]
   readonly axes?: readonly Axis[]
   readonly brief: unknown
   readonly target?: readonly (number | null)[]
@@ -91,7 +92,7 @@ function projectIn(written: WrittenProject): Result<Project> {
   return withVoids(project, (brief.value.voids ?? []).map(([x, y]) => [x * factor, y * factor]))
 }
 
-function facesIn({ unit, nodes, faces, voids = [], heights }: WrittenProject): Result<DrawnFaces> {
+function facesIn({ unit, nodes, faces, voids = [], heights, bar_widths: bars }: WrittenProject): Result<DrawnFaces> {
   const start = new Int32Array(faces.length + 1)
   faces.forEach((face, f) => (start[f + 1] = start[f] + face.length))
   const corner = new Int32Array(start[faces.length])
@@ -106,7 +107,10 @@ function facesIn({ unit, nodes, faces, voids = [], heights }: WrittenProject): R
     if (!Number.isInteger(number) || number > faces.length) return damaged(`there is no face ${number}, the project has ${faces.length}`, `voids[${k}]`)
     isVoid[number - 1] = 1
   }
+  const uneven = bars === undefined ? -1 : bars.length !== faces.length ? 0 : bars.findIndex((own, f) => own.length !== faces[f].length)
+  if (uneven >= 0) return damaged('the widths of bars are not one for each side of each face', 'bar_widths')
   return ok({
+    ...(bars === undefined ? {} : { barWidth: Float64Array.from(bars.flat(), (value) => value ?? NaN) }),
     unit: isUnit(unit) ? unit : 'm', x: Float64Array.from(nodes, ([x]) => x), y: Float64Array.from(nodes, ([, y]) => y),
     heights: numbersOf(heights), start, corner, isVoid,
   })

@@ -169,6 +169,8 @@ export interface Answer {
   /** What holds, with names, for lists and pictures. */
   readonly conditions: readonly { readonly name: string; readonly kind: string; readonly soft: boolean; readonly nodes: Int32Array }[]
   readonly roof: Roof | null
+  /** Width of the bar that each edge was drawn with, in the plan's unit (length edgeCount, NaN: none); absent: no bars were drawn. */
+  readonly barWidth?: Float64Array
   /** Heights in the plan's unit of the roof that folds the chosen joints all one way; absent: none was asked for, null: there is none. */
   readonly oneWayHeights?: Float64Array | null
 }

@@ -14,9 +14,10 @@ import type { PanelPlanes } from './panel-planes.ts'
  * between the normals of its panels) · dihedral_deg (angle of the two panels measured underneath, inside the building:
  * 180 - fold at a ridge, 180 + fold at a valley) · form_density_no_load (form force per plan length, 1 / plan unit;
  * positive at a valley) · form_force_no_load (the same times the plan length; a number without a unit, as large as the
- * jump of the slope). Form forces shape the roof and carry no load: they are no member forces.
+ * jump of the slope). Form forces shape the roof and carry no load: they are no member forces. Where the drawing has bars
+ * (`barWidth` per edge, in the plan's unit, NaN: none) bar_width_mm follows.
  */
-export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<Table> {
+export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes, barWidth: Float64Array | null = null): Steps<Table> {
   const { jointCount, origin, x, y } = plan
   const { word, fold } = yield* jointFolds(plan, planes)
   const metre = metres[plan.unit]
@@ -40,6 +41,8 @@ export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<
     density[joint] = s
     force[joint] = s * planLength
   }
+  const widths = barWidth === null ? null : barWidth.subarray(0, jointCount).map((w) => w * metre * 1000)
+  const width = widths === null || widths.every(Number.isNaN) ? null : widths
   yield { stage: 'Listing joints', done: 1 }
   return {
     rows: jointCount,
@@ -53,6 +56,7 @@ export function* jointTable(plan: Plan, roof: Roof, planes: PanelPlanes): Steps<
       { kind: 'number', title: 'dihedral_deg', values: dihedral, digits: { decimals: 7 } },
       { kind: 'number', title: 'form_density_no_load', values: density, digits: { significant: 9 } },
       { kind: 'number', title: 'form_force_no_load', values: force, digits: { significant: 9 } },
+      ...(width === null ? [] : [{ kind: 'number', title: 'bar_width_mm', values: width, digits: { significant: 6 } } as const]),
     ],
   }
 }

@@ -15,11 +15,11 @@ export interface Lists {
 }
 
 /** Angles, areas and lengths are of the roof as solved; deviations and coordinates as written. */
-export function* lists(plan: Plan, roof: Roof): Steps<Lists> {
+export function* lists(plan: Plan, roof: Roof, barWidth: Float64Array | null = null): Steps<Lists> {
   const planes = yield* panelPlanes(plan, roof.heights)
   return {
     panels: yield* panelTable(plan, roof, planes),
-    joints: yield* jointTable(plan, roof, planes),
+    joints: yield* jointTable(plan, roof, planes, barWidth),
     nodes: yield* nodeTable(plan, roof),
   }
 }
