@@ -4,7 +4,7 @@ import { dirname, join, relative } from 'node:path'
 import { expect, test } from 'vitest'
 
 const base = ['base', 'base/geometry', 'base/sparse']
-const planRooms = ['plan', 'plan/project']
+const planRooms = ['plan', 'plan/regular', 'plan/project']
 const roofRooms = ['roof/conditions', 'roof/stress', 'roof/raise', 'roof/cures', 'roof/panels', 'roof/answer']
 const paper = ['paper/drawing', 'paper/report']
 
@@ -14,6 +14,9 @@ const allowed: Record<string, readonly string[]> = {
   'base/geometry': ['base'],
   'base/sparse': ['base'],
   plan: ['base', 'base/geometry'],
+  'plan/lines': ['base', 'base/geometry', 'plan'],
+  'plan/regular': ['base', 'base/geometry', 'plan'],
+  'plan/reading': ['base', 'base/geometry', 'plan', 'plan/lines', 'plan/regular'],
   'plan/project': ['base', 'plan'],
   'roof/conditions': ['base', 'base/geometry', 'plan', 'plan/project'],
   'roof/stress': [...base, 'plan', 'roof/conditions'],
@@ -24,7 +27,7 @@ const allowed: Record<string, readonly string[]> = {
   formats: ['base', 'base/geometry', 'plan', 'plan/project'],
   'paper/drawing': ['base', 'base/geometry', 'plan', 'plan/project', 'roof/answer'],
   'paper/report': ['base', 'plan', 'roof/answer', 'paper/drawing'],
-  job: [...base, ...planRooms, ...roofRooms, 'formats', ...paper],
+  job: [...base, ...planRooms, 'plan/reading', ...roofRooms, 'formats', ...paper],
   'job/worker': ['base', 'plan/project', 'roof/answer', 'job'],
   'page/view': ['base', 'base/geometry', ...planRooms, 'roof/answer', 'paper/drawing'],
   'page/app': ['base', ...planRooms, 'roof/answer', 'formats', ...paper, 'job', 'job/worker', 'page/view'],

@@ -6,7 +6,7 @@
 import { nearlyStraight, pointWithin_mm, runSine, snap_mm } from '../base/geometry/tolerance.ts'
 import { conversion } from '../base/length.ts'
 import { finish } from '../base/steps.ts'
-import { runsOf } from './office-runs.ts'
+import { runsOf } from './runs.ts'
 import type { Plan } from './plan.ts'
 
 /** A named line, in the plan's unit and place. `from` is its upper or left end, where its name stands. */

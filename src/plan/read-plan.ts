@@ -1,8 +1,17 @@
 /** A drawing made into a plan, with everything the reader did and noticed on the way. */
 import type { LeftOut, Question, Repair } from '../base/repair.ts'
 import type { Axis } from './axes.ts'
-import type { Exactness } from './office-exactness.ts'
 import type { Plan } from './plan.ts'
+
+/** How exactly a drawing seems to be drawn, from its ends, its runs and its digits. */
+export interface Exactness {
+  /** The largest distance at which ends were joined, in mm; 0 where all meet. */
+  readonly meets_mm: number
+  /** How far the worst node of a run that is nearly straight is off it, in mm. */
+  readonly straight_mm: number
+  /** The coarsest power of ten, in mm, of which nearly all coordinates are multiples; null: of none down to a micrometre. */
+  readonly digit_mm: number | null
+}
 
 export interface ReadPlan {
   readonly plan: Plan

@@ -8,7 +8,7 @@ import { expect, test } from 'vitest'
 import { finish } from '../../src/base/steps.ts'
 import { geojson } from '../../src/formats/geojson.ts'
 import { svg } from '../../src/formats/svg.ts'
-import { planFromDrawing } from '../../src/plan/from-drawing.ts'
+import { planFromDrawing } from '../../src/plan/reading/from-drawing.ts'
 import { voidCount } from '../../src/plan/plan.ts'
 import { area, drawingOf, outlines, segments, type Point } from './svg-reading.ts'
 

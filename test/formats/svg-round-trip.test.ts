@@ -2,7 +2,7 @@
 import { describe, expect, test } from 'vitest'
 import { finish } from '../../src/base/steps.ts'
 import { readDrawing } from '../../src/formats/all.ts'
-import { planFromDrawing } from '../../src/plan/from-drawing.ts'
+import { planFromDrawing } from '../../src/plan/reading/from-drawing.ts'
 import { voidCount, type Plan } from '../../src/plan/plan.ts'
 import { grid } from '../make/plans.ts'
 import { geoJsonWays, svgWays } from './svg-written.ts'

@@ -4,7 +4,7 @@ import { finish } from '../../src/base/steps.ts'
 import type { Result } from '../../src/base/result.ts'
 import type { Drawing, DrawnCircle, DrawnText, Loops } from '../../src/plan/drawing.ts'
 import type { ReadOptions, ReadPlan } from '../../src/plan/read-plan.ts'
-import { planOfLines } from '../../src/plan/which-lines.ts'
+import { planOfLines } from '../../src/plan/reading/which-lines.ts'
 
 export type Point = readonly [number, number]
 export type Point3 = readonly [number, number, number]

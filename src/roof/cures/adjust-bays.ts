@@ -5,9 +5,9 @@
  */
 import { nearlyStraight } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
-import { equalBays, evenly } from '../../plan/office-equal.ts'
-import { straightness } from '../../plan/office-lines.ts'
-import { runsOf } from '../../plan/office-runs.ts'
+import { equalBays, evenly } from '../../plan/regular/equal.ts'
+import { straightness } from '../../plan/regular/lines.ts'
+import { runsOf } from '../../plan/runs.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { RowBlock } from './adjust-rows.ts'
 
