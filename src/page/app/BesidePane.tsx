@@ -8,8 +8,8 @@ import { defaultFlat_mm } from '../../plan/project/wishes.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
-import { rowsOf } from './rows.ts'
-import type { Beside } from './state.ts'
+import { rowsOf } from '../store/rows.ts'
+import type { Beside } from '../store/state.ts'
 import { jointsOf, readingFor } from './useReading.ts'
 
 export function BesidePane({ beside }: { readonly beside: Beside }) {

@@ -7,7 +7,7 @@ import type { Release } from '../../job/session.ts'
 import { ConditionFields, askedWords } from './ConditionFields.tsx'
 import { useDesk, useDeskState } from './context.ts'
 import { LengthField, NumberField, typable } from './Fields.tsx'
-import { rimsOf } from './rims.ts'
+import { rimsOf } from '../store/rims.ts'
 
 export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
   const desk = useDesk()

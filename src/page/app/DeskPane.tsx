@@ -4,7 +4,7 @@ import { ConditionsDesk } from './ConditionsDesk.tsx'
 import { ProfileDesk } from './ProfileDesk.tsx'
 import { WaysDesk } from './WaysDesk.tsx'
 import { ShapeRow } from './ShapeRow.tsx'
-import type { Desk as DeskName } from './state.ts'
+import type { Desk as DeskName } from '../store/state.ts'
 
 const desks: readonly (readonly [DeskName, string])[] = [['conditions', 'Conditions'], ['profile', 'Profile'], ['ways', 'Ways left']]
 

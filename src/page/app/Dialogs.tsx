@@ -1,11 +1,11 @@
 /** What opens over the sheet: take away, keys, words. Closed by Esc like everything that is in hand. */
 import { useEffect, useRef, useState, type ReactNode } from 'react'
 import { sentence } from '../../base/result.ts'
-import { commands, drawingKeys } from './commands.ts'
+import { commands, drawingKeys } from '../store/commands.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { glossary } from './words.ts'
+import { glossary } from '../store/words.ts'
 import { saveBytes, takeDrawing, type DrawingName } from './take-away.ts'
-import { docText, projectName } from './project-file.ts'
+import { docText, projectName } from '../store/project-file.ts'
 
 export function Dialogs() {
   const dialog = useDeskState((state) => state.dialog)

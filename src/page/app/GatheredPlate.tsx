@@ -10,7 +10,7 @@ import { useDesk } from './context.ts'
 import { LengthField, NumberField, typable } from './Fields.tsx'
 import { middleOf } from './PanelPlate.tsx'
 import { plateAt, type Placed } from './plate.ts'
-import type { Gathered } from './state.ts'
+import type { Gathered } from '../store/state.ts'
 
 export function GatheredPlate({ gathered, answer, window, size }: Placed & { readonly gathered: Gathered }) {
   const desk = useDesk()

@@ -1,5 +1,5 @@
 /** The head: what is open, and the commands as underlined words with their keys. */
-import { commands, headCommands } from './commands.ts'
+import { commands, headCommands } from '../store/commands.ts'
 import { useDesk, useDeskState } from './context.ts'
 
 export function Head() {

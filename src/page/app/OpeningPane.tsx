@@ -10,8 +10,8 @@ import { units } from '../../base/length.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
 import { looks, useLooks } from './looks.ts'
-import { panelAt } from './picking.ts'
-import type { Opening } from './state.ts'
+import { panelAt } from '../store/picking.ts'
+import type { Opening } from '../store/state.ts'
 import { offered, ProposalList, Questions, withoutOptions } from './Proposals.tsx'
 
 /** Zooming to a repair magnifies the fitted plan so many times. */
@@ -153,7 +153,7 @@ function useDrawn(file: Opening['file'] | null, wanted: boolean): Float64Array |
   useEffect(() => {
     if (file === null || !wanted || known?.file === file) return
     const stop = new AbortController()
-    void import('./drawn-lines.ts').then(({ drawnLines }) => drawnLines(file.name, file.bytes, stop.signal)).then((lines) => { if (!stop.signal.aborted) setKnown({ file, lines }) })
+    void import('../store/drawn-lines.ts').then(({ drawnLines }) => drawnLines(file.name, file.bytes, stop.signal)).then((lines) => { if (!stop.signal.aborted) setKnown({ file, lines }) })
     return () => stop.abort()
   }, [file, wanted, known])
   return known !== null && known.file === file ? known.lines : null

@@ -18,13 +18,13 @@ import { panelName } from '../../plan/names.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { caution } from '../../roof/answer/caution.ts'
 import { useDesk } from './context.ts'
-import type { Desk } from './desk.ts'
+import type { Desk } from '../store/desk.ts'
 import { axesFor, looks } from './looks.ts'
 import './print.css'
-import { rowsOf } from './rows.ts'
-import type { Doc } from './state.ts'
+import { rowsOf } from '../store/rows.ts'
+import type { Doc } from '../store/state.ts'
 import { jointsOf, limitsOf, readingFor } from './useReading.ts'
-import { firstSentence, secondSentence, type Piece } from './verdict.ts'
+import { firstSentence, secondSentence, type Piece } from '../store/verdict.ts'
 
 export function PrintSheets() {
   const desk = useDesk()

@@ -8,7 +8,7 @@ import type { Condition, Section } from '../../plan/project/condition.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { LengthField, NumberField, typable } from './Fields.tsx'
-import { levelAt, runSection } from './run-section.ts'
+import { levelAt, runSection } from '../store/run-section.ts'
 
 type Kind = 'arc' | 'pitch' | 'levels' | 'level' | 'equal' | 'straight' | 'fall'
 const kinds: readonly (readonly [Kind, string])[] = [['arc', 'arc'], ['pitch', 'pitch'], ['levels', 'levels'], ['level', 'level'], ['equal', 'equal'], ['straight', 'straight'], ['fall', 'fall']]

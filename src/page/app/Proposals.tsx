@@ -1,7 +1,7 @@
 /** What the reader offers and asks, whatever it is: each with its words, to be taken or left, which reads the drawing anew. */
 import { proposalCodes, type Question, type Repair } from '../../base/repair.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { taking } from './opening.ts'
+import { taking } from '../store/opening.ts'
 
 /** Readers name the command line's options in brackets; here the controls stand beside the sentence. */
 export const withoutOptions = (text: string): string => text.replace(/ \([^()]*--[^()]*\)/g, '').replace(/\s*\u2013 --\S+/g, '')

@@ -2,7 +2,7 @@
 import { useEffect, useState } from 'react'
 import { useDesk } from './context.ts'
 import { openSample } from './Samples.tsx'
-import { samples, type Sample } from './samples.ts'
+import { samples, type Sample } from '../store/samples.ts'
 
 const width = 76
 const height = 50
@@ -13,7 +13,7 @@ export function SampleList() {
   useEffect(() => {
     let isGone = false
     const draw = async (): Promise<void> => {
-      const { drawnLines, linesPath } = await import('./drawn-lines.ts')
+      const { drawnLines, linesPath } = await import('../store/drawn-lines.ts')
       for (const sample of samples) {
         if (isGone) return
         if (pictures.has(sample.name)) continue

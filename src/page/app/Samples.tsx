@@ -1,9 +1,9 @@
 /** The empty sheet's lower right: how to begin, and what this browser kept. */
 import { useEffect, useState } from 'react'
 import { useDesk, useDeskState } from './context.ts'
-import type { Desk } from './desk.ts'
-import type { Sample } from './samples.ts'
-import { savedProjects, type Saved } from './autosave.ts'
+import type { Desk } from '../store/desk.ts'
+import type { Sample } from '../store/samples.ts'
+import { savedProjects, type Saved } from '../store/autosave.ts'
 
 export async function openSample(desk: Desk, sample: Sample): Promise<void> {
   const brief = await sample.brief?.()

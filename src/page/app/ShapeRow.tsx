@@ -7,7 +7,7 @@ import { withShape } from '../../plan/project/edits.ts'
 import { asymmetry } from '../../plan/project/mirrored.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { farthestOff } from './distance.ts'
+import { farthestOff } from '../store/distance.ts'
 
 const asShape = { dome: 'a dome', barrel: 'a barrel', pitched: 'a pitched roof', hipped: 'a hipped roof' } as const
 

@@ -19,7 +19,7 @@ import { jointName, nodeName, panelName } from '../../plan/names.ts'
 import { figure } from '../../paper/drawing/figures.ts'
 import { slopeOf } from '../../paper/drawing/fall.ts'
 import { useDesk, useDeskState } from './context.ts'
-import type { Pane } from './state.ts'
+import type { Pane } from '../store/state.ts'
 import type { Size } from './useSize.ts'
 
 const tabs: readonly (readonly [Pane, string])[] = [['roof', 'Roof'], ['plan', 'Plan'], ['chart', 'Slopes'], ['list', 'Panels'], ['steps', 'Steps']]

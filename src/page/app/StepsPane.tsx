@@ -1,6 +1,6 @@
 /** Steps taken, newest on top: undo and redo as words, each step a way back. */
 import { useDesk, useDeskState } from './context.ts'
-import { canRedo, canUndo } from './steps.ts'
+import { canRedo, canUndo } from '../store/steps.ts'
 
 export function StepsPane() {
   const desk = useDesk()

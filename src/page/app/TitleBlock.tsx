@@ -7,7 +7,7 @@ import { caution } from '../../roof/answer/caution.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { LengthField, NumberField, typable } from './Fields.tsx'
 import { withDatum, withRise } from '../../plan/project/edits.ts'
-import { firstSentence, rimWords, secondSentence, signOf, type Piece, type Sign, type Target } from './verdict.ts'
+import { firstSentence, rimWords, secondSentence, signOf, type Piece, type Sign, type Target } from '../store/verdict.ts'
 import { readingFor, useLimits } from './useReading.ts'
 
 export function TitleBlock() {

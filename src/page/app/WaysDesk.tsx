@@ -8,8 +8,8 @@ import type { Answer } from '../../roof/answer/answer.ts'
 import type { Way } from '../../job/session.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { NumberField } from './Fields.tsx'
-import { evenWays } from './even-ways.ts'
-import { wayPicture } from './way-picture.ts'
+import { evenWays } from '../store/even-ways.ts'
+import { wayPicture } from '../store/way-picture.ts'
 
 export function WaysDesk({ answer }: { readonly answer: Answer }) {
   const desk = useDesk()

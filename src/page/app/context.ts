@@ -1,9 +1,9 @@
 /** Components find the desk here. */
 import { createContext, useContext } from 'react'
 import { assert } from '../../base/assert.ts'
-import type { Desk } from './desk.ts'
-import type { State } from './state.ts'
-import { useStore } from './store.ts'
+import type { Desk } from '../store/desk.ts'
+import type { State } from '../store/state.ts'
+import { useStore } from './useStore.ts'
 
 export const DeskContext = createContext<Desk | null>(null)
 

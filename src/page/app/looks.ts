@@ -3,7 +3,8 @@ import type { Axis } from '../../plan/axes.ts'
 import { axesOfPlan } from '../../plan/axes.ts'
 import type { Plan } from '../../plan/plan.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
-import { createStore, useStore } from './store.ts'
+import { createStore } from '../store/store.ts'
+import { useStore } from './useStore.ts'
 
 export interface Looks {
   /** Building axes stand beside the plan. */

@@ -9,7 +9,7 @@ import { toSvg } from '../../paper/drawing/svg.ts'
 import { themes } from '../../paper/drawing/theme.ts'
 import { defaultFlat_mm } from '../../plan/project/wishes.ts'
 import { paintList } from '../view/list-painter.ts'
-import type { Desk } from './desk.ts'
+import type { Desk } from '../store/desk.ts'
 import { jointsOf, readingFor } from './useReading.ts'
 
 export type DrawingName = 'plan' | 'chart' | 'roof'

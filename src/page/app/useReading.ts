@@ -6,7 +6,7 @@ import type { Reading, ReadingName } from '../../paper/drawing/reading.ts'
 import { defaultFlat_mm } from '../../plan/project/wishes.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { useDeskState } from './context.ts'
-import type { Doc } from './state.ts'
+import type { Doc } from '../store/state.ts'
 
 const jointsKept = new WeakMap<Answer, Joints>()
 const readingsKept = new WeakMap<Answer, Map<string, Reading>>()

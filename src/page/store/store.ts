@@ -1,5 +1,4 @@
-/** A value that React listens to. Updates are functions from one immutable state to the next. */
-import { useSyncExternalStore } from 'react'
+/** A value with listeners. Updates are functions from one immutable state to the next. */
 
 export interface Store<S> {
   readonly state: () => S
@@ -23,9 +22,4 @@ export function createStore<S>(initial: S): Store<S> {
       return () => listeners.delete(listener)
     },
   }
-}
-
-/** The part of the state that `pick` returns; the component renders anew when it is another value. */
-export function useStore<S, T>(store: Store<S>, pick: (state: S) => T): T {
-  return useSyncExternalStore(store.subscribe, () => pick(store.state()))
 }
