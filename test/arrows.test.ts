@@ -5,7 +5,8 @@ import { expect, test } from 'vitest'
 
 const base = ['base', 'base/geometry', 'base/sparse']
 const planRooms = ['plan', 'plan/regular', 'plan/project']
-const roofRooms = ['roof/conditions', 'roof/stress', 'roof/raise', 'roof/cures', 'roof/panels', 'roof/answer']
+const cures = ['adjust', 'move', 'rim', 'joints', 'folds', 'clash', 'balance'].map((room) => `roof/cures/${room}`)
+const roofRooms = ['roof/conditions', 'roof/stress', 'roof/raise', ...cures, 'roof/panels', 'roof/answer']
 const paper = ['paper/drawing', 'paper/report']
 
 /** room: the rooms it may import besides itself. */
@@ -21,7 +22,13 @@ const allowed: Record<string, readonly string[]> = {
   'roof/conditions': ['base', 'base/geometry', 'plan', 'plan/project'],
   'roof/stress': [...base, 'plan', 'roof/conditions'],
   'roof/raise': [...base, ...planRooms, 'roof/conditions', 'roof/stress'],
-  'roof/cures': [...base, ...planRooms, 'roof/conditions', 'roof/stress', 'roof/raise'],
+  'roof/cures/adjust': [...base, 'plan', 'plan/regular', 'roof/conditions'],
+  'roof/cures/move': [...base, 'plan', 'plan/project', 'roof/conditions', 'roof/stress', 'roof/raise', 'roof/cures/adjust'],
+  'roof/cures/rim': [...base, 'plan', 'roof/conditions', 'roof/stress', 'roof/raise'],
+  'roof/cures/joints': [...base, 'plan', 'plan/project', 'roof/conditions', 'roof/stress'],
+  'roof/cures/folds': [...base, 'plan', 'roof/conditions', 'roof/stress', 'roof/raise'],
+  'roof/cures/clash': ['base', 'plan', 'roof/conditions', 'roof/stress', 'roof/raise'],
+  'roof/cures/balance': [...base, 'plan'],
   'roof/panels': ['base', 'base/geometry', 'plan', 'roof/stress', 'roof/raise', 'roof/answer'],
   'roof/answer': ['base', 'plan', 'plan/project'],
   formats: ['base', 'base/geometry', 'plan', 'plan/project'],
@@ -45,7 +52,7 @@ const packages: Record<string, (room: string) => boolean> = {
   react: (room) => room === 'page/app',
   'react-dom': (room) => room === 'page/app',
   earcut: (room) => room === 'page/view',
-  highs: (room) => room === 'roof/cures',
+  highs: (room) => room === 'roof/cures/folds',
 }
 
 const root = join(import.meta.dirname, '..')

@@ -4,8 +4,8 @@ import { nodeName, indexOfName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
 import { inUnit, type Condition } from '../plan/project/condition.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
-import { carriedOver, nodesTo } from '../roof/cures/cured-conditions.ts'
-import type { ChangedPlan } from '../roof/cures/diagonals-plan.ts'
+import { carriedOver, nodesTo } from '../roof/cures/joints/cured-conditions.ts'
+import type { ChangedPlan } from '../roof/cures/joints/diagonals-plan.ts'
 import type { Checked, PlanQuestion } from './check.ts'
 
 /**

@@ -1,8 +1,8 @@
 /** The starting shape of few folds: the roof of an answer, folded along as few joints as a linear program finds for its rise. */
 import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
-import { fewestFolds } from '../roof/cures/fewest-folds.ts'
-import type { LinearSolver } from '../roof/cures/linear-program.ts'
+import { fewestFolds } from '../roof/cures/folds/fewest-folds.ts'
+import type { LinearSolver } from '../roof/cures/folds/linear-program.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
 import { outerRimNodes, riseOf } from '../roof/raise/rise.ts'
 import { answerTo } from './check.ts'

@@ -4,7 +4,7 @@ import { indexOfName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
 import type { Options } from '../plan/project/options.ts'
 import { parsedLength } from '../plan/project/wishes.ts'
-import type { PlanKeeps } from '../roof/cures/adjust.ts'
+import type { PlanKeeps } from '../roof/cures/adjust/adjust.ts'
 
 /** What the plan keeps, in spans. Fails where a node is not on the plan. */
 export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {

@@ -7,7 +7,7 @@ import { cancelled, drive, type DriveOptions, type Steps } from '../base/steps.t
 import type { Repair, LeftOut, Question } from '../base/repair.ts'
 import type { PlanFacts } from '../roof/answer/answer.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
-import { linearSolver } from '../roof/cures/linear-program.ts'
+import { linearSolver } from '../roof/cures/folds/linear-program.ts'
 import { adjust, type AdjustAnswer } from './adjust.ts'
 import { adjustFiles } from './adjust-files.ts'
 import { balance, type BalanceAnswer, type Densities } from './balance.ts'

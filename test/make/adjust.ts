@@ -2,8 +2,8 @@
 import { finish } from '../../src/base/steps.ts'
 import type { Plan } from '../../src/plan/plan.ts'
 import { conditionRows } from '../../src/roof/conditions/condition-rows.ts'
-import type { PlanKeeps } from '../../src/roof/cures/adjust.ts'
-import { movedNodes, type Moved, type MoveOutcome } from '../../src/roof/cures/move-nodes.ts'
+import type { PlanKeeps } from '../../src/roof/cures/adjust/adjust.ts'
+import { movedNodes, type Moved, type MoveOutcome } from '../../src/roof/cures/move/move-nodes.ts'
 import { nodeAreas } from '../../src/roof/raise/nearest.ts'
 import { raise, type Asked } from './raise.ts'
 
