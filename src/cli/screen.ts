@@ -4,7 +4,7 @@
  */
 import { sentence, type Problem } from '../base/result.ts'
 import { jsonText } from '../formats/write-json.ts'
-import type { OpenQuestion } from '../job/check.ts'
+import type { OpenQuestion } from '../job/question.ts'
 import { questionSentence } from '../paper/report/drawing-sentences.ts'
 import { printable } from '../paper/report/printable.ts'
 import { osCode, osReason } from './os-reason.ts'

@@ -21,12 +21,11 @@ import { nodeAreas } from '../roof/raise/nearest.ts'
 import { liftSpace, nothingHeld } from '../roof/stress/lift-space.ts'
 import { panelBases } from '../roof/stress/panel-bases.ts'
 import { tiltDimension } from '../roof/stress/tilts.ts'
-import { answerTo, openQuestion, questionOf, type Checked } from './check.ts'
+import { answerTo, questionOf, type Checked } from './check.ts'
 import { keepsOf } from './keeps.ts'
-import { withLevels } from './levels.ts'
-import { reading } from './reading.ts'
-import type { Request } from './request.ts'
 import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
+import { planQuestion, withoutTolerance } from './question.ts'
+import type { Request } from './request.ts'
 import { targetOf } from './target.ts'
 
 export interface AdjustAnswer {
@@ -45,18 +44,16 @@ const counted_mm = 1
 
 /** Reads, checks, adjusts and checks again. */
 export function* adjust(request: Request, version: string, sha256: string): Steps<Result<AdjustAnswer>> {
-  const options = yield* withLevels(request)
-  if (!options.ok) return options
+  const asked = yield* planQuestion(request, version, sha256)
+  if (!asked.ok) return asked
+  const { options } = asked.value.request
   // The tolerance is asked of the plan that is found, not of the one as drawn; the drawing is read with it.
-  const asked = { ...request, options: { ...options.value, planTolerance_mm: 0 } }
-  const made = yield* reading({ ...request, options: options.value })
-  if (!made.ok) return made
-  const { read, brief, target } = made.value
-  if (read.questions.length > 0) return openQuestion(request, read.questions)
-  const full = (plan: Plan): Steps<Result<Checked>> => answerTo({ request: asked, version, sha256, read: { ...read, plan }, brief, target, free: null })
-  const wishes = wishesOf(brief, options.value, read.plan.unit)
+  const question = withoutTolerance(asked.value)
+  const { read, brief, target = null } = question
+  const full = (plan: Plan): Steps<Result<Checked>> => answerTo({ ...question, read: { ...read, plan } })
+  const wishes = wishesOf(brief, options, read.plan.unit)
   if (!wishes.ok) return wishes
-  const keeps = keepsOf(read.plan, options.value)
+  const keeps = keepsOf(read.plan, options)
   if (!keeps.ok) return keeps
   const glance = yield* liftsNowhere(read.plan, wishes.value)
   if (!glance.ok) return glance
@@ -69,7 +66,7 @@ export function* adjust(request: Request, version: string, sha256: string): Step
   }
   const under = glance.value ?? before?.under
   assert(under !== undefined, 'the plan was looked at')
-  const outcome = yield* moveOutcome(asked, read, target, { wishes: wishes.value, under }, keeps.value)
+  const outcome = yield* moveOutcome(question.request, read, target, { wishes: wishes.value, under }, keeps.value)
   if (!outcome.ok) return outcome
   if (outcome.value.kind !== 'moved') {
     const drawn = before === null ? yield* full(read.plan) : ok(before)
@@ -78,7 +75,7 @@ export function* adjust(request: Request, version: string, sha256: string): Step
   const { moved } = outcome.value
   const after = yield* full(moved.plan)
   if (!after.ok) return after
-  return ok(yield* answerOf(read.plan, before?.answer.summary.verdict ?? null, after.value, moved, options.value))
+  return ok(yield* answerOf(read.plan, before?.answer.summary.verdict ?? null, after.value, moved, options))
 }
 
 /**

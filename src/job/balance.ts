@@ -18,9 +18,8 @@ import { outerRimNodes, riseOf } from '../roof/raise/rise.ts'
 import { shapeHeights } from '../roof/raise/shapes.ts'
 import { dualWalk } from '../roof/stress/dual-walk.ts'
 import { lessTilt } from '../roof/stress/tilt-part.ts'
-import { answerTo, openQuestion, type Checked } from './check.ts'
-import { withLevels } from './levels.ts'
-import { reading } from './reading.ts'
+import { answerTo, type Checked } from './check.ts'
+import { planQuestion, withoutTolerance } from './question.ts'
 import type { Request } from './request.ts'
 
 export type Densities = 'uniform' | 'fit' | 'length' | NamedFile
@@ -38,33 +37,33 @@ export interface BalanceAnswer {
 const counted_mm = 1
 
 export function* balance(request: Request, densities: Densities, version: string, sha256: string): Steps<Result<BalanceAnswer>> {
-  const options = yield* withLevels(request)
-  if (!options.ok) return options
-  const made = yield* reading({ ...request, options: options.value })
-  if (!made.ok) return made
-  const { read, brief } = made.value
-  if (read.questions.length > 0) return openQuestion(request, read.questions)
-  const { plan } = read
-  const wishes = wishesOf(brief, options.value, plan.unit)
+  const asked = yield* planQuestion(request, version, sha256)
+  if (!asked.ok) return asked
+  // Whether the plan as balanced lifts is measured as it stands.
+  const question = withoutTolerance(asked.value)
+  const { plan } = question.read
+  const { options } = question.request
+  const wishes = wishesOf(question.brief, options, plan.unit)
   if (!wishes.ok) return wishes
   const density = yield* densityOf(plan, densities)
   if (!density.ok) return density
   const kind = typeof densities === 'string' ? densities : 'typed'
-  const asked = { ...request, options: { ...options.value, planTolerance_mm: 0 } }
   const found = yield* balanced(plan, density.value)
   if (found === null) return fail('no-balance', 'these densities leave a node without a place', null, 'use densities of one sign, or others')
   const { x, y } = coordinatesOf(plan, found.work)
   const next = found.crossed.length === 0 ? movedPlan(plan, x, y) : null
   if (next === null || !next.ok) {
-    const after = yield* answerTo({ request: asked, version, sha256, read, brief, free: null })
+    const after = yield* answerTo({ ...question, target: null })
     if (!after.ok) return after
     const crossed = Array.from(found.crossed, panelName)
     const zero = new Float64Array(plan.nodeCount)
     return ok({ drawn: plan, after: after.value, dx_mm: zero, dy_mm: zero, facts: { outcome: 'crossed', densities: kind, crossed, largest_mm: 0, rms_mm: 0, count: 0 } })
   }
   const target = heightsOf(next.value, density.value, wishes.value)
-  const heldHeights = { ...asked, options: { ...asked.options, shape: null, target: null } }
-  const after = yield* answerTo({ request: heldHeights, version, sha256, read: { ...read, plan: next.value }, brief: { ...brief, shape: null }, target, free: null })
+  const after = yield* answerTo({
+    ...question, request: { ...question.request, options: { ...options, shape: null, target: null } },
+    read: { ...question.read, plan: next.value }, brief: { ...question.brief, shape: null }, target,
+  })
   if (!after.ok) return after
   const mm = conversion(plan.unit, 'mm')
   const dx_mm = x.map((value, n) => (value - plan.x[n]) * mm)

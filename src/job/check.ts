@@ -1,10 +1,8 @@
 /** The main job as a recipe: read, ask the plan, hold the conditions, raise, measure, say. */
-import type { Question } from '../base/repair.ts'
-import { fail, ok, type Problem, type Result } from '../base/result.ts'
+import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { interiorNodeCount, voidCount, type Plan } from '../plan/plan.ts'
 import { jointName, nodeName, panelName } from '../plan/names.ts'
-import type { Brief } from '../plan/project/brief.ts'
 import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import type { Answer, PlanFacts, Roof, RoofFacts, StressFacts, Summary } from '../roof/answer/answer.ts'
@@ -16,11 +14,9 @@ import { raised, type Raised } from '../roof/raise/raise.ts'
 import { outerRimNodes, rimVariation, riseOf, type RiseRule } from '../roof/raise/rise.ts'
 import type { UnderConditions } from '../roof/raise/under-conditions.ts'
 import { freeRim, type FreeRim } from '../roof/stress/free-rim.ts'
-import type { LiftSpace } from '../roof/stress/lift-space.ts'
 import { conversion } from '../base/length.ts'
-import { withLevels } from './levels.ts'
 import { withinPlan, type WithinPlan } from './plan-tolerance.ts'
-import { reading } from './reading.ts'
+import { planQuestion, type PlanQuestion } from './question.ts'
 import { reasonFor } from './reason.ts'
 import type { Request } from './request.ts'
 import { targetOf } from './target.ts'
@@ -35,33 +31,10 @@ export interface Checked {
   readonly under: UnderConditions
 }
 
-/** A question of the reader that the answer depends on: it ends the job, and the questions go with it. */
-export interface OpenQuestion extends Problem {
-  readonly questions: readonly Question[]
-}
-
 /** The answer to a request; `version` and `sha256` go into its summary. */
 export function* check(request: Request, version: string, sha256: string): Steps<Result<Checked>> {
-  const options = yield* withLevels(request)
-  if (!options.ok) return options
-  const made = yield* reading({ ...request, options: options.value })
-  if (!made.ok) return made
-  const { read, brief, target } = made.value
-  if (read.questions.length > 0) return openQuestion(request, read.questions)
-  return yield* answerTo({ request: { ...request, options: options.value }, version, sha256, read, brief, target, free: null })
-}
-
-/** A plan that has been read and what is asked of it; `free` and `space`: of the same plan, from an earlier answer (null or absent: not known). */
-export interface PlanQuestion {
-  readonly request: Request
-  readonly version: string
-  readonly sha256: string
-  readonly read: ReadPlan
-  readonly brief: Brief
-  /** Heights set by hand (length nodeCount, NaN: none), in the place of the drawing's and of the brief's shape; null or absent: none. */
-  readonly target?: Float64Array | null
-  readonly free: FreeRim | null
-  readonly space?: LiftSpace | null
+  const question = yield* planQuestion(request, version, sha256)
+  return question.ok ? yield* answerTo(question.value) : question
 }
 
 /** The second half of the job, which every edit of the brief repeats; the factor of the plan is found once and kept. */
@@ -83,12 +56,6 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
     request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, within: within.value, notices: target.value.notices,
   })
   return ok({ answer, wishes: wishes.value, rows: rows.value, free, under: result.under })
-}
-
-export function openQuestion(request: Request, questions: readonly Question[]): { ok: false; problem: OpenQuestion } {
-  const { code, message, options } = questions[0]
-  const { problem } = fail(code, message, { file: request.source.name }, `answer with ${options.join(' or ')}`)
-  return { ok: false, problem: { ...problem, questions } }
 }
 
 /** The wishes in working measure: heights (z - datum) / span. */

@@ -6,7 +6,8 @@ import { inUnit, type Condition } from '../plan/project/condition.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import { carriedOver, nodesTo } from '../roof/cures/joints/cured-conditions.ts'
 import type { ChangedPlan } from '../roof/cures/joints/diagonals-plan.ts'
-import type { Checked, PlanQuestion } from './check.ts'
+import type { Checked } from './check.ts'
+import type { PlanQuestion } from './question.ts'
 
 /**
  * The question with these conditions (in the plan's unit) in the place of all that brief and options held: what options asked

@@ -12,8 +12,9 @@ import { cureCodes, type CureCode, type CureWeights } from '../plan/project/cure
 import type { AnswerWord, AsDrawn, Blocking, Cure } from '../roof/answer/cure.ts'
 import { conditionsThatFlatten } from '../roof/cures/clash/smallest-clash.ts'
 import { nodeAreas } from '../roof/raise/nearest.ts'
-import { answerTo, type Checked, type PlanQuestion } from './check.ts'
+import { answerTo, type Checked } from './check.ts'
 import { attempts, foldsNothing, missesRise, type Attempt } from './cure-kinds.ts'
+import { withoutTolerance, type PlanQuestion } from './question.ts'
 
 export interface FoundCure {
   readonly cure: Cure
@@ -84,11 +85,6 @@ export function summaryWith({ caution, ...summary }: Summary, { answer, asDrawn,
 const stages: Readonly<Record<CureCode, string>> = {
   'accept-deviation': 'Measuring', 'move-nodes': 'Moving nodes', 'pack-rim': 'Packing the rim', 'add-diagonals': 'Looking for diagonals',
   'remove-joints': 'Joining panels', release: 'Letting conditions go',
-}
-
-/** Trials are judged as they stand: a tolerance of the plan is another cure. */
-function withoutTolerance(question: PlanQuestion): PlanQuestion {
-  return { ...question, request: { ...question.request, options: { ...question.request.options, planTolerance_mm: 0 } } }
 }
 
 /**

@@ -3,10 +3,9 @@ import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { cureCodes, type CureCode } from '../plan/project/cure-weights.ts'
 import type { Cure } from '../roof/answer/cure.ts'
-import { answerTo, openQuestion, type Checked, type PlanQuestion } from './check.ts'
+import { answerTo, type Checked } from './check.ts'
 import { cured, curesOf, summaryWith } from './cures.ts'
-import { withLevels } from './levels.ts'
-import { reading } from './reading.ts'
+import { planQuestion, type PlanQuestion } from './question.ts'
 import type { Request } from './request.ts'
 
 export interface Solved {
@@ -29,13 +28,9 @@ export function cureNamed(text: string): Result<{ code: CureCode; name: string |
 
 /** The answer with these cures applied one after another, each as it is found then. */
 export function* solvedWith(request: Request, version: string, sha256: string, cures: readonly string[]): Steps<Result<Solved>> {
-  const options = yield* withLevels(request)
-  if (!options.ok) return options
-  const made = yield* reading({ ...request, options: options.value })
-  if (!made.ok) return made
-  const { read, brief, target } = made.value
-  if (read.questions.length > 0) return openQuestion(request, read.questions)
-  let question: PlanQuestion = { request: { ...request, options: options.value }, version, sha256, read, brief, target, free: null }
+  const asked = yield* planQuestion(request, version, sha256)
+  if (!asked.ok) return asked
+  let question = asked.value
   let checked = yield* answerTo(question)
   if (!checked.ok) return checked
   const applied: Cure[] = []
