@@ -29,7 +29,9 @@ export interface CuresFound {
 }
 
 /** All cures of an answer that is not a plain yes. */
-export function* curesOf(question: PlanQuestion, checked: Checked): Steps<Result<CuresFound>> {
+export function* curesOf(asked: PlanQuestion, checked: Checked): Steps<Result<CuresFound>> {
+  // Cures that leave the plan as it is do not ask again what it can do.
+  const question = { ...asked, free: checked.free }
   if (checked.answer.summary.verdict === 'lifts') return ok({ answer: 'yes', asDrawn: null, blocking: null, cures: [] })
   const found: FoundCure[] = []
   for (const code of cureCodes) {
