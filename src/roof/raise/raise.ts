@@ -17,6 +17,7 @@ import { broughtFlat } from './nearest.ts'
 import { nearRoof } from './near-roof.ts'
 import { outerRimNodes, riseOf, type RiseRule } from './rise.ts'
 import { shapeHeights, type Shape } from './shapes.ts'
+import { heldLevel } from './held-level.ts'
 import { metricOf } from './soft.ts'
 import type { UnderConditions } from './under-conditions.ts'
 
@@ -65,7 +66,7 @@ export interface Raised {
 /** `known`: the space of an earlier answer about the same plan, see `underConditions`. */
 export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question: RaiseQuestion, known: LiftSpace | null = null): Steps<Raised> {
   const { rows, rule } = question
-  const { wish, rise } = wishOf(plan, question)
+  const { wish, rise, level } = wishOf(plan, question)
   const metric = metricOf(areas, rows.soft)
   const { under, sides, clashes } = yield* keptBy(plan, free, areas, rows, question.names, wish, metric, known)
 
@@ -76,7 +77,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
       space: under.space, tilts: under.tilts, areas, metric, sides, rim: outerRimNodes(plan),
       scaleFree: under.scaleFree && sides === null && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
     }
-    const asked = { heights: wish, rise, rule, settle: question.target === null }
+    const asked = { heights: wish, level, rise, rule, settle: question.target === null }
     const within = yield* choiceWithin(ground, under.start, asked, rows)
     const { choice, unmet } = within
     const made = {
@@ -95,14 +96,16 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
   }
 }
 
-/** Heights to come near to, and the rise to reach. */
-export function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; rise: number | null } {
-  if (question.pitched) return { wish: new Float64Array(plan.nodeCount), rise: null }
-  if (question.target !== null) return { wish: question.target, rise: question.rise }
+/** Heights to come near to, the level that they stand at, and the rise to reach. */
+export function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Array; level: number; rise: number | null } {
+  if (question.pitched) return { wish: new Float64Array(plan.nodeCount), level: 0, rise: null }
+  if (question.target !== null) return { wish: question.target, level: 0, rise: question.rise }
   const { heights, shorterSide } = shapeHeights(plan, question.shape)
   const rise = question.rise ?? shorterSide / 10
   const amplitude = question.rule.down ? -rise : rise
-  return { wish: heights.map((height) => amplitude * height), rise }
+  const shape = heights.map((height) => amplitude * height)
+  const level = heldLevel(plan, question.rows, shape, question.rule)
+  return { wish: shape.map((height) => level + height), level, rise }
 }
 
 /**

@@ -16,6 +16,8 @@ import type { Metric } from './soft.ts'
 export interface Wish {
   /** Heights to come near to (length nodeCount). */
   readonly heights: Float64Array
+  /** The level that these heights stand at: amplitudes grow from there. */
+  readonly level: number
   /** The rise to reach; null leaves the nearest roof as it is (a target without a rise). */
   readonly rise: number | null
   readonly rule: RiseRule
@@ -70,12 +72,12 @@ export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): 
 
 const smoothestSaid = 'no roof under these conditions comes near the starting shape, so the smoothest one was taken'
 
-/** Roofs h(a) = h0 + a h1, h0 nearest to flat, h1 the answer to the wish: the a whose rise is the asked one. */
+/** Roofs h(a) = h0 + a h1, h0 nearest to flat at the wish's level, h1 the answer to the wish: the a whose rise is the asked one. */
 function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: number): Steps<Choice> {
   const { space, metric, rim } = ground
   const zero = new Float64Array(start.length)
-  const rest = yield* nearestLift(space, start, metric, zero, false)
-  let direction = yield* nearestLift(space, zero, metric, wish.heights, true)
+  const rest = yield* nearestLift(space, start, metric, zero.map(() => wish.level), false)
+  let direction = yield* nearestLift(space, zero, metric, wish.heights.map((height) => height - wish.level), true)
   const kept = keptOf(ground, direction, wish.heights)
   let notice: string | null = null
   if (space.dimension > 0 && kept < keptShare) {
