@@ -40,5 +40,5 @@ Closed outlines and faces are panels when none overlap and no line runs inside o
 a void. Otherwise everything is line work: every bounded face is a panel unless --void X,Y lies in it.
 
 ${reads.map(block).join('\n')}
-Levels (--levels): CSV with rows name,x,y,level or x,y,level, with or without titles; or DXF points, --levels FILE#LAYER.
+Levels (--levels): CSV with columns name, x, y, level in any order, with or without titles, decimal commas too; or the points, blocks and words of a DXF, --levels FILE#LAYER.
 `

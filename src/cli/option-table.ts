@@ -32,7 +32,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'brief', value: 'FILE', group: 'What must hold', help: 'conditions and wishes as JSON (panewise help brief)' },
   { name: 'rim', value: 'free|level|level=H', group: 'What must hold', help: 'the outer rim floats, is level at the datum, or at H' },
   { name: 'datum', value: 'LEVEL', group: 'What must hold', help: 'the level from which rise and levels count' },
-  { name: 'levels', value: 'FILE[#LAYER]', group: 'What must hold', help: 'hold nodes at levels: CSV (name,x,y,level or x,y,level) or DXF points' },
+  { name: 'levels', value: 'FILE[#LAYER]', group: 'What must hold', help: 'hold nodes at levels: CSV (name,x,y,level in any order) or points, blocks and words of a DXF' },
   { name: 'one-way', value: 'all|NAMES', group: 'What must hold', help: 'also say whether these joints (J4,J11) can all be ridges; raise writes that roof as one-way.obj' },
   { name: 'levels-within', value: 'LENGTH', group: 'What must hold', help: 'how far a level may lie from its node (default 50mm)' },
   { name: 'pitch', value: 'DEGREES', group: 'What must hold', help: 'all panels in one plane of this pitch' },

@@ -6,11 +6,13 @@ import type { Brief } from '../plan/project/brief.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
 import type { LiftSpace } from '../roof/stress/lift-space.ts'
+import { levelsOnPlan } from './levels-on-plan.ts'
 import { withLevels } from './levels.ts'
 import { reading } from './reading.ts'
 import type { Request } from './request.ts'
 
-/** A plan that has been read and what is asked of it; `free` and `space`: of the same plan, from an earlier answer (null or absent: not known). */
+/** A plan that has been read and what is asked of it; `free`: of the same plan, from an earlier answer; `space`: of it, or of one whose nodes lie
+ * elsewhere (null or absent: not known). */
 export interface PlanQuestion {
   readonly request: Request
   readonly version: string
@@ -32,10 +34,12 @@ export interface OpenQuestion extends Problem {
 export function* planQuestion(request: Request, version: string, sha256: string): Steps<Result<PlanQuestion>> {
   const options = yield* withLevels(request)
   if (!options.ok) return options
-  const asked = { ...request, options: options.value }
-  const made = yield* reading(asked)
+  const made = yield* reading({ ...request, options: options.value })
   if (!made.ok) return made
-  const { read, brief, target } = made.value
+  const { brief, target } = made.value
+  const levels = levelsOnPlan(options.value, made.value.read.plan)
+  const asked = { ...request, options: levels.options }
+  const read = { ...made.value.read, notices: [...made.value.read.notices, ...levels.notices] }
   return read.questions.length > 0 ? openQuestion(request, read.questions) : ok({ request: asked, version, sha256, read, brief, target, free: null })
 }
 

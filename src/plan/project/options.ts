@@ -21,6 +21,8 @@ export interface LevelRow {
   readonly name: string | null
   readonly at: Point
   readonly level: number
+  /** Other places that it may mean: words beside a cross. */
+  readonly elsewhere?: readonly Point[]
 }
 
 export interface Levels {
@@ -29,6 +31,8 @@ export interface Levels {
   /** Unit of the rows; null: the plan's. */
   readonly unit: Unit | null
   readonly rows: readonly LevelRow[]
+  /** The same rows read otherwise, each with what that is ("y, x, level"); taken where more of their places lie at nodes. */
+  readonly otherwise?: readonly { readonly order: string; readonly rows: readonly LevelRow[] }[]
 }
 
 /** What a plan keeps while its nodes are moved. */
