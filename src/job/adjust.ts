@@ -50,13 +50,13 @@ export function* adjust(request: Request, version: string, sha256: string): Step
   // The tolerance is asked of the plan that is found, not of the one as drawn; the drawing is read with it.
   const question = withoutTolerance(asked.value)
   const { read, brief, target = null } = question
-  const full = (plan: Plan): Steps<Result<Checked>> => answerTo({ ...question, read: { ...read, plan } })
   const wishes = wishesOf(brief, options, read.plan.unit)
   if (!wishes.ok) return wishes
   const keeps = keepsOf(read.plan, options)
   if (!keeps.ok) return keeps
   const glance = yield* liftsNowhere(read.plan, wishes.value)
   if (!glance.ok) return glance
+  const full = (plan: Plan): Steps<Result<Checked>> => answerTo({ ...question, read: { ...read, plan }, space: glance.value?.space ?? null })
   let before: Checked | null = null
   if (glance.value === null) {
     const made = yield* full(read.plan)

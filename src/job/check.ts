@@ -47,7 +47,7 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
   const rows = conditionRows(plan, wishes.value.conditions, wishes.value.datum ?? 0)
   if (!rows.ok) return rows
 
-  const free = known ?? (yield* freeRim(plan))
+  const free = known ?? (yield* freeRim(plan, space ?? null))
   const question = questionOf(plan, wishes.value, rows.value, target.value.heights)
   const result = yield* raised(plan, free, nodeAreas(plan), question, space ?? null)
   const within = yield* withinPlan(plan, result, wishes.value, rows.value, question, request.options)
@@ -65,7 +65,7 @@ export function questionOf(plan: Plan, wishes: Wishes, rows: ConditionRows, targ
   const tolerance = wishes.flat_mm * conversion('mm', plan.unit)
   return {
     rows, names: wishes.conditions.map(({ name }) => name), shape: wishes.shape ?? 'dome',
-    target: target === null ? null : target.map((z) => (z - datum) / span),
+    target: target === null ? null : inSpans(target, datum, span),
     rise: wishes.rise === null ? null : wishes.rise / span,
     rule: { down: wishes.down, datum: wishes.datum === null ? null : 0 },
     pitched: wishes.pitch !== null,
@@ -92,7 +92,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
   const { plan } = read
   const { span } = plan.frame
   const mm = conversion(plan.unit, 'mm')
-  const heights = result.roof === null ? null : result.roof.heights.map((h) => h * span + (wishes.datum ?? 0))
+  const heights = result.roof === null ? null : inUnit(result.roof.heights, span, wishes.datum ?? 0)
   const written = heights === null ? null : yield* writtenCoordinates(plan, heights, wishes.decimals)
   const { reason, reasonKind } = reasonFor(plan, free, result, rows, wishes.datum ?? 0)
   const isNear = result.roof !== null && !result.roof.exact
@@ -124,7 +124,7 @@ function* answerOf(pieces: Pieces): Steps<Answer> {
   const roof: Roof | null =
     result.roof === null || written === null || heights === null ? null : {
       heights, written: written.z, writtenX: written.x, writtenY: written.y, gradient: result.roof.gradient,
-      stress: result.roof.stress.map((s) => s / span), corner_mm: written.flat.corner, flatness_mm: written.flat.zone, isNear,
+      stress: inSpans(result.roof.stress, 0, span), corner_mm: written.flat.corner, flatness_mm: written.flat.zone, isNear,
     }
   return {
     summary, plan, frozenFree: free.frozen, frozenHeld: result.under.frozen, flatGroup: result.under.groupOf,
@@ -178,4 +178,22 @@ function roofFacts(plan: Plan, wishes: Wishes, result: Raised, written: Written)
   }
 }
 
-const sum = (flags: Uint8Array): number => flags.reduce((total, flag) => total + flag, 0)
+function sum(flags: Uint8Array): number {
+  let total = 0
+  for (let i = 0; i < flags.length; i += 1) total += flags[i]
+  return total
+}
+
+/** Working heights in the plan's unit. */
+function inUnit(heights: Float64Array, span: number, datum: number): Float64Array {
+  const out = heights.slice()
+  for (let i = 0; i < out.length; i += 1) out[i] = out[i] * span + datum
+  return out
+}
+
+/** (values - datum) / span. */
+function inSpans(values: Float64Array, datum: number, span: number): Float64Array {
+  const out = values.slice()
+  for (let i = 0; i < out.length; i += 1) out[i] = (out[i] - datum) / span
+  return out
+}

@@ -79,7 +79,7 @@ function* moveNodes(question: PlanQuestion, checked: Checked): Steps<Result<read
   const tolerance_mm = request.options.planTolerance_mm ?? defaultPlanTolerance_mm
   return ok([{
     figures: { code: 'move-nodes', name: null, ...sizes, where: largestFirst(shift).map(nodeName), withinTolerance: sizes.largest_mm <= tolerance_mm },
-    next: { ...question, read: { ...read, plan: moved.plan }, free: null, space: null }, changesPlan: true,
+    next: { ...question, read: { ...read, plan: moved.plan }, free: null, space: checked.under.space }, changesPlan: true,
   }])
 }
 

@@ -11,6 +11,7 @@
  * are each at one open level have a near lift at 8e-14 that is counted (freedom left 2; at 1e-14 it is 1, as it should be).
  */
 import { clashHeight, tau } from '../../base/geometry/tolerance.ts'
+import { dot } from '../../base/dot.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { eliminate, type Elimination, type RowClash } from '../conditions/eliminate.ts'
@@ -18,7 +19,7 @@ import { homogeneous } from '../conditions/homogeneous.ts'
 import { rowCount, type Rows } from '../conditions/rows.ts'
 import type { FreeRim } from '../stress/free-rim.ts'
 import { flatGroups, frozenJoints } from '../stress/frozen-joints.ts'
-import { liftSpace, type LiftSpace } from '../stress/lift-space.ts'
+import { liftSpace, same, type LiftSpace } from '../stress/lift-space.ts'
 import { squaredResidual } from '../stress/panel-bases.ts'
 import { lessTilt } from '../stress/tilt-part.ts'
 import { tiltDimension } from '../stress/tilts.ts'
@@ -69,7 +70,7 @@ export function* feasibleRoof(
   // With nothing held the flat roof is one.
   if (rowCount(hard) === 0) return { space: free.space, start: new Float64Array(plan.nodeCount), rowClashes: [] }
   const { elimination, clashes } = eliminate(hard, plan.nodeCount, names)
-  const space = known !== null && sameSolution(known, free, elimination) ? { ...known, elimination } : yield* liftSpace(plan, free.bases, elimination)
+  const space = known !== null && sameSolution(known, free, elimination) ? { ...known, elimination } : yield* liftSpace(plan, free.bases, elimination, known)
   if (clashes.length > 0) return { space, start: null, rowClashes: clashes }
   const roof = yield* roofUnderConditions(space, wish)
   // Rows with all values zero leave the flat roof, also where a near lift just above tau keeps the first one from being flat.
@@ -84,19 +85,14 @@ function sameSolution(known: LiftSpace, free: FreeRim, { free: unknowns, start, 
     same(elimination.unknown, unknown) && same(elimination.weight, weight)
 }
 
-function same(a: Int32Array | Float64Array, b: Int32Array | Float64Array): boolean {
-  if (a.length !== b.length) return false
-  for (let i = 0; i < a.length; i += 1) if (a[i] !== b[i]) return false
-  return true
-}
-
 /**
  * Whether heights are a lift: out-of-flatness squared below tau times the height squared (the measure of the count), or
  * below what heights that agree may differ by.
  */
 function isLift(space: LiftSpace, heights: Float64Array, areas: Float64Array): boolean {
   const { plan, bases } = space
-  const size = lessTilt(plan, heights, areas).reduce((sum, height) => sum + height * height, 0)
+  const left = lessTilt(plan, heights, areas)
+  const size = dot(left, left)
   return squaredResidual(plan, bases, heights) <= tau * size + plan.nodeCount * clashHeight ** 2
 }
 

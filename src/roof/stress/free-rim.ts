@@ -28,10 +28,10 @@ export interface FreeRim {
   readonly groupCount: number
 }
 
-/** The facts of a plan's free rim: one factor, one more only where the count is in doubt. */
-export function* freeRim(plan: Plan): Steps<FreeRim> {
+/** The facts of a plan's free rim: one factor, one more only where the count is in doubt. `like`: as `liftSpace` takes it. */
+export function* freeRim(plan: Plan, like: LiftSpace | null = null): Steps<FreeRim> {
   const bases = panelBases(plan)
-  const space = yield* liftSpace(plan, bases, nothingHeld(plan.nodeCount))
+  const space = yield* liftSpace(plan, bases, nothingHeld(plan.nodeCount), like)
   const tilts = tiltDimension(plan, null)
   const freedom = space.dimension - tilts
   let nearest = yield* smallestNearLift(space)

@@ -47,9 +47,15 @@ export interface Probe {
   readonly quotient: number
 }
 
-/** Q and the metric under an elimination: one clique of unknowns a panel, then one a node. */
-export interface ReducedForm {
+/** Clique c holds unknowns index[start[c] .. start[c + 1]). */
+interface FormPattern {
   readonly cliques: CliquePattern
+  readonly start: Int32Array
+  readonly index: Int32Array
+}
+
+/** Q and the metric under an elimination: one clique of unknowns a panel, then one a node. */
+export interface ReducedForm extends FormPattern {
   /** T^T Q T, one value per entry of the pattern. */
   readonly flatness: Float64Array
 }
@@ -61,23 +67,41 @@ export function nothingHeld(nodeCount: number): Elimination {
   return { free, start, unknown: free, weight: new Float64Array(nodeCount).fill(1), particular: new Float64Array(nodeCount) }
 }
 
-/** Order, analyse and factor for this plan under these conditions; one factor serves every later question. */
-export function* liftSpace(plan: Plan, bases: PanelBases, elimination: Elimination): Steps<LiftSpace> {
+/**
+ * Order, analyse and factor for this plan under these conditions; one factor serves every later question. `like`: a space whose
+ * order and analysis serve again where panels and conditions join the same nodes, as on a plan whose nodes were moved.
+ */
+export function* liftSpace(plan: Plan, bases: PanelBases, elimination: Elimination, like: LiftSpace | null = null): Steps<LiftSpace> {
   yield { stage: 'Assembling', done: 0 }
-  const form = reducedForm(plan, bases, elimination)
+  const known = like !== null && samePattern(like, plan, elimination) ? like : null
+  const form = reducedForm(plan, bases, elimination, known?.form ?? null)
   const { pattern } = form.cliques
-  const coordinates = new Float64Array(2 * pattern.size)
-  for (let u = 0; u < pattern.size; u += 1) {
-    coordinates[2 * u] = plan.work[2 * elimination.free[u]]
-    coordinates[2 * u + 1] = plan.work[2 * elimination.free[u] + 1]
-  }
-  const analysis = analyse(pattern, yield* dissection(pattern, coordinates))
+  const analysis = known?.analysis ?? analyse(pattern, yield* dissection(pattern, placesOf(plan, elimination)))
   const shifted = weightedForm(plan, elimination, form, null, -tau, 1)
   const factored = yield* factor(analysis, shifted)
   const { negative, zero } = inertia(factored)
   const space = { plan, bases, elimination, form, analysis, factor: factored, dimension: negative + zero, probe: null }
   yield { stage: 'Factoring', done: 1 }
   return { ...space, probe: space.dimension === 0 ? null : probeOf(space) }
+}
+
+/** Where the unknowns lie: x y x y .. in working coordinates. */
+function placesOf({ work }: Plan, { free }: Elimination): Float64Array {
+  const at = new Float64Array(2 * free.length)
+  free.forEach((node, u) => at.set(work.subarray(2 * node, 2 * node + 2), 2 * u))
+  return at
+}
+
+/** Whether the flatness form couples the same unknowns: panels by their corners, corners by what they are made of. */
+function samePattern({ plan: before, elimination: then }: LiftSpace, plan: Plan, now: Elimination): boolean {
+  return same(before.panelStart, plan.panelStart) && same(before.corner, plan.corner) && same(then.start, now.start) && same(then.unknown, now.unknown)
+}
+
+export function same(a: Int32Array | Float64Array, b: Int32Array | Float64Array): boolean {
+  if (a === b) return true
+  if (a.length !== b.length) return false
+  for (let i = 0; i < a.length; i += 1) if (a[i] !== b[i]) return false
+  return true
 }
 
 function probeOf(space: LiftSpace): Probe {
@@ -88,10 +112,8 @@ function probeOf(space: LiftSpace): Probe {
   return { lift, rest, quotient: squaredResidual(plan, bases, lift) / dot(lift, lift) }
 }
 
-/** T^T Q T by panels: with B = I - 11^T/k - e1 e1^T - e2 e2^T and T_p the panel's rows of T, the block is T_p^T B T_p. */
-export function reducedForm(plan: Plan, bases: PanelBases, elimination: Elimination): ReducedForm {
-  const { panelStart, corner, panelCount, nodeCount } = plan
-  const { start, unknown, free } = elimination
+/** Cliques of the flatness form: the unknowns of each panel's corners, then those of each node. */
+function formPattern({ panelStart, corner, panelCount, nodeCount }: Plan, { start, unknown, free }: Elimination): FormPattern {
   const cliqueStart = new Int32Array(panelCount + nodeCount + 1)
   const slotOf = new Int32Array(free.length).fill(-1)
 
@@ -115,7 +137,18 @@ export function reducedForm(plan: Plan, bases: PanelBases, elimination: Eliminat
     for (let t = start[node]; t < start[node + 1]; t += 1) cliqueIndex[filled++] = unknown[t]
     cliqueStart[panelCount + node + 1] = filled
   }
-  const cliques = cliquePattern(free.length, cliqueStart, cliqueIndex.subarray(0, filled))
+  const index = cliqueIndex.subarray(0, filled)
+  return { cliques: cliquePattern(free.length, cliqueStart, index), start: cliqueStart, index }
+}
+
+/**
+ * T^T Q T by panels: with B = I - 11^T/k - e1 e1^T - e2 e2^T and T_p the panel's rows of T, the block is T_p^T B T_p. `known`:
+ * its pattern, null: to be found.
+ */
+export function reducedForm(plan: Plan, bases: PanelBases, elimination: Elimination, known: FormPattern | null = null): ReducedForm {
+  const { panelStart, panelCount } = plan
+  const { cliques, start: cliqueStart, index: cliqueIndex } = known ?? formPattern(plan, elimination)
+  const slotOf = new Int32Array(elimination.free.length).fill(-1)
 
   const flatness = new Float64Array(cliques.pattern.row.length)
   const { position } = cliques
@@ -141,7 +174,7 @@ export function reducedForm(plan: Plan, bases: PanelBases, elimination: Eliminat
       at += (unknowns * (unknowns + 1)) / 2
     }
   }
-  return { cliques, flatness }
+  return { cliques, start: cliqueStart, index: cliqueIndex, flatness }
 }
 
 /** Fills rows[a * k ..] with (I - 11^T/k - e1 e1^T - e2 e2^T) T_p's column a, for the panel's k corners. */
