@@ -25,7 +25,7 @@ const fewer = 0.25
 export function* unitByEnds(drawing: Drawing, read: Result<ReadPlan>, unit: Unit, options: ReadOptions): Steps<Result<ReadPlan>> {
   const loose = read.ok ? looseEnds(read.value) : Infinity
   const lines = drawing.segmentLayer.length
-  if (!(loose > mostLoose * lines) || lines === 0 || leaves(options, 'unit') || (read.ok && (read.value.questions.some(({ code }) => code === 'unit') || !isTooLong(read.value.plan)))) return read
+  if (!(loose > mostLoose * lines) || lines === 0 || leaves(options, 'unit') || !(usualSegment(drawing, unit) > longest_m) || (read.ok && read.value.questions.some(({ code }) => code === 'unit'))) return read
   for (const other of units) {
     if (metres[other] >= metres[unit]) continue
     const again = yield* planFromDrawing(drawing, { ...options, unit: other })
@@ -50,6 +50,14 @@ function usualEdge({ x, y, origin, edgeCount, unit }: Plan): number {
   return lengths.sort()[edgeCount >> 1] * conversion(unit, 'm')
 }
 
-const isTooLong = (plan: Plan): boolean => usualEdge(plan) > longest_m
+/** The middle length of a drawing's lines in metres, taken in `unit`; NaN without lines. */
+function usualSegment({ points, segments }: Drawing, unit: Unit): number {
+  const lengths = new Float64Array(segments.length >> 1)
+  for (let i = 0; i < lengths.length; i += 1) {
+    const a = 3 * segments[2 * i], b = 3 * segments[2 * i + 1]
+    lengths[i] = Math.hypot(points[a] - points[b], points[a + 1] - points[b + 1])
+  }
+  return lengths.sort()[lengths.length >> 1] * conversion(unit, 'm')
+}
 
 const isPlausible = (plan: Plan): boolean => usualEdge(plan) >= shortest_m && usualEdge(plan) <= longest_m

@@ -77,9 +77,9 @@ describe('refusals name the place, the fault and the cure', () => {
     expect(refusal('{"panewise":"brief","version":1,"a[.b[":2}')).toContain('a[.b[: this field is not known')
   })
   test('kinds', () => {
-    for (const kind of ['bounds', 'one-way', 'slope']) {
-      expect(withCondition({ kind, anything: 1 })).toContain(`conditions[0].kind: the condition kind "${kind}" is not built yet`)
-    }
+    expect(withCondition({ kind: 'bounds', at: { rim: 'outer' }, leest: 1 })).toMatch(/conditions\[0\]\.leest: this field is not known; perhaps "least" is meant/)
+    expect(withCondition({ kind: 'slope', at: { panels: ['P1'] }, least_deg: 95 })).toContain('conditions[0].least_deg: must be less than 90, not 95')
+    expect(withCondition({ kind: 'one-way', at: { joints: ['J1'] }, fold: 'up' })).toContain('conditions[0].fold: "up" is none of ridge, valley, no-ridge, no-valley')
     expect(withCondition({ kind: 'levle', at: { rim: 'outer' } })).toMatch(/conditions\[0\]\.kind: "levle" is none of level, fall, .*; perhaps "level" is meant/)
     expect(withCondition({ at: { rim: 'outer' } })).toContain('conditions[0]: the field "kind" is missing')
     expect(withCondition({ kind: 'level' })).toContain('conditions[0]: the field "at" is missing')
