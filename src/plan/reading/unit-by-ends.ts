@@ -25,6 +25,8 @@ const fewer = 0.25
 export function* unitByEnds(drawing: Drawing, read: Result<ReadPlan>, unit: Unit, options: ReadOptions): Steps<Result<ReadPlan>> {
   const loose = read.ok ? looseEnds(read.value) : Infinity
   const lines = drawing.segmentLayer.length
+  // What is too much to trace is so in every unit.
+  if (!read.ok && read.problem.code !== 'no-panels') return read
   if (!(loose > mostLoose * lines) || lines === 0 || leaves(options, 'unit') || !(usualSegment(drawing, unit) > longest_m) || (read.ok && read.value.questions.some(({ code }) => code === 'unit'))) return read
   for (const other of units) {
     if (metres[other] >= metres[unit]) continue
