@@ -1,6 +1,6 @@
 /**
- * Large drawings, and such as are no plan at all, in bounded work. Times are processor seconds, which other programs on
- * the machine disturb least; the bounds are about four times what an idle machine of 2024 takes.
+ * Large drawings, and such as are no plan at all, in bounded work: what grows as the square of the lines does not come to
+ * an end here. How long they take is measured by the benches, not by tests.
  */
 import { describe, expect, test } from 'vitest'
 import { random } from '../../../src/base/random.ts'
@@ -9,13 +9,6 @@ import type { Drawing } from '../../../src/plan/drawing.ts'
 import { planFromDrawing } from '../../../src/plan/reading/from-drawing.ts'
 import type { ReadPlan } from '../../../src/plan/read-plan.ts'
 import { drawing, plainly, problemOf, throughLines, type Point, type Segment } from '../drawings.ts'
-
-/** Runs it and returns what it gives with the processor seconds that it took. */
-function timed<T>(work: () => T): readonly [T, number] {
-  const before = process.cpuUsage()
-  const value = work()
-  return [value, process.cpuUsage(before).user / 1e6]
-}
 
 function plan(input: Drawing): ReadPlan {
   const result = finish(planFromDrawing(input, plainly))
@@ -62,25 +55,22 @@ describe('100,000 panels', () => {
 
   test('as faces that share their points', () => {
     plan(mesh(60, 60))
-    const [{ plan: made, repairs }, seconds] = timed(() => plan(input))
+    const { plan: made, repairs } = plan(input)
     expect([made.panelCount, made.nodeCount, made.jointCount]).toEqual([316 ** 2, 317 ** 2, 2 * 316 * 315])
     expect(repairs).toEqual([])
-    expect(seconds).toBeLessThan(3)
   })
 
   test('as 200,000 lines whose ends miss, with a stray line at the origin', () => {
     const segments = lines(input, 5e-4)
-    const [{ plan: made, repairs }, seconds] = timed(() => plan(drawing({ lines: [...segments, [[0, 0], [1, 1]]] })))
+    const { plan: made, repairs } = plan(drawing({ lines: [...segments, [[0, 0], [1, 1]]] }))
     expect(segments).toHaveLength(2 * 316 * 317)
     expect([made.panelCount, made.nodeCount]).toEqual([316 ** 2, 317 ** 2])
     expect(repairs.map(({ code }) => code)).toEqual(['joined', 'loose-end'])
-    expect(seconds).toBeLessThan(10)
   })
 
   test('as lines that cross', () => {
-    const [{ plan: made }, seconds] = timed(() => plan(drawing({ lines: throughLines(316, 316) })))
+    const { plan: made } = plan(drawing({ lines: throughLines(316, 316) }))
     expect([made.panelCount, made.nodeCount]).toEqual([316 ** 2, 317 ** 2])
-    expect(seconds).toBeLessThan(6)
   })
 
   test('as one outline a panel with a perimeter round them', () => {
@@ -88,17 +78,15 @@ describe('100,000 panels', () => {
       const [i, j] = [f % 100, Math.floor(f / 100)]
       return [[i, j], [i + 1, j], [i + 1, j + 1], [i, j + 1]] as Point[]
     })
-    const [made, seconds] = timed(() => plan(drawing({ outlines: [[[0, 0], [100, 0], [100, 100], [0, 100]], ...quads] })))
+    const made = plan(drawing({ outlines: [[[0, 0], [100, 0], [100, 100], [0, 100]], ...quads] }))
     expect(made.plan.panelCount).toBe(10_000)
-    expect(seconds).toBeLessThan(4)
   })
 })
 
 describe('what is no plan is refused with little work', () => {
   const refused = (segments: Segment[]): string => {
     const memory = process.memoryUsage().rss
-    const [code, seconds] = timed(() => problemOf({ lines: segments }))
-    expect(seconds).toBeLessThan(10)
+    const code = problemOf({ lines: segments })
     expect(process.memoryUsage().rss - memory).toBeLessThan(1e9)
     return code
   }
