@@ -48,21 +48,20 @@ export function* balance(request: Request, densities: Densities, version: string
   const density = yield* densityOf(plan, densities)
   if (!density.ok) return density
   const kind = typeof densities === 'string' ? densities : 'typed'
-  const found = yield* balanced(plan, density.value)
-  if (found === null) return fail('no-balance', 'these densities leave a node without a place', null, 'use densities of one sign, or others')
-  const { x, y } = coordinatesOf(plan, found.work)
-  const next = found.crossed.length === 0 ? movedPlan(plan, x, y) : null
-  if (next === null || !next.ok) {
+  const found = yield* balancedPlan(plan, density.value, wishes.value)
+  if (!found.ok) return found
+  const { next } = found.value
+  if (next === null) {
     const after = yield* answerTo({ ...question, target: null })
     if (!after.ok) return after
-    const crossed = Array.from(found.crossed, panelName)
+    const crossed = Array.from(found.value.crossed, panelName)
     const zero = new Float64Array(plan.nodeCount)
     return ok({ drawn: plan, after: after.value, dx_mm: zero, dy_mm: zero, facts: { outcome: 'crossed', densities: kind, crossed, largest_mm: 0, rms_mm: 0, count: 0 } })
   }
-  const target = heightsOf(next.value, density.value, wishes.value)
+  const { x, y } = next.plan
   const after = yield* answerTo({
     ...question, request: { ...question.request, options: { ...options, shape: null, target: null } },
-    read: { ...question.read, plan: next.value }, brief: { ...question.brief, shape: null }, target,
+    read: { ...question.read, plan: next.plan }, brief: { ...question.brief, shape: null }, target: next.heights,
   })
   if (!after.ok) return after
   const mm = conversion(plan.unit, 'mm')
@@ -81,7 +80,23 @@ export function* balance(request: Request, densities: Densities, version: string
   })
 }
 
-function* densityOf(plan: Plan, densities: Densities): Steps<Result<Float64Array>> {
+export interface BalancedPlan {
+  /** The plan, and the heights in its unit that its stresses raise; null: panels would turn inside out or cross. */
+  readonly next: { readonly plan: Plan; readonly heights: Float64Array } | null
+  readonly crossed: Int32Array
+}
+
+/** The plan that these densities (length edgeCount) balance, with the roof they raise. Fails where a node has no place. */
+export function* balancedPlan(plan: Plan, density: Float64Array, wishes: Wishes): Steps<Result<BalancedPlan>> {
+  const found = yield* balanced(plan, density)
+  if (found === null) return fail('no-balance', 'these densities leave a node without a place', null, 'use densities of one sign, or others')
+  const { x, y } = coordinatesOf(plan, found.work)
+  const next = found.crossed.length === 0 ? movedPlan(plan, x, y) : null
+  if (next === null || !next.ok) return ok({ next: null, crossed: found.crossed })
+  return ok({ next: { plan: next.value, heights: heightsOf(next.value, density, wishes) }, crossed: found.crossed })
+}
+
+export function* densityOf(plan: Plan, densities: Densities): Steps<Result<Float64Array>> {
   if (densities === 'uniform') return ok(uniformDensities(plan))
   if (densities === 'length') return ok(lengthDensities(plan))
   if (densities === 'fit') return ok(yield* fittedDensities(plan))

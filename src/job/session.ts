@@ -11,18 +11,30 @@ import type { ReadPlan } from '../plan/read-plan.ts'
 import { mirrorLines, type MirrorLine } from '../plan/symmetry.ts'
 import type { Cure } from '../roof/answer/cure.ts'
 import type { FreeRim } from '../roof/stress/free-rim.ts'
+import { oneWaySentences } from '../paper/report/one-way-sentences.ts'
+import type { OneWayFacts } from '../roof/answer/answer.ts'
+import { linearSolver } from '../roof/cures/folds/linear-program.ts'
 import { answerTo, type Checked } from './check.ts'
+import { withOneWay } from './one-way.ts'
 import type { PlanQuestion } from './question.ts'
 import { curesOf, type CuresFound } from './cures.ts'
 import { filesOf, type OutputFile } from './files.ts'
 import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
+import { liveBalance, type LiveBalance, type LiveDensities } from './live-balance.ts'
 import { releasesOf, type Release } from './releases.ts'
 import { targetOf } from './target.ts'
 import { version } from './run.ts'
 import { waysOf, type Way } from './ways.ts'
 import { whyFrozen, type FrozenReason } from './why-frozen.ts'
 
-export type { FrozenReason, MirrorLine, Release, Way }
+export type { FrozenReason, LiveBalance, LiveDensities, MirrorLine, Release, Way }
+
+/** The answer to "can all fold one way?" in the words of the report, and the roof where they can (in the plan's unit). */
+export interface OneWayTold {
+  readonly facts: OneWayFacts
+  readonly sentence: string
+  readonly heights: Float64Array | null
+}
 
 /** The cures as plain records. */
 export interface CureList extends Pick<CuresFound, 'answer' | 'asDrawn' | 'blocking'> {
@@ -109,6 +121,23 @@ export class Session {
     if (chosen === undefined || this.question === null) return fail('no-such-cure', 'this cure was not offered')
     const { read, brief, target = null, request } = chosen.attempt.next ?? this.question
     return ok({ read, brief, options: request.options, target, changesPlan: chosen.attempt.changesPlan })
+  }
+
+  /** Whether these joints can all fold one way, all joints where none are named; the solver comes with the first such question. */
+  async oneWay(asked: NonNullable<Options['oneWay']>, driven: DriveOptions = {}): Promise<Result<OneWayTold>> {
+    if (this.last === null) return fail('no-answer', 'there is no answer yet')
+    const made = await drive(withOneWay(this.last, asked, await linearSolver()), driven)
+    if (made === cancelled) return fail('cancelled', 'stopped before the end')
+    if (!made.ok) return made
+    const { summary, oneWayHeights = null } = made.value.answer
+    const { oneWay: facts } = summary
+    return facts === undefined ? fail('no-joints', 'there are no joints to ask about') : ok({ facts, sentence: oneWaySentences(summary).join(' '), heights: oneWayHeights })
+  }
+
+  /** The plan that forces of these densities balance, its rim as it stands; see `liveBalance`. */
+  async balanced(brief: Brief, densities: LiveDensities, driven: DriveOptions = {}): Promise<Result<LiveBalance>> {
+    const made = await drive(liveBalance(this.read.plan, brief, densities), driven)
+    return made === cancelled ? fail('cancelled', 'stopped before the end') : made
   }
 
   /** Lines that the plan is symmetric about, within what a drawing is exact to. */

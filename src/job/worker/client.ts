@@ -16,6 +16,9 @@ export interface Port {
 /** A cancel that is not heard within this time ends the worker: kernels yield every 50 ms, so it hangs. */
 const patience = 3000
 
+/** Long questions about the answer before: a new one makes them void. */
+const aboutTheLast: readonly Kind[] = ['releases', 'cures', 'oneWay']
+
 interface Waiting {
   readonly kind: Kind
   readonly settle: (tell: unknown) => void
@@ -38,7 +41,7 @@ export class WorkerClient {
 
   /** Asks; null when it was cancelled or overtaken. `alone`: cancels earlier questions of this kind; an answer also those about the answer before. */
   ask<K extends Kind>(kind: K, ask: Questions[K]['ask'], alone: boolean, onProgress: (progress: Progress) => void = () => {}): Promise<Questions[K]['tell'] | null> {
-    if (alone) for (const [id, question] of this.waiting) if (question.kind === kind || (kind === 'answer' && question.kind === 'releases')) this.cancel(id)
+    if (alone) for (const [id, question] of this.waiting) if (question.kind === kind || (kind === 'answer' && aboutTheLast.includes(question.kind))) this.cancel(id)
     const id = this.next
     this.next += 1
     return new Promise((resolve, reject) => {

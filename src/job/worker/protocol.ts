@@ -9,8 +9,9 @@ import type { NamedFile, Options } from '../../plan/project/options.ts'
 import type { ReadAnswer } from '../run.ts'
 import type { Request } from '../request.ts'
 import type { OutputFile } from '../files.ts'
-import type { FrozenReason, MirrorLine, Release, Way } from '../session.ts'
+import type { AppliedCure, CureList, FrozenReason, LiveBalance, LiveDensities, MirrorLine, OneWayTold, Release, Way } from '../session.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
+import type { Cure } from '../../roof/answer/cure.ts'
 
 /** What each question holds and what comes back for it. */
 export interface Questions {
@@ -26,6 +27,13 @@ export interface Questions {
   frozen: { ask: { plan: number; joint: number }; tell: Result<FrozenReason | null> }
   /** What letting go of one condition of the last answer would give. */
   releases: { ask: { plan: number }; tell: Result<readonly Release[]> }
+  /** What it takes where the last answer is not a plain yes, and one of these applied. */
+  cures: { ask: { plan: number }; tell: Result<CureList> }
+  applied: { ask: { plan: number; cure: Pick<Cure, 'code' | 'name'> }; tell: Result<AppliedCure> }
+  /** Whether joints can all fold one way. */
+  oneWay: { ask: { plan: number; joints: 'all' | readonly string[] }; tell: Result<OneWayTold> }
+  /** The plan that densities balance. */
+  balance: { ask: { plan: number; brief: Brief; densities: LiveDensities }; tell: Result<LiveBalance> }
   /** Lines that the plan is symmetric about. */
   mirrors: { ask: { plan: number }; tell: Result<readonly MirrorLine[]> }
   /** Heights of a second surface over the nodes of the plan. */

@@ -4,9 +4,11 @@ import { conversion } from '../../base/length.ts'
 import { figure } from '../../paper/drawing/figures.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import type { Release } from '../../job/session.ts'
+import { BindingNote } from './BindingNote.tsx'
 import { ConditionFields, askedWords } from './ConditionFields.tsx'
 import { useDesk, useDeskState } from './context.ts'
 import { LengthField, NumberField, typable } from './Fields.tsx'
+import { OneWayRow } from './OneWayRow.tsx'
 import { rimsOf } from '../store/rims.ts'
 
 export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
@@ -17,11 +19,13 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
   const { conditions } = doc.brief
   const { unit } = doc.read.plan
   const mm = conversion(unit, 'mm')
-  const { clashes } = answer.summary.held
+  const { clashes, binding = [], unmet = [] } = answer.summary.held
+  const isBound = (name: string): boolean => [...binding, ...unmet].some(({ condition }) => condition === name)
   return (
     <>
       <RimRows answer={answer} />
       <AllPanels answer={answer} />
+      <OneWayRow answer={answer} />
       {conditions.length === 0 ? <p className="entry note">Nothing is held. Select a node, a joint or a panel on the plan and hold it; Shift and a second node picks a run; Ctrl and click, or G, gathers several.</p> : (
         <table className="conditions">
           <thead><tr><th>Held</th><th>asked</th><th>how</th><th /></tr></thead>
@@ -38,6 +42,7 @@ export function ConditionsDesk({ answer }: { readonly answer: Answer }) {
                   <td><button className="word" title="exact or soft" onClick={() => { desk.soften(name, soft === null ? 1 : null); setOpen(soft === null ? name : '') }}>{soft === null ? 'exact' : `soft \u00d7${figure(soft, soft < 1 ? 2 : Number.isInteger(soft) ? 0 : 1)}`}</button></td>
                   <td><button className="word" aria-label={`Release ${name}`} onClick={() => desk.release([name])}>Release</button></td>
                 </tr>,
+                isBound(name) && <tr key={`${name} bound`} className="opened"><td colSpan={4}><BindingNote name={name} held={answer.summary.held} /></td></tr>,
                 isOpen && <tr key={`${name} fields`} className="opened"><td colSpan={4}><ConditionFields condition={condition} unit={unit} /></td></tr>,
               ]
             })}

@@ -1,12 +1,15 @@
 /** Drawing 1: the plan, with zoom, pan, picking, and the readings it can be filled by. */
-import { useCallback, useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
+import { useCallback, useDeferredValue, useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
 import { axisBubbles } from '../../paper/drawing/axis-drawing.ts'
+import { cureOverlay, movesOverlay, overlayItems, type Overlay } from '../../paper/drawing/cure-drawing.ts'
 import { planDetail, medianPanelWidth } from '../../paper/drawing/level-of-detail.ts'
 import { planArea, planDrawing } from '../../paper/drawing/plan-drawing.ts'
 import { fitted, panned, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import { readingNames, readingTitles } from '../../paper/drawing/reading.ts'
 import { runOfAxis, type Axis } from '../../plan/axes.ts'
+import { samePanels } from '../../plan/project/changed-plan.ts'
 import { useDesk, useDeskState } from './context.ts'
+import { drawnCure } from './CuresDesk.tsx'
 import { ListCanvas } from './ListCanvas.tsx'
 import { axesFor, looks, useLooks } from './looks.ts'
 import { neighbour, pick, runBetween } from '../store/picking.ts'
@@ -29,8 +32,16 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
   const withAxes = useLooks((state) => state.axes)
   const chained = useLooks((state) => state.chained)
   const drawnAxes = useDeskState((state) => state.doc?.read.axes)
-  const known = useMemo(() => (plan === null ? none : axesFor(drawnAxes === undefined ? { plan } : { plan, axes: drawnAxes })), [plan, drawnAxes])
-  const axes = withAxes ? known : none
+  // The plan is drawn before its axes are known.
+  const planOfAxes = useDeferredValue(plan)
+  const known = useMemo(() => (planOfAxes === null ? none : axesFor(drawnAxes === undefined ? { plan: planOfAxes } : { plan: planOfAxes, axes: drawnAxes })), [planOfAxes, drawnAxes])
+  const axes = withAxes && planOfAxes === plan ? known : none
+  const cure = useDeskState(({ cures }) => cures?.list.cures[cures.drawn])
+  const moved = useDeskState(({ cures }) => cures?.moved)
+  // Where the nodes were when the drawing was accepted; null: where they are.
+  const first = useDeskState((state) => state.steps[0]?.doc.read.plan)
+  const movedFrom = useMemo(() => (first !== undefined && plan !== null && first !== plan && samePanels(first, plan) ? first : null), [first, plan])
+  const withMoves = useLooks((state) => state.moves)
   const [window_, setWindow] = useState<PlanWindow | null>(null)
   const shown = useRef<PlanWindow | null>(null)
   const [size, setSize] = useState({ width: 0, height: 0 })
@@ -41,8 +52,11 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
     setSize((old) => (old.width === width && old.height === height ? old : { width, height }))
     if (answer === null || made === null) return null
     shown.current = window_ ?? fitted(answer.plan, planArea(width, height, true))
-    return planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true, axes, chain: chained && window_ === null })
-  }, [answer, made, window_, selection, axes, chained])
+    const list = planDrawing(answer, { width, height, ...made, window: shown.current, selection, furniture: true, axes, chain: chained && window_ === null })
+    const over: Overlay | null = cure !== undefined && moved !== undefined ? cureOverlay(drawnCure(answer, cure, moved), shown.current)
+      : movedFrom !== null && withMoves ? movesOverlay(movedFrom, answer.plan, shown.current) : null
+    return over === null ? list : { ...list, items: [...list.items, ...overlayItems(over, height)], description: `${list.description} ${over.note}` }
+  }, [answer, made, window_, selection, axes, chained, cure, moved, movedFrom, withMoves])
 
   const zoom = useCallback((factor: number, x: number, y: number) => {
     setWindow((old) => (old ?? shown.current) === null ? null : zoomed(old ?? (shown.current as PlanWindow), factor, x, y))
@@ -98,7 +112,9 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
     } else return
     event.preventDefault()
   }
-  const label = useMemo(() => made === null ? 'Plan, empty' : `Plan. ${answer?.summary.plan.panels ?? 0} panels. ${made.reading.note} Arrow keys go from panel to panel.`, [made, answer])
+  const described = useDeferredValue(made)
+  const panels = answer?.summary.plan.panels ?? 0
+  const label = useMemo(() => described === null ? 'Plan, empty' : `Plan. ${panels} panels. ${described.reading.note} Arrow keys go from panel to panel.`, [described, panels])
   return (
     <section className="pane plan" data-pane="plan" aria-labelledby="plan-title">
       <header>
@@ -114,6 +130,7 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
         <ListCanvas draw={draw} label={label} faded={!fresh} cursor={plan === null ? 'default' : 'crosshair'} onWheel={zoom} onDown={onDown} onMove={onMove} onUp={onUp} onKey={onKey} />
         {answer !== null && shown.current !== null && <PlanHand answer={answer} window={window_ ?? fitted(answer.plan, planArea(size.width, size.height, true))} picked={picked} size={size} />}
         {known.length > 0 && <button className="word axes-switch" aria-pressed={withAxes} title="Building axes: click one to take the run along it" onClick={() => looks.update((state) => ({ ...state, axes: !state.axes }))}>axes</button>}
+        {movedFrom !== null && <button className="word axes-switch moves-switch" aria-pressed={withMoves} title="Where nodes went from the drawing as accepted" onClick={() => looks.update((state) => ({ ...state, moves: !state.moves }))}>moves</button>}
         {answer === null && <p className="will">The roof from above: panels by slope or flatness, joints by how they fold.</p>}
       </div>
     </section>

@@ -9,6 +9,8 @@ import { useStore } from './useStore.ts'
 export interface Looks {
   /** Building axes stand beside the plan. */
   readonly axes: boolean
+  /** Moves of nodes since the drawing was accepted are drawn over the plan. */
+  readonly moves: boolean
   /** A chain line runs from the selected panel of the roof up into the plan. */
   readonly chained: boolean
   /** Which of its places the chosen repair is shown at, and how often it was asked to be zoomed to. */
@@ -16,7 +18,7 @@ export interface Looks {
   readonly zooms: number
 }
 
-export const looks = createStore<Looks>({ axes: true, chained: false, place: 0, zooms: 0 })
+export const looks = createStore<Looks>({ axes: true, moves: true, chained: false, place: 0, zooms: 0 })
 
 export const useLooks = <T>(pick: (state: Looks) => T): T => useStore(looks, pick)
 

@@ -4,8 +4,8 @@ import type { FrozenReason } from '../../job/session.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import type { Engine, NamedBytes } from './engine.ts'
 import { openProject } from './project-file.ts'
-import { initialState, type Beside, type Doc, type State } from './state.ts'
-import { gone, putDown } from './steps.ts'
+import { initialState, type Beside, type Doc, type State, type Step } from './state.ts'
+import { gone, held, putDown, taken } from './steps.ts'
 import { createStore, type Store } from './store.ts'
 
 /** After this long a question shows its bar. */
@@ -81,7 +81,7 @@ export class Asking {
     // The plan stays here: it does not come back with every answer.
     const answer = { ...result.value, plan: doc.read.plan }
     this.answers.set(doc, answer)
-    this.set({ answer, fresh: isNow, problem: null, answerMs, releases: null })
+    this.set({ answer, fresh: isNow, problem: null, answerMs, releases: null, cures: null, oneWay: null })
     if (this.state.inHand === null && this.state.desk === 'ways') void this.askWays()
     else this.set({ ways: this.state.inHand === null ? null : this.state.ways })
   }
@@ -116,6 +116,29 @@ export class Asking {
     return result !== null && result.ok ? result.value : null
   }
 
+  take(step: Step): void {
+    this.store.update((state) => ({ ...taken(state, step), before: null, balance: null }))
+    void this.ask()
+  }
+
+  /** An edit in hand takes the place of the plan being balanced, as it does of any other. */
+  hold(step: Step): void {
+    this.store.update((state) => ({ ...held(state, step), balance: null }))
+    void this.ask()
+  }
+
+  putDown(keep: boolean): void {
+    if (this.state.inHand === null) return
+    this.store.update((state) => ({ ...putDown(state, keep), balance: null }))
+    void this.ask()
+  }
+
+  /** Nothing that was picked or found on the plan before means anything on another. */
+  protected otherPlan(answer: Answer | null): void {
+    this.set({ selection: null, picked: [], gathered: null, mirror: null, mirrors: null, answer })
+    void this.askMirrors()
+  }
+
   files(): Promise<Result<readonly NamedBytes[]> | null> {
     const { doc } = this.state
     if (doc === null) return Promise.resolve(fail('nothing-open', 'no drawing is open', null, 'open one first'))
@@ -124,9 +147,12 @@ export class Asking {
 
   /** Stops the work in hand and goes back to the last step that was answered. */
   stop(): void {
+    const answering = this.asked !== null
     this.engine.stop()
     this.asked = null
     this.set({ busy: null, fresh: true })
+    // What is asked besides is stopped alone: the answer stands.
+    if (!answering) return
     if (this.state.inHand !== null) this.store.update((state) => putDown(state, false))
     else if (this.state.answer !== null && this.state.at > 0) this.store.update((state) => ({ ...gone(state, state.at - 1), fresh: true }))
   }

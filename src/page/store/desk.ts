@@ -10,19 +10,18 @@ import { projectOf } from '../../plan/project/project-record.ts'
 import { asymmetry, imageName, symmetricConditions, symmetricHeights } from '../../plan/project/mirrored.ts'
 import { turnedFace, withVoids } from '../../plan/project/turned-face.ts'
 import type { MirrorLine } from '../../job/session.ts'
-import type { Answer } from '../../roof/answer/answer.ts'
 import { briefInUnit, openBrief } from './brief-file.ts'
-import { Asking } from './asking.ts'
+import { Curing } from './curing.ts'
 import type { NamedBytes } from './engine.ts'
 import { answered, switchedLayer, turnedVoid } from './opening.ts'
 import { openProject } from './project-file.ts'
-import { openingOptions, type Doc, type OpeningOptions, type State, type Step } from './state.ts'
-import { gone, held, putDown, taken } from './steps.ts'
+import { openingOptions, type Doc, type OpeningOptions, type State } from './state.ts'
+import { gone } from './steps.ts'
 
 /** Slope below which panels of a new plan are marked: where water is said to stay on glass, common practice, no source. */
 const usualLeastSlope_deg = 3
 
-export class Desk extends Asking {
+export class Desk extends Curing {
   select(selection: Selection | null): void {
     this.set({ selection })
   }
@@ -206,7 +205,7 @@ export class Desk extends Asking {
   begin(opened: Doc, what: string, before: string, keptAs: string | null = null): void {
     // Edits of the page are in the plan's unit.
     const doc = { ...opened, brief: briefInUnit(opened.brief, opened.read.plan.unit) }
-    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '', saved: '', keptAs }))
+    this.store.update((state) => ({ ...state, opening: null, problem: null, doc, steps: [{ doc, what, before }], at: 0, inHand: null, before: null, answer: null, fresh: false, selection: null, picked: [], ways: null, compared: null, beside: null, releases: null, cures: null, oneWay: null, balance: null, mirrors: null, mirror: null, gathered: null, elsewhere: '', saved: '', keptAs }))
     void this.ask()
     void this.askMirrors()
   }
@@ -218,22 +217,6 @@ export class Desk extends Asking {
   }
 
   // Steps
-
-  take(step: Step): void {
-    this.store.update((state) => ({ ...taken(state, step), before: null }))
-    void this.ask()
-  }
-
-  hold(step: Step): void {
-    this.store.update((state) => held(state, step))
-    void this.ask()
-  }
-
-  putDown(keep: boolean): void {
-    if (this.state.inHand === null) return
-    this.store.update((state) => putDown(state, keep))
-    void this.ask()
-  }
 
   undo(): void {
     this.goTo(this.state.at - 1)
@@ -249,15 +232,9 @@ export class Desk extends Asking {
     const { doc } = this.state
     // What was answered once is shown at once; the worker is asked all the same, since files and ways come from its last answer.
     const known = doc === null ? undefined : this.answers.get(doc)
-    if (known !== undefined) this.set({ answer: known, ways: null, releases: null })
+    if (known !== undefined) this.set({ answer: known, ways: null, releases: null, cures: null, oneWay: null })
     if (doc?.read !== before) this.otherPlan(known ?? null)
     void this.ask()
-  }
-
-  /** Nothing that was picked or found on the plan before means anything on another. */
-  private otherPlan(answer: Answer | null): void {
-    this.set({ selection: null, picked: [], gathered: null, mirror: null, mirrors: null, answer })
-    void this.askMirrors()
   }
 
   /** Changes the brief as a named step. */

@@ -3,7 +3,8 @@ import type { Result } from '../../base/result.ts'
 import type { Progress } from '../../base/steps.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
-import type { FrozenReason, MirrorLine, Release, Way } from '../../job/session.ts'
+import type { Cure } from '../../roof/answer/cure.ts'
+import type { AppliedCure, CureList, FrozenReason, LiveBalance, LiveDensities, MirrorLine, OneWayTold, Release, Way } from '../../job/session.ts'
 import type { Doc, OpeningOptions } from './state.ts'
 
 export interface NamedBytes {
@@ -29,6 +30,14 @@ export interface Engine {
   whyFrozen(doc: Doc, joint: number): Promise<Result<FrozenReason | null> | null>
   /** What letting go of one condition of the last answer would give. */
   releases(doc: Doc): Promise<Result<readonly Release[]> | null>
+  /** What it takes where the last answer is not a plain yes. */
+  cures(doc: Doc, onProgress: (progress: Progress) => void): Promise<Result<CureList> | null>
+  /** One of the cures that were listed last, applied. */
+  applied(doc: Doc, cure: Pick<Cure, 'code' | 'name'>): Promise<Result<AppliedCure> | null>
+  /** Whether joints can all fold one way in a roof of the last answer. */
+  oneWay(doc: Doc, joints: 'all' | readonly string[], onProgress: (progress: Progress) => void): Promise<Result<OneWayTold> | null>
+  /** The plan that densities balance; the last question wins. */
+  balance(doc: Doc, densities: LiveDensities, onProgress: (progress: Progress) => void): Promise<Result<LiveBalance> | null>
   mirrors(doc: Doc): Promise<Result<readonly MirrorLine[]> | null>
   /** Heights of a second surface over the plan's nodes. */
   surface(doc: Doc, file: NamedBytes): Promise<Result<Float64Array> | null>

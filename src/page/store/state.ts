@@ -7,8 +7,9 @@ import type { ReadingName } from '../../paper/drawing/reading.ts'
 import type { SlopeUnit } from '../../paper/drawing/figures.ts'
 import type { ThemeName } from '../../paper/drawing/theme.ts'
 import type { Brief } from '../../plan/project/brief.ts'
+import type { Plan } from '../../plan/plan.ts'
 import type { Project } from '../../plan/project/project-record.ts'
-import type { MirrorLine, Release, Way } from '../../job/session.ts'
+import type { CureList, LiveBalance, LiveDensities, MirrorLine, OneWayTold, Release, Way } from '../../job/session.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 
@@ -52,7 +53,7 @@ export interface OpeningOptions {
 export const openingOptions: OpeningOptions = { unit: null, scale: null, snap_mm: null, layers: null, voids: [], colours: null, lineTypes: null, accept: [], leave: [] }
 
 export type Pane = 'roof' | 'plan' | 'chart' | 'list' | 'steps'
-export type Desk = 'ways' | 'conditions' | 'profile'
+export type Desk = 'ways' | 'conditions' | 'profile' | 'cures' | 'balance'
 export type Dialog = 'keys' | 'take' | 'words' | null
 
 export interface State {
@@ -100,6 +101,12 @@ export interface State {
   readonly ways: readonly Way[] | null
   /** What letting go of one condition gives, where conditions clash or leave no fold; null while it is not known. */
   readonly releases: readonly Release[] | null
+  /** What it takes for the answer shown, null while it is not known or asked. */
+  readonly cures: CuresShown | null
+  /** The last answer to "can all fold one way?", null: none about the roof shown. */
+  readonly oneWay: OneWayTold | null
+  /** Densities in hand, null: the plan is not being balanced. */
+  readonly balance: BalanceShown | null
   /** Lines that the plan is symmetric about, null while they are not known. */
   readonly mirrors: readonly MirrorLine[] | null
   /** The one that edits are mirrored about, null: none. */
@@ -108,6 +115,20 @@ export interface State {
   readonly gathered: Gathered | null
   /** What another tab has to do with this project; empty: nothing. */
   readonly elsewhere: string
+}
+
+export interface CuresShown {
+  readonly list: CureList
+  /** The plan with its nodes moved, where moving them is among the cures. */
+  readonly moved: Plan | null
+  /** The cure that is drawn on the plan, by its place in the list; -1: none. */
+  readonly drawn: number
+}
+
+export interface BalanceShown {
+  readonly densities: LiveDensities
+  /** The last plan that balanced, null: none yet. */
+  readonly last: LiveBalance | null
 }
 
 export interface Beside {
@@ -127,5 +148,5 @@ export const initialState: State = {
   doc: null, steps: [], at: -1, inHand: null, answer: null, fresh: true, answerMs: 0, before: null, busy: null, problem: null, opening: null,
   selection: null, picked: [], reading: 'slope', side: 'south', turned: null, views: 0, exaggeration: 1, slopeUnit: 'degrees', theme: 'day', pane: 'roof',
   desk: 'conditions', dialog: null, letterKeys: true, sort: { by: 'slope', down: false }, filter: 'all', webgl: 'none', saved: '', keptAs: null, ways: null, compared: null,
-  beside: null, releases: null, mirrors: null, mirror: null, gathered: null, elsewhere: '',
+  beside: null, releases: null, cures: null, oneWay: null, balance: null, mirrors: null, mirror: null, gathered: null, elsewhere: '',
 }

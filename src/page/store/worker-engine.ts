@@ -42,6 +42,22 @@ export class WorkerEngine implements Engine {
     return this.client.ask('releases', { plan: this.base(doc) }, true)
   }
 
+  cures(doc: Doc, onProgress: (progress: Progress) => void): ReturnType<Engine['cures']> {
+    return this.client.ask('cures', { plan: this.base(doc) }, true, onProgress)
+  }
+
+  applied(doc: Doc, { code, name }: Parameters<Engine['applied']>[1]): ReturnType<Engine['applied']> {
+    return this.client.ask('applied', { plan: this.base(doc), cure: { code, name } }, false)
+  }
+
+  oneWay(doc: Doc, joints: 'all' | readonly string[], onProgress: (progress: Progress) => void): ReturnType<Engine['oneWay']> {
+    return this.client.ask('oneWay', { plan: this.base(doc), joints }, true, onProgress)
+  }
+
+  balance(doc: Doc, densities: Parameters<Engine['balance']>[1], onProgress: (progress: Progress) => void): ReturnType<Engine['balance']> {
+    return this.client.ask('balance', { plan: this.base(doc), brief: doc.brief, densities }, true, onProgress)
+  }
+
   mirrors(doc: Doc): ReturnType<Engine['mirrors']> {
     return this.client.ask('mirrors', { plan: this.base(doc) }, true)
   }

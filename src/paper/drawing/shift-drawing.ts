@@ -51,7 +51,7 @@ export function shiftDrawing({ before, after }: Shifts): DisplayList {
  * 1, 2 or 5 times a power of ten, so that all but the longest moves are up to about half a panel wide: one node that goes far
  * must not make dots of all others, and may cross three panels. null: nothing moved.
  */
-function exaggeration(shifts: Float64Array, panel: number): number | null {
+export function exaggeration(shifts: Float64Array, panel: number): number | null {
   const moves = shifts.filter((shift) => shift > 0).sort()
   if (moves.length === 0) return null
   const wanted = Math.min((0.6 * panel) / moves[Math.floor(nearlyAll * (moves.length - 1))], (3 * panel) / moves[moves.length - 1])
@@ -66,7 +66,7 @@ const nearlyAll = 0.95
 /** Moves below this, drawn, are dots. */
 const shortest = 0.7
 
-function exaggerated(from: Float64Array, to: Float64Array, factor: number): Item[] {
+export function exaggerated(from: Float64Array, to: Float64Array, factor: number): Item[] {
   const lines = new Batch()
   const ends: number[] = []
   for (let i = 0; i < from.length; i += 2) {
