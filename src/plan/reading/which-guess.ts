@@ -15,8 +15,9 @@ import type { Drawing } from '../drawing.ts'
 import { lineFrame } from '../lines/frame.ts'
 import { counted } from '../lines/words.ts'
 import type { DrawingUnit } from '../unit-of-drawing.ts'
-import { part, type Kept } from './which-part.ts'
-import { linesMeasured, score, type Box, type Group, type Measure } from './which-measure.ts'
+import { compact, isEmpty, part, type Kept } from './which-part.ts'
+import { bitOf, touchedClasses } from './which-touch.ts'
+import { lineEnds, linesMeasured, nothingBound, score, type Box, type Group, type Measure } from './which-measure.ts'
 
 export interface Guess {
   readonly kept: Kept
@@ -62,21 +63,38 @@ function* layersOf(drawing: Drawing, how: Measuring): Steps<Guess | null | 'no p
   const used = classes.list.map((_, c) => c)
   if (used.length < 2) return null
   const kept = (takes: (c: number) => boolean): Kept => {
-    const by = (list: Int32Array): Uint8Array => Uint8Array.from(list, (c) => (takes(c) ? 1 : 0))
+    const wanted = Uint8Array.from(classes.list, (_, c) => (takes(c) ? 1 : 0))
+    const by = (list: Int32Array): Uint8Array => {
+      const own = new Uint8Array(list.length)
+      for (let i = 0; i < list.length; i += 1) own[i] = wanted[list[i]]
+      return own
+    }
     return { segments: by(classes.segments), outlines: by(classes.outlines), holes: by(classes.holes) }
   }
+  const strokes = yield* strokesOf(drawing, classes, how)
   const measured = function* (takes: (c: number) => boolean): Steps<Measure | null> {
-    return yield* measure(part(drawing, kept(takes)), how)
+    yield { stage: 'Looking for the panels', done: 0 }
+    const own = kept(takes)
+    const lone = strokes === null ? 0 : strokes.leaveOut(own.segments, takes)
+    if (lone > 0 && isEmpty(own)) return nothingBound(lone)
+    const chosen = part(drawing, own)
+    yield { stage: 'Looking for the panels', done: 0 }
+    const small = compact(chosen)
+    yield { stage: 'Looking for the panels', done: 0 }
+    const found = yield* measure(small, how, strokes === null ? Infinity : strokes.reach)
+    if (found === 'snaps farther') return yield* measure(compact(part(drawing, kept(takes))), how, Infinity) as Steps<Measure | null>
+    return found === null ? null : { ...found, length: found.length + lone, loose: found.loose + lone }
   }
   const alone = new Map<number, Measure>()
   for (const c of used) {
     const own = yield* measured((k) => k === c)
     if (own !== null) alone.set(c, own)
   }
-  const whole = alone.size === used.length ? yield* measured(() => true) : null
   const sumOf = (of: (own: Measure) => number): number => [...alone.values()].reduce((total, own) => total + of(own), 0)
   // Loose ends of a small layer are few among all: they count against that layer.
   const shortest = Math.min(...[...alone.values()].map(({ length }) => length))
+  const isLone = strokes !== null && strokes.loneLength(() => true) > cleanShare * shortest
+  const whole = alone.size === used.length && !isLone ? yield* measured(() => true) : null
   if (whole !== null && isClean(whole) && whole.loose <= cleanShare * shortest && whole.groups.length === 1 && whole.bends <= sumOf(({ bends }) => bends) && whole.panels >= sumOf(({ panels }) => panels) && whole.area >= (1 - cleanShare) * sumOf(({ area }) => area)) return null
 
   const scores = new Map([...alone].map(([c, own]) => [c, score(own)]))
@@ -86,14 +104,14 @@ function* layersOf(drawing: Drawing, how: Measuring): Steps<Guess | null | 'no p
   const best = first === undefined ? undefined : alone.get(first)
   if (first === undefined || best === undefined) return 'no panels'
   let choice: Choice | null = best.groups.length === 0 ? null : { taken: new Set([first]), own: best }
-  if (choice !== null) choice = yield* completed(choice, order, alone, measured)
+  if (choice !== null) choice = yield* completed(choice, order, alone, measured, strokes)
   // Joints may share out over layers of which none bounds a face.
   const open = used.filter((c) => (alone.get(c)?.groups.length ?? 0) === 0)
   const together = yield* lessClasses(open, measured)
   let rival = 0
   if (together !== null && (choice === null || score(together.own) > score(choice.own))) {
     rival = choice === null ? 0 : score(choice.own)
-    choice = yield* completed(together, order, alone, measured)
+    choice = yield* completed(together, order, alone, measured, strokes)
   }
   if (choice === null) return 'no panels'
   const { taken, own } = choice
@@ -120,16 +138,69 @@ interface Choice {
 type Measures = (takes: (c: number) => boolean) => Steps<Measure | null>
 
 /** A choice with all that completes it. */
-function* completed({ taken, own }: Choice, order: readonly number[], alone: ReadonlyMap<number, Measure>, measured: Measures): Steps<Choice> {
+function* completed({ taken, own }: Choice, order: readonly number[], alone: ReadonlyMap<number, Measure>, measured: Measures, strokes: Strokes | null): Steps<Choice> {
   let at: Choice = { taken, own }
   for (const c of order) {
     const other = alone.get(c)
     if (at.taken.has(c) || other === undefined || (other.panels > 0 && !areAlike(at.own.size, other.size))) continue
     const before = at.taken
+    // Strokes that would stay alone are loose whatever else comes of it (see `completes`).
+    if (strokes !== null && strokes.loneLength((k) => k === c, (k) => before.has(k) || k === c) > at.own.loose + cleanShare * other.length) continue
     const both = yield* measured((k) => before.has(k) || k === c)
     if (both !== null && completes(at.own, other, both)) at = { taken: new Set([...before, c]), own: both }
   }
   return at
+}
+
+/** Open lines that touch none of the layers at hand: loose, whatever they are measured with. */
+interface Strokes {
+  /** Within what they were looked for, in the plan's unit. */
+  readonly reach: number
+  /** Takes them out of what is kept, and returns their length. */
+  leaveOut(segments: Uint8Array, takes: (c: number) => boolean): number
+  /** Length of those of some classes that touch no line of the classes beside them (absent: of the same). */
+  loneLength(of: (c: number) => boolean, beside?: (c: number) => boolean): number
+}
+
+/** null where the lines have no place (see `lineFrame`). */
+function* strokesOf(drawing: Drawing, classes: Classes, { unit, snap_mm, tolerance_mm }: Measuring): Steps<Strokes | null> {
+  const frame = lineFrame(drawing, unit, snap_mm, tolerance_mm)
+  if (!frame.ok) return null
+  const { x, y, snap, rounding } = frame.value
+  yield { stage: 'Sorting the lines', done: 0 }
+  const ends = lineEnds(drawing)
+  const { segments, outlines, holes } = drawing
+  const loops = (own: Int32Array, start: Int32Array): number[] => Array.from(own).flatMap((c, l) => new Array<number>(start[l + 1] - start[l]).fill(c))
+  const rings = [...loops(classes.outlines, outlines.start), ...loops(classes.holes, holes.start)]
+  const classOf = new Int32Array(ends.a.length)
+  classOf.set(rings)
+  classOf.set(classes.segments, rings.length)
+  yield { stage: 'Sorting the lines', done: 0 }
+  const reach = 2 * snap + 8 * rounding
+  const touched = (yield* touchedClasses(x, y, ends.a, ends.b, classOf, reach)).subarray(ends.a.length - segments.length / 2)
+  const length = new Float64Array(touched.length)
+  for (let i = 0; i < length.length; i += 1) length[i] = Math.hypot(x[segments[2 * i + 1]] - x[segments[2 * i]], y[segments[2 * i + 1]] - y[segments[2 * i]])
+  const bitsOf = (takes: (c: number) => boolean): number => classes.list.reduce((bits, _, c) => (takes(c) ? bits | bitOf(c) : bits), 0)
+  return {
+    reach: snap,
+    leaveOut: (kept, takes) => {
+      const bits = bitsOf(takes)
+      let sum = 0
+      for (let i = 0; i < touched.length; i += 1) {
+        if (kept[i] === 0 || (touched[i] & bits) !== 0) continue
+        kept[i] = 0
+        sum += length[i]
+      }
+      return sum
+    },
+    loneLength: (of, beside = of) => {
+      const bits = bitsOf(beside)
+      const own = classes.list.map((_, c) => of(c))
+      let sum = 0
+      for (let i = 0; i < touched.length; i += 1) if (own[classes.segments[i]] && (touched[i] & bits) === 0) sum += length[i]
+      return sum
+    },
+  }
 }
 
 /** Lines of one layer; of one look on it, where a layer has a few. */
@@ -158,7 +229,11 @@ function classesOf({ layers, looks = [], segmentLayer, segmentLook, outlines, ho
     return known === undefined ? '' : `${known.colour}\n${known.lineType}`
   }
   const met = new Map<number, Map<string, number>>()
+  const noted = new Set<number>()
   const note = (layer: number, look: number | undefined): void => {
+    const key = layer * (looks.length + 1) + (look ?? 0)
+    if (noted.has(key)) return
+    noted.add(key)
     const own = met.get(layer) ?? new Map<string, number>()
     met.set(layer, own)
     if (!own.has(lookOf(look))) own.set(lookOf(look), -1)
@@ -179,7 +254,13 @@ function classesOf({ layers, looks = [], segmentLayer, segmentLook, outlines, ho
       own.set(look, list.push({ name: isSplit ? `${layers[layer]} ${said}` : layers[layer], layer: layers[layer], colour: isSplit && !sameColour ? colour : null, lineType: isSplit && sameColour ? lineType : null }) - 1)
     }
   }
-  const classOf = (layer: number, look: number | undefined): number => met.get(layer)?.get(lookOf(look)) ?? 0
+  const known = new Map<number, number>()
+  const classOf = (layer: number, look: number | undefined): number => {
+    const key = layer * (looks.length + 1) + (look ?? 0)
+    const own = known.get(key) ?? met.get(layer)?.get(lookOf(look)) ?? 0
+    known.set(key, own)
+    return own
+  }
   return {
     list, segments: Int32Array.from(segmentLayer, (layer, i) => classOf(layer, segmentLook?.[i])),
     outlines: Int32Array.from(outlines.layer, (layer, i) => classOf(layer, outlines.look?.[i])), holes: Int32Array.from(holes.layer, (layer, i) => classOf(layer, holes.look?.[i])),
@@ -198,7 +279,7 @@ function optionsFor(list: readonly LineClass[]): string {
 /** The figures to read among those of one choice of layers; null where all are. */
 export function* figuresGuess(drawing: Drawing, how: Measuring): Steps<Guess | null> {
   let found: Measure | null = null
-  for (const metres of likelyMetres(how)) if (found === null || found.panels === 0) found = yield* measure(drawing, { ...how, metres })
+  for (const metres of likelyMetres(how)) if (found === null || found.panels === 0) found = yield* measure(drawing, { ...how, metres }, Infinity) as Steps<Measure | null>
   if (found === null || found.panels === 0) return null
   const { groups, groupOfSegment, groupOfOutline, groupOfHole } = found
   const [first] = groups
@@ -221,9 +302,11 @@ export function* figuresGuess(drawing: Drawing, how: Measuring): Steps<Guess | n
   }
 }
 
-function* measure(drawing: Drawing, { unit, snap_mm, tolerance_mm, metres }: Measuring): Steps<Measure | null> {
+/** "snaps farther": these lines alone are joined within more than `most`. */
+function* measure(drawing: Drawing, { unit, snap_mm, tolerance_mm, metres }: Measuring, most: number): Steps<Measure | null | 'snaps farther'> {
   if (drawing.segments.length === 0 && drawing.outlines.layer.length === 0) return null
   const frame = lineFrame(drawing, unit, snap_mm, tolerance_mm)
+  if (frame.ok && frame.value.snap > most) return 'snaps farther'
   return frame.ok ? yield* linesMeasured(drawing, frame.value, metres) : null
 }
 

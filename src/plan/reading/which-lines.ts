@@ -24,6 +24,9 @@ import { statedLines } from './which-stated.ts'
 /** Formats whose faces are what they say: a model has no title block. */
 const models: readonly string[] = ['OBJ', 'GeoJSON']
 
+/** Problems that no choice of figures mends: what is too much to cut is too much to tell apart. */
+const tooMuch: readonly string[] = ['too-many-crossings', 'too-many-lines']
+
 /** The plan of the lines that are its panels; see `planFromDrawing` for all else. */
 export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result<ReadPlan>> {
   const unit = unitOfDrawing(given, options)
@@ -32,10 +35,13 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
   const how: Measuring = { unit: unit.value, snap_mm: options.snap_mm, tolerance_mm: options.planTolerance_mm ?? defaultTolerance_mm, metres: metres[unit.value.unit] }
   const said: Said = { leftOut: [...given.leftOut], repairs: [], questions: [], notices: [] }
 
+  yield { stage: 'Looking for axes', done: 0 }
   const axes = drawnAxes(given)
+  yield { stage: 'Looking for levels', done: 0 }
   let drawing = axes === null ? given : withoutAxes(given, axes, said)
   const levels = drawnLevels(drawing, factor, unit.value.unit)
   drawing = part(drawing, levels.kept)
+  yield { stage: 'Choosing the lines', done: 0 }
   const found: Found = { axes, levels, options, factor }
   const stated = statedLines(drawing, options, factor)
   if (!stated.ok) return stated
@@ -54,7 +60,7 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
     drawing = part(before, layers.kept)
     read = yield* planFromDrawing(asRead(drawing, given), options)
   }
-  if (isFree && !leaves(options, 'which-lines') && !(isAsked && read.ok) && (!read.ok || read.value.plan.partCount > 1)) {
+  if (isFree && !leaves(options, 'which-lines') && !(isAsked && read.ok) && (read.ok ? read.value.plan.partCount > 1 : !tooMuch.includes(read.problem.code))) {
     const figures = yield* figuresGuess(drawing, how)
     if (figures !== null && !isEmpty(figures.kept)) {
       const isTaken = !figures.isOpen || takes(options, 'which-lines')

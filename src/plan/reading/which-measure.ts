@@ -80,10 +80,12 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
   const lines = ends.a.length
   const points = yield* joinedPoints(frame.x, frame.y, ends.a, ends.b, frame)
   const { nodeOf, pointOf } = points
+  yield { stage: 'Joining points', done: 1 }
   const a = ends.a.map((p) => nodeOf[p]), b = ends.b.map((p) => nodeOf[p])
   const arranged = yield* arrangement(Float64Array.from(pointOf, (p) => frame.x[p]), Float64Array.from(pointOf, (p) => frame.y[p]), a, b, frame)
   if (!arranged.ok) return null
   const { chainStart, chain } = arranged.value
+  yield { stage: 'Looking for the panels', done: 0.3 }
   const graph = new Graph(arranged.value)
   yield { stage: 'Looking for the panels', done: 0.4 }
   const component = disjointSets(graph.x.length)
@@ -132,6 +134,7 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
       own.box[2 + k] = Math.max(own.box[2 + k], faces.box[4 * f + 2 + k])
     }
   }
+  yield { stage: 'Looking for the panels', done: 0.92 }
   const around = boxesOfGroups(graph, component.root, groupAt)
   const isSheet = (group: number): boolean => {
     const [outer, own] = [around.get(group), counted.get(group)?.box]
@@ -139,6 +142,7 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
     return [...counted].some(([other, { box }]) => other !== group && holds(outer, around.get(other) ?? box) && !holds(own, box))
   }
   const sheets = new Set([...counted.keys()].filter(isSheet))
+  yield { stage: 'Looking for the panels', done: 0.94 }
   const order = [...counted.keys()].sort((p, q) => Number(sheets.has(p)) - Number(sheets.has(q)) || (counted.get(q)?.panels ?? 0) - (counted.get(p)?.panels ?? 0) || p - q)
   const rank = new Map(order.map((group, k) => [group, k]))
   const lengths = new Float64Array(order.length), bounds = new Float64Array(order.length)
@@ -159,7 +163,9 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
   })
 
   const aside = figuresAside(graph, component.root, groupAt, order.map((group) => counted.get(group)?.box ?? []), nearShare * (groups[0]?.size ?? 0))
+  yield { stage: 'Looking for the panels', done: 0.96 }
   const single = singlePanels(faces, figureOf, groupAt, groups[0]?.size ?? 0)
+  yield { stage: 'Looking for the panels', done: 0.98 }
   const groupOfLine = new Int32Array(lines).fill(-1)
   for (let i = 0; i < lines; i += 1) {
     if (chainStart[i + 1] === chainStart[i]) continue
@@ -178,8 +184,14 @@ export function* linesMeasured(drawing: Drawing, frame: LineFrame, metres: numbe
   }
 }
 
+/** Lines that touch nothing, of this length in all. */
+export function nothingBound(length: number): Measure {
+  const none = new Int32Array(0)
+  return { panels: 0, length, loose: length, bends: 0, area: 0, faces: 0, size: 0, groups: [], groupOfSegment: none, groupOfOutline: none, groupOfHole: none }
+}
+
 /** Sides of outlines, sides of interior rings, open segments, as points. */
-function lineEnds({ outlines, holes, segments }: Drawing): { a: Int32Array; b: Int32Array } {
+export function lineEnds({ outlines, holes, segments }: Drawing): { a: Int32Array; b: Int32Array } {
   const a = new Integers(), b = new Integers()
   for (const { start, point } of [outlines, holes]) {
     for (let i = 0; i + 1 < start.length; i += 1) {

@@ -44,6 +44,26 @@ function loops({ start, point, layer, line, look }: Loops, kept: Uint8Array): Lo
   return { start: newStart, point: points, layer: of(layer), line: of(line), ...(look === undefined ? {} : { look: of(look) }) }
 }
 
+/** The drawing with the points that its lines use and no others. */
+export function compact(drawing: Drawing): Drawing {
+  const { points, hasHeight, segments, outlines, holes } = drawing
+  const numberOf = new Int32Array(points.length / 3).fill(-1)
+  let count = 0
+  for (const list of [outlines.point, holes.point, segments]) for (const p of list) if (numberOf[p] < 0) numberOf[p] = count++
+  if (2 * count > numberOf.length) return drawing
+  const own = new Float64Array(3 * count), heights = new Uint8Array(count)
+  for (let p = 0; p < numberOf.length; p += 1) {
+    if (numberOf[p] < 0) continue
+    for (let k = 0; k < 3; k += 1) own[3 * numberOf[p] + k] = points[3 * p + k]
+    heights[numberOf[p]] = hasHeight[p]
+  }
+  const renumbered = (list: Int32Array): Int32Array => list.map((p) => numberOf[p])
+  return {
+    ...drawing, points: own, hasHeight: heights, segments: renumbered(segments), marks: new Int32Array(0), markLayer: new Int32Array(0), circles: [],
+    outlines: { ...outlines, point: renumbered(outlines.point) }, holes: { ...holes, point: renumbered(holes.point) },
+  }
+}
+
 /** Entities that are not kept, by kind and layer, `why` after their kind. An entity is what begins on one line of the file. */
 export function leftOutOf(drawing: Drawing, kept: Kept, why: string): LeftOut[] {
   const { segmentLayer, segmentLine, segmentLook, outlines, holes, layers, looks } = drawing
