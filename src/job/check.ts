@@ -50,7 +50,7 @@ export function* answerTo({ request, version, sha256, read, brief, target: byHan
   const free = known ?? (yield* freeRim(plan, space ?? null))
   const question = questionOf(plan, wishes.value, rows.value, target.value.heights)
   const result = yield* raised(plan, free, nodeAreas(plan), question, space ?? null)
-  const within = yield* withinPlan(plan, result, wishes.value, rows.value, question, request.options)
+  const within = yield* withinPlan(plan, result, wishes.value, rows.value, question, request.options, brief)
   if (!within.ok) return within
   const answer = yield* answerOf({
     request, version, sha256, read, wishes: wishes.value, rows: rows.value, free, result, within: within.value, notices: target.value.notices,

@@ -9,15 +9,11 @@
  * system, of the process and all it starts), which other work on the machine disturbs less than wall seconds.
  */
 import { spawnSync } from 'node:child_process'
-import { appendFileSync, existsSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs'
+import { appendFileSync, existsSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
 import { cpus, tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { finish } from '../../src/base/steps.ts'
-import { answerTo, type Checked } from '../../src/job/check.ts'
-import { reading } from '../../src/job/reading.ts'
-import type { Brief } from '../../src/plan/project/brief.ts'
-import { noOptions, type Options } from '../../src/plan/project/options.ts'
-import { benchPlan, kinds, type Kind } from './solver-plans.ts'
+import { answers, planText, share } from './answers.ts'
+import { kinds, type Kind } from './solver-plans.ts'
 
 const head = 'date,commit,processor,plan,panels,wall_s,processor_s,peak_megabytes,yardstick_wall_s,yardstick_processor_s,to_yardstick,first_answer_s,further_answer_s,further_share,other_target_share,other_level_share'
 
@@ -42,45 +38,6 @@ function median(values: readonly number[]): number {
   return sorted.length === 0 ? NaN : sorted[sorted.length >> 1]!
 }
 
-/** Writes the plan as faces, all digits. */
-function writePlan(path: string, kind: Kind, panels: number): number {
-  const { coordinates, start, index } = benchPlan(kind, panels)
-  const lines: string[] = []
-  for (let i = 0; i < coordinates.length; i += 2) lines.push(`v ${coordinates[i]} ${coordinates[i + 1]} 0`)
-  for (let p = 0; p + 1 < start.length; p += 1) lines.push(`f ${Array.from(index.subarray(start[p], start[p + 1]), (node) => node + 1).join(' ')}`)
-  writeFileSync(path, `${lines.join('\n')}\n`)
-  return start.length - 1
-}
-
-/**
- * Processor seconds of the first answer (order to flatness), and of further ones on the same factor: with another rise, with
- * another target, and with one level moved (against the first answer under that level). Medians of three.
- */
-function answers(path: string): { first: number; further: number; target: number; level: number } {
-  const bytes = new Uint8Array(readFileSync(path))
-  const request = (options: Options) => ({ command: 'check', source: { name: 'plan.obj', bytes }, options, brief: null, levels: null, given: {} }) as const
-  const made = finish(reading(request(noOptions)))
-  if (!made.ok) throw new Error(made.problem.message)
-  const { read, brief } = made.value
-  let known: Checked | null = null
-  const { plan } = read
-  const target = (k: number): Float64Array => Float64Array.from(plan.x, (_, i) => (plan.frame.span / 8) * (1 - 4 * ((plan.work[2 * i]! - k / 10) ** 2 + plan.work[2 * i + 1]! ** 2)))
-  const level = (height: number): Brief => ({ ...brief, conditions: [{ name: 'corner', kind: 'level', at: { nodes: ['N1'] }, level: height, soft: null }] })
-  const seconds = (options: Options, asked: Brief = brief, heights: Float64Array | null = null): number => {
-    const from = process.cpuUsage()
-    const answer = finish(answerTo({ request: request(options), version: '', sha256: '', read, brief: asked, target: heights, free: known?.free ?? null, space: known?.under.space ?? null }))
-    if (!answer.ok) throw new Error(answer.problem.message)
-    known = answer.value
-    const { user, system } = process.cpuUsage(from)
-    return (user + system) / 1e6
-  }
-  const first = seconds(noOptions)
-  const further = median([2, 3, 4].map((rise) => seconds({ ...noOptions, rise })))
-  const other = median([1, 2, 3].map((k) => seconds(noOptions, brief, target(k))))
-  const held = seconds(noOptions, level(0.1))
-  return { first, further, target: other / first, level: median([2, 3, 4].map((k) => seconds(noOptions, level(k / 10)))) / held }
-}
-
 function main(): void {
   const words = process.argv.slice(2)
   const option = (name: string): string | null => (words.includes(name) ? (words[words.indexOf(name) + 1] ?? null) : null)
@@ -99,7 +56,9 @@ function main(): void {
   for (const panels of sizes.length > 0 ? sizes : [2000, 10000, 100000]) {
     for (const kind of kinds) {
       const plan = join(room, `${kind}.obj`)
-      const count = writePlan(plan, kind, panels)
+      const text = planText(kind, panels)
+      writeFileSync(plan, text)
+      const count = text.split('\nf ').length - 1
       const ours: Used[] = [], theirs: Used[] = []
       for (let run = 0; run < runs; run += 1) {
         const a = timed([process.execPath, program, 'raise', plan, '--out', join(room, 'ours'), '--overwrite', '--quiet'])
@@ -107,13 +66,14 @@ function main(): void {
         const b = beside === null ? null : timed(['python3', beside, plan, '--no-modes', '--out', join(room, 'theirs')])
         if (b !== null) theirs.push(b)
       }
-      const { first, further, target, level } = answers(plan)
+      const { first, rise, target, held, level } = answers(new TextEncoder().encode(text))
+      const further = share(rise, first)
       const at = (list: readonly Used[], key: keyof Used): number => median(list.map((used) => used[key]))
       const cell = (value: number, digits: number): string => (Number.isNaN(value) ? 'missing' : value.toFixed(digits))
       const row = [
         date, commit, processor, kind, count, cell(at(ours, 'wall'), 2), cell(at(ours, 'processor'), 2), cell(at(ours, 'megabytes'), 0),
         cell(at(theirs, 'wall'), 2), cell(at(theirs, 'processor'), 2), cell(at(ours, 'processor') / at(theirs, 'processor'), 2),
-        first.toFixed(3), further.toFixed(3), (further / first).toFixed(3), target.toFixed(3), level.toFixed(3),
+        first.seconds.toFixed(3), (further * first.seconds).toFixed(3), further.toFixed(3), share(target, first).toFixed(3), share(level, held).toFixed(3),
       ].join(',')
       growth.set(kind, [...(growth.get(kind) ?? []), [count, at(ours, 'processor')]])
       process.stdout.write(`${row}\n`)

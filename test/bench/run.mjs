@@ -19,6 +19,6 @@ await build({
   build: { ssr: join(here, `${name}.ts`), outDir, emptyOutDir: false, target: 'node20', rolldownOptions: { output: { entryFileNames: 'bench.mjs' } } },
   ssr: { noExternal: true, external: ['playwright-core'] },
 })
-const { status } = spawnSync(process.execPath, [join(outDir, 'bench.mjs'), ...words], { stdio: 'inherit', env: { ...process.env, BENCH_FOLDER: here } })
+const { status } = spawnSync(process.execPath, [join(outDir, 'bench.mjs'), ...words], { stdio: 'inherit', env: { ...process.env, BENCH_FOLDER: here, BENCH_NAME: name } })
 rmSync(outDir, { recursive: true })
 process.exit(status ?? 1)

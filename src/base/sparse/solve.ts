@@ -39,13 +39,23 @@ export function* solving(factor: Factor, right: Float64Array, columns = 1): Step
 }
 
 function* one(factor: Factor, right: Float64Array, result: Float64Array): Steps<void> {
-  const { place, widest } = factor.analysis
-  const x = new Float64Array(right.length)
-  const y = new Float64Array(4 * widest)
+  const { place, widest, pattern: { size } } = factor.analysis
+  // The room of the last solve serves again; while it is in use another solve makes its own.
+  const { x, y } = rooms.get(factor) ?? { x: new Float64Array(size), y: new Float64Array(4 * widest) }
+  rooms.delete(factor)
   for (let i = 0; i < x.length; i++) x[place[i] as number] = right[i] as number
   yield* sweeps(factor, 1, (t) => forward(factor, x, y, t), (t) => backward(factor, x, y, t))
   for (let i = 0; i < x.length; i++) result[i] = x[place[i] as number] as number
+  rooms.set(factor, { x, y })
 }
+
+interface Room {
+  /** By place. */
+  readonly x: Float64Array
+  readonly y: Float64Array
+}
+
+const rooms = new WeakMap<Factor, Room>()
 
 /** groups[g]: four columns each, four numbers a place; what an unused column holds does not matter. */
 function* several(

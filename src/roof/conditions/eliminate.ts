@@ -219,12 +219,10 @@ function substituted(upper: Upper, held: HeldHeights, nodeCount: number): Elimin
   const pivotRow = new Int32Array(nodeCount).fill(-1)
   for (let k = 0; k < rank; k += 1) pivotRow[upper.pivot[k]] = k
   const unknownOf = new Int32Array(nodeCount).fill(-1)
-  const free: number[] = []
-  for (let n = 0; n < nodeCount; n += 1) {
-    if (held.row[n] >= 0 || pivotRow[n] >= 0) continue
-    unknownOf[n] = free.length
-    free.push(n)
-  }
+  let open = 0
+  for (let n = 0; n < nodeCount; n += 1) if (held.row[n] < 0 && pivotRow[n] < 0) unknownOf[n] = open++
+  const free = new Int32Array(open)
+  for (let n = 0; n < nodeCount; n += 1) if (unknownOf[n] >= 0) free[unknownOf[n]] = n
 
   // Expressions of the pivots, last first: entries exprStart[k] .. exprEnd[k] on unknowns, and a constant.
   const unknown: number[] = []
@@ -289,5 +287,5 @@ function substituted(upper: Upper, held: HeldHeights, nodeCount: number): Elimin
     }
     start[n + 1] = at
   }
-  return { free: Int32Array.from(free), start, unknown: outUnknown, weight: outWeight, particular }
+  return { free, start, unknown: outUnknown, weight: outWeight, particular }
 }

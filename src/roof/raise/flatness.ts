@@ -2,7 +2,7 @@
 import { cornerDeviation } from '../../base/geometry/corner-deviation.ts'
 import { leastSquaresZone } from '../../base/geometry/least-squares-plane.ts'
 import { minimumZone } from '../../base/geometry/minimum-zone.ts'
-import { nearlyFlat } from '../../base/geometry/nearly-flat.ts'
+import { frameInto, nearlyFlat, nearlyFlatIn, type Frames } from '../../base/geometry/nearly-flat.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { Plan } from '../../plan/plan.ts'
 
@@ -20,6 +20,7 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
   const corner = new Float64Array(plan.panelCount)
   const zone = new Float64Array(plan.panelCount)
   const both = new Float64Array(2)
+  const frames = yield* framesOf(plan, x, y)
   let points = new Float64Array(3 * 16)
   for (let p = 0; p < plan.panelCount; p += 1) {
     if ((p & 4095) === 0) yield { stage: 'Measuring flatness', done: p / plan.panelCount }
@@ -27,7 +28,7 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
     if (count === 3) continue
     if (points.length < 3 * count) points = new Float64Array(6 * count)
     cornersAbout(plan, p, x, y, z, points)
-    if (nearlyFlat(points, 0, count, both)) {
+    if (nearlyFlatIn(frames, from, p, points, 0, count, both)) {
       corner[p] = both[0]
       zone[p] = both[1]
     } else {
@@ -36,6 +37,26 @@ export function* flatness(plan: Plan, x: Float64Array, y: Float64Array, z: Float
     }
   }
   return { corner, zone }
+}
+
+/** Frames of the panels of a plan as it is drawn: they serve every roof over it. */
+const drawnFrames = new WeakMap<Plan, Frames>()
+
+function* framesOf(plan: Plan, x: Float64Array, y: Float64Array): Steps<Frames> {
+  const isDrawn = x === plan.x && y === plan.y
+  const known = isDrawn ? drawnFrames.get(plan) : undefined
+  if (known !== undefined) return known
+  const frames = { e: new Float64Array(2 * plan.corner.length), r: new Float64Array(3 * plan.panelCount) }
+  let points = new Float64Array(3 * 16)
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    if ((p & 8191) === 0) yield { stage: 'Measuring flatness', done: 0 }
+    const from = plan.panelStart[p], count = plan.panelStart[p + 1] - from
+    if (points.length < 3 * count) points = new Float64Array(6 * count)
+    cornersAbout(plan, p, x, y, x, points)
+    frameInto(frames, from, p, points, 0, count)
+  }
+  if (isDrawn) drawnFrames.set(plan, frames)
+  return frames
 }
 
 /** The corners of a panel as x y z .., measured from its first. */

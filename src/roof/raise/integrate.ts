@@ -11,7 +11,6 @@ import type { DualWalk } from '../stress/dual-walk.ts'
 export interface Integrated {
   /** Height of each node, the mean over its panels (length nodeCount). */
   readonly heights: Float64Array
-  readonly gradient: Float64Array
   readonly closingError: number
 }
 
@@ -21,8 +20,7 @@ export interface Integrated {
  */
 export function integrate(plan: Plan, stress: Float64Array, walk: DualWalk, rootPlane: Float64Array): Integrated {
   const { panelCount, nodeCount, panelOf, origin, work, panelStart, corner } = plan
-  const gradient = new Float64Array(2 * panelCount)
-  const constant = new Float64Array(panelCount)
+  const { gradient, constant, low, high, count } = roomOf(plan)
   walk.root.forEach((panel, part) => {
     gradient[2 * panel] = rootPlane[3 * part]
     gradient[2 * panel + 1] = rootPlane[3 * part + 1]
@@ -39,15 +37,13 @@ export function integrate(plan: Plan, stress: Float64Array, walk: DualWalk, root
     constant[to] = constant[from] - s * (ax * by - ay * bx)
   }
   const heights = new Float64Array(nodeCount)
-  const low = new Float64Array(nodeCount).fill(Infinity)
-  const high = new Float64Array(nodeCount).fill(-Infinity)
-  const count = new Int32Array(nodeCount)
+  low.fill(Infinity)
+  high.fill(-Infinity)
   for (let p = 0; p < panelCount; p += 1) {
     for (let c = panelStart[p]; c < panelStart[p + 1]; c += 1) {
       const node = corner[c]
       const z = gradient[2 * p] * work[2 * node] + gradient[2 * p + 1] * work[2 * node + 1] + constant[p]
       heights[node] += z
-      count[node] += 1
       if (z < low[node]) low[node] = z
       if (z > high[node]) high[node] = z
     }
@@ -57,5 +53,31 @@ export function integrate(plan: Plan, stress: Float64Array, walk: DualWalk, root
     heights[i] /= count[i]
     closingError = Math.max(closingError, high[i] - low[i])
   }
-  return { heights, gradient, closingError }
+  return { heights, closingError }
+}
+
+interface Room {
+  /** Plane z = gx x + gy y + constant of each panel. */
+  readonly gradient: Float64Array
+  readonly constant: Float64Array
+  readonly low: Float64Array
+  readonly high: Float64Array
+  /** Panels at each node. */
+  readonly count: Int32Array
+}
+
+/** Kept with the plan: memory that is new costs more than the walk itself (a page of 4 kB some microseconds). */
+const rooms = new WeakMap<Plan, Room>()
+
+function roomOf(plan: Plan): Room {
+  const known = rooms.get(plan)
+  if (known !== undefined) return known
+  const count = new Int32Array(plan.nodeCount)
+  for (let c = 0; c < plan.corner.length; c += 1) count[plan.corner[c]] += 1
+  const room = {
+    gradient: new Float64Array(2 * plan.panelCount), constant: new Float64Array(plan.panelCount),
+    low: new Float64Array(plan.nodeCount), high: new Float64Array(plan.nodeCount), count,
+  }
+  rooms.set(plan, room)
+  return room
 }

@@ -8,7 +8,7 @@
  * Tried and dropped: a factor of Q - tau M (area in the shift): a second factor, and its count is wrong on graded plans.
  */
 import { dot } from '../../base/dot.ts'
-import { epsilon, nearestShare, tau } from '../../base/geometry/tolerance.ts'
+import { nearestShare, tau } from '../../base/geometry/tolerance.ts'
 import type { Factor } from '../../base/sparse/factor.ts'
 import { solve } from '../../base/sparse/solve.ts'
 import type { Steps } from '../../base/steps.ts'
@@ -16,6 +16,7 @@ import type { Plan } from '../../plan/plan.ts'
 import { addTo, liftBasis, minus, nearestOfFew } from '../stress/lift-basis.ts'
 import { expand, projected, pulledIn, reduce, type LiftSpace } from '../stress/lift-space.ts'
 import { applyForm } from '../stress/panel-bases.ts'
+import { linearAnswers, together, type LinearAnswers } from './linear-answers.ts'
 import type { Metric } from './soft.ts'
 
 /** Plan area that belongs to each node (an equal share of its panels), scaled to mean 1 (length nodeCount). */
@@ -47,16 +48,21 @@ function newAreas(plan: Plan): Float64Array {
 /**
  * Heights under the conditions, as flat as they can be, near the wish (length nodeCount): one proximal step
  * K y = -T^T Q h0 - tau T^T (t - h0), then what is left unflat is taken out, a factor tau / lambda a step (3e-4 at 100,000
- * panels).
+ * panels). Linear in h0 and t, so a level that is moved costs nothing the third time.
  */
 export function* roofUnderConditions(space: LiftSpace, wish: Float64Array): Steps<Float64Array> {
+  const n = wish.length
+  return yield* answersOf(space, 'conditions', null).to(together(space.elimination.particular, wish), n, (question) => proximal(space, question.subarray(0, n), question.subarray(n)))
+}
+
+function* proximal(space: LiftSpace, h0: Float64Array, wish: Float64Array): Steps<Float64Array> {
   const { elimination, plan, bases } = space
-  const h0 = elimination.particular
-  const force = reduce(elimination, applyForm(plan, bases, h0))
-  const pull = reduce(elimination, wish.map((height, i) => height - h0[i]))
-  const y = solve(space.factor, force.map((value, u) => -value - tau * pull[u]))
-  const h = expand(elimination, y)
-  return yield* broughtFlat(space, h.map((height, i) => height + h0[i]), 3)
+  const right = reduce(elimination, applyForm(plan, bases, h0))
+  const pull = reduce(elimination, minus(wish, h0))
+  for (let u = 0; u < right.length; u += 1) right[u] = -right[u] - tau * pull[u]
+  const h = expand(elimination, solve(space.factor, right))
+  addTo(h, h0, 1)
+  return yield* broughtFlat(space, h, 3)
 }
 
 /** The same roof with what is unflat in it taken out `steps` times, or until a step takes out next to nothing. */
@@ -117,11 +123,16 @@ const settledShare = 1e-2
 export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metric, wish: Float64Array, zeroSoft: boolean): Steps<Float64Array> {
   if (space.dimension === 0) return roof
   const basis = liftBasis(space)
+  if (basis !== null) return nearestOfFew(basis, roof, metric, wish, zeroSoft)
+  const { plain } = metric
+  if (plain === undefined) return yield* byGradients(space, roof, metric, wish, zeroSoft)
+  const n = wish.length
+  return yield* answersOf(space, 'nearest', plain).to(together(roof, wish), n, (question) => byGradients(space, question.subarray(0, n), metric, question.subarray(n), zeroSoft))
+}
+
+/** The same by conjugate gradients. */
+function* byGradients(space: LiftSpace, roof: Float64Array, metric: Metric, wish: Float64Array, zeroSoft: boolean): Steps<Float64Array> {
   const pull = metric.pull(wish, zeroSoft)
-  if (basis !== null) return nearestOfFew(basis, roof, (heights) => metric.apply(heights), pull)
-  const shape = linearIn(space, roof, metric, wish)
-  const before = shape === null ? null : scaledAnswer(space, shape)
-  if (before !== null) return before
   // The nearest in plain least squares is a good start: areas differ little.
   const h = projected(space, minus(wish, roof))
   addTo(h, roof, 1)
@@ -154,47 +165,25 @@ export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metri
     size = dot(residual, g)
     for (let i = 0; i < direction.length; i += 1) direction[i] = g[i] + share * direction[i]
   }
-  const nearest = yield* broughtFlat(space, h, 1)
-  if (shape !== null) remember(space, shape, nearest)
-  return nearest
+  return yield* broughtFlat(space, h, 1)
 }
 
-/** What an answer is linear in: the wish, where the conditions ask for nothing but zero, or what they ask for, where nothing is wished. */
-interface Shape {
-  readonly of: 'wish' | 'conditions'
-  readonly areas: Float64Array
-  readonly heights: Float64Array
+interface KeptAnswers {
+  readonly areas: Float64Array | null
+  readonly answers: LinearAnswers
 }
 
-function linearIn(space: LiftSpace, roof: Float64Array, { plain: areas }: Metric, wish: Float64Array): Shape | null {
-  if (areas === undefined) return null
-  if (isZero(roof)) return { of: 'wish', areas, heights: wish }
-  return isZero(wish) ? { of: 'conditions', areas, heights: space.elimination.particular } : null
-}
+/** The last answers off a factor, of each kind; those about other areas are forgotten. */
+const lastAnswers = new WeakMap<Factor, Map<'conditions' | 'nearest', KeptAnswers>>()
 
-const isZero = (values: Float64Array): boolean => values.every((value) => value === 0)
-
-/** The last answers off a factor: they serve multiples of what they are linear in, as another rise or a level that is moved. */
-const lastAnswers = new WeakMap<Factor, Map<Shape['of'], Shape & { readonly nearest: Float64Array }>>()
-
-function remember(space: LiftSpace, shape: Shape, nearest: Float64Array): void {
-  const last = lastAnswers.get(space.factor) ?? new Map<Shape['of'], Shape & { readonly nearest: Float64Array }>()
-  lastAnswers.set(space.factor, last.set(shape.of, { ...shape, heights: shape.heights.slice(), nearest: nearest.slice() }))
-}
-
-/** The answer to a multiple of the last shape, but for rounding; null: it is none. */
-function scaledAnswer(space: LiftSpace, { of, areas, heights }: Shape): Float64Array | null {
-  const last = lastAnswers.get(space.factor)?.get(of)
-  if (last === undefined || last.areas !== areas) return null
-  let peak = 0
-  for (let i = 1; i < heights.length; i += 1) if (Math.abs(last.heights[i]) > Math.abs(last.heights[peak])) peak = i
-  if (last.heights[peak] === 0) return null
-  const scale = heights[peak] / last.heights[peak]
-  const rounding = 4 * epsilon * Math.abs(heights[peak])
-  for (let i = 0; i < heights.length; i += 1) if (!(Math.abs(heights[i] - scale * last.heights[i]) <= rounding)) return null
-  const out = last.nearest.slice()
-  for (let i = 0; i < out.length; i += 1) out[i] *= scale
-  return out
+function answersOf({ factor }: LiftSpace, kind: 'conditions' | 'nearest', areas: Float64Array | null): LinearAnswers {
+  const last = lastAnswers.get(factor) ?? new Map<'conditions' | 'nearest', KeptAnswers>()
+  lastAnswers.set(factor, last)
+  const kept = last.get(kind)
+  if (kept !== undefined && kept.areas === areas) return kept.answers
+  const answers = linearAnswers()
+  last.set(kind, { areas, answers })
+  return answers
 }
 
 /** Whether one solve leaves so little that is no lift, tau / lambda of the nearest near lift, that one more at the end takes it out. */

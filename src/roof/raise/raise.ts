@@ -70,7 +70,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
   const metric = metricOf(areas, rows.soft)
   const { under, sides, clashes } = yield* keptBy(plan, free, areas, rows, question.names, wish, metric, known)
 
-  const folding = plan.jointCount - under.frozen.reduce((sum, value) => sum + value, 0)
+  const folding = plan.jointCount - ones(under.frozen)
   const lifts = under.start !== null && (folding === plan.jointCount || question.pitched)
   if (under.start !== null && (lifts || folding > 0)) {
     const ground = {
@@ -92,7 +92,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
   const near = yield* nearRoof(under.space, wish, areas, question.within)
   return {
     under, clashes, verdict: near.within ? 'lifts within tolerance' : 'does not lift', riseAsked: rise,
-    roof: roofOf(plan, free, near.heights, wish, areas, false), notices: [], unmet: [], prices: [],
+    roof: roofOf(plan, free, near.heights, wish, areas, false, null), notices: [], unmet: [], prices: [],
   }
 }
 
@@ -103,9 +103,11 @@ export function wishOf(plan: Plan, question: RaiseQuestion): { wish: Float64Arra
   const { heights, shorterSide } = shapeHeights(plan, question.shape)
   const rise = question.rise ?? shorterSide / 10
   const amplitude = question.rule.down ? -rise : rise
-  const shape = heights.map((height) => amplitude * height)
+  const shape = heights.slice()
+  for (let i = 0; i < shape.length; i += 1) shape[i] *= amplitude
   const level = heldLevel(plan, question.rows, shape, question.rule)
-  return { wish: shape.map((height) => level + height), level, rise }
+  if (level !== 0) for (let i = 0; i < shape.length; i += 1) shape[i] += level
+  return { wish: shape, level, rise }
 }
 
 /**
@@ -127,24 +129,13 @@ function* exactRoof(plan: Plan, free: FreeRim, under: UnderConditions, heights: 
   const { start, particular } = under.space.elimination
   for (let node = 0; node < plan.nodeCount; node += 1) if (start[node] === start[node + 1]) integrated.heights[node] = particular[node]
   const flat = yield* broughtFlat(under.space, integrated.heights, 1)
-  return { ...roofOf(plan, free, flat, wish, areas, true), closingError: integrated.closingError }
+  return roofOf(plan, free, flat, wish, areas, true, integrated.closingError)
 }
 
-/** Figures of heights that are taken as they are; planes are the panels' least-squares planes. */
-function roofOf(plan: Plan, free: FreeRim, heights: Float64Array, wish: Float64Array, areas: Float64Array, exact: boolean): RaisedRoof {
+/** Figures of heights that are taken as they are; planes are the panels' least-squares planes. `closing`: null, theirs is looked for. */
+function roofOf(plan: Plan, free: FreeRim, heights: Float64Array, wish: Float64Array, areas: Float64Array, exact: boolean, closing: number | null): RaisedRoof {
   const { gradient, level } = panelPlanes(plan, free.bases, heights)
-  const low = new Float64Array(plan.nodeCount).fill(Infinity)
-  const high = new Float64Array(plan.nodeCount).fill(-Infinity)
-  for (let p = 0; p < plan.panelCount; p += 1) {
-    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) {
-      const node = plan.corner[c]
-      const z = level[p] + gradient[2 * p] * (plan.work[2 * node] - free.bases.middle[2 * p]) + gradient[2 * p + 1] * (plan.work[2 * node + 1] - free.bases.middle[2 * p + 1])
-      low[node] = Math.min(low[node], z)
-      high[node] = Math.max(high[node], z)
-    }
-  }
-  let closingError = 0
-  for (let i = 0; i < plan.nodeCount; i += 1) closingError = Math.max(closingError, high[i] - low[i])
+  const closingError = closing ?? disagreement(plan, free.bases.middle, gradient, level)
   let weight = 0, distance = 0
   for (let i = 0; i < plan.nodeCount; i += 1) {
     weight += areas[i]
@@ -156,10 +147,34 @@ function roofOf(plan: Plan, free: FreeRim, heights: Float64Array, wish: Float64A
   }
 }
 
+/** The largest difference of the heights that the panels' planes give a node. */
+function disagreement(plan: Plan, middle: Float64Array, gradient: Float64Array, level: Float64Array): number {
+  const low = new Float64Array(plan.nodeCount).fill(Infinity)
+  const high = new Float64Array(plan.nodeCount).fill(-Infinity)
+  for (let p = 0; p < plan.panelCount; p += 1) {
+    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) {
+      const node = plan.corner[c]
+      const z = level[p] + gradient[2 * p] * (plan.work[2 * node] - middle[2 * p]) + gradient[2 * p + 1] * (plan.work[2 * node + 1] - middle[2 * p + 1])
+      if (z < low[node]) low[node] = z
+      if (z > high[node]) high[node] = z
+    }
+  }
+  let most = 0
+  for (let i = 0; i < plan.nodeCount; i += 1) most = Math.max(most, high[i] - low[i])
+  return most
+}
+
 function residualShare(plan: Plan, free: FreeRim, heights: Float64Array): number {
   const conditions = plan.corner.length - 3 * plan.panelCount
-  const mean = heights.reduce((sum, height) => sum + height, 0) / heights.length
-  const spread = heights.reduce((sum, height) => sum + (height - mean) ** 2, 0)
+  let mean = 0, spread = 0
+  for (let i = 0; i < heights.length; i += 1) mean += heights[i] / heights.length
+  for (let i = 0; i < heights.length; i += 1) spread += (heights[i] - mean) ** 2
   if (conditions === 0 || spread === 0) return 0
   return Math.sqrt(squaredResidual(plan, free.bases, heights) / conditions / (spread / heights.length))
+}
+
+function ones(flags: Uint8Array): number {
+  let sum = 0
+  for (let i = 0; i < flags.length; i += 1) sum += flags[i]
+  return sum
 }

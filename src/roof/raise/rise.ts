@@ -11,8 +11,16 @@ export interface RiseRule {
   readonly datum: number | null
 }
 
-/** Nodes on outer rims, each once (ascending). */
+/** Nodes on outer rims, each once (ascending); found once a plan, not to be written to. */
 export function outerRimNodes(plan: Plan): Int32Array {
+  const known = rimOf.get(plan) ?? newRim(plan)
+  rimOf.set(plan, known)
+  return known
+}
+
+const rimOf = new WeakMap<Plan, Int32Array>()
+
+function newRim(plan: Plan): Int32Array {
   const on = new Uint8Array(plan.nodeCount)
   for (let loop = 0; loop < plan.rimIsVoid.length; loop += 1) {
     if (plan.rimIsVoid[loop] === 1) continue

@@ -6,7 +6,7 @@ import { epsilon, keptShare } from '../../base/geometry/tolerance.ts'
 import type { Steps } from '../../base/steps.ts'
 import type { LiftSpace } from '../stress/lift-space.ts'
 import { smoothestLifts } from '../stress/smoothest-lifts.ts'
-import { lessTilt } from '../stress/tilt-part.ts'
+import { sizeLessTilt } from '../stress/tilt-part.ts'
 import { nearestLift } from './nearest.ts'
 import type { OneSided } from './one-sided.ts'
 import { riseOf, springing, type RiseRule } from './rise.ts'
@@ -65,7 +65,8 @@ export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): 
     const shape = chosen === null ? null : settled(ground, chosen, wish)
     const rise = shape === null ? 0 : riseOf(shape, rim, wish.rule)
     if (shape === null || rise === 0) return { heights: settled(ground, nearest, wish), notice: null, kept }
-    return { heights: shape.map((height) => (height * (wish.rise ?? 0)) / rise), notice: kept >= keptShare ? null : smoothestSaid, kept }
+    const scale = wish.rise / rise
+    return { heights: along(new Float64Array(shape.length), shape, scale), notice: kept >= keptShare ? null : smoothestSaid, kept }
   }
   return yield* byAmplitude(ground, start, wish, wish.rise)
 }
@@ -76,8 +77,8 @@ const smoothestSaid = 'no roof under these conditions comes near the starting sh
 function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: number): Steps<Choice> {
   const { space, metric, rim } = ground
   const zero = new Float64Array(start.length)
-  const rest = yield* nearestLift(space, start, metric, zero.map(() => wish.level), false)
-  let direction = yield* nearestLift(space, zero, metric, wish.heights.map((height) => height - wish.level), true)
+  const rest = yield* nearestLift(space, start, metric, new Float64Array(start.length).fill(wish.level), false)
+  let direction = yield* nearestLift(space, zero, metric, moved(wish.heights, -wish.level), true)
   const kept = keptOf(ground, direction, wish.heights)
   let notice: string | null = null
   if (space.dimension > 0 && kept < keptShare) {
@@ -88,7 +89,7 @@ function* byAmplitude(ground: Ground, start: Float64Array, wish: Wish, asked: nu
     }
   }
   function* at(a: number): Steps<Float64Array> {
-    return settled(ground, yield* onSides(ground, rest.map((height, i) => height + a * direction[i])), wish)
+    return settled(ground, yield* onSides(ground, along(rest, direction, a)), wish)
   }
   function* riseAt(a: number): Steps<number> {
     return riseOf(yield* at(a), rim, wish.rule)
@@ -190,13 +191,24 @@ function smoothest(ground: Ground, wish: Wish): Float64Array | null {
 function settled(ground: Ground, heights: Float64Array, wish: Wish): Float64Array {
   if (!ground.shiftFree || !wish.settle) return heights
   const level = springing(heights, ground.rim, { ...wish.rule, datum: null })
-  return heights.map((height) => height - level)
+  return level === 0 ? heights : moved(heights, -level)
 }
 
 function keptOf(ground: Ground, heights: Float64Array, wish: Float64Array): number {
   const { plan } = ground.space
-  const size = (h: Float64Array): number =>
-    Math.sqrt(lessTilt(plan, h, ground.areas).reduce((sum, height, i) => sum + ground.areas[i] * height * height, 0))
-  const wished = size(wish)
-  return wished > 0 ? size(heights) / wished : 0
+  const wished = sizeLessTilt(plan, wish, ground.areas)
+  return wished > 0 ? sizeLessTilt(plan, heights, ground.areas) / wished : 0
+}
+
+/** from + by * what. */
+function along(from: Float64Array, what: Float64Array, by: number): Float64Array {
+  const out = new Float64Array(from.length)
+  for (let i = 0; i < out.length; i += 1) out[i] = from[i] + by * what[i]
+  return out
+}
+
+function moved(heights: Float64Array, by: number): Float64Array {
+  const out = heights.slice()
+  for (let i = 0; i < out.length; i += 1) out[i] += by
+  return out
 }

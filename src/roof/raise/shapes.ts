@@ -8,8 +8,23 @@ import type { Plan } from '../../plan/plan.ts'
 
 export type Shape = 'dome' | 'barrel' | 'pitched' | 'hipped'
 
-/** Shape heights 0..1 of each node (length nodeCount), and the shorter side of the rectangle in span units. */
-export function shapeHeights(plan: Plan, shape: Shape): { heights: Float64Array; shorterSide: number } {
+/** Shape heights 0..1 of each node (length nodeCount, not to be written to), and the shorter side of the rectangle in span units; found once a plan. */
+export function shapeHeights(plan: Plan, shape: Shape): ShapeHeights {
+  const known = shapesOf.get(plan) ?? new Map<Shape, ShapeHeights>()
+  shapesOf.set(plan, known)
+  const made = known.get(shape) ?? newHeights(plan, shape)
+  known.set(shape, made)
+  return made
+}
+
+interface ShapeHeights {
+  readonly heights: Float64Array
+  readonly shorterSide: number
+}
+
+const shapesOf = new WeakMap<Plan, Map<Shape, ShapeHeights>>()
+
+function newHeights(plan: Plan, shape: Shape): ShapeHeights {
   const { centreX, centreY, axisX, axisY, halfLong, halfShort } = enclosingRectangle(outerRim(plan))
   const heights = new Float64Array(plan.nodeCount)
   for (let i = 0; i < plan.nodeCount; i += 1) {

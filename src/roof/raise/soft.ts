@@ -9,9 +9,9 @@ import { rowCount } from '../conditions/rows.ts'
 /** The metric diag(areas) + sum of soft rows, and the right-hand side that the soft values add. */
 export interface Metric {
   /** (M + C^T W C) h (length nodeCount). */
-  apply(heights: Float64Array): Float64Array
+  readonly apply: (heights: Float64Array) => Float64Array
   /** M t + C^T W d for the wish t; `zero` takes the soft values d as 0. */
-  pull(wish: Float64Array, zero: boolean): Float64Array
+  readonly pull: (wish: Float64Array, zero: boolean) => Float64Array
   /** The areas where they are all there is to it. */
   readonly plain?: Float64Array
 }

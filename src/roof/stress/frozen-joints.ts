@@ -5,6 +5,7 @@
 import { disjointSets } from '../../base/disjoint-sets.ts'
 import { clashHeight, frozenShare } from '../../base/geometry/tolerance.ts'
 import { gaussians } from '../../base/random.ts'
+import type { Factor } from '../../base/sparse/factor.ts'
 import type { Plan } from '../../plan/plan.ts'
 import { forces, rms, stressOfGradients } from './forces.ts'
 import { projected, type LiftSpace } from './lift-space.ts'
@@ -17,10 +18,12 @@ import { isTilt } from './tilt-part.ts'
  */
 export function frozenJoints(space: LiftSpace, tilts: number, roof: Float64Array | null): Uint8Array {
   const { plan } = space
-  const frozen = new Uint8Array(plan.jointCount).fill(1)
+  const before = foldedBySpace.get(space.factor)
+  const frozen = before !== undefined && before.tilts === tilts ? before.frozen.slice() : new Uint8Array(plan.jointCount).fill(1)
   const mark = (heights: Float64Array): void => {
     // A level roof at +3 m is flat but for the rounding of 3 m, and the forces of that rounding are all of one size.
-    const size = heights.reduce((most, height) => Math.max(most, Math.abs(height)), 1)
+    let size = 1
+    for (let i = 0; i < heights.length; i += 1) size = Math.max(size, Math.abs(heights[i]))
     if (isTilt(plan, heights, clashHeight * size)) return
     const force = forces(plan, stressOfGradients(plan, panelPlanes(plan, space.bases, heights).gradient))
     // A roof that is flat but for rounding has forces at rounding level: they must not pass for folds.
@@ -28,14 +31,18 @@ export function frozenJoints(space: LiftSpace, tilts: number, roof: Float64Array
     const least = Math.max(frozenShare * rms(force), noise)
     for (let j = 0; j < plan.jointCount; j += 1) if (Math.abs(force[j]) > least) frozen[j] = 0
   }
-  if (space.probe !== null && space.dimension > tilts) {
+  if (before?.tilts !== tilts && space.probe !== null && space.dimension > tilts) {
     mark(space.probe.lift)
     // What has folded needs no second look.
     if (frozen.includes(1)) mark(projected(space, gaussians(plan.nodeCount, 21)))
   }
-  if (roof !== null) mark(roof)
+  if (before?.tilts !== tilts) foldedBySpace.set(space.factor, { tilts, frozen: frozen.slice() })
+  if (roof !== null && frozen.includes(1)) mark(roof)
   return frozen
 }
+
+/** What the lifts of a factor fold: the same for every roof that they are added to. */
+const foldedBySpace = new WeakMap<Factor, { readonly tilts: number; readonly frozen: Uint8Array }>()
 
 /** Forces that rounding alone can make: 1e-11 of the steepest slope that heights of this size make over the whole plan. */
 function foldNoise(plan: Plan, heights: Float64Array): number {

@@ -55,12 +55,38 @@ export function minus(a: Float64Array, b: Float64Array): Float64Array {
   return out
 }
 
-/** roof + B c nearest in the metric M to what `pull` = M wish is of: B^T M B c = B^T (pull - M roof). */
-export function nearestOfFew(basis: readonly Float64Array[], roof: Float64Array, metric: (heights: Float64Array) => Float64Array, pull: Float64Array): Float64Array {
-  const residual = minus(pull, metric(roof))
-  const turned = basis.map(metric)
-  const shares = solve(new Matrix(basis.map((a) => turned.map((b) => dot(a, b)))), Matrix.columnVector(basis.map((column) => dot(column, residual))))
+/** What the heights are nearest in: M as a product, and M times the wish with what soft conditions add. */
+interface Measure {
+  readonly apply: (heights: Float64Array) => Float64Array
+  readonly pull: (wish: Float64Array, zeroSoft: boolean) => Float64Array
+  /** The diagonal of M where that is all there is to it. */
+  readonly plain?: Float64Array
+}
+
+/** roof + B c nearest in the metric M to the wish: B^T M B c = B^T M (wish - roof). */
+export function nearestOfFew(basis: readonly Float64Array[], roof: Float64Array, metric: Measure, wish: Float64Array, zeroSoft: boolean): Float64Array {
+  const shares = solve(gram(basis, metric), Matrix.columnVector(pulls(basis, roof, metric, wish, zeroSoft)))
   const h = roof.slice()
   basis.forEach((column, k) => addTo(h, column, shares.get(k, 0)))
   return h
+}
+
+/** B^T M (wish - roof). */
+function pulls(basis: readonly Float64Array[], roof: Float64Array, metric: Measure, wish: Float64Array, zeroSoft: boolean): number[] {
+  const { plain } = metric
+  const residual = plain === undefined ? minus(metric.pull(wish, zeroSoft), metric.apply(roof)) : minus(wish, roof)
+  if (plain !== undefined) for (let i = 0; i < residual.length; i += 1) residual[i] *= plain[i]
+  return basis.map((column) => dot(column, residual))
+}
+
+const grams = new WeakMap<readonly Float64Array[], { readonly areas: Float64Array; readonly gram: Matrix }>()
+
+/** B^T M B; found once for a diagonal metric. */
+function gram(basis: readonly Float64Array[], { apply, plain }: Measure): Matrix {
+  const known = grams.get(basis)
+  if (known !== undefined && known.areas === plain) return known.gram
+  const turned = basis.map((column) => apply(column))
+  const made = new Matrix(basis.map((a) => turned.map((b) => dot(a, b))))
+  if (plain !== undefined) grams.set(basis, { areas: plain, gram: made })
+  return made
 }

@@ -7,23 +7,63 @@ import type { Plan } from '../../plan/plan.ts'
 
 /** h - (best affine function of each part) (length nodeCount); `areas` weighs the nodes. */
 export function lessTilt(plan: Plan, heights: Float64Array, areas: Float64Array): Float64Array {
-  const partOfNode = new Int32Array(plan.nodeCount).fill(-1)
-  for (let p = plan.panelCount - 1; p >= 0; p -= 1) {
-    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) partOfNode[plan.corner[c]] = plan.partOf[p]
-  }
-  const planes = partPlanes(plan, heights, Int32Array.from({ length: plan.nodeCount }, (_, i) => i), partOfNode, areas)
+  const { nodes, parts } = nodesOf(plan)
+  const planes = partPlanes(plan, heights, nodes, parts, areas)
   const out = heights.slice()
-  for (let i = 0; i < out.length; i += 1) out[i] -= at(planes, plan, partOfNode[i], i)
+  for (let i = 0; i < out.length; i += 1) out[i] -= at(planes, plan, parts[i], i)
   return out
+}
+
+/** Its 2-norm, the squares weighed by the areas. */
+export function sizeLessTilt(plan: Plan, heights: Float64Array, areas: Float64Array): number {
+  const { nodes, parts } = nodesOf(plan)
+  const planes = partPlanes(plan, heights, nodes, parts, areas)
+  let sum = 0
+  for (let i = 0; i < heights.length; i += 1) {
+    const off = heights[i] - at(planes, plan, parts[i], i)
+    sum += areas[i] * off * off
+  }
+  return Math.sqrt(sum)
+}
+
+interface Listed {
+  readonly nodes: Int32Array
+  readonly parts: Int32Array
+}
+
+const nodesOfPlan = new WeakMap<Plan, Listed>()
+const cornersOfPlan = new WeakMap<Plan, Listed>()
+
+/** All nodes, each with the part of its first panel; found once a plan. */
+function nodesOf(plan: Plan): Listed {
+  const known = nodesOfPlan.get(plan)
+  if (known !== undefined) return known
+  const parts = new Int32Array(plan.nodeCount).fill(-1)
+  for (let p = plan.panelCount - 1; p >= 0; p -= 1) {
+    for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) parts[plan.corner[c]] = plan.partOf[p]
+  }
+  const nodes = new Int32Array(plan.nodeCount)
+  for (let i = 0; i < nodes.length; i += 1) nodes[i] = i
+  nodesOfPlan.set(plan, { nodes, parts })
+  return { nodes, parts }
+}
+
+/** All corners, each with the part of its panel; found once a plan. */
+function cornersOf(plan: Plan): Listed {
+  const known = cornersOfPlan.get(plan)
+  if (known !== undefined) return known
+  const parts = new Int32Array(plan.corner.length)
+  for (let p = 0; p < plan.panelCount; p += 1) parts.fill(plan.partOf[p], plan.panelStart[p], plan.panelStart[p + 1])
+  cornersOfPlan.set(plan, { nodes: plan.corner, parts })
+  return { nodes: plan.corner, parts }
 }
 
 /** Whether the corners of each part, shared nodes too, lie within `tolerance` of one plane: then no joint folds. */
 export function isTilt(plan: Plan, heights: Float64Array, tolerance: number): boolean {
-  const { corner, panelStart } = plan
-  const partOfCorner = new Int32Array(corner.length)
-  for (let p = 0; p < plan.panelCount; p += 1) partOfCorner.fill(plan.partOf[p], panelStart[p], panelStart[p + 1])
-  const planes = partPlanes(plan, heights, corner, partOfCorner, null)
-  return corner.every((node, c) => Math.abs(heights[node] - at(planes, plan, partOfCorner[c], node)) <= tolerance)
+  const { nodes, parts } = cornersOf(plan)
+  const planes = partPlanes(plan, heights, nodes, parts, null)
+  for (let c = 0; c < nodes.length; c += 1) if (!(Math.abs(heights[nodes[c]] - at(planes, plan, parts[c], nodes[c])) <= tolerance)) return false
+  return true
 }
 
 /** Mean x, mean y, mean height, gx, gy of each part (length 5 * partCount). */
