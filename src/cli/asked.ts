@@ -8,10 +8,11 @@ import { decodedText } from '../formats/text-encoding.ts'
 import type { Source } from '../formats/format.ts'
 import type { Request } from '../job/request.ts'
 import { shapes } from '../plan/project/brief.ts'
-import { keptPatterns, noOptions, type Options } from '../plan/project/options.ts'
+import { keptPatterns } from '../plan/project/keep-options.ts'
+import { noOptions, type Options } from '../plan/project/options.ts'
 import type { Arguments } from './arguments.ts'
 import { readInput } from './read-input.ts'
-import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedColour, typedInside, typedScale, typedScaleFrom, typedUnit, typedWindow, typedWord } from './typed-values.ts'
+import { typedCount, typedDegrees, typedLength, typedMillimetres, typedPoint, typedColour, typedInside, typedScale, typedScaleFrom, typedUnit, typedBetween, typedWindow, typedWord } from './typed-values.ts'
 
 /** A request without its plan: the same for every plan of the run. */
 export type Asked = Omit<Request, 'source'>
@@ -79,7 +80,7 @@ function typedOptions(values: Arguments['values']): Result<Options> {
     unit: take('unit', typedUnit),
     scale: take('scale', typedScale),
     layers: values.get('layer') ?? null,
-    ...chosen({ colours: several('colour', typedColour), lineTypes: values.get('line-type') ?? null, window: take('window', typedWindow), inside: take('inside', typedInside) }),
+    ...chosen({ colours: several('colour', typedColour), lineTypes: values.get('line-type') ?? null, window: take('window', typedWindow), between: take('between', typedBetween), inside: take('inside', typedInside) }),
     snap_mm: take('snap', (text, option) => typedMillimetres(text, option, false)),
     sagitta_mm: take('sagitta', (text, option) => typedMillimetres(text, option, true)),
     voids: voids.length > 0 ? voids : null,
@@ -126,7 +127,7 @@ function typedJoints(text: string, option: string): Result<Options['oneWay']> {
 }
 
 /** What is chosen at all. */
-function chosen(lines: Pick<Options, 'colours' | 'lineTypes' | 'window' | 'inside'>): typeof lines {
+function chosen(lines: Pick<Options, 'colours' | 'lineTypes' | 'window' | 'between' | 'inside'>): typeof lines {
   return Object.fromEntries(Object.entries(lines).filter(([, value]) => value !== null))
 }
 

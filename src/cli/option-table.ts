@@ -23,6 +23,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'colour', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'read lines of this colour only: red, 1 to 255, #ff8000 (repeatable)' },
   { name: 'line-type', value: 'NAME', repeatable: true, group: 'Reading the plan', help: 'read lines of this line type only (repeatable)' },
   { name: 'window', value: 'X1,Y1,X2,Y2', group: 'Reading the plan', help: 'read only what lies wholly within this window' },
+  { name: 'between', value: 'LOW,HIGH', group: 'Reading the plan', help: 'read only what lies wholly between these two heights: one storey of several' },
   { name: 'inside', value: 'LAYER|X,Y', group: 'Reading the plan', help: 'read only what lies inside the closed line on this layer, or round this point' },
   { name: 'snap', value: 'LENGTH', group: 'Reading the plan', help: 'line ends nearer than this are one node (bare: mm)' },
   { name: 'sagitta', value: 'LENGTH', group: 'Reading the plan', help: 'largest distance of a curve from its chords (bare: mm; default 5)' },
@@ -66,7 +67,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'help', value: null, group: 'This run', help: 'show this' },
 ]
 
-const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'levels-within', 'plan-tolerance', 'brief', 'out', 'overwrite', 'json', 'quiet', 'help']
+const forReading: readonly string[] = ['unit', 'scale', 'scale-from', 'layer', 'colour', 'line-type', 'window', 'between', 'inside', 'snap', 'sagitta', 'void', 'accept', 'leave', 'levels-within', 'plan-tolerance', 'brief', 'out', 'overwrite', 'json', 'quiet', 'help']
 
 /** Options that say nothing to balancing: the densities shape the roof. */
 const notBalancing: readonly string[] = ['near', 'cure', 'one-way', 'few-folds', 'shape', 'target', 'at-once']

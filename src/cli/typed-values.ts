@@ -83,6 +83,14 @@ export function typedWindow(text: string, option: string): Result<readonly [read
   return fail('not-a-window', `"${text}" is not two points`, { field: option }, "write it like 0,0,12.5,8, in the plan's unit")
 }
 
+/** "LOW,HIGH": two heights in the plan's unit; with decimal commas between a semicolon. */
+export function typedBetween(text: string, option: string): Result<readonly [number, number]> {
+  const parts = text.includes(';') ? text.split(';') : text.split(',')
+  const [low, high] = parts.map((part) => typedNumber(part, option))
+  if (parts.length === 2 && low.ok && high.ok) return ok([low.value, high.value])
+  return fail('not-two-heights', `"${text}" is not two heights`, { field: option }, "write them like 3.5,4, in the plan's unit")
+}
+
 /** A point where the text is one, else the name of a layer. */
 export function typedInside(text: string, option: string): Result<string | readonly [number, number]> {
   const point = typedPoint(text, option)

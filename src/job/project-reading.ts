@@ -36,7 +36,7 @@ export function withOptions(project: Project, options: Options, file: string): R
   if (!made.ok) return { ok: false, problem: placed(made.problem, { file }) }
   const idle = [
     ...(options.layers === null ? [] : ['--layer']), ...((options.colours ?? null) === null ? [] : ['--colour']), ...((options.lineTypes ?? null) === null ? [] : ['--line-type']),
-    ...((options.window ?? null) === null ? [] : ['--window']), ...((options.inside ?? null) === null ? [] : ['--inside']), ...(options.snap_mm === null ? [] : ['--snap']),
+    ...((options.window ?? null) === null ? [] : ['--window']), ...((options.between ?? null) === null ? [] : ['--between']), ...((options.inside ?? null) === null ? [] : ['--inside']), ...(options.snap_mm === null ? [] : ['--snap']),
     ...(options.sagitta_mm === null ? [] : ['--sagitta']), ...(options.accept.length === 0 ? [] : ['--accept']), ...(options.leave.length === 0 ? [] : ['--leave']),
   ]
   const notices = idle.length === 0 ? [] : [`The plan of a project is as it was accepted: ${idle.join(', ')} ${idle.length === 1 ? 'changes' : 'change'} nothing.`]

@@ -67,6 +67,8 @@ export interface ReadOptions {
   readonly lineTypes?: readonly string[] | null
   /** Only what lies wholly within this window, two corners in the plan's coordinates, is read. */
   readonly window?: readonly [readonly [number, number], readonly [number, number]] | null
+  /** Only what lies wholly between these two heights of the drawing, in the plan's unit, is read: one storey of several. */
+  readonly between?: readonly [number, number] | null
   /** Only what lies inside this closed line is read: the largest on a layer, or the smallest round a point of the plan's coordinates. */
   readonly inside?: string | readonly [number, number] | null
   /** How far a level may lie from its node, in mm; null: the default. */

@@ -53,6 +53,9 @@ function surveyPoint(number: number, [x, y]: Point, level: string): Written[] {
   return [insert('LEVELPOINT', x, y, [[66, 1]], 'SURVEY'), attribute('NUMBER', String(number), 0.1), attribute('LEVEL', level, -0.2), { kind: 'SEQEND', layer: 'SURVEY' }]
 }
 
+/** Lines lifted to a height. */
+const atHeight = (entities: readonly Written[], z: number): Written[] => entities.map((each) => ({ ...each, pairs: [...(each.pairs ?? []).filter(([code]) => code !== 30 && code !== 31), [30, z], [31, z]] }))
+
 /** Text by file name. */
 export function sheetFiles(): ReadonlyMap<string, string> {
   const lines = panels('single lines', roof())
@@ -73,6 +76,7 @@ export function sheetFiles(): ReadonlyMap<string, string> {
     ['section-beside.dxf', inMillimetres([...lines, ...moved(section(12, 'GLAZING'), 0, 12), ...titleBlock(-5, -5, 24, 24, 'GLAZING')])],
     ['storeys-beside.dxf', inMillimetres([...lines, ...moved(lines, 16, 0)])],
     ['storeys-above.dxf', inMillimetres([...lines.map((each) => ({ ...each, layer: 'LEVEL 1' })), ...moved(panels('single lines', grid(6, 5, { bay: 1.4 }), 'LEVEL 2'), 0.3, 0.4)])],
+    ['storeys-one-layer.dxf', inMillimetres([...atHeight(lines, 3.6), ...atHeight(moved(panels('single lines', grid(6, 5, { bay: 1.4 })), 0.3, 0.4), 7.2)])],
     ['one-layer.dxf', inMillimetres([
       ...onLayer({ lines: lines.map(segmentOf) }, '0', [[62, 5]]), ...onLayer({ lines: furniture(12, 6).filter(({ kind }) => kind === 'LINE').map(segmentOf), outlines: boxes() }, '0', [[62, 3], [6, 'DASHED']]),
       polyline([[-0.2, -0.2], [12.2, -0.2], [12.2, 6.2], [-0.2, 6.2]], true, 'LIMIT'),

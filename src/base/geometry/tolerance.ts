@@ -166,6 +166,9 @@ export const cleanShare = 0.02
 /** Panels of two layers or figures are of one kind when their usual sizes differ by less than this factor. */
 export const alikeSizes = 1.6
 
+/** Lines at heights this far apart may be storeys, in metres: less than a floor to stand on, more than a step of a roof. Our own choice. */
+export const leastStorey_m = 2
+
 /** Figures whose sides differ by less than this share are copies of one another: other storeys, or other states. */
 export const sameExtent = 0.02
 

@@ -1,6 +1,7 @@
 /** The brief as JSON Schema, draft 2020-12: what `panewise help brief` prints, and what briefs are checked against. */
 import { units } from '../../base/length.ts'
 import { cureWeightsSchema } from './cure-weights.ts'
+import { keepsSchema } from './keeps-wish.ts'
 import type { ObjectSchema, Schema, SchemaDocument } from './schema.ts'
 
 const number = (description: string): Schema => ({ type: 'number', description })
@@ -69,12 +70,14 @@ export const briefSchema: SchemaDocument = {
         colours: names('colours: names like red, numbers from 1 to 255, or #ff8000'),
         line_types: names('names of line types'),
         window: { type: 'array', items: { $ref: '#/$defs/point' }, minItems: 2, maxItems: 2, description: 'two opposite corners: what lies wholly within' },
+        between: { type: 'array', items: { type: 'number' }, minItems: 2, maxItems: 2, description: 'two heights of the drawing: what lies between them, one storey of several' },
         inside: { oneOf: [{ type: 'string', minLength: 1, description: 'the layer of a closed line' }, { $ref: '#/$defs/point' }], description: 'what lies inside the closed line on a layer, or round a point' },
       },
       required: [],
       additionalProperties: false,
     },
     cures: cureWeightsSchema,
+    keeps: keepsSchema,
     conditions: { type: 'array', items: { $ref: '#/$defs/condition' } },
   },
   required: ['panewise', 'version'],

@@ -10,6 +10,8 @@ export interface LinesWish {
   readonly colours: readonly string[] | null
   readonly lineTypes: readonly string[] | null
   readonly window: readonly [Point, Point] | null
+  /** Two heights. */
+  readonly between?: readonly [number, number] | null
   readonly inside: string | Point | null
 }
 
@@ -18,6 +20,7 @@ export interface WrittenLines {
   readonly colours?: readonly string[]
   readonly line_types?: readonly string[]
   readonly window?: readonly [Point, Point]
+  readonly between?: readonly [number, number]
   readonly inside?: string | Point
 }
 
@@ -29,13 +32,13 @@ export function linesIn(written: WrittenLines | undefined): Result<LinesWish | n
     if (colour === null) return fail('not-a-colour', `"${word}" is not a colour`, { field: `lines.colours[${i}]` }, 'write a name like red, a number from 1 to 255, or #ff8000')
     colours.push(colour)
   }
-  const { layers = null, line_types: lineTypes = null, window = null, inside = null } = written
-  return ok({ layers, colours: written.colours === undefined ? null : colours, lineTypes, window, inside })
+  const { layers = null, line_types: lineTypes = null, window = null, between = null, inside = null } = written
+  return ok({ layers, colours: written.colours === undefined ? null : colours, lineTypes, window, inside, ...(between === null ? {} : { between }) })
 }
 
-export function writtenLines({ layers, colours, lineTypes, window, inside }: LinesWish): object {
+export function writtenLines({ layers, colours, lineTypes, window, between = null, inside }: LinesWish): object {
   return {
     ...(layers === null ? {} : { layers }), ...(colours === null ? {} : { colours }), ...(lineTypes === null ? {} : { line_types: lineTypes }),
-    ...(window === null ? {} : { window }), ...(inside === null ? {} : { inside }),
+    ...(window === null ? {} : { window }), ...(between === null ? {} : { between }), ...(inside === null ? {} : { inside }),
   }
 }

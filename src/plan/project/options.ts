@@ -5,9 +5,8 @@
 import type { Unit } from '../../base/length.ts'
 import type { Point } from './condition.ts'
 import type { Shape } from './brief.ts'
+import { noKeeps, type KeepOptions, type TypedLength } from './keep-options.ts'
 
-/** A length in the plan's unit, or as typed, with or without a unit of its own: "1.2m", "-40 mm", "3". */
-export type TypedLength = number | string
 
 /** The bytes of a file and the name it goes by in sentences. */
 export interface NamedFile {
@@ -35,28 +34,6 @@ export interface Levels {
   readonly otherwise?: readonly { readonly order: string; readonly rows: readonly LevelRow[] }[]
 }
 
-/** What a plan keeps while its nodes are moved. */
-export interface KeepOptions {
-  /** Nodes that stay, by name. */
-  readonly stay: readonly string[]
-  /** slide: along rim lines that run straight through them, corners stay; fixed; free. */
-  readonly rimNodes: 'slide' | 'fixed' | 'free'
-  /** Straight joint runs may bend. */
-  readonly bend: boolean
-  readonly largestShift: TypedLength | null
-  readonly leastEdge: TypedLength | null
-  readonly leastCorner_deg: number | null
-  /** What else the plan keeps where it has it: equal bays, symmetry, nodes on building axes (they slide along them). */
-  readonly keep: readonly KeptPattern[]
-  /** Panels that keep their shape in the plan, by name. */
-  readonly keepShape: readonly string[]
-}
-
-export const keptPatterns = ['bays', 'symmetry', 'axes'] as const
-export type KeptPattern = (typeof keptPatterns)[number]
-
-export const noKeeps: KeepOptions = { stay: [], rimNodes: 'slide', bend: false, largestShift: null, leastEdge: null, leastCorner_deg: null, keep: [], keepShape: [] }
-
 /** In the drawing's own coordinates and unit; the length as typed. */
 export interface ScaleFrom {
   readonly from: Point
@@ -76,6 +53,8 @@ export interface Options {
   readonly lineTypes?: readonly string[] | null
   /** Two corners, in the plan's coordinates, within which lines are read; null or absent: everywhere. */
   readonly window?: readonly [Point, Point] | null
+  /** Two heights of the drawing, in the plan's unit, between which lines are read; null or absent: at all. */
+  readonly between?: readonly [number, number] | null
   /** The layer of a closed line, or a point in one: only what lies inside is read. */
   readonly inside?: string | Point | null
   readonly snap_mm: number | null

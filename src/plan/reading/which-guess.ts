@@ -54,7 +54,7 @@ export function* layersGuess(drawing: Drawing, how: Measuring): Steps<Guess | nu
 }
 
 /** The unit stated, then the others: a file's word is often wrong, and in a wrong unit nothing looks like a panel. */
-function likelyMetres({ unit, metres: stated }: Measuring): number[] {
+export function likelyMetres({ unit, metres: stated }: Measuring): number[] {
   return unit.statedBy === 'user' ? [stated] : [stated, ...units.map((each) => metres[each]).filter((each) => each !== stated)]
 }
 
@@ -303,7 +303,7 @@ export function* figuresGuess(drawing: Drawing, how: Measuring): Steps<Guess | n
 }
 
 /** "snaps farther": these lines alone are joined within more than `most`. */
-function* measure(drawing: Drawing, { unit, snap_mm, tolerance_mm, metres }: Measuring, most: number): Steps<Measure | null | 'snaps farther'> {
+export function* measure(drawing: Drawing, { unit, snap_mm, tolerance_mm, metres }: Measuring, most: number): Steps<Measure | null | 'snaps farther'> {
   if (drawing.segments.length === 0 && drawing.outlines.layer.length === 0) return null
   const frame = lineFrame(drawing, unit, snap_mm, tolerance_mm)
   if (frame.ok && frame.value.snap > most) return 'snaps farther'

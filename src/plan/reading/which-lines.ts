@@ -19,6 +19,7 @@ import { unitOfDrawing } from '../unit-of-drawing.ts'
 import { drawnAxes, type DrawnAxes } from './axes-drawn.ts'
 import { figuresGuess, layersGuess, type Guess, type Measuring } from './which-guess.ts'
 import { isEmpty, leftOutOf, part } from './which-part.ts'
+import { storeysGuess } from './which-storey.ts'
 import { statedLines } from './which-stated.ts'
 
 /** Formats whose faces are what they say: a model has no title block. */
@@ -49,7 +50,13 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
     said.leftOut.push(...leftOutOf(drawing, stated.value, 'not chosen'))
     drawing = part(drawing, stated.value)
   }
-  const isFree = stated.value === null && !models.includes(given.format)
+  const isModel = models.includes(given.format)
+  const storey = isModel || (options.between ?? null) !== null || leaves(options, 'which-lines') ? null : yield* storeysGuess(drawing, how)
+  if (storey !== null) {
+    say(storey, drawing, options, said)
+    drawing = part(drawing, storey.kept)
+  }
+  const isFree = stated.value === null && !isModel
   const layers = isFree && options.layers === undefined && !leaves(options, 'which-lines') ? yield* layersGuess(drawing, how) : null
   const before = drawing
   if (layers !== null && (!layers.isOpen || takes(options, 'which-lines'))) drawing = part(drawing, layers.kept)

@@ -10,8 +10,8 @@ import { all, isEmpty, isWhole, type Kept } from './which-part.ts'
 const onLine = 1e-6
 
 /** What stays; null where nothing is stated. Fails where nothing is left: "no-such-colour", "no-such-line-type", "no-closed-line", "empty-window". */
-export function statedLines(drawing: Drawing, { colours = null, lineTypes = null, window = null, inside = null }: ReadOptions, factor: number): Result<Kept | null> {
-  if (colours === null && lineTypes === null && window === null && inside === null) return ok(null)
+export function statedLines(drawing: Drawing, { colours = null, lineTypes = null, window = null, between = null, inside = null }: ReadOptions, factor: number): Result<Kept | null> {
+  if (colours === null && lineTypes === null && window === null && between === null && inside === null) return ok(null)
   const kept = all(drawing)
   const { points } = drawing
   if (colours !== null) {
@@ -42,6 +42,13 @@ export function statedLines(drawing: Drawing, { colours = null, lineTypes = null
       return x >= left && x <= right && y >= low && y <= high
     })
     if (isEmpty(kept)) return fail('empty-window', 'nothing lies wholly within the window', { field: '--window' }, "give two opposite corners in the plan's coordinates")
+  }
+  if (between !== null) {
+    const [low, high] = [Math.min(...between), Math.max(...between)]
+    // Heights as typed: a micrometre of rounding on either side is none.
+    const off = 1e-9 * Math.max(1, Math.abs(low), Math.abs(high))
+    byPoints(drawing, kept, (p) => points[3 * p + 2] * factor >= low - off && points[3 * p + 2] * factor <= high + off)
+    if (isEmpty(kept)) return fail('empty-window', 'nothing lies wholly between these heights', { field: '--between' }, "give two heights of the drawing in the plan's unit")
   }
   if (inside !== null) {
     const loop = closedLine(drawing, inside, factor)

@@ -105,6 +105,20 @@ describe('what cannot be guessed is asked', () => {
     expect([left.plan.partCount, left.questions]).toEqual([2, []])
   })
 
+  test('storeys of other layouts above each other on one layer: one question, its answers read', () => {
+    const r = readFile('storeys-one-layer.dxf')
+    expect(r.questions.map(({ code, message, options }) => [code, message, ...options])).toEqual([[
+      'which-lines', 'Which lines are the panels? By their looks the storey at 3600: 32 faces that look like panels; the next best, at 7200, has 30.', '--between 3600,3600', '--between 7200,7200', '--leave which-lines',
+    ]])
+    expect(readFile('storeys-one-layer.dxf', { between: [7200, 7200] }).plan.panelCount).toBe(30)
+    for (const options of [{ between: [3000, 4000] as const }, { accept: ['which-lines'] }]) {
+      const read = readFile('storeys-one-layer.dxf', options)
+      expect([isClean(roof, read.plan, 0.01), read.questions]).toEqual([true, []])
+    }
+    expect(readFile('storeys-one-layer.dxf', { leave: ['which-lines'] }).plan.panelCount).toBeGreaterThan(32)
+    expect(result(readFileSync(join(folder, 'storeys-one-layer.dxf')), { between: [0, 1] }).ok).toBe(false)
+  })
+
   test('storeys above each other, each on its layer: one question, its answers read', () => {
     const r = readFile('storeys-above.dxf')
     expect(r.questions.map(({ code, options }) => [code, ...options])).toEqual([['which-lines', '--layer "LEVEL 1"', '--layer "LEVEL 2"', '--leave which-lines']])
