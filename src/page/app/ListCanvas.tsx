@@ -1,11 +1,12 @@
 /**
- * A canvas that shows a display list and follows its size. Painting waits for the next frame, so that several changes in
- * one frame are painted once. The words of the drawing stand beside it for those who do not see it.
+ * A canvas that shows a display list and follows its size. Painting waits for its turn, so that several changes before it
+ * are painted once. The words of the drawing stand beside it for those who do not see it.
  */
 import { useEffect, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
 import type { DisplayList } from '../../paper/drawing/display-list.ts'
 import { themes } from '../../paper/drawing/theme.ts'
 import { paintList } from '../view/list-painter.ts'
+import { leaveTurn, paintInTurn } from '../view/turns.ts'
 import { useDeskState } from './context.ts'
 import { useSize } from './useSize.ts'
 
@@ -39,7 +40,7 @@ export function ListCanvas(props: ListCanvasProps) {
   useEffect(() => {
     const element = canvas.current
     if (element === null || width === 0 || height === 0) return
-    const frame = requestAnimationFrame(() => {
+    paintInTurn(element, () => {
       const context = element.getContext('2d')
       const list = draw(width, height)
       if (context === null) return
@@ -53,8 +54,11 @@ export function ListCanvas(props: ListCanvasProps) {
         context.clearRect(0, 0, w, h)
       } else paintList(context, list, themes[theme], ratio)
     })
-    return () => cancelAnimationFrame(frame)
   }, [draw, width, height, theme, faces])
+  useEffect(() => {
+    const element = canvas.current
+    return () => { if (element !== null) leaveTurn(element) }
+  }, [])
 
   // React attaches wheel listeners passively; zooming must keep the page from scrolling.
   useEffect(() => {

@@ -1,5 +1,5 @@
 /** The panel list: only the rows in sight exist, so that 100,000 panels scroll like fifty. */
-import { useEffect, useMemo, useRef, useState, type KeyboardEvent } from 'react'
+import { useDeferredValue, useEffect, useMemo, useRef, useState, type KeyboardEvent } from 'react'
 import { panelName } from '../../plan/names.ts'
 import { compassPoint, figure } from '../../paper/drawing/figures.ts'
 import { useDesk, useDeskState } from './context.ts'
@@ -19,7 +19,8 @@ const sortedBy: Readonly<Record<ListColumn, readonly [up: string, down: string]>
 
 export function PanelList() {
   const desk = useDesk()
-  const answer = useDeskState((state) => state.answer)
+  // The drawings come first: a list a moment late is not missed.
+  const answer = useDeferredValue(useDeskState((state) => state.answer))
   const sort = useDeskState((state) => state.sort)
   const filter = useDeskState((state) => state.filter)
   const selected = useDeskState((state) => (state.selection?.kind === 'panel' ? state.selection.index : -1))

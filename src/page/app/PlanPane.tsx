@@ -2,18 +2,22 @@
 import { useCallback, useDeferredValue, useEffect, useMemo, useRef, useState, type KeyboardEvent, type PointerEvent } from 'react'
 import { axisBubbles } from '../../paper/drawing/axis-drawing.ts'
 import { cureOverlay, movesOverlay, overlayItems, type Overlay } from '../../paper/drawing/cure-drawing.ts'
+import { lineKey } from '../../paper/drawing/legend.ts'
 import { planDetail, medianPanelWidth } from '../../paper/drawing/level-of-detail.ts'
 import { planArea, planDrawing } from '../../paper/drawing/plan-drawing.ts'
 import { fitted, panned, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import { readingNames, readingTitles } from '../../paper/drawing/reading.ts'
+import { toSvg } from '../../paper/drawing/svg.ts'
+import { themes } from '../../paper/drawing/theme.ts'
 import { runOfAxis, type Axis } from '../../plan/axes.ts'
+import type { Answer } from '../../roof/answer/answer.ts'
 import { samePanels } from '../../plan/project/changed-plan.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { drawnCure } from './CuresDesk.tsx'
 import { ListCanvas } from './ListCanvas.tsx'
 import { axesFor, looks, useLooks } from './looks.ts'
 import { neighbour, pick, runBetween } from '../store/picking.ts'
-import { useReading } from './useReading.ts'
+import { jointsOf, useReading } from './useReading.ts'
 import type { Size } from './useSize.ts'
 import { PlanHand } from './PlanHand.tsx'
 
@@ -133,6 +137,19 @@ export function PlanPane({ onSize }: { readonly onSize: (size: Size) => void }) 
         {movedFrom !== null && <button className="word axes-switch moves-switch" aria-pressed={withMoves} title="Where nodes went from the drawing as accepted" onClick={() => looks.update((state) => ({ ...state, moves: !state.moves }))}>moves</button>}
         {answer === null && <p className="will">The roof from above: panels by slope or flatness, joints by how they fold.</p>}
       </div>
+      {answer !== null && size.width > 0 && size.width <= widestWithoutKey && <KeyStrip answer={answer} />}
     </section>
   )
+}
+
+/** A plan as narrow as this has no room for the key of lines beside its scale: it stands in a row below. */
+const widestWithoutKey = 480
+
+function KeyStrip({ answer }: { readonly answer: Answer }) {
+  const theme = useDeskState((state) => state.theme)
+  const svg = useMemo(() => {
+    const key = lineKey(jointsOf(answer), answer.conditions.length > 0, true)
+    return toSvg({ ...key, title: 'Lines', description: 'How joints are drawn, and how many there are of each.' }, themes[theme], { mmPerPx: null, background: false })
+  }, [answer, theme])
+  return <div className="line-key" dangerouslySetInnerHTML={{ __html: svg }} />
 }

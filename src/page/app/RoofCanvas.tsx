@@ -1,10 +1,10 @@
 /**
- * Drawing 3 as a three.js scene, by WebGL where there is one and by the canvas painter where not. Rendered on demand only:
- * a page that renders all the time on a software WebGL starves the worker.
+ * Drawing 3 as a three.js scene, by WebGL where there is one and by the canvas painter where not. Rendered only when
+ * something changed, in turn with the other drawings: a page that renders all the time on a software WebGL starves the worker.
  */
 import { Canvas, useFrame, useThree } from '@react-three/fiber'
-import { Component, useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
-import { MOUSE, TOUCH, WebGLRenderer, type OrthographicCamera, type PerspectiveCamera } from 'three'
+import { Component, useCallback, useEffect, useMemo, useRef, useState, type ReactNode } from 'react'
+import { MOUSE, TOUCH, WebGLRenderer, type Group, type OrthographicCamera, type PerspectiveCamera } from 'three'
 import { OrbitControls } from 'three/examples/jsm/controls/OrbitControls.js'
 import { metres } from '../../base/length.ts'
 import { fitted } from '../../paper/drawing/plan-window.ts'
@@ -14,13 +14,19 @@ import { themes } from '../../paper/drawing/theme.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { cameraFor } from '../view/cameras.ts'
 import { PaperRenderer } from '../view/paper-renderer.ts'
+import { roofMaterials } from '../view/roof-materials.ts'
 import { roofScene, type RoofScene } from '../view/roof-scene.ts'
+import { leaveTurn, paintInTurn } from '../view/turns.ts'
 import { useDesk, useDeskState } from './context.ts'
 import { useReading } from './useReading.ts'
 import type { OnCamera } from './RoofHand.tsx'
 import type { Size } from './useSize.ts'
 
-/** Above this many panels multisampling is left out where WebGL is software: it costs 70 of 100 ms a frame. */
+/**
+ * Up to this many panels the painter draws where WebGL is software: it takes as long a frame, smooths its edges, and spares the
+ * 300 to 600 ms for which the first frame of a software WebGL holds the page up. Above, WebGL turns faster; multisampling is
+ * left out, since it costs 70 of 100 ms a frame.
+ */
 const manyPanels = 2500
 
 /** Canvases tried for a context that is not lost, before the painter takes over. */
@@ -34,8 +40,9 @@ export function RoofCanvas({ answer, size, planSize, onCamera }: { readonly answ
   const [lost, setLost] = useState(0)
   const [failed, setFailed] = useState(false)
   const tries = useRef(0)
-  const painter = webgl === 'none' || failed
-  const smooth = webgl === 'hardware' || answer.plan.panelCount <= manyPanels
+  const without = webgl === 'none' || failed
+  const painter = without || (webgl === 'software' && answer.plan.panelCount <= manyPanels)
+  const smooth = webgl === 'hardware'
   if (size.width === 0 || size.height === 0) return null
   /**
    * A browser short of contexts gives one that is lost from the start, on which three throws: a fresh canvas is tried again
@@ -46,7 +53,10 @@ export function RoofCanvas({ answer, size, planSize, onCamera }: { readonly answ
     const context = canvas.getContext('webgl2', options) as WebGL2RenderingContext | null
     if (context !== null && !context.isContextLost()) {
       tries.current = 0
-      return new WebGLRenderer({ ...options, canvas, context })
+      const renderer = new WebGLRenderer({ ...options, canvas, context })
+      // The shaders are three's own: asking whether they are right waits for the compiler.
+      renderer.debug.checkShaderErrors = false
+      return renderer
     }
     tries.current += 1
     setTimeout(() => (tries.current > mostTries ? setFailed(true) : setLost((count) => count + 1)), 300)
@@ -54,7 +64,7 @@ export function RoofCanvas({ answer, size, planSize, onCamera }: { readonly answ
   }
   const paint = (
     <Canvas
-      key={`${painter ? 'paper' : 'webgl'} ${smooth} ${lost}`} frameloop="demand" flat dpr={webgl === 'hardware' ? [1, 2] : 1} orthographic
+      key={`${painter ? 'paper' : 'webgl'} ${smooth} ${lost}`} frameloop="never" flat dpr={webgl === 'hardware' ? [1, 2] : 1} orthographic
       gl={(props) => (painter ? new PaperRenderer(props.canvas as HTMLCanvasElement) : withWebGl(props.canvas as HTMLCanvasElement)) as never}
       onCreated={({ gl }) => {
         gl.domElement.addEventListener('webglcontextlost', (event) => {
@@ -70,7 +80,7 @@ export function RoofCanvas({ answer, size, planSize, onCamera }: { readonly answ
   return (
     <>
       <Boundary key={String(painter)} onFail={() => setFailed(true)}>{paint}</Boundary>
-      {painter && <p className="foot last"><span>Drawn without WebGL; same figures, turns more slowly.</span></p>}
+      {without && <p className="foot last"><span>Drawn without WebGL; same figures, turns more slowly.</span></p>}
     </>
   )
 }
@@ -122,47 +132,82 @@ function Scene({ answer, size, planSize, onCamera }: { readonly answer: Answer; 
   const made = useReading(answer)
   const { scale, shift } = useMemo(() => roofScale(answer, size, planSize), [answer.plan, size, planSize])
   const selectedPanel = selection?.kind === 'panel' ? selection.index : -1
-  const scene = useMemo<RoofScene | null>(
-    () => made === null ? null : roofScene(answer, { ...made, theme: themes[themeName], exaggeration, scale }),
-    [answer, made, themeName, exaggeration, scale],
-  )
-  const invalidate = useThree((three) => three.invalidate)
-  useEffect(() => {
-    invalidate()
-    return () => scene?.dispose()
-  }, [scene, invalidate])
-  useEffect(() => {
-    scene?.select(selectedPanel)
-    invalidate()
-  }, [scene, selectedPanel, invalidate])
+  const theme = themes[themeName]
+  const materials = useMemo(() => roofMaterials(theme), [theme])
+  useEffect(() => () => materials.dispose(), [materials])
+  const holder = useRef<Group>(null)
+  const scene = useRef<RoofScene | null>(null)
+  const paint = usePainting()
   const before = useDeskState((state) => (state.inHand === null ? null : state.before))
   const beforeHeights = before !== null && before.plan === answer.plan ? (before.roof?.heights ?? null) : null
+  const notes = useRef({ selectedPanel, beforeHeights })
   useEffect(() => {
-    scene?.showBefore(beforeHeights)
-    invalidate()
-  }, [scene, beforeHeights, invalidate])
+    notes.current = { selectedPanel, beforeHeights }
+    scene.current?.select(selectedPanel)
+    scene.current?.showBefore(beforeHeights)
+    paint()
+  }, [selectedPanel, beforeHeights, paint])
+  // Objects are made in a turn of their own, and painted in the next.
+  useEffect(() => {
+    paintInTurn(holder, () => {
+      const next = made === null ? null : roofScene(answer, { ...made, theme, materials, exaggeration, scale })
+      holder.current?.clear()
+      scene.current?.dispose()
+      scene.current = next
+      if (next !== null) {
+        next.select(notes.current.selectedPanel)
+        next.showBefore(notes.current.beforeHeights)
+        holder.current?.add(next.group)
+      }
+      paint()
+    })
+  }, [answer, made, theme, materials, exaggeration, scale, paint])
+  useEffect(() => () => {
+    leaveTurn(holder)
+    scene.current?.dispose()
+  }, [])
   useFrame(({ camera }) => {
-    scene?.face(camera, size.height)
+    scene.current?.face(camera, size.height)
     onCamera.current?.(camera)
   })
   const down = useRef<readonly [number, number]>([0, 0])
   return (
     <>
-      <View key={views} answer={answer} side={side} size={size} scale={scale} shift={shift} top={scene?.top ?? 0} exaggeration={exaggeration} />
-      {scene !== null && (
-        <primitive
-          object={scene.group}
-          onPointerDown={(event: { clientX: number; clientY: number }) => { down.current = [event.clientX, event.clientY] }}
-          onClick={(event: { clientX: number; clientY: number; object: unknown; faceIndex?: number; stopPropagation: () => void }) => {
-            if (Math.hypot(event.clientX - down.current[0], event.clientY - down.current[1]) > 4) return
-            if (event.object !== scene.faces || event.faceIndex === undefined) return
-            event.stopPropagation()
-            desk.select({ kind: 'panel', index: scene.panelOfTriangle[event.faceIndex] })
-          }}
-        />
-      )}
+      <View key={views} answer={answer} side={side} size={size} scale={scale} shift={shift} top={roofTop(answer, exaggeration)} exaggeration={exaggeration} />
+      <group
+        ref={holder}
+        onPointerDown={(event) => { down.current = [event.clientX, event.clientY] }}
+        onClick={(event) => {
+          if (scene.current === null || Math.hypot(event.clientX - down.current[0], event.clientY - down.current[1]) > 4) return
+          if (event.object !== scene.current.faces || event.faceIndex === undefined || event.faceIndex === null) return
+          event.stopPropagation()
+          desk.select({ kind: 'panel', index: scene.current.panelOfTriangle[event.faceIndex] })
+        }}
+      />
     </>
   )
+}
+
+/** Paints the scene when its turn comes; also when the canvas has another size, which empties it. */
+function usePainting(): () => void {
+  const advance = useThree((three) => three.advance)
+  const gl = useThree((three) => three.gl)
+  const canvasSize = useThree((three) => three.size)
+  const paint = useCallback(() => paintInTurn(gl, () => advance(performance.now(), false)), [advance, gl])
+  useEffect(paint, [paint, canvasSize])
+  useEffect(() => () => leaveTurn(gl), [gl])
+  return paint
+}
+
+/** Height of the highest node over the lowest, as drawn. */
+function roofTop({ roof }: Answer, exaggeration: number): number {
+  let low = Infinity
+  let high = -Infinity
+  for (const z of roof?.heights ?? []) {
+    if (z < low) low = z
+    if (z > high) high = z
+  }
+  return high > low ? (high - low) * exaggeration : 0
 }
 
 function View({ answer, side, size, scale, shift, top, exaggeration }: {
@@ -171,7 +216,7 @@ function View({ answer, side, size, scale, shift, top, exaggeration }: {
   const desk = useDesk()
   const set = useThree((three) => three.set)
   const gl = useThree((three) => three.gl)
-  const invalidate = useThree((three) => three.invalidate)
+  const paint = usePainting()
   const { plan } = answer
   const topKept = useRef(top)
   topKept.current = top
@@ -197,21 +242,21 @@ function View({ answer, side, size, scale, shift, top, exaggeration }: {
     const onStart = (): void => { moved = false }
     const onChange = (): void => {
       moved = true
-      invalidate()
+      paint()
     }
     controls.addEventListener('change', onChange)
     controls.addEventListener('start', onStart)
     // A click that turns nothing leaves the stock view in force.
     const onEnd = (): void => { if (moved) desk.set({ turned: turnedWords(controls.getAzimuthalAngle(), controls.getPolarAngle()) }) }
     controls.addEventListener('end', onEnd)
-    invalidate()
+    paint()
     return () => {
       controls.removeEventListener('change', onChange)
       controls.removeEventListener('end', onEnd)
       controls.removeEventListener('start', onStart)
       controls.dispose()
     }
-  }, [plan, side, size.width, size.height, scale, shift, exaggeration, set, gl, invalidate, desk])
+  }, [plan, side, size.width, size.height, scale, shift, exaggeration, set, gl, paint, desk])
   return null
 }
 

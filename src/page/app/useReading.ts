@@ -25,7 +25,7 @@ export function readingFor(answer: Answer, name: ReadingName, leastSlope: number
   const key = `${name} ${leastSlope} ${flat_mm}`
   const known = kept.get(key)
   if (known !== undefined) return known
-  const made = readingOf(name, answer, jointsOf(answer), { leastSlope, flat_mm })
+  const made = readingOf(name, answer, () => jointsOf(answer), { leastSlope, flat_mm })
   kept.set(key, made)
   return made
 }
@@ -39,11 +39,15 @@ export function useLimits(): { leastSlope: number | null; flat_mm: number } {
   return useMemo(() => ({ leastSlope, flat_mm }), [leastSlope, flat_mm])
 }
 
-export function useReading(answer: Answer | null): { joints: Joints; reading: Reading } | null {
+/** Worked out when first asked for: by a picture in its turn rather than by all panes as they hear of the answer. */
+export function useReading(answer: Answer | null): { readonly joints: Joints; readonly reading: Reading } | null {
   const name = useDeskState((state) => state.reading)
   const { leastSlope, flat_mm } = useLimits()
   return useMemo(
-    () => (answer === null ? null : { joints: jointsOf(answer), reading: readingFor(answer, name, leastSlope, flat_mm) }),
+    () => (answer === null ? null : {
+      get joints() { return jointsOf(answer) },
+      get reading() { return readingFor(answer, name, leastSlope, flat_mm) },
+    }),
     [answer, name, leastSlope, flat_mm],
   )
 }

@@ -110,14 +110,22 @@ export function keepSaved(desk: Desk): () => void {
     const now = new Date()
     const time = `${String(now.getHours()).padStart(2, '0')}:${String(now.getMinutes()).padStart(2, '0')}`
     running = running.then(async () => {
-      // In a task of its own: the step is drawn first.
-      await new Promise((resolve) => setTimeout(resolve))
+      await spareMoment()
       if (isNew) mine.id = await begun(step.doc.name, step.doc.sha256, keptAs)
       await save({ id: mine.id, name: step.doc.name, text: keptText(step.doc), steps: at + 1, at: time, when: now.getTime() })
     }).then(
       () => desk.set({ saved: `kept ${time}` }),
       (error: unknown) => desk.set({ saved: notKept(error) }),
     )
+  })
+}
+
+/** Once the step is drawn and nothing is in hand, half a second later at the latest; a crash before then loses that step. */
+function spareMoment(): Promise<void> {
+  return new Promise((resolve) => {
+    // Not every browser has it.
+    if (typeof requestIdleCallback === 'function') requestIdleCallback(() => resolve(), { timeout: 500 })
+    else setTimeout(resolve, 50)
   })
 }
 

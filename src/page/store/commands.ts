@@ -19,7 +19,13 @@ const go = (key: string, pane: string, title: string, shown?: Pane): Command => 
   key, title, group: 'go',
   run: (desk) => {
     if (shown !== undefined) desk.set({ pane: shown })
-    requestAnimationFrame(() => document.querySelector<HTMLElement>(`[data-pane="${pane}"] [data-first]`)?.focus())
+    const focused = (): boolean => {
+      const first = document.querySelector<HTMLElement>(`[data-pane="${pane}"] [data-first]`)
+      first?.focus()
+      return document.activeElement === first
+    }
+    // At once, for the key that follows; a pane that is only now shown takes it a frame later.
+    if (!focused()) requestAnimationFrame(focused)
   },
 })
 

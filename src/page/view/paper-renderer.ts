@@ -97,6 +97,7 @@ export class PaperRenderer {
     const hatch = roof.hatch.map((set) => ({ ...set, at: this.project(set.ends, matrix) }))
     const edges = this.edgeStrokes(roof, matrix)
     const seams = plan.panelCount > 400
+    const tones = new Map<number, string>()
     for (const p of order) {
       context.beginPath()
       const first = plan.panelStart[p]
@@ -106,7 +107,10 @@ export class PaperRenderer {
         else context.lineTo(at[i], at[i + 1])
       }
       context.closePath()
-      const fill = `rgb(${colours[3 * p]},${colours[3 * p + 1]},${colours[3 * p + 2]})`
+      // Of the same words each time: a browser reads a colour once.
+      const tone = (colours[3 * p] << 16) | (colours[3 * p + 1] << 8) | colours[3 * p + 2]
+      const fill = tones.get(tone) ?? `#${tone.toString(16).padStart(6, '0')}`
+      tones.set(tone, fill)
       context.fillStyle = fill
       context.fill()
       if (seams && edges.sparse) {

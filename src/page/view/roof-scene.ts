@@ -1,7 +1,6 @@
 /** The roof as three.js objects of stock materials: faces with baked light, ribbons for lines, hatching as thin lines. */
 import {
-  BufferAttribute, BufferGeometry, Color, DoubleSide, Group, LineBasicMaterial, LineSegments, Mesh, MeshBasicMaterial, OrthographicCamera,
-  PerspectiveCamera, Vector3, type Camera,
+  BufferAttribute, BufferGeometry, Color, Group, LineSegments, Mesh, OrthographicCamera, PerspectiveCamera, Vector3, type Camera, type MeshBasicMaterial,
 } from 'three'
 import type { Answer } from '../../roof/answer/answer.ts'
 import { joints as jointsOf, type Joints } from '../../paper/drawing/joint-kinds.ts'
@@ -9,6 +8,7 @@ import { medianPanelWidth, planDetail, roofDetail } from '../../paper/drawing/le
 import { panelHatch } from '../../paper/drawing/plan-drawing.ts'
 import type { Reading } from '../../paper/drawing/reading.ts'
 import { lineStyles, type Theme } from '../../paper/drawing/theme.ts'
+import type { RoofMaterials } from './roof-materials.ts'
 import { roofStrokes, type Strokes } from './strokes.ts'
 import { surface, type Surface } from './surface.ts'
 
@@ -43,6 +43,8 @@ export interface RoofSceneOptions {
   readonly reading: Reading
   readonly joints: Joints | null
   readonly theme: Theme
+  /** Of the same theme; they outlive the scene. */
+  readonly materials: RoofMaterials
   readonly exaggeration: number
   /** px to the plan unit at the fitted scale: decides on detail and dashes. */
   readonly scale: number
@@ -52,7 +54,7 @@ export interface RoofSceneOptions {
 export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene | null {
   const { plan, roof } = answer
   if (roof === null) return null
-  const { reading, theme, exaggeration, scale } = options
+  const { reading, theme, materials, exaggeration, scale } = options
   const shape = surface(plan, roof, reading, theme, exaggeration)
   const width = medianPanelWidth(plan) * scale
   const strokes = roofStrokes(shape, reading, options.joints ?? jointsOf(answer), planDetail(width), 1 / scale)
@@ -60,10 +62,10 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
   const curtain = curtainQuads(shape)
 
   const group = new Group()
-  const faces = faceMesh(shape)
-  group.add(curtainMesh(curtain, theme), faces)
-  for (const set of hatch) group.add(hatchLines(set, theme, plan.frame.span))
-  const ribbons = ribbonMesh(strokes, theme, plan.frame.span)
+  const faces = faceMesh(shape, materials)
+  group.add(curtainMesh(curtain, materials), faces)
+  for (const set of hatch) group.add(hatchLines(set, materials, plan.frame.span))
+  const ribbons = ribbonMesh(strokes, theme, materials.ribbons, plan.frame.span)
   group.add(ribbons.mesh)
   let outline: Ribbons | null = null
   let ghost: LineSegments | null = null
@@ -80,34 +82,27 @@ export function roofScene(answer: Answer, options: RoofSceneOptions): RoofScene 
       if (outline !== null) {
         group.remove(outline.mesh)
         outline.mesh.geometry.dispose()
-        ;(outline.mesh.material as MeshBasicMaterial).dispose()
       }
-      outline = selectedRibbons(shape, panel, theme)
+      outline = selectedRibbons(shape, panel, theme, materials.ribbons)
       if (outline !== null) group.add(outline.mesh)
     },
     showBefore(heights) {
       if (ghost !== null) {
         group.remove(ghost)
         ghost.geometry.dispose()
-        ;(ghost.material as LineBasicMaterial).dispose()
         ghost = null
       }
       painted.before = heights === null ? null : edgesBefore(answer, heights, exaggeration)
       if (painted.before === null) return
       const geometry = new BufferGeometry()
       geometry.setAttribute('position', new BufferAttribute(painted.before, 3))
-      ghost = new LineSegments(geometry, new LineBasicMaterial({ color: theme.ink2 }))
-      // Over the roof even where it lies inside: it is a note, not a thing.
-      ;(ghost.material as LineBasicMaterial).depthTest = false
+      ghost = unculled(new LineSegments(geometry, materials.before))
       ghost.renderOrder = 2
       group.add(ghost)
     },
     dispose() {
       group.traverse((object) => {
-        if (object instanceof Mesh || object instanceof LineSegments) {
-          ;(object.geometry as BufferGeometry).dispose()
-          ;(object.material as MeshBasicMaterial).dispose()
-        }
+        if (object instanceof Mesh || object instanceof LineSegments) (object.geometry as BufferGeometry).dispose()
       })
     },
   }
@@ -135,7 +130,13 @@ function edgesBefore({ plan, roof }: Answer, heights: Float64Array, exaggeration
   return Float32Array.from(out)
 }
 
-function faceMesh({ nodes, triangles, panelOfTriangle, colours }: Surface): Mesh {
+/** The roof is in the picture: looking whether it is takes a bounding sphere an answer. */
+function unculled<T extends Mesh | LineSegments>(object: T): T {
+  object.frustumCulled = false
+  return object
+}
+
+function faceMesh({ nodes, triangles, panelOfTriangle, colours }: Surface, { faces }: RoofMaterials): Mesh {
   const positions = new Float32Array(3 * triangles.length)
   const baked = new Float32Array(3 * triangles.length)
   const colour = new Color()
@@ -148,9 +149,7 @@ function faceMesh({ nodes, triangles, panelOfTriangle, colours }: Surface): Mesh
   const geometry = new BufferGeometry()
   geometry.setAttribute('position', new BufferAttribute(positions, 3))
   geometry.setAttribute('color', new BufferAttribute(baked, 3))
-  // Faces are pushed back a little so that hatching that lies in them stays on top.
-  const material = new MeshBasicMaterial({ vertexColors: true, side: DoubleSide, polygonOffset: true, polygonOffsetFactor: 1, polygonOffsetUnits: 1 })
-  return new Mesh(geometry, material)
+  return unculled(new Mesh(geometry, faces))
 }
 
 /** Quads from the outer rims down to the lowest node, 4 x 3 numbers each. */
@@ -167,13 +166,13 @@ function curtainQuads({ plan, nodes }: Surface): Float32Array {
   return Float32Array.from(out)
 }
 
-function curtainMesh(quads: Float32Array, theme: Theme): Mesh {
+function curtainMesh(quads: Float32Array, { curtain }: RoofMaterials): Mesh {
   const index: number[] = []
   for (let q = 0; q < quads.length / 12; q += 1) index.push(4 * q, 4 * q + 1, 4 * q + 2, 4 * q, 4 * q + 2, 4 * q + 3)
   const geometry = new BufferGeometry()
   geometry.setAttribute('position', new BufferAttribute(quads, 3))
   geometry.setIndex(index)
-  return new Mesh(geometry, new MeshBasicMaterial({ color: theme.light, side: DoubleSide, polygonOffset: true, polygonOffsetFactor: 2, polygonOffsetUnits: 2 }))
+  return unculled(new Mesh(geometry, curtain))
 }
 
 type HatchSet = PaintedRoof['hatch'][number]
@@ -198,10 +197,10 @@ function liftedHatch(answer: Answer, reading: Reading, { plan, nodes }: Surface,
   return sets.filter((set) => set.ends.length > 0).map((set) => ({ water: set.water, ends: Float32Array.from(set.ends), start: Int32Array.from(set.start) }))
 }
 
-function hatchLines(set: HatchSet, theme: Theme, span: number): LineSegments {
+function hatchLines(set: HatchSet, { hatch, water }: RoofMaterials, span: number): LineSegments {
   const geometry = new BufferGeometry()
   geometry.setAttribute('position', new BufferAttribute(set.ends, 3))
-  const lines = new LineSegments(geometry, new LineBasicMaterial({ color: set.water ? theme.fault : theme.ink2, transparent: !set.water, opacity: set.water ? 1 : 0.55 }))
+  const lines = unculled(new LineSegments(geometry, set.water ? water : hatch))
   lines.position.z = span * 2e-4
   return lines
 }
@@ -211,7 +210,7 @@ interface Ribbons {
   face(camera: Camera, height: number): void
 }
 
-function ribbonMesh(strokes: Strokes, theme: Theme, span: number): Ribbons {
+function ribbonMesh(strokes: Strokes, theme: Theme, material: MeshBasicMaterial, span: number): Ribbons {
   const { count, ends, width, offset, style, lines } = strokes
   const positions = new Float32Array(12 * count)
   const colours = new Float32Array(12 * count)
@@ -228,8 +227,7 @@ function ribbonMesh(strokes: Strokes, theme: Theme, span: number): Ribbons {
   geometry.setAttribute('position', position)
   geometry.setAttribute('color', new BufferAttribute(colours, 3))
   geometry.setIndex(new BufferAttribute(index, 1))
-  const mesh = new Mesh(geometry, new MeshBasicMaterial({ vertexColors: true, side: DoubleSide }))
-  mesh.frustumCulled = false
+  const mesh = unculled(new Mesh(geometry, material))
   const view = new Vector3()
   const eye = new Vector3()
   return {
@@ -280,7 +278,7 @@ function ribbonMesh(strokes: Strokes, theme: Theme, span: number): Ribbons {
   }
 }
 
-function selectedRibbons({ plan, nodes }: Surface, panel: number, theme: Theme): Ribbons | null {
+function selectedRibbons({ plan, nodes }: Surface, panel: number, theme: Theme, material: MeshBasicMaterial): Ribbons | null {
   if (panel < 0 || panel >= plan.panelCount) return null
   const start = plan.panelStart[panel]
   const count = plan.panelStart[panel + 1] - start
@@ -296,5 +294,5 @@ function selectedRibbons({ plan, nodes }: Surface, panel: number, theme: Theme):
     edge: new Int32Array(count).fill(-1),
   }
   // Nearer than the joints, so that it lies over them.
-  return ribbonMesh(strokes, theme, 1.6 * plan.frame.span)
+  return ribbonMesh(strokes, theme, material, 1.6 * plan.frame.span)
 }

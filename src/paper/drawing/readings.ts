@@ -12,12 +12,14 @@ export interface ReadingLimits {
   readonly flat_mm: number
 }
 
-export function readingOf(name: ReadingName, answer: Answer, joints: Joints, limits: ReadingLimits): Reading {
+/** `joints`: or what makes them, since panels are read without. */
+export function readingOf(name: ReadingName, answer: Answer, joints: Joints | (() => Joints), limits: ReadingLimits): Reading {
+  const made = (): Joints => (typeof joints === 'function' ? joints() : joints)
   switch (name) {
     case 'slope': return slopeReading(answer, limits.leastSlope)
     case 'flatness': return flatnessReading(answer, limits.flat_mm)
-    case 'fold': return foldReading(answer, joints)
-    case 'force': return forceReading(answer, joints)
+    case 'fold': return foldReading(answer, made())
+    case 'force': return forceReading(answer, made())
     case 'group': return groupReading(answer)
     case 'freedom': return freedomReading(answer)
     default: return never(name)
