@@ -82,6 +82,8 @@ export class Asking {
     const answer = { ...result.value, plan: doc.read.plan }
     this.answers.set(doc, answer)
     this.set({ answer, fresh: isNow, problem: null, answerMs, releases: null, cures: null, oneWay: null })
+    // Where nothing lifts, what it takes stands in the place of the ways left.
+    if (this.state.desk === 'ways' && answer.summary.verdict === 'does not lift') this.set({ desk: 'cures' })
     if (this.state.inHand === null && this.state.desk === 'ways') void this.askWays()
     else this.set({ ways: this.state.inHand === null ? null : this.state.ways })
   }
