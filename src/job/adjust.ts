@@ -52,7 +52,7 @@ export function* adjust(request: Request, version: string, sha256: string): Step
   const { read, brief, target = null } = question
   const wishes = wishesOf(brief, options, read.plan.unit)
   if (!wishes.ok) return wishes
-  const keeps = keepsOf(read.plan, options)
+  const keeps = keepsOf(read.plan, options, brief)
   if (!keeps.ok) return keeps
   const glance = yield* liftsNowhere(read.plan, wishes.value)
   if (!glance.ok) return glance

@@ -39,11 +39,15 @@ const mostNamed = 100
 /** Shifts and packings below this, in mm, are none that anybody could set out. */
 const counted_mm = 1
 
-export function* attempts(code: CureCode, question: PlanQuestion, checked: Checked): Steps<Result<readonly Attempt[]>> {
+/** Above this many panels nodes are moved when that is asked for, not to find out whether it would help: it costs several answers. */
+const mostMoved = 20_000
+
+/** `notices`: takes up what is not tried, and why; null: this kind was asked for by name, so it is tried. */
+export function* attempts(code: CureCode, question: PlanQuestion, checked: Checked, notices: string[] | null = null): Steps<Result<readonly Attempt[]>> {
   switch (code) {
     case 'accept-deviation': return ok(acceptDeviation(checked))
-    case 'move-nodes': return yield* moveNodes(question, checked)
-    case 'pack-rim': return yield* packRim(question, checked)
+    case 'move-nodes': return yield* moveNodes(question, checked, notices)
+    case 'pack-rim': return yield* packRim(question, checked, notices)
     case 'add-diagonals': return yield* addDiagonals(question, checked)
     case 'remove-joints': return removeJoints(question, checked)
     case 'release': return yield* releases(question, checked)
@@ -64,10 +68,14 @@ function acceptDeviation({ answer, wishes }: Checked): readonly Attempt[] {
   }]
 }
 
-function* moveNodes(question: PlanQuestion, checked: Checked): Steps<Result<readonly Attempt[]>> {
+function* moveNodes(question: PlanQuestion, checked: Checked, notices: string[] | null): Steps<Result<readonly Attempt[]>> {
   const { read, request } = question
   const { plan } = read
-  const keeps = keepsOf(plan, request.options)
+  if (notices !== null && plan.panelCount > mostMoved) {
+    notices.push(`Whether moving nodes helps was not tried on ${plan.panelCount} panels: panewise adjust PLAN --out DIR does it.`)
+    return ok([])
+  }
+  const keeps = keepsOf(plan, request.options, question.brief)
   if (!keeps.ok) return keeps
   const found = yield* moveOutcome(request, read, question.target ?? null, checked, keeps.value)
   if (!found.ok) return found
@@ -84,7 +92,7 @@ function* moveNodes(question: PlanQuestion, checked: Checked): Steps<Result<read
 }
 
 /** Where nothing folds, or the asked rise cannot be had: levels held at the rim become the packed ones, node by node. */
-function* packRim(question: PlanQuestion, checked: Checked): Steps<Result<readonly Attempt[]>> {
+function* packRim(question: PlanQuestion, checked: Checked, notices: string[] | null): Steps<Result<readonly Attempt[]>> {
   const { plan } = question.read
   const { wishes, rows, free } = checked
   const asked = yield* askedOf(question, checked)
@@ -100,7 +108,9 @@ function* packRim(question: PlanQuestion, checked: Checked): Steps<Result<readon
   const tried: Attempt[] = []
   for (const each of rises) {
     const found = yield* packedRim({ ...rim, rise: each })
-    if (found !== null) tried.push(packing(question, checked, found))
+    if (found === null) continue
+    if ('lifts' in found) notices?.push(`Whether packing the rim helps was not tried: ${found.nodes} nodes and ${found.lifts} dimensions are too many for it.`)
+    else tried.push(packing(question, checked, found))
   }
   return ok(tried)
 }

@@ -2,6 +2,7 @@
 import { conversion } from '../base/length.ts'
 import { nodeName, indexOfName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
+import type { KeepsWish } from '../plan/project/keeps-wish.ts'
 import { inUnit, type Condition } from '../plan/project/condition.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
 import { carriedOver, nodesTo } from '../roof/cures/joints/cured-conditions.ts'
@@ -41,13 +42,17 @@ export function withPlan(question: PlanQuestion, checked: Checked, changed: Chan
   const moved = withConditionsOf(question, checked, carriedOver(plan, changed, checked.wishes.conditions))
   const { options } = moved.request
   const to = nodesTo(plan, changed)
-  const stay = options.keeps.stay.flatMap((name) => {
+  const staying = (names: readonly string[]): string[] => names.flatMap((name) => {
     const node = to[indexOfName(name, 'N')]
     return node === undefined ? [name] : node < 0 ? [] : [nodeName(node)]
   })
+  // Panels are numbered anew: those that kept their shape as drawn are not known among them.
+  const { keeps } = moved.brief
+  const stay = staying(options.keeps.stay)
   return {
     ...moved,
-    request: { ...moved.request, options: { ...options, keeps: { ...options.keeps, stay } } },
+    brief: keeps === undefined ? moved.brief : { ...moved.brief, keeps: keptNodes(keeps, staying(keeps.stay ?? [])) },
+    request: { ...moved.request, options: { ...options, keeps: { ...options.keeps, stay, keepShape: [] } } },
     read: readWith(question.read, changed.plan, changed.nodeFrom),
     target: question.target === undefined || question.target === null ? null : picked(question.target, changed.nodeFrom),
     free: null,
@@ -64,3 +69,8 @@ export function readWith(read: ReadPlan, plan: Plan, nodeFrom: Int32Array): Read
 const pickedOrNull = (values: Float64Array | null, from: Int32Array): Float64Array | null => (values === null ? null : picked(values, from))
 
 const picked = (values: Float64Array, from: Int32Array): Float64Array => Float64Array.from(from, (node) => values[node])
+
+function keptNodes(keeps: KeepsWish, stay: readonly string[]): KeepsWish {
+  const rest = Object.fromEntries(Object.entries(keeps).filter(([field]) => field !== 'stay' && field !== 'shapes'))
+  return stay.length === 0 ? rest : { ...rest, stay }
+}

@@ -26,28 +26,31 @@ export interface CuresFound {
   readonly asDrawn: AsDrawn | null
   readonly blocking: Blocking | null
   readonly cures: readonly FoundCure[]
+  /** Kinds that were not tried, and why. */
+  readonly notices: readonly string[]
 }
 
 /** All cures of an answer that is not a plain yes. */
 export function* curesOf(asked: PlanQuestion, checked: Checked): Steps<Result<CuresFound>> {
   // Cures that leave the plan as it is do not ask again what it can do.
   const question = { ...asked, free: checked.free }
-  if (checked.answer.summary.verdict === 'lifts') return ok({ answer: 'yes', asDrawn: null, blocking: null, cures: [] })
+  if (checked.answer.summary.verdict === 'lifts') return ok({ answer: 'yes', asDrawn: null, blocking: null, cures: [], notices: [] })
   const found: FoundCure[] = []
+  const notices: string[] = []
   for (const code of cureCodes) {
-    const some = yield* curesOfKind(code, question, checked)
+    const some = yield* curesOfKind(code, question, checked, notices)
     if (!some.ok) return some
     found.push(...some.value)
   }
   const cures = inOrder(found, question.brief.cures ?? {})
   const answer = checked.answer.summary.verdict === 'does not lift' && cures.length === 0 ? 'no, because' : 'yes, if'
-  return ok({ answer, asDrawn: asDrawnOf(checked), blocking: yield* blockingOf(question, checked), cures })
+  return ok({ answer, asDrawn: asDrawnOf(checked), blocking: yield* blockingOf(question, checked), cures, notices: [...new Set(notices)] })
 }
 
-/** The cures of one kind that help. */
-export function* curesOfKind(code: CureCode, question: PlanQuestion, checked: Checked): Steps<Result<readonly FoundCure[]>> {
+/** The cures of one kind that help; `notices` as `attempts` takes them. */
+export function* curesOfKind(code: CureCode, question: PlanQuestion, checked: Checked, notices: string[] | null = null): Steps<Result<readonly FoundCure[]>> {
   yield { stage: stages[code], done: 0 }
-  const tried = yield* attempts(code, question, checked)
+  const tried = yield* attempts(code, question, checked, notices)
   if (!tried.ok) return tried
   const found: FoundCure[] = []
   for (const attempt of tried.value) {
@@ -77,9 +80,9 @@ export function* cured(question: PlanQuestion, checked: Checked, code: CureCode,
 }
 
 /** The summary with the answer's form and the cures; the caution stays last. */
-export function summaryWith({ caution, ...summary }: Summary, { answer, asDrawn, blocking, cures }: CuresFound): Summary {
+export function summaryWith({ caution, ...summary }: Summary, { answer, asDrawn, blocking, cures, notices }: CuresFound): Summary {
   return {
-    ...summary, answer, cures: cures.map(({ cure }) => cure),
+    ...summary, notices: [...summary.notices, ...notices], answer, cures: cures.map(({ cure }) => cure),
     ...(asDrawn === null ? {} : { asDrawn }), ...(blocking === null ? {} : { held: { ...summary.held, blocking } }), caution,
   }
 }

@@ -1,13 +1,17 @@
 /** From options to what a plan keeps while its nodes move. */
+import { conversion } from '../base/length.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import { indexOfName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
+import type { Brief } from '../plan/project/brief.ts'
+import { keepsWith } from '../plan/project/keeps-wish.ts'
 import type { Options } from '../plan/project/options.ts'
 import { parsedLength } from '../plan/project/wishes.ts'
 import type { PlanKeeps } from '../roof/cures/adjust/adjust.ts'
 
-/** What the plan keeps, in spans. Fails where a node is not on the plan. */
-export function keepsOf(plan: Plan, { keeps }: Options): Result<PlanKeeps> {
+/** What the plan keeps by its brief and the options, in spans. Fails where a node is not on the plan. */
+export function keepsOf(plan: Plan, options: Options, brief: Brief): Result<PlanKeeps> {
+  const keeps = keepsWith(options.keeps, brief.keeps, conversion(brief.unit ?? plan.unit, plan.unit))
   const fixed: number[] = []
   for (const name of keeps.stay) {
     const node = indexOfName(name, 'N')

@@ -24,11 +24,12 @@ export function* withOneWay(checked: Checked, asked: NonNullable<Options['oneWay
   const found = held
     ? yield* oneWay(under.space, under.tilts, under.frozen, joints.value, solver)
     : yield* oneWay(free.space, free.tilts, free.frozen, joints.value, solver)
-  const { margin, heights, certificate } = found
+  const { margin, heights, certificate, givenUpAfter } = found
   const facts: OneWayFacts = {
     margin, on: 'force', joints: joints.value.length, held,
     certificate: certificate === null ? [] : Array.from(certificate.joints, (joint, k) => ({ joint: jointName(joint), weight: certificate.weights[k] })),
     decided: margin > 0 || certificate !== null,
+    ...(givenUpAfter === null ? {} : { steps: givenUpAfter }),
   }
   const { caution, ...summary } = answer.summary
   return ok({ ...checked, answer: { ...answer, summary: { ...summary, oneWay: facts, caution }, oneWayHeights: heights === null ? null : standing(checked, heights, held) } })

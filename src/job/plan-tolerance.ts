@@ -3,6 +3,7 @@ import { conversion } from '../base/length.ts'
 import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Plan } from '../plan/plan.ts'
+import type { Brief } from '../plan/project/brief.ts'
 import type { Options } from '../plan/project/options.ts'
 import type { Wishes } from '../plan/project/wishes.ts'
 import type { ConditionRows } from '../roof/conditions/condition-rows.ts'
@@ -22,12 +23,12 @@ export interface WithinPlan {
 
 /** The shift by which a plan with no roof that folds lifts after all; null: it folds already, or the shift is over the tolerance. */
 export function* withinPlan(
-  plan: Plan, result: Raised, wishes: Wishes, rows: ConditionRows, question: RaiseQuestion, options: Options,
+  plan: Plan, result: Raised, wishes: Wishes, rows: ConditionRows, question: RaiseQuestion, options: Options, brief: Brief,
 ): Steps<Result<WithinPlan | null>> {
   const tolerance_mm = options.planTolerance_mm ?? defaultPlanTolerance_mm
   const folds = result.verdict === 'lifts' || result.verdict === 'lifts in part'
   if (folds || tolerance_mm === 0 || plan.jointCount === 0) return ok(null)
-  const keeps = keepsOf(plan, options)
+  const keeps = keepsOf(plan, options, brief)
   if (!keeps.ok) return keeps
   const mm = conversion(plan.unit, 'mm')
   const found = yield* movedWithin({

@@ -3,7 +3,7 @@ import { expect, test } from 'vitest'
 import { sentence, type Result } from '../../src/base/result.ts'
 import { parseWords } from '../../src/cli/arguments.ts'
 import { asked, type Asked } from '../../src/cli/asked.ts'
-import { noKeeps } from '../../src/plan/project/options.ts'
+import { noKeeps } from '../../src/plan/project/keep-options.ts'
 
 async function read(...words: string[]): Promise<Result<Asked>> {
   const args = parseWords('check', ['plan.obj', ...words])

@@ -5,11 +5,11 @@ import { listWords } from './figures.ts'
 
 export function oneWaySentences({ oneWay }: Summary): string[] {
   if (oneWay === undefined) return []
-  const { margin, joints, certificate, decided, held } = oneWay
+  const { margin, joints, certificate, decided, held, steps } = oneWay
   const under = held ? ' under these conditions' : ' (rim free)'
   const which = joints === 1 ? 'The joint' : joints === 2 ? 'Both joints' : `All ${joints} joints`
   if (margin > 0) return [`${which} can be ${joints === 1 ? 'a ridge' : 'ridges at once'}${under}: the weakest of them then folds ${significant(margin, 3)} times as much as the strongest joint.`]
-  if (!decided) return [`Whether ${joints === 1 ? 'this joint can be a ridge' : `these ${joints} joints can all be ridges`} is not decided${under}.`]
+  if (!decided) return [`Whether ${joints === 1 ? 'this joint can be a ridge' : `these ${joints} joints can all be ridges`} is not decided${steps === undefined ? '' : ` within ${steps} steps of the linear program`}${under}.`]
   const names = certificate.map(({ joint }) => joint)
   if (names.length === 1) return [`${names[0]} cannot be a ridge: no roof folds it${under}.`]
   const shown = names.length <= 12 ? names.join(', ') : listWords(names)

@@ -10,10 +10,10 @@ export function briefText(brief: Brief): string {
 }
 
 /** The brief as its file says it, a value for JSON. */
-export function writtenBrief({ unit, datum, rise, down, shape, flat_mm, voids, lines, cures, conditions }: Brief): object {
+export function writtenBrief({ unit, datum, rise, down, shape, flat_mm, voids, lines, cures, keeps, conditions }: Brief): object {
   return {
     panewise: 'brief', version: briefVersion,
-    ...said({ unit, datum, rise, down: down ? true : null, shape, flat_mm, voids, lines: lines === undefined || lines === null ? null : writtenLines(lines), cures }),
+    ...said({ unit, datum, rise, down: down ? true : null, shape, flat_mm, voids, lines: lines === undefined || lines === null ? null : writtenLines(lines), cures, keeps }),
     ...(conditions.length === 0 ? {} : { conditions: conditions.map(writtenCondition) }),
   }
 }

@@ -5,6 +5,7 @@ import { briefSchema, voidPattern } from './brief-schema.ts'
 import { kindsNotBuilt, type Condition, type Point } from './condition.ts'
 import { placedIn, readJson } from './json-text.ts'
 import { linesIn, type LinesWish, type WrittenLines } from './lines-wish.ts'
+import type { KeepsWish } from './keeps-wish.ts'
 import { misfit } from './schema.ts'
 import type { CureWeights } from './cure-weights.ts'
 
@@ -27,6 +28,8 @@ export interface Brief {
   readonly lines?: LinesWish | null
   /** Weights that change the order of cures; absent: none. */
   readonly cures?: CureWeights
+  /** What the plan keeps while its nodes are moved; absent: what the options say. */
+  readonly keeps?: KeepsWish
   readonly conditions: readonly Condition[]
 }
 
@@ -69,6 +72,7 @@ export function briefOf(value: unknown): Result<Brief> {
     voids: written.voids ?? null,
     ...(written.lines === undefined ? {} : { lines: lines.value }),
     ...(written.cures === undefined ? {} : { cures: written.cures }),
+    ...(written.keeps === undefined ? {} : { keeps: written.keeps }),
     conditions: conditions.value,
   })
 }
@@ -83,6 +87,7 @@ interface WrittenBrief {
   readonly voids?: readonly Point[]
   readonly lines?: WrittenLines
   readonly cures?: CureWeights
+  readonly keeps?: KeepsWish
   readonly conditions?: readonly WrittenCondition[]
 }
 

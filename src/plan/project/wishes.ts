@@ -5,7 +5,8 @@ import type { ReadOptions } from '../read-plan.ts'
 import type { Brief, Shape } from './brief.ts'
 import { linesOf } from './lines-chosen.ts'
 import { inUnit, type Condition, type LevelCondition, type Point } from './condition.ts'
-import type { NamedFile, Options, TypedLength } from './options.ts'
+import type { TypedLength } from './keep-options.ts'
+import type { NamedFile, Options } from './options.ts'
 
 export interface Wishes {
   /** The plan's unit, in which all lengths here are. */

@@ -105,6 +105,8 @@ export interface OneWayFacts {
   readonly certificate: readonly { readonly joint: string; readonly weight: number }[]
   /** False: margin 0 that no certificate proves. */
   readonly decided: boolean
+  /** Where it is not decided because the linear program was given up: after so many steps. */
+  readonly steps?: number
 }
 
 export interface Summary {

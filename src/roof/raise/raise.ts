@@ -19,7 +19,7 @@ import { outerRimNodes, riseOf, type RiseRule } from './rise.ts'
 import { shapeHeights, type Shape } from './shapes.ts'
 import { heldLevel } from './held-level.ts'
 import { metricOf } from './soft.ts'
-import type { UnderConditions } from './under-conditions.ts'
+import { sumsToZero, type UnderConditions } from './under-conditions.ts'
 
 export interface RaiseQuestion {
   readonly rows: ConditionRows
@@ -75,7 +75,7 @@ export function* raised(plan: Plan, free: FreeRim, areas: Float64Array, question
   if (under.start !== null && (lifts || folding > 0)) {
     const ground = {
       space: under.space, tilts: under.tilts, areas, metric, sides, rim: outerRimNodes(plan),
-      scaleFree: under.scaleFree && sides === null && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree,
+      scaleFree: under.scaleFree && sides === null && rows.soft.value.every((value) => value === 0), shiftFree: under.shiftFree && (sides === null || sumsToZero(sides.rows)),
     }
     const asked = { heights: wish, level, rise, rule, settle: question.target === null }
     const within = yield* choiceWithin(ground, under.start, asked, rows)
@@ -125,10 +125,13 @@ function* exactRoof(plan: Plan, free: FreeRim, under: UnderConditions, heights: 
     rootPlane[3 * part + 1] = gradient[2 * panel + 1]
     rootPlane[3 * part + 2] = level[panel] - gradient[2 * panel] * free.bases.middle[2 * panel] - gradient[2 * panel + 1] * free.bases.middle[2 * panel + 1]
   })
+  yield { stage: 'Raising', done: 0.6 }
   const integrated = integrate(plan, stress, walk, rootPlane)
+  yield { stage: 'Raising', done: 0.7 }
   const { start, particular } = under.space.elimination
   for (let node = 0; node < plan.nodeCount; node += 1) if (start[node] === start[node + 1]) integrated.heights[node] = particular[node]
   const flat = yield* broughtFlat(under.space, integrated.heights, 1)
+  yield { stage: 'Raising', done: 0.9 }
   return roofOf(plan, free, flat, wish, areas, true, integrated.closingError)
 }
 

@@ -54,6 +54,7 @@ export function* underConditions(
     const { tilts, frozen, groupOf, groupCount } = free
     return { space, rowClashes, start, freedomLeft: space.dimension, tilts, scaleFree: true, shiftFree: true, frozen, groupOf, groupCount }
   }
+  yield { stage: 'Raising', done: 0.1 }
   const tilts = tiltDimension(plan, hard)
   const scaleFree = homogeneous(hard)
   const frozen = start === null ? new Uint8Array(plan.jointCount).fill(1) : frozenJoints(space, tilts, scaleFree ? null : start)
@@ -69,7 +70,9 @@ export function* feasibleRoof(
 ): Steps<{ space: LiftSpace; start: Float64Array | null; rowClashes: readonly RowClash[] }> {
   // With nothing held the flat roof is one.
   if (rowCount(hard) === 0) return { space: free.space, start: new Float64Array(plan.nodeCount), rowClashes: [] }
+  yield { stage: 'Assembling', done: 0 }
   const { elimination, clashes } = eliminate(hard, plan.nodeCount, names)
+  yield { stage: 'Assembling', done: 0 }
   const space = known !== null && sameSolution(known, free, elimination) ? { ...known, elimination } : yield* liftSpace(plan, free.bases, elimination, known)
   if (clashes.length > 0) return { space, start: null, rowClashes: clashes }
   const roof = yield* roofUnderConditions(space, wish)
@@ -97,7 +100,7 @@ function isLift(space: LiftSpace, heights: Float64Array, areas: Float64Array): b
 }
 
 /** Whether all rows hold for a constant: then a roof may be moved up and down as a whole. */
-function sumsToZero(rows: Rows): boolean {
+export function sumsToZero(rows: Rows): boolean {
   for (let r = 0; r < rowCount(rows); r += 1) {
     let sum = 0
     for (let k = rows.start[r]; k < rows.start[r + 1]; k += 1) sum += rows.weight[k]

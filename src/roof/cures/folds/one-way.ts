@@ -27,6 +27,8 @@ export interface OneWay {
   readonly heights: Float64Array | null
   /** What proves margin 0; null where the margin is more, or where it could not be proved. */
   readonly certificate: Certificate | null
+  /** Where the program was given up: after so many steps of the simplex method; else null. */
+  readonly givenUpAfter: number | null
 }
 
 /** Margins below this are rounding of the solver's tolerance, 1e-9. */
@@ -40,7 +42,7 @@ const mostBasis = 200
 export function* oneWay(space: LiftSpace, tilts: number, frozen: Uint8Array, chosen: Int32Array, solver: LinearSolver): Steps<OneWay> {
   const stuck = chosen.find((joint) => frozen[joint] === 1)
   if (stuck !== undefined) {
-    return { margin: 0, heights: null, certificate: yield* provenCertificate(space, Int32Array.of(stuck), Float64Array.of(1)) }
+    return { margin: 0, heights: null, certificate: yield* provenCertificate(space, Int32Array.of(stuck), Float64Array.of(1)), givenUpAfter: null }
   }
   const folding = space.dimension - tilts
   const program = folding <= mostBasis ? yield* basisProgram(space, folding, chosen) : heightsProgram(space, chosen)
@@ -50,12 +52,12 @@ export function* oneWay(space: LiftSpace, tilts: number, frozen: Uint8Array, cho
 /** The program solved, and the answer checked on exact lifts. */
 export function* answered(space: LiftSpace, chosen: Int32Array, program: OneWayProgram, solver: LinearSolver): Steps<OneWay> {
   const answer = yield* solver.solved(program.program, 'Folding one way')
-  if (answer.status !== 'optimal') return { margin: 0, heights: null, certificate: null }
+  if (answer.status !== 'optimal') return { margin: 0, heights: null, certificate: null, givenUpAfter: answer.steps }
   const roof = yield* broughtFlat(space, program.heights(answer.x), 2)
   const { margin, largest } = marginOf(space, roof, chosen)
-  if (margin > leastMargin) return { margin, heights: roof.map((height) => height / largest), certificate: null }
+  if (margin > leastMargin) return { margin, heights: roof.map((height) => height / largest), certificate: null, givenUpAfter: null }
   const weights = Float64Array.from(chosen, (_, k) => Math.abs(answer.rowDual[k]))
-  return { margin: 0, heights: null, certificate: yield* provenCertificate(space, chosen, weights) }
+  return { margin: 0, heights: null, certificate: yield* provenCertificate(space, chosen, weights), givenUpAfter: null }
 }
 
 /** Margin of a roof: its least ridge among the chosen joints over its largest form force. */

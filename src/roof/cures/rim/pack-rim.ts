@@ -66,15 +66,21 @@ const riseWithin = 1e-4
 /** What the largest correction may be over the least found, so that roofs are left to choose from. */
 const slack = 2e-3
 
+/** Not tried: the basis of the lifts would be too large. */
+export interface PackingTooLarge {
+  readonly nodes: number
+  readonly lifts: number
+}
+
 /** null: no level is held at the rim, or no roof under the other conditions rises. */
-export function* packedRim({ plan, free, hard, names, areas, wish, rise, rule }: PackQuestion): Steps<PackedRim | null> {
+export function* packedRim({ plan, free, hard, names, areas, wish, rise, rule }: PackQuestion): Steps<PackedRim | PackingTooLarge | null> {
   const held = heldAtRim(plan, hard)
   if (held.rows.length === 0) return null
   const rest = rowsBut(hard, held.rows)
   const { space, start } = yield* feasibleRoof(plan, free, rest, names, wish, areas)
   if (start === null || space.dimension === 0) return null
   const n = plan.nodeCount, d = space.dimension
-  if (n * d > mostNumbers || n * d * d > mostProducts) return null
+  if (n * d > mostNumbers || n * d * d > mostProducts) return { nodes: n, lifts: d }
   const found = peakOf(space, wish, rule.down)
   if (found === null) return null
   const { peak, lift } = found

@@ -156,6 +156,21 @@ describe('what is kept', () => {
     for (let e = 0; e < drawn.edgeCount; e += 1) expect(length(plan, e)).toBeGreaterThan(0.98 * Math.min(0.004, length(drawn, e)))
   })
 
+  test('no corner gets sharper than asked, unless it was', () => {
+    const sharpest = 50
+    const { plan } = movedPlanOf(drawn, { target }, { leastAngle: (sharpest * Math.PI) / 180 })
+    const corners = (of: Plan): number[] => Array.from({ length: of.panelCount }, (_, p) => {
+      const nodes = [...of.corner.subarray(of.panelStart[p], of.panelStart[p + 1])]
+      return nodes.map((node, k) => {
+        const [a, b] = [nodes[(k + nodes.length - 1) % nodes.length]!, nodes[(k + 1) % nodes.length]!]
+        const [ax, ay, bx, by] = [of.x[a]! - of.x[node]!, of.y[a]! - of.y[node]!, of.x[b]! - of.x[node]!, of.y[b]! - of.y[node]!]
+        return (Math.abs(Math.atan2(ax * by - ay * bx, ax * bx + ay * by)) * 180) / Math.PI
+      })
+    }).flat()
+    const before = corners(drawn)
+    corners(plan).forEach((angle, k) => expect(angle).toBeGreaterThan(Math.min(sharpest, before[k]!) - 0.5))
+  })
+
   test('straight joint runs stay straight: a T-junction, and a line across the plan', () => {
     // Two rows of bricks: each head joint ends on the bed joint, which runs straight through; voids none.
     const plan = planOf(

@@ -18,10 +18,12 @@ function packed(plan: Plan, conditions: readonly Condition[], rise: number): Pac
   const rows = conditionRows(plan, conditions, 0)
   if (!rows.ok) throw new Error(rows.problem.message)
   const { span } = plan.frame
-  return finish(packedRim({
+  const found = finish(packedRim({
     plan, free: finish(freeRim(plan)), hard: rows.value.hard, names: conditions.map(({ name }) => name), areas: nodeAreas(plan),
     wish: shapeHeights(plan, 'dome').heights.map((z) => (rise / span) * z), rise: rise / span, rule: { down: false, datum: null },
   }))
+  if (found !== null && 'lifts' in found) throw new Error('too large')
+  return found
 }
 
 describe('minimax', () => {
