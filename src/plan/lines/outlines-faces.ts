@@ -3,6 +3,8 @@
  * no other line runs inside one; then each is one region of the arrangement: at every corner its next side is also the
  * graph's next edge, and no figure floats inside it.
  *
+ * A region of a map that runs all round another is left out and becomes a void; anywhere else it is refused.
+ *
  * Where they overlap, a mesh (OBJ) is refused: it says itself what its faces are. In drawings one outline inside another is
  * a perimeter or a zone, and all is line work; outlines that cut across each other are refused, since reading them as line
  * work would make slivers of panels that overlap by mistake.
@@ -55,7 +57,8 @@ export interface OutlineInput {
 interface Findings {
   lineInside: [number, number] | null
   overlap: { readonly place: Place; readonly panels: readonly number[]; readonly three: boolean } | null
-  ring: Place | null
+  /** Panels that run all round a hole, with the first place of each. */
+  rings: Map<number, Place>
 }
 
 export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
@@ -64,7 +67,7 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
   const isMesh = drawing.format === 'OBJ'
   const repeats = new Places()
   const collapsed = new Places()
-  const findings: Findings = { lineInside: null, overlap: null, ring: null }
+  const findings: Findings = { lineInside: null, overlap: null, rings: new Map() }
   const place = (loop: number, node: number, others: readonly number[] = []): Place => ({
     ...(loops.line[loop] > 0 ? { line: loops.line[loop] } : {}),
     names: [...others, loop].map(panelName),
@@ -131,7 +134,9 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
   }
 
   function noteInside(edge: number, holder: number, node: number): void {
-    if (onHole[edge] === 1) findings.ring ??= place(holder, node)
+    if (onHole[edge] === 1) {
+      if (!findings.rings.has(holder)) findings.rings.set(holder, place(holder, node))
+    }
     else if (uses[edge] === 0) findings.lineInside ??= at(node)
     else {
       const other = Math.max(outlineOf[2 * edge], outlineOf[2 * edge + 1])
@@ -158,10 +163,20 @@ export function outlineFaces(input: OutlineInput): Result<OutlineFaces> {
     const spot = crossed === null ? where : place(Math.max(one, other), crossed[2], [Math.min(one, other)])
     return fail('panels-overlap', 'two panels overlap', spot, 'delete one, or redraw its outline')
   }
-  if (findings.ring !== null) {
-    return fail('panel-round-hole', 'the panel runs all round a hole that no joint reaches', findings.ring, 'divide it by a joint from its rim to the hole')
+  const [ring] = findings.rings.values()
+  const rest = panels.filter((panel) => !findings.rings.has(panel))
+  if (ring !== undefined && drawing.format === 'GeoJSON' && rest.length > 0) return ok({ areFaces: true, notice: ringsLeftOut(findings.rings), panels: Int32Array.from(rest), repeats, collapsed })
+  if (ring !== undefined) {
+    return fail('panel-round-hole', 'the panel runs all round a hole that no joint reaches', ring, 'divide it by a joint from its rim to the hole')
   }
   return ok({ areFaces: true, notice: null, panels: Int32Array.from(panels), repeats, collapsed })
+}
+
+/** A map is not refused for a region with an enclave: the region becomes a void, which is said. */
+function ringsLeftOut(rings: Findings['rings']): string {
+  const named = [...rings.values()].slice(0, 3).map(({ line, at: [x, y] = [0, 0] }) => `${line === undefined ? '' : `line ${line}, `}at ${Number(x.toFixed(3))}, ${Number(y.toFixed(3))}`)
+  const more = rings.size > named.length ? ` and ${rings.size - named.length} more` : ''
+  return `${rings.size === 1 ? '1 region runs' : `${rings.size} regions run`} all round a hole, which a panel cannot: left out, so that ${rings.size === 1 ? 'it counts as a void' : 'they count as voids'} (${named.join('; ')}${more}). Divide ${rings.size === 1 ? 'it' : 'each'} by a joint from its rim to the hole to make panels of it.`
 }
 
 function three(known: Findings['overlap'], place: Place, panel: number): Findings['overlap'] {

@@ -112,7 +112,7 @@ export function* panelFaces(drawing: Drawing, frame: LineFrame, mmPerUnit: numbe
       return ok({
         ...common, ...facesOf(graph, outlines, panels),
         lineOfPanel: Int32Array.from(panels, (panel) => loops.line[panel]),
-        repairs: faceRepairs(traced, judged.value, outlines), notices: [], problem: null,
+        repairs: faceRepairs(traced, judged.value, outlines), notices: judged.value.notice === null ? [] : [judged.value.notice], problem: null,
         doubles: yield* doublesOfOutlines(graph, figures, outlines, panels, frame.snap),
       })
     } else if (judged.value.notice !== null) notices = [judged.value.notice]

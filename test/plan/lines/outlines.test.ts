@@ -129,6 +129,11 @@ describe('interior rings', () => {
   })
 
   test('a panel all round one is refused with its place', () => {
+    // In a map the rest is read: the region is a void round its enclave, and that is said.
+    const map = reading({ format: 'GeoJSON', outlines: [outer, hole, [[4, 0], [8, 0], [8, 4], [4, 4]]], holes: [hole] })
+    expect(map.ok && [map.value.plan.panelCount, map.value.notices.filter((each) => each.includes('all round a hole')).join('')]).toEqual([
+      2, '1 region runs all round a hole, which a panel cannot: left out, so that it counts as a void (line 10, at 1, 1). Divide it by a joint from its rim to the hole to make panels of it.',
+    ])
     expect(reading({ outlines: [outer], holes: [hole] })).toMatchObject({ ok: false, problem: { code: 'panel-round-hole', where: { line: 10, at: [1, 1] } } })
   })
 
