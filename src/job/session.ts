@@ -5,6 +5,7 @@
 import { fail, ok, type Result } from '../base/result.ts'
 import { cancelled, drive, type DriveOptions } from '../base/steps.ts'
 import { emptyBrief, type Brief } from '../plan/project/brief.ts'
+import { heldNode } from '../plan/project/edits.ts'
 import { noOptions, type NamedFile, type Options } from '../plan/project/options.ts'
 import { wishesOf } from '../plan/project/wishes.ts'
 import type { ReadPlan } from '../plan/read-plan.ts'
@@ -82,6 +83,25 @@ export class Session {
       this.found = null
     }
     return made
+  }
+
+  /**
+   * Asks what a hand would that drags a node, a few times, and forgets the answers: what they run is compiled by the time the
+   * hand comes. Ends early when the signal is aborted.
+   */
+  async rehearse(times: number, driven: DriveOptions = {}): Promise<void> {
+    const { question, last } = this
+    const heights = last?.answer.roof?.heights
+    if (question === null || last === null || heights === undefined) return
+    const node = this.read.plan.nodeCount >> 1
+    let { space } = last.under
+    for (let time = 1; time <= times; time += 1) {
+      const condition = heldNode(node, heights[node] + 1e-3 * time * this.read.plan.frame.span)
+      const conditions = [...question.brief.conditions.filter(({ name }) => name !== condition.name), condition]
+      const made = await drive(answerTo({ ...question, brief: { ...question.brief, conditions }, free: last.free, space }), driven)
+      if (made === cancelled || !made.ok) return
+      space = made.value.under.space
+    }
   }
 
   /** The ways left under the conditions of the last answer, smoothest first, at most `count`. */

@@ -12,10 +12,13 @@ interface Scope {
 
 const scope = globalThis as unknown as Scope
 const stops = new Map<number, AbortController>()
-let session: { plan: number; session: Session } | null = null
+let session: { plan: number; session: Session; rehearsed: boolean } | null = null
 let queue: Promise<void> = Promise.resolve()
+/** Stops the rehearsal that runs, or the wait for it. */
+let rehearsal = new AbortController()
 
 scope.onmessage = ({ data }) => {
+  rehearsal.abort()
   if (data.kind === 'cancel') {
     stops.get(data.id)?.abort()
     return
@@ -32,6 +35,23 @@ scope.onmessage = ({ data }) => {
       stops.delete(data.id)
     }
   })
+}
+
+/** Questions of a drag asked for nothing in the quiet after the first answer: the first drag of a session took four times as long. */
+const rehearsedTimes = 4
+const quietBefore_ms = 300
+/** Above this many panels a rehearsal holds the worker's memory longer than it helps. */
+const mostRehearsed = 12_000
+
+function rehearseSoon(on: NonNullable<typeof session>): void {
+  const { signal } = (rehearsal = new AbortController())
+  setTimeout(() => {
+    if (signal.aborted) return
+    queue = queue.then(async () => {
+      await on.session.rehearse(rehearsedTimes, { signal, sliceMs: 10 })
+      on.rehearsed = !signal.aborted
+    }).catch(() => {})
+  }, quietBefore_ms)
 }
 
 /** Progress at most ten times a second: each message costs the page a turn. */
@@ -51,7 +71,7 @@ async function told(question: Exclude<ToWorker, { kind: 'cancel' }>, signal: Abo
   switch (question.kind) {
     case 'read': return read(question.ask, drive)
     case 'base':
-      session = { plan: question.ask.plan, session: new Session(question.ask.read, question.ask.name) }
+      session = { plan: question.ask.plan, session: new Session(question.ask.read, question.ask.name), rehearsed: question.ask.read.plan.panelCount > mostRehearsed }
       return ok(null)
     default: {
       if (session === null || session.plan !== question.ask.plan) return fail('no-plan', 'the worker has no such plan')
@@ -68,6 +88,7 @@ async function told(question: Exclude<ToWorker, { kind: 'cancel' }>, signal: Abo
       if (question.kind === 'files') return held.files(question.ask.csv, drive)
       const { brief, options, target } = question.ask
       const made = await held.answer(brief, options, target, drive)
+      if (made.ok && !session.rehearsed) rehearseSoon(session)
       // The page has the plan: a copy of it with every answer would cost it a third of the message.
       return made.ok ? ok({ ...made.value.answer, plan: undefined }) : made
     }
