@@ -1,7 +1,15 @@
 /**
- * Times the built page in Chromium, as a hand meets it: from a pointer move to the new answer while a node is dragged, from
- * frame to frame while the roof is turned, and the longest stretch for which the page hears nothing. With WebGL (in software
- * where there is no card) and without. Medians are kept as rows of page.csv.
+ * Times the built page in Chromium, as a hand meets it, with WebGL (in software where there is no card) and without:
+ *
+ * - answer: from the question that a pointer move makes to its answer on the page, medians over a dragged node. The first move
+ *   stands apart: it asks of new rows.
+ * - drawn: from the pointer move to the frame after the one in which the last picture that the answer changes was painted.
+ *   Pixels of a canvas or of a software WebGL are made, or read back, as that frame is handed over, so they are in it.
+ * - frame: the same from a pointer move that turns the roof, a move at a time.
+ * - longest tasks: the longest stretch for which the page hears nothing, while a drawing is read, when it is accepted and drawn,
+ *   and over the whole drag.
+ *
+ * Rows are kept in page.csv.
  *
  *   node test/bench/run.mjs page [panels ...] [--kind cells|quads] [--webgl yes|no] [--keep]
  */
@@ -15,12 +23,14 @@ import type { Page } from 'playwright-core'
 import { startBrowser } from '../page/chromium.ts'
 import { benchPlan, kinds, type Kind } from './solver-plans.ts'
 
-const head = 'date,commit,processor,plan,panels,webgl,open_ms,first_answer_ms,answer_ms,answer_worst_ms,frame_ms,frame_worst_ms,longest_task_open_ms,longest_task_drag_ms'
+const head = 'date,commit,processor,plan,panels,webgl,open_ms,first_answer_ms,first_move_ms,answer_ms,answer_worst_ms,drawn_ms,frame_ms,frame_worst_ms,longest_task_read_ms,longest_task_accept_ms,longest_task_drag_ms'
 const moves = 48
 
 /** What the page's own measures say, by name, and what it did not hear through. */
 interface Seen {
   readonly answers: number[]
+  /** When a set of pictures was last painted to the end, on the page's clock. */
+  readonly drawn: number[]
   readonly tasks: number[]
 }
 
@@ -65,51 +75,72 @@ async function main(words: readonly string[]): Promise<void> {
 
 async function timed(page: Page, address: string, plan: ReturnType<typeof benchPlan>): Promise<number[]> {
   await page.addInitScript(() => {
-    const seen: Seen = { answers: [], tasks: [] }
+    const seen: Seen = { answers: [], drawn: [], tasks: [] }
     Object.assign(window, { seen })
-    new PerformanceObserver((list) => { for (const entry of list.getEntries()) if (entry.name === 'answer') seen.answers.push(entry.duration) }).observe({ entryTypes: ['measure'] })
+    new PerformanceObserver((list) => {
+      for (const entry of list.getEntries()) {
+        if (entry.name === 'answer') {
+          seen.answers.push(entry.duration)
+          Object.assign(window, { answeredAt: entry.startTime + entry.duration })
+        }
+        if (entry.name === 'drawn') seen.drawn.push(entry.startTime + entry.duration)
+      }
+    }).observe({ entryTypes: ['measure'] })
     new PerformanceObserver((list) => { for (const entry of list.getEntries()) seen.tasks.push(entry.duration) }).observe({ entryTypes: ['longtask'] })
+    // When the hand moved last, as the page heard it.
+    window.addEventListener('pointermove', (event) => { Object.assign(window, { moved: event.timeStamp }) }, { capture: true })
   })
   await page.goto(address)
   await page.waitForSelector('.sheet')
-  const seen = (): Promise<Seen> => page.evaluate(() => {
-    const { seen } = window as unknown as { seen: Seen }
-    const copy = { answers: [...seen.answers], tasks: [...seen.tasks] }
+  await page.waitForTimeout(1000)
+  const seen = (): Promise<Seen & { moved: number }> => page.evaluate(() => {
+    const { seen, moved } = window as unknown as { seen: Seen; moved: number }
+    const copy = { answers: [...seen.answers], drawn: [...seen.drawn], tasks: [...seen.tasks], moved }
     seen.answers.length = 0
+    seen.drawn.length = 0
     seen.tasks.length = 0
     return copy
   })
+  const drawn = (): Promise<unknown> => page.waitForFunction(() => {
+    const { seen, answeredAt = 0 } = window as unknown as { seen: Seen; answeredAt?: number }
+    return (seen.drawn.at(-1) ?? -1) > answeredAt
+  })
   const answered = async (): Promise<void> => {
     await page.waitForFunction(() => (window as unknown as { seen: Seen }).seen.answers.length > 0)
-    // What an answer makes the page draw belongs to it.
-    await page.evaluate(() => new Promise((resolve) => { requestAnimationFrame(() => requestAnimationFrame(resolve)) }))
+    await drawn()
   }
 
+  await seen()
   const opened = Date.now()
   await page.setInputFiles('#open-file', { name: 'plan.obj', mimeType: 'text/plain', buffer: Buffer.from(objText(plan)) })
   await page.waitForSelector('.report .solid:not([disabled])')
   const openMs = Date.now() - opened
+  await page.waitForTimeout(500)
+  const read = await seen()
   await page.click('.report .solid')
   await answered()
-  await page.waitForTimeout(1500)
+  await page.waitForTimeout(2000)
   const first = await seen()
 
-  // A node in the middle of the list, dragged by its handle a move at a time, each once the one before is answered.
+  // A node in the middle of the list, dragged by its handle a move at a time, each once the one before is answered and drawn.
   await page.locator('.rows').focus()
   await page.keyboard.press('PageDown')
   await page.waitForSelector('.plate .round .word')
   await page.locator('.plate .round .word').first().click()
   const handle = (await page.locator('.cell-plan .handle').first().boundingBox())!
-  await page.mouse.move(handle.x + handle.width / 2, handle.y + handle.height / 2)
+  const [x, y] = [handle.x + handle.width / 2, handle.y + handle.height / 2]
+  await page.mouse.move(x, y)
   await page.mouse.down()
+  await page.waitForTimeout(300)
+  const tasks = (await seen()).tasks
   const answers: number[] = []
-  const tasks: number[] = []
+  const pictures: number[] = []
   for (let move = 1; move <= moves; move += 1) {
-    await page.mouse.move(handle.x + handle.width / 2, handle.y + handle.height / 2 - 2 * move)
+    await page.mouse.move(x, y - 2 * move)
     await answered()
     const now = await seen()
-    // The first move asks of new rows: its factor is found anew.
-    if (move > 1) answers.push(...now.answers)
+    answers.push(now.answers[0]!)
+    if (move > 1) pictures.push(now.drawn.at(-1)! - now.moved)
     tasks.push(...now.tasks)
   }
   await page.mouse.up()
@@ -119,24 +150,19 @@ async function timed(page: Page, address: string, plan: ReturnType<typeof benchP
   tasks.push(...(await seen()).tasks)
 
   const roof = (await page.locator('.roof canvas').boundingBox())!
-  await page.evaluate(() => {
-    const frames: number[] = []
-    Object.assign(window, { frames })
-    let last = performance.now()
-    const count = (now: number): void => {
-      frames.push(now - last)
-      last = now
-      requestAnimationFrame(count)
-    }
-    requestAnimationFrame(count)
-  })
   await page.mouse.move(roof.x + roof.width / 2, roof.y + roof.height / 2)
   await page.mouse.down()
-  await page.evaluate(() => { (window as unknown as { frames: number[] }).frames.length = 0 })
-  for (let move = 1; move <= 40; move += 1) await page.mouse.move(roof.x + roof.width / 2 + 3 * move, roof.y + roof.height / 2)
-  const frames = await page.evaluate(() => (window as unknown as { frames: number[] }).frames.slice(1))
+  const frames: number[] = []
+  for (let move = 1; move <= 24; move += 1) {
+    await seen()
+    await page.mouse.move(roof.x + roof.width / 2 + 3 * move, roof.y + roof.height / 2)
+    await drawn()
+    const now = await seen()
+    if (move > 1) frames.push(now.drawn.at(-1)! - now.moved)
+  }
   await page.mouse.up()
-  return [openMs, first.answers[0] ?? NaN, median(answers), Math.max(...answers), median(frames), Math.max(...frames), Math.max(0, ...first.tasks), Math.max(0, ...tasks)]
+  const [firstMove, ...others] = answers
+  return [openMs, first.answers[0] ?? NaN, firstMove ?? NaN, median(others), Math.max(...others), median(pictures), median(frames), Math.max(...frames), Math.max(0, ...read.tasks), Math.max(0, ...first.tasks), Math.max(0, ...tasks)]
 }
 
 function objText({ coordinates, start, index }: ReturnType<typeof benchPlan>): string {
