@@ -47,7 +47,7 @@ export function GatheredPlate({ gathered, answer, window, size }: Placed & { rea
             return <line key={joint} x1={ax} y1={ay} x2={bx} y2={by} />
           }) : places.map(([px, py], k) => { const [x, y] = toSheet(window, px, py); return <circle key={k} cx={x} cy={y} r={6} /> })}
       </svg>
-      <div className="plate" style={plateAt(lastX, lastY, size)} role="group" aria-label={`${figure(indices.length)} ${kind}s gathered`}>
+      <div className="plate" style={plateAt(lastX, lastY, { answer, window, size })} role="group" aria-label={`${figure(indices.length)} ${kind}s gathered`}>
         <b>{shortList(names)}</b>
         {kind === 'panel' && <>
           <p>{word('In one plane', () => take('one plane', { kind: 'coplanar', at: panels }))}{word('No ponding', () => take('no ponding', { kind: 'no-ponding', at: panels }))}{word('No valley between', () => take('no valley', { kind: 'one-way', at: panels, fold: 'no-valley' }))}</p>

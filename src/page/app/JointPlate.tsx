@@ -69,7 +69,7 @@ export function JointPlate({ joint, answer, window, size }: Placed & { readonly 
             }}><span /></button>
         </>
       )}
-      <div className="plate" style={plateAt(x, y, size)}>
+      <div className="plate" style={plateAt(x, y, { answer, window, size })}>
         <b>{name}</b> {kind}{kind === 'ridge' || kind === 'valley' ? ` ${figure(joints.force[joint], 3)}` : ''}
         {kind === 'frozen' ? <WhyFrozen joint={joint} answer={answer} /> : <small>{figure(joints.fold_deg[joint], 1)}° between its panels. Form force: no load, not a member force.</small>}
         {kind !== 'frozen' && <NumberField label="force" start={(force < 0 ? '\u2212' : '') + typable(Math.abs(force), 3)} onValue={ask} />}

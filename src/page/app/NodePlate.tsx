@@ -47,7 +47,7 @@ export function NodePlate({ node, answer, window, size }: Placed & { readonly no
           event.preventDefault()
           ask(height + direction * stepOf(event.shiftKey))
         }}><span /></button>
-      <div className="plate" style={plateAt(x, y, size)}>
+      <div className="plate" style={plateAt(x, y, { answer, window, size })}>
         <b>{name}</b> {roof === null ? '' : `${signed(height * mm)} mm`}
         <LengthField label="height" bare="mm" to={plan.unit} start={roof === null ? '' : typable(Math.round(height * mm))} onValue={ask} />
         {existing !== undefined && 'level' in existing && existing.level !== null && <small>asked {signed(existing.level * mm)} mm{existing.off === true ? ', off' : soft === null ? '' : ', softly'}</small>}

@@ -1,7 +1,6 @@
 /** A drawing that is read and not accepted: the plan as read, and the reader's report beside it. */
 import { useCallback, useEffect, useRef, useState, type PointerEvent } from 'react'
 import { counted, figure } from '../../paper/drawing/figures.ts'
-import { detailRadius } from '../../paper/drawing/detail-circle.ts'
 import { readDetail, readDrawing, readWindow } from '../../paper/drawing/read-drawing.ts'
 import { panned, toPlan, toSheet, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import type { LeftOut } from '../../base/repair.ts'
@@ -68,7 +67,7 @@ export function OpeningPlan() {
     last.current = null
     if (!wasClick || read === null || shown.current === null) return
     const detail = repair < 0 ? null : readDetail(read, shown.current, { repair, place, drawn, ...sheet.current })
-    if (detail !== null && Math.hypot(detail.x - x, detail.y - y) < detailRadius) {
+    if (detail !== null && Math.hypot(detail.x - x, detail.y - y) < detail.radius) {
       zoomToRepair()
       return
     }

@@ -26,7 +26,7 @@ export function PanelPlate({ panel, answer, window, size }: Placed & { readonly 
   const corners = Array.from(plan.corner.subarray(plan.panelStart[panel], plan.panelStart[panel + 1]))
   const joints = Array.from(plan.cornerHalf.subarray(plan.panelStart[panel], plan.panelStart[panel + 1]), (half) => half >> 1).filter((edge) => edge < plan.jointCount)
   return (
-    <div className="plate" style={plateAt(x, y, size)}>
+    <div className="plate" style={plateAt(x, y, { answer, window, size })}>
       <b>{name}</b> {figure(slope, 1)}° {isLevel ? 'level' : compassPoint(bearing)}
       <NumberField label="slope °" start={typable(slope, 1)} from={0} below={90} onValue={(value) => hold(value, isLevel ? 180 : bearing)} />
       <NumberField label="falls to °" start={isLevel ? '' : typable(bearing)} onValue={(value) => hold(slope, value)} />

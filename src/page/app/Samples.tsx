@@ -24,7 +24,7 @@ export function Samples() {
           <h3>Go on with</h3>
           <ul className="samples">{saved.slice(0, 4).map((project) => <li key={project.id}><button className="word" onClick={() => desk.goOn(project)}>{project.name}</button> <span className="note">step {project.steps}, {project.at}</span></li>)}</ul>
         </>}
-        <p className="entry note">Or look at one of the samples beside: each says why it is there.</p>
+        <p className="entry note">Or look at one of the samples: each says why it is there.</p>
       </div>
     </section>
   )

@@ -32,6 +32,8 @@ export function TitleBlock() {
       <dl className="facts">
         <div>
           <dt>Drawing</dt><dd className="clip" title={opening?.file.name ?? doc?.name}>{opening?.file.name ?? doc?.name ?? '\u2013'}{doc === null && opening === null ? '' : `, ${unit}`}</dd>
+        </div>
+        <div>
           <dt>Rim, mm</dt><dd className="clip">{answer === null || opening !== null ? 'not yet raised' : rimWords(answer)}</dd>
         </div>
         <div>
@@ -40,6 +42,8 @@ export function TitleBlock() {
             ? <LengthField label="" named="Rise over springing" bare="mm" to={unit} start={typable(rise * mm)} onValue={(value) => value > 0 && desk.brief({ rise: value }, `Rise ${figure(value * mm)} mm`, `was ${figure(rise * mm)} mm`)}
               onClear={() => doc.brief.rise !== null && desk.take({ doc: withRise(doc, null), what: 'Rise as it comes', before: `was ${figure(rise * mm)} mm` })} />
             : 'not yet raised'}</dd>
+        </div>
+        <div>
           <dt>Springing</dt>
           <dd>{doc === null || opening !== null ? 'lowest of the rim' : <LengthField label="" named="Springing, empty for the lowest node of the rim" bare="mm" to={unit} empty="lowest" start={doc.brief.datum === null ? '' : typable(doc.brief.datum * mm)}
             onValue={(datum) => desk.take({ doc: withDatum(doc, datum), what: `Springing at ${figure(datum * mm)} mm`, before: doc.brief.datum === null ? 'was the lowest of the rim' : `was ${figure(doc.brief.datum * mm)} mm` })}
@@ -48,11 +52,15 @@ export function TitleBlock() {
         <div>
           <dt>Flat within, mm</dt>
           <dd>{doc === null || opening !== null ? figure(flat_mm, 1) : <NumberField label="" named="Flat within, mm" start={figure(flat_mm, 1)} onValue={(value) => value > 0 && desk.brief({ flat_mm: value }, `Flat within ${figure(value, 2)} mm`, `was ${figure(flat_mm, 2)} mm`)} />}</dd>
+        </div>
+        <div>
           <dt>Least slope, °</dt>
           <dd>{doc === null || opening !== null ? (leastSlope === null ? 'none' : figure(leastSlope, 1)) : <NumberField label="" named="Least slope, degrees" start={leastSlope === null ? '0' : figure(leastSlope, 1)} onValue={(value) => value >= 0 && value < 90 && desk.take({ doc: { ...doc, leastSlope: value === 0 ? null : value }, what: value === 0 ? 'No least slope' : `Least slope ${figure(value, 1)}°`, before: leastSlope === null ? 'was none' : `was ${figure(leastSlope, 1)}°` })} />}</dd>
         </div>
         <div>
           <dt>Freedom left</dt><dd>{answer === null || opening !== null ? '\u2013' : left === null ? 'none, they clash' : figure(left)}</dd>
+        </div>
+        <div>
           <dt>Step</dt><dd className="clip">{at < 0 ? 'none' : `${at + 1}${inHand ? ', in hand' : saved === '' ? '' : `, ${saved}`}`}{answer !== null && <span className="note"> {figure(ms)} ms</span>}</dd>
         </div>
       </dl>
@@ -70,7 +78,7 @@ function Verdict() {
   const hasDoc = useDeskState((state) => state.doc !== null)
   const { leastSlope, flat_mm } = useLimits()
   const said = useMemo((): { sign: Sign; first: Piece[]; second: Piece[] } => {
-    if (problem !== null) return { sign: 'not', first: [sentence(problem)], second: ['Nothing was replaced.'] }
+    if (problem !== null) return { sign: 'not', first: [sentence(problem)], second: ['Nothing was replaced. ', { text: 'Put it away', to: { kind: 'problem' } }] }
     if (opening !== null) {
       if (opening.problem !== null) return { sign: 'not', first: [sentence(opening.problem)], second: ['The open project is untouched.'] }
       if (opening.read === null) return { sign: 'open', first: ['Reading the drawing.'], second: [] }
@@ -89,6 +97,7 @@ function Verdict() {
   const go = (to: Target): void => {
     if (to.kind === 'panel') desk.select({ kind: 'panel', index: to.index })
     else if (to.kind === 'flagged') desk.set({ filter: 'flagged', reading: 'slope', pane: 'list' })
+    else if (to.kind === 'problem') desk.set({ problem: null })
     else if (to.kind === 'reading') desk.set({ reading: to.name })
     else desk.showDesk('ways')
   }

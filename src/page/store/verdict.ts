@@ -12,6 +12,7 @@ export type Target =
   | { readonly kind: 'flagged' }
   | { readonly kind: 'reading'; readonly name: 'group' | 'flatness' | 'slope' }
   | { readonly kind: 'ways' }
+  | { readonly kind: 'problem' }
 
 export type Piece = string | { readonly text: string; readonly to: Target }
 

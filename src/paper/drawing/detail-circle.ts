@@ -4,12 +4,14 @@ import { Batch, dots, label, type Item } from './display-list.ts'
 import { figure } from './figures.ts'
 import { toSheet, type PlanWindow } from './plan-window.ts'
 
-export const detailRadius = 72
+/** Radius on a sheet that has room; on a small one a fifth of its shorter side. */
+const fullRadius = 72
 
 export interface Detail {
   /** Middle of the circle on the sheet, and px to the plan unit in it. */
   readonly x: number
   readonly y: number
+  readonly radius: number
   readonly scale: number
   readonly times: number
 }
@@ -29,6 +31,7 @@ interface Sheet {
 export function detailAt(plan: Plan, window: PlanWindow, at: readonly [number, number], lines: Float64Array | null, { width, height }: Sheet): Detail | null {
   const edge = shortestNear(plan, at)
   if (edge === 0) return null
+  const detailRadius = Math.min(fullRadius, 0.2 * Math.min(width, height))
   const off = lines === null ? Infinity : endOff(lines, at, edge / 20)
   const wished = Number.isFinite(off) ? (0.28 * detailRadius) / (off * window.scale) : (0.67 * detailRadius) / (edge * window.scale)
   const times = rounds.filter((each) => each <= wished).pop() ?? 2
@@ -37,13 +40,12 @@ export function detailAt(plan: Plan, window: PlanWindow, at: readonly [number, n
   const [x, y] = [[width - far, height - far - 34], [far, height - far - 74], [width - far, far + 50], [far, far]]
     // The nearest corner that leaves the place itself in sight.
     .map(([cx, cy]) => ({ cx, cy, d: Math.hypot(cx - px, cy - py) })).filter(({ d }) => d > far + 12).sort((a, b) => a.d - b.d).map(({ cx, cy }) => [cx, cy])[0] ?? [width - far, height - far - 26]
-  return { x, y, scale: times * window.scale, times }
+  return { x, y, radius: detailRadius, scale: times * window.scale, times }
 }
 
 /** The detail with a leader from its place; edges are cut at the circle, `places` are ringed. */
 export function detailItems(plan: Plan, window: PlanWindow, at: readonly [number, number], places: readonly (readonly [number, number])[], drawn: Float64Array | null, detail: Detail): Item[] {
-  const { x, y, scale, times } = detail
-  const r = detailRadius
+  const { x, y, radius: r, scale, times } = detail
   const to = (px: number, py: number): readonly [number, number] => [x + (px - at[0]) * scale, y - (py - at[1]) * scale]
   const lines = new Batch()
   for (let e = 0; e < plan.edgeCount; e += 1) {

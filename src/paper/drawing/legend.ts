@@ -129,14 +129,15 @@ export function lineKey(joints: Joints, held: boolean, inRow = false): Block {
   rows.push({ name: 'rim', draw: (x, y) => [polyline('rim', [x, y, x + 26, y])] })
   if (held) rows.push({ name: 'held', draw: (x, y) => [heldRing(x + 13, y), { kind: 'dots', radius: 1.6, fill: 'hand', line: null, lineWidth: 0, points: Float64Array.of(x + 13, y) }] })
   const items: Item[] = []
-  const stepX = 92
   const stepY = 19
+  let along = 0
   for (const [i, row] of rows.entries()) {
-    const x = inRow ? i * stepX : 0
+    const x = inRow ? along : 0
+    along += 46 + 5.8 * row.name.length
     const y = inRow ? 8 : 8 + i * stepY
     items.push(...row.draw(x, y), label(x + 33, y + 4, row.name, { size: 12, tone: 'ink' }))
   }
-  return inRow ? { items, width: rows.length * stepX, height: 18 } : { items, width: 104, height: rows.length * stepY }
+  return inRow ? { items, width: along, height: 18 } : { items, width: 104, height: rows.length * stepY }
 }
 
 /** The ring of a held node as a circle of 24 corners: dots are filled or lined, and this one is neither's width. */

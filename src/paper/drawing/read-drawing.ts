@@ -105,6 +105,23 @@ function voids({ plan }: ReadPlan, px: Float64Array): Item[] {
   return items
 }
 
+/** 26 px from its place, turned on by steps of 0.7 until it stands clear of the others (x0 y0 x1 y1 ..), farther out after a whole turn. */
+function balloonSpot(px: number, py: number, turn: number, width: number, height: number, others: readonly number[]): readonly [number, number] {
+  const at = (k: number): readonly [number, number] => {
+    const reach = k < 9 ? 26 : 46
+    return [Math.max(12, Math.min(width - 12, px + reach * Math.cos(turn + 0.7 * k))), Math.max(12, Math.min(height - 12, py + reach * Math.sin(turn + 0.7 * k)))]
+  }
+  const isClear = ([x, y]: readonly [number, number]): boolean => {
+    for (let i = 0; i < others.length; i += 2) if (Math.hypot(others[i] - x, others[i + 1] - y) < 19) return false
+    return true
+  }
+  for (let k = 0; k < 18; k += 1) {
+    const spot = at(k)
+    if (isClear(spot)) return spot
+  }
+  return at(0)
+}
+
 function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, place = 0, width, height }: ReadDrawingOptions): Item[] {
   const items: Item[] = []
   const leaders = new Batch()
@@ -121,8 +138,7 @@ function balloons(read: ReadPlan, window: PlanWindow, { repair: chosen, place = 
       if (chosen === i && k !== place % repair.where.length) continue
       // Out of the middle, so that balloons stand clear of one another and of what they point at.
       const turn = Math.atan2(py - height / 2, px - width / 2) + (k % 3) * 0.7
-      const bx = Math.max(12, Math.min(width - 12, px + 26 * Math.cos(turn)))
-      const by = Math.max(12, Math.min(height - 12, py + 26 * Math.sin(turn)))
+      const [bx, by] = balloonSpot(px, py, turn, width, height, [...open, ...filled])
       leaders.segment(px, py, bx, by)
       ;(chosen === i ? filled : open).push(bx, by)
       words.push(label(bx, by + 4, String(i + 1), { size: 11, bold: true, anchor: 'middle', tone: chosen === i ? 'paper' : 'fault' }))

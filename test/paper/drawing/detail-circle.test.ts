@@ -1,6 +1,6 @@
 /** The detail of a repair; values are exact: worked out by hand. */
 import { expect, test } from 'vitest'
-import { detailAt, detailItems, detailRadius } from '../../../src/paper/drawing/detail-circle.ts'
+import { detailAt, detailItems } from '../../../src/paper/drawing/detail-circle.ts'
 import { fitted } from '../../../src/paper/drawing/plan-window.ts'
 import { grid } from '../../make/plans.ts'
 
@@ -18,6 +18,6 @@ test('a gap of 0.3 mm in bays of 1 m is magnified until it is seen, and the line
   expect(0.0003 * detail.scale).toBeCloseTo(18, 6)
   for (const item of detailItems(plan, window, at, [at], lines, detail)) {
     if (item.kind !== 'strokes' || item.line === 'water') continue
-    for (let i = 0; i < item.points.length; i += 2) expect(Math.hypot(item.points[i]! - detail.x, item.points[i + 1]! - detail.y)).toBeLessThanOrEqual(detailRadius + 1e-6)
+    for (let i = 0; i < item.points.length; i += 2) expect(Math.hypot(item.points[i]! - detail.x, item.points[i + 1]! - detail.y)).toBeLessThanOrEqual(detail.radius + 1e-6)
   }
 })
