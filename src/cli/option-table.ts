@@ -43,7 +43,7 @@ export const optionTable: readonly OptionEntry[] = [
   { name: 'shape', value: 'SHAPE', group: 'What it should look like', help: 'dome (default), barrel, pitched or hipped' },
   { name: 'target', value: 'FILE|input|none', group: 'What it should look like', help: 'come near to the heights of a file, of the plan itself, or of neither' },
   { name: 'few-folds', value: null, group: 'What it should look like', help: 'fold along few joints, as gables and hips do (approximate)' },
-  { name: 'densities', value: 'uniform|fit|length|FILE', group: 'What it should look like', help: 'what edges bear while balancing: fit (default) comes near to the plan, length gives all the same force, FILE is a list joint,density' },
+  { name: 'densities', value: 'uniform|fit|length|FILE', group: 'What it should look like', help: 'what edges bear while balancing: fit (default) comes near to the plan, length gives all the same force, FILE is a list joint,density (J3, J3-J9, N4-N5, voids or all)' },
   { name: 'stay', value: 'NODE', repeatable: true, group: 'What the plan keeps', help: 'this node stays where it is, like N4 (repeatable)' },
   { name: 'rim-nodes', value: 'slide|fixed|free', group: 'What the plan keeps', help: 'rim nodes slide along straight rim lines (default), stay, or move freely' },
   { name: 'bend', value: null, group: 'What the plan keeps', help: 'straight joint runs may bend' },

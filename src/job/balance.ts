@@ -4,7 +4,7 @@ import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { densitiesFromCsv, type ListedDensity } from '../formats/densities-csv.ts'
 import { decodedText } from '../formats/text-encoding.ts'
-import { jointName, panelName } from '../plan/names.ts'
+import { jointName, nodeName, panelName } from '../plan/names.ts'
 import type { Plan } from '../plan/plan.ts'
 import type { NamedFile } from '../plan/project/options.ts'
 import { wishesOf, type Wishes } from '../plan/project/wishes.ts'
@@ -109,16 +109,25 @@ export function* densityOf(plan: Plan, densities: Densities): Steps<Result<Float
 /** Densities as typed, later rows over earlier ones; edges that no row names bear 1. */
 function typedDensities(plan: Plan, listed: readonly ListedDensity[], file: string): Result<Float64Array> {
   const density = uniformDensities(plan)
-  for (const { line, from, to, density: value } of listed) {
-    if (from === null) {
-      for (const edge of bearingEdges(plan)) density[edge] = value
-      continue
+  const bearing = bearingEdges(plan)
+  for (const { line, of, density: value } of listed) {
+    if (of === 'all' || of === 'voids') {
+      for (const edge of bearing) if (of === 'all' || edge >= plan.jointCount) density[edge] = value
+    } else if ('nodes' in of) {
+      const [a, b] = of.nodes
+      const edge = bearing.find((each) => (plan.origin[2 * each] === a && plan.origin[2 * each + 1] === b) || (plan.origin[2 * each] === b && plan.origin[2 * each + 1] === a))
+      if (edge === undefined) {
+        return fail('no-such-edge', `no joint and no edge of a void runs from ${nodeName(a)} to ${nodeName(b)}`, { file, line }, 'outer rim edges bear nothing; panewise raise lists the nodes')
+      }
+      density[edge] = value
+    } else {
+      const [from, to] = of.joints
+      const wrong = of.joints.find((joint) => joint >= plan.jointCount)
+      if (wrong !== undefined) {
+        return fail('no-such-joint', `there is no joint "${jointName(wrong)}"`, { file, line }, `the plan has joints ${jointName(0)} to ${jointName(plan.jointCount - 1)}`)
+      }
+      for (let joint = from; joint <= to; joint += 1) density[joint] = value
     }
-    const wrong = [from, to].find((joint) => joint >= plan.jointCount)
-    if (wrong !== undefined) {
-      return fail('no-such-joint', `there is no joint "${jointName(wrong)}"`, { file, line }, `the plan has joints ${jointName(0)} to ${jointName(plan.jointCount - 1)}`)
-    }
-    for (let joint = from; joint <= to; joint += 1) density[joint] = value
   }
   return ok(density)
 }
