@@ -69,6 +69,42 @@ export function drawnTests(): void {
     await page.context().close()
   }, slow)
 
+  test('a window is dragged and an outline picked on the drawing, a colour switched off', async () => {
+    const page = await opened()
+    await page.setInputFiles('#open-file', office('storeys-beside.dxf'))
+    await page.waitForSelector('.question')
+    await page.click('.opening .word:text-is("Within a window")')
+    const canvas = page.locator('.opening canvas')
+    const picture = (): Promise<string> => canvas.evaluate((element) => (element as HTMLCanvasElement).toDataURL())
+    // All lines as drawn come behind the plan once they are read.
+    await page.waitForTimeout(600)
+    const before = await picture()
+    const box = (await canvas.boundingBox())!
+    await page.mouse.move(box.x + 4, box.y + 4)
+    await page.mouse.down()
+    await page.mouse.move(box.x + box.width / 2, box.y + box.height - 44, { steps: 4 })
+    await page.waitForFunction((old) => document.querySelector<HTMLCanvasElement>('.opening canvas')!.toDataURL() !== old, before)
+    await page.mouse.up()
+    await page.waitForSelector('.report dd:has-text("within the window")')
+    await page.waitForFunction(() => document.querySelector('.question') === null && document.querySelector('.opening header')?.textContent?.includes('32 panels'))
+    await page.keyboard.press('Escape')
+
+    await page.setInputFiles('#open-file', office('one-layer.dxf'))
+    await page.waitForSelector('.report .solid:not([disabled])')
+    await page.click('.opening .word:text-is("Inside an outline")')
+    await page.waitForTimeout(600)
+    // Half a metre into the plan of 12.4 by 6.4 m, from its lower left corner.
+    const scale = Math.min((box.width - 96) / 12.4, (box.height - 106) / 6.4)
+    const middle = [(40 + box.width - 56) / 2, (40 + box.height - 66) / 2] as const
+    await page.mouse.click(box.x + middle[0] - 5.5 * scale, box.y + middle[1] + 2.5 * scale)
+    await page.waitForSelector('.report dd:has-text("inside the outline")')
+    await page.click('.report .word:text-is("Colours and line types")')
+    await page.click('.report label.layer:has-text("colour 3")')
+    await page.waitForFunction(() => document.querySelector('.opening header')?.textContent?.includes('32 panels'))
+    expect(await page.locator('.report label.layer:has-text("colour 3") input').isChecked()).toBe(false)
+    await page.context().close()
+  }, slow)
+
   test('printed sheets: the plan has the scale that its block states, and the list all panels', async () => {
     const page = await opened()
     await accepted(page, grid(6, 4))

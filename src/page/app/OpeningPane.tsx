@@ -1,7 +1,7 @@
 /** A drawing that is read and not accepted: the plan as read, and the reader's report beside it. */
 import { useCallback, useEffect, useRef, useState, type PointerEvent } from 'react'
 import { counted, figure } from '../../paper/drawing/figures.ts'
-import { readDetail, readDrawing, readWindow } from '../../paper/drawing/read-drawing.ts'
+import { readDetail, readDrawing, readWindow, wholeWindow } from '../../paper/drawing/read-drawing.ts'
 import { panned, toPlan, toSheet, zoomed, type PlanWindow } from '../../paper/drawing/plan-window.ts'
 import type { LeftOut } from '../../base/repair.ts'
 import { sentence } from '../../base/result.ts'
@@ -10,7 +10,9 @@ import { useDesk, useDeskState } from './context.ts'
 import { ListCanvas } from './ListCanvas.tsx'
 import { looks, useLooks } from './looks.ts'
 import { panelAt } from '../store/picking.ts'
+import { draggedWindow, switched, type Choosing } from '../store/opening.ts'
 import type { Opening } from '../store/state.ts'
+import type { DrawnLooks } from '../store/drawn-lines.ts'
 import { offered, ProposalList, Questions, withoutOptions } from './Proposals.tsx'
 
 /** Zooming to a repair magnifies the fitted plan so many times. */
@@ -26,10 +28,12 @@ export function OpeningPlan() {
   const repair = opening?.chosenRepair ?? -1
   const place = useLooks((state) => state.place)
   const zooms = useLooks((state) => state.zooms)
-  const drawn = useDrawn(opening?.file ?? null, repair >= 0)
+  const [choosing, setChoosing] = useState<Choosing>('faces')
+  const [dragged, setDragged] = useState<readonly [number, number, number, number] | null>(null)
+  const drawn = useDrawn(opening?.file ?? null, repair >= 0 || choosing !== 'faces')
   const sheet = useRef({ width: 0, height: 0 })
   useEffect(() => { looks.update((state) => ({ ...state, place: 0 })) }, [repair])
-  useEffect(() => setWindow(null), [read?.plan])
+  useEffect(() => setWindow(null), [read?.plan, choosing])
   useEffect(() => {
     const where = read?.repairs[repair]?.where ?? []
     if (zooms === 0 || read === null || where.length === 0) return
@@ -39,15 +43,18 @@ export function OpeningPlan() {
   }, [zooms])
   const draw = useCallback((width: number, height: number) => {
     if (read === null) return null
-    shown.current = window_ ?? readWindow(read, width, height)
+    const whole = choosing !== 'faces'
+    shown.current = window_ ?? (whole && drawn !== null ? wholeWindow(read, drawn, width, height) : readWindow(read, width, height))
     sheet.current = { width, height }
-    return readDrawing(read, { width, height, window: shown.current, panel, repair, place, drawn })
-  }, [read, window_, panel, repair, place, drawn])
+    return readDrawing(read, { width, height, window: shown.current, panel: whole ? -1 : panel, repair, place, drawn, whole, dragged })
+  }, [read, window_, panel, repair, place, drawn, choosing, dragged])
   const last = useRef<readonly [number, number] | null>(null)
   const travelled = useRef(0)
+  const from = useRef<readonly [number, number]>([0, 0])
   const onDown = (event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
     event.currentTarget.setPointerCapture(event.pointerId)
     last.current = [x, y]
+    from.current = [x, y]
     travelled.current = 0
   }
   const onMove = (_event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
@@ -60,12 +67,26 @@ export function OpeningPlan() {
     const [lx, ly] = last.current
     last.current = [x, y]
     travelled.current += Math.hypot(x - lx, y - ly)
-    if (travelled.current > 4) setWindow(panned(shown.current, x - lx, y - ly))
+    if (choosing === 'window') setDragged([...from.current, x, y])
+    else if (travelled.current > 4) setWindow(panned(shown.current, x - lx, y - ly))
   }
   const onUp = (_event: PointerEvent<HTMLCanvasElement>, x: number, y: number): void => {
     const wasClick = last.current !== null && travelled.current <= 4
     last.current = null
+    if (choosing === 'window' && shown.current !== null) {
+      setDragged(null)
+      const change = draggedWindow(toPlan(shown.current, ...from.current), toPlan(shown.current, x, y), 4 / shown.current.scale)
+      if (change === null) return
+      setChoosing('faces')
+      desk.reopen(change)
+      return
+    }
     if (!wasClick || read === null || shown.current === null) return
+    if (choosing === 'outline') {
+      setChoosing('faces')
+      desk.reopen({ inside: toPlan(shown.current, x, y), window: null })
+      return
+    }
     const detail = repair < 0 ? null : readDetail(read, shown.current, { repair, place, drawn, ...sheet.current })
     if (detail !== null && Math.hypot(detail.x - x, detail.y - y) < detail.radius) {
       zoomToRepair()
@@ -83,7 +104,11 @@ export function OpeningPlan() {
     <section className="pane opening" data-pane="plan" aria-labelledby="opening-title">
       <header>
         <h2 id="opening-title">Plan as read</h2>
-        <span className="note">click a face: panel or void</span>
+        <span className="note">{choosing === 'window' ? 'drag a window round the panels' : choosing === 'outline' ? 'click inside a closed line' : 'click a face: panel or void'}</span>
+        <span className="choosing" role="group" aria-label="Which lines are read">
+          <button className="word" aria-pressed={choosing === 'window'} onClick={() => setChoosing(choosing === 'window' ? 'faces' : 'window')}>Within a window</button>
+          <button className="word" aria-pressed={choosing === 'outline'} onClick={() => setChoosing(choosing === 'outline' ? 'faces' : 'outline')}>Inside an outline</button>
+        </span>
         <span className="note right">{plan === null ? '' : `${counted(plan.panelCount, 'panel')}, ${counted(plan.rimIsVoid.reduce((s, v) => s + v, 0), 'void')}, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges`}</span>
       </header>
       <div className="stage">
@@ -123,6 +148,8 @@ export function ReaderReport() {
             </select>
           </dd>
           {layers.some((layer) => layer !== '') && <><dt>Layers</dt><dd><Layers layers={layers} chosen={options.layers} leftOut={read?.leftOut ?? []} /></dd></>}
+          <Chosen options={options} />
+          <Appearance file={file} colours={options.colours} lineTypes={options.lineTypes} />
           <dt>Join ends</dt>
           <dd>within <SnapField value={options.snap_mm} onValue={(snap_mm) => desk.reopen({ snap_mm })} /> mm</dd>
           {unlayered.length > 0 && <><dt>Left out</dt><dd>{unlayered.map(({ kind, layer, count }) => <div key={`${kind} ${layer}`}>{figure(count)} {kind}{layer === '' ? '' : ` on ${layer}`}</div>)}</dd></>}
@@ -190,6 +217,51 @@ function Layers({ layers, chosen, leftOut }: { readonly layers: readonly string[
       </label>
     )
   })
+}
+
+/** What was chosen on the drawing, to be let go of. */
+function Chosen({ options: { window = null, inside = null, between = null } }: { readonly options: Opening['options'] }) {
+  const desk = useDesk()
+  if (window === null && inside === null && between === null) return null
+  return (
+    <>
+      <dt>Only</dt>
+      <dd>
+        {window !== null && <>within the window </>}{inside !== null && <>inside {typeof inside === 'string' ? `the outline on ${inside}` : 'the outline'} </>}{between !== null && <>between {figure(between[0])} and {figure(between[1])} </>}
+        <button className="word" onClick={() => desk.reopen({ window: null, inside: null, between: null })}>Read all</button>
+      </dd>
+    </>
+  )
+}
+
+/** Colours and line types to be switched, read from the file once they are asked for. */
+function Appearance({ file, colours, lineTypes }: { readonly file: Opening['file']; readonly colours: readonly string[] | null; readonly lineTypes: readonly string[] | null }) {
+  const desk = useDesk()
+  const [isOpen, setOpen] = useState(false)
+  const [known, setKnown] = useState<{ readonly file: Opening['file']; readonly looks: DrawnLooks | null } | null>(null)
+  useEffect(() => {
+    if (!isOpen || known?.file === file) return
+    const stop = new AbortController()
+    void import('../store/drawn-lines.ts').then(({ drawnLooks }) => drawnLooks(file.name, file.bytes, stop.signal)).then((found) => { if (!stop.signal.aborted) setKnown({ file, looks: found }) })
+    return () => stop.abort()
+  }, [isOpen, file, known])
+  const found = known?.file === file ? known.looks : null
+  const boxes = (all: ReadonlyMap<string, number>, chosen: readonly string[] | null, name: (one: string) => string, take: (next: readonly string[] | null) => void) => [...all].map(([one, count]) => (
+    <label key={name(one)} className="layer">
+      <input type="checkbox" checked={chosen === null || chosen.includes(one)} onChange={() => take(switched([...all.keys()], chosen, one))} /> {name(one)} <small className="note">{figure(count)}</small>
+    </label>
+  ))
+  return (
+    <>
+      <dt>Drawn in</dt>
+      <dd>
+        <button className="word" aria-expanded={isOpen} onClick={() => setOpen(!isOpen)}>Colours and line types</button>
+        {isOpen && found !== null && found.colours.size === 0 && <small className="note"> The file says nothing of them.</small>}
+        {isOpen && found !== null && boxes(found.colours, colours, (one) => `colour ${one}`, (next) => desk.reopen({ colours: next }))}
+        {isOpen && found !== null && boxes(found.lineTypes, lineTypes, (one) => one.toLowerCase(), (next) => desk.reopen({ lineTypes: next }))}
+      </dd>
+    </>
+  )
 }
 
 function SnapField({ value, onValue }: { readonly value: number | null; readonly onValue: (value: number | null) => void }) {

@@ -14,6 +14,8 @@ export function optionWords(option: string): string {
     case 'leave': return 'Leave as drawn'
     case 'unit': return `It is in ${value}`
     case 'scale': return value === '1:1' ? 'As it is, 1:1' : `At ${value}`
+    case 'window': return `Within ${value.split(',').slice(0, 2).join(', ')} and ${value.split(',').slice(2).join(', ')}`
+    case 'between': return value.split(',')[0] === value.split(',')[1] ? `At the height ${value.split(',')[0]}` : `Between ${value.replace(',', ' and ')}`
     case 'layer': return `Layer ${value}`
     case 'colour': return `Colour ${value}`
     case 'line-type': return `Line type ${value}`

@@ -25,6 +25,28 @@ export async function drawnLines(name: string, bytes: Uint8Array, signal?: Abort
   return Float64Array.from(out)
 }
 
+/** Colours and line types that a drawing's lines have, each with how many; null when it cannot be read. */
+export interface DrawnLooks {
+  readonly colours: ReadonlyMap<string, number>
+  readonly lineTypes: ReadonlyMap<string, number>
+}
+
+export async function drawnLooks(name: string, bytes: Uint8Array, signal?: AbortSignal): Promise<DrawnLooks | null> {
+  const made = await drive(readDrawing({ name, bytes }, { layers: null, sagitta: sagitta_m, metresPerUnit: null }), { sliceMs, ...(signal === undefined ? {} : { signal }) })
+  if (made === cancelled || !made.ok) return null
+  const { looks = [], segmentLook, outlines } = made.value
+  const colours = new Map<string, number>(), lineTypes = new Map<string, number>()
+  const count = (look: number): void => {
+    const own = looks[look]
+    if (own === undefined) return
+    colours.set(own.colour, (colours.get(own.colour) ?? 0) + 1)
+    lineTypes.set(own.lineType, (lineTypes.get(own.lineType) ?? 0) + 1)
+  }
+  segmentLook?.forEach(count)
+  outlines.look?.forEach(count)
+  return { colours, lineTypes }
+}
+
 /** The lines as an SVG path fitted into a box, y down. */
 export function linesPath(lines: Float64Array, width: number, height: number): string {
   let [x0, y0, x1, y1] = [Infinity, Infinity, -Infinity, -Infinity]

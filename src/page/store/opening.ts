@@ -25,18 +25,49 @@ export function taking({ accept, leave }: OpeningOptions, code: string, take: bo
   return { accept: take === true ? [...without(accept), code] : without(accept), leave: take === false ? [...without(leave), code] : without(leave) }
 }
 
-/** The answer to a reader's question, one of the options that it names, as typed on a command line; null: not known here. */
+/** The answer to a reader's question, options as typed on a command line ("--layer A --layer B"); null: one is not known here. */
 export function answered(options: OpeningOptions, option: string): Partial<OpeningOptions> | null {
-  const match = /^--([a-z-]+)[ =](.+)$/.exec(option)
-  if (match === null) return null
-  const [, name, value] = match
-  if (name === 'unit' && isUnit(value)) return { unit: value }
-  if (name === 'scale') return { scale: Number(value.replace(/^1:/, '')) }
-  if (name === 'accept') return taking(options, value, true)
-  if (name === 'leave') return taking(options, value, false)
-  if (name === 'colour') return { colours: value.split(',') }
-  if (name === 'line-type') return { lineTypes: value.split(',') }
-  if (name === 'snap') return { snap_mm: Number.parseFloat(value) }
-  if (name === 'layers' || name === 'layer') return { layers: value.split(',') }
-  return null
+  const typed = [...option.matchAll(/--([a-z-]+)[ =]("[^"]*"|\S+)/g)].map(([, name, value]) => ({ name, value: value.replace(/^"(.*)"$/, '$1') }))
+  if (typed.length === 0) return null
+  let all: Partial<OpeningOptions> = {}
+  for (const { name, value } of typed) {
+    const change = changed({ ...options, ...all }, all, name, value)
+    if (change === null) return null
+    all = { ...all, ...change }
+  }
+  return all
+}
+
+function changed(options: OpeningOptions, before: Partial<OpeningOptions>, name: string, value: string): Partial<OpeningOptions> | null {
+  const numbers = value.split(',').map(Number)
+  const isNumbers = (count: number): boolean => numbers.length === count && numbers.every(Number.isFinite)
+  switch (name) {
+    case 'unit': return isUnit(value) ? { unit: value } : null
+    case 'scale': return { scale: Number(value.replace(/^1:/, '')) }
+    case 'accept': return taking(options, value, true)
+    case 'leave': return taking(options, value, false)
+    case 'snap': return { snap_mm: Number.parseFloat(value) }
+    // Several of one kind add up.
+    case 'colour': return { colours: [...(before.colours ?? []), ...value.split(',')] }
+    case 'line-type': return { lineTypes: [...(before.lineTypes ?? []), value] }
+    case 'layer': return { layers: [...(before.layers ?? []), value] }
+    case 'window': return isNumbers(4) ? { window: [[numbers[0], numbers[1]], [numbers[2], numbers[3]]] } : null
+    case 'between': return isNumbers(2) ? { between: [numbers[0], numbers[1]] } : null
+    case 'inside': return { inside: isNumbers(2) ? [numbers[0], numbers[1]] : value }
+    default: return null
+  }
+}
+
+/** What a hand on the drawing chooses: nothing but faces, a window, or the closed line round a point. */
+export type Choosing = 'faces' | 'window' | 'outline'
+
+/** The window between two points that were dragged apart; null: a click is none. */
+export function draggedWindow(from: readonly [number, number], to: readonly [number, number], least: number): Partial<OpeningOptions> | null {
+  return Math.abs(from[0] - to[0]) < least || Math.abs(from[1] - to[1]) < least ? null : { window: [from, to], inside: null }
+}
+
+/** One of those that are drawn switched off or on; all of them is no choice. */
+export function switched(all: readonly string[], chosen: readonly string[] | null, one: string): readonly string[] | null {
+  const next = all.filter((other) => (chosen === null || chosen.includes(other)) !== (other === one))
+  return next.length === all.length ? null : next
 }

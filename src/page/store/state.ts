@@ -46,9 +46,15 @@ export interface OpeningOptions {
   readonly voids: readonly (readonly [number, number])[]
   readonly colours: readonly string[] | null
   readonly lineTypes: readonly string[] | null
+  /** Two corners, a point in a closed line, two heights: only what lies within is read. */
+  readonly window?: readonly [Spot, Spot] | null
+  readonly inside?: string | Spot | null
+  readonly between?: Spot | null
   readonly accept: readonly string[]
   readonly leave: readonly string[]
 }
+
+type Spot = readonly [number, number]
 
 export const openingOptions: OpeningOptions = { unit: null, scale: null, snap_mm: null, layers: null, voids: [], colours: null, lineTypes: null, accept: [], leave: [] }
 

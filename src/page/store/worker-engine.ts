@@ -14,10 +14,10 @@ export class WorkerEngine implements Engine {
   private plans = 0
 
   async read(file: NamedBytes, options: OpeningOptions, onProgress: (progress: Progress) => void): Promise<Result<DrawingRead> | null> {
-    const { unit, scale, snap_mm, layers, voids, colours, lineTypes, accept, leave } = options
+    const { unit, scale, snap_mm, layers, voids, colours, lineTypes, window = null, inside = null, between = null, accept, leave } = options
     const request = {
       command: 'read', source: file, brief: null, levels: null, given: {},
-      options: { ...noOptions, unit, scale, snap_mm, layers, voids, colours, lineTypes, accept, leave },
+      options: { ...noOptions, unit, scale, snap_mm, layers, voids, colours, lineTypes, window, inside, between, accept, leave },
     } as const
     const result = await this.client.ask('read', request, true, onProgress)
     if (result === null || !result.ok) return result

@@ -1,6 +1,7 @@
 /** A plan as it was read and before it is accepted: lines of one weight, faces to be told panel from void, repairs in balloons. */
 import { metres } from '../../base/length.ts'
 import type { ReadPlan } from '../../plan/read-plan.ts'
+import { axisItems } from './axis-drawing.ts'
 import { Batch, dots, label, moved, polyline, type DisplayList, type Item } from './display-list.ts'
 import { figure } from './figures.ts'
 import { northPoint, scaleBar } from './furniture.ts'
@@ -20,6 +21,10 @@ export interface ReadDrawingOptions {
   readonly place?: number
   /** Lines as drawn, x0 y0 x1 y1 .., for the detail; null: not known. */
   readonly drawn?: Float64Array | null
+  /** Whether all lines as drawn stand behind the plan, so that a window or an outline can be chosen among them. */
+  readonly whole?: boolean
+  /** A window in hand, its corners on the sheet; null: none. */
+  readonly dragged?: readonly [x1: number, y1: number, x2: number, y2: number] | null
 }
 
 /** Places that are ringed for the chosen repair. */
@@ -28,12 +33,27 @@ const mostPlaces = 2000
 export const readWindow = (read: ReadPlan, width: number, height: number): PlanWindow =>
   fitted(read.plan, { left: 40, top: 40, right: width - 56, bottom: height - 66 })
 
+/** The window that shows all lines as drawn: those of a title block and a section too. */
+export function wholeWindow(read: ReadPlan, drawn: Float64Array, width: number, height: number): PlanWindow {
+  const fit = readWindow(read, width, height)
+  let [x0, y0, x1, y1] = [Infinity, Infinity, -Infinity, -Infinity]
+  for (let i = 0; i < drawn.length; i += 2) {
+    x0 = Math.min(x0, drawn[i])
+    x1 = Math.max(x1, drawn[i])
+    y0 = Math.min(y0, drawn[i + 1])
+    y1 = Math.max(y1, drawn[i + 1])
+  }
+  if (!(x1 > x0 && y1 > y0)) return fit
+  return { ...fit, centreX: (x0 + x1) / 2, centreY: (y0 + y1) / 2, scale: Math.min((width - 96) / (x1 - x0), (height - 106) / (y1 - y0)) }
+}
+
 export function readDrawing(read: ReadPlan, options: ReadDrawingOptions): DisplayList {
   const { plan } = read
   const { width, height } = options
   const window = options.window ?? readWindow(read, width, height)
   const px = nodesOnSheet(plan, window)
   const items: Item[] = []
+  if (options.whole === true && options.drawn !== null && options.drawn !== undefined) items.push(...linesBehind(options.drawn, window))
   const faces = new Batch()
   for (let p = 0; p < plan.panelCount; p += 1) {
     for (let c = plan.panelStart[p]; c < plan.panelStart[p + 1]; c += 1) faces.point(px[2 * plan.corner[c]], px[2 * plan.corner[c] + 1])
@@ -58,7 +78,12 @@ export function readDrawing(read: ReadPlan, options: ReadDrawingOptions): Displa
     const area = panelArea(plan, options.panel) * metres[plan.unit] ** 2
     items.push(label(x, y - 2, 'panel', { tone: 'hand', bold: true, anchor: 'middle', size: 11 }), label(x, y + 11, `${figure(area, 2)} m\u00b2`, { tone: 'hand', anchor: 'middle', size: 11 }))
   }
+  items.push(...axisItems(read.axes ?? [], window, { width, height: height - 40 }), ...levelItems(read, px))
   items.push(...balloons(read, window, options))
+  if (options.dragged !== null && options.dragged !== undefined) {
+    const [x1, y1, x2, y2] = options.dragged
+    items.push(polyline('held', [x1, y1, x2, y1, x2, y2, x1, y2], null, true))
+  }
   const at = placeOf(read, options)
   const detail = at === null ? null : readDetail(read, window, options)
   if (at !== null && detail !== null) items.push(...detailItems(plan, window, at, read.repairs[options.repair].where, options.drawn ?? null, detail))
@@ -67,6 +92,20 @@ export function readDrawing(read: ReadPlan, options: ReadDrawingOptions): Displa
     width, height, items, title: 'Plan as read',
     description: `${figure(plan.panelCount)} panels, ${figure(plan.jointCount)} joints, ${figure(plan.edgeCount - plan.jointCount)} rim edges; ${figure(read.repairs.length)} repairs.`,
   }
+}
+
+function linesBehind(drawn: Float64Array, window: PlanWindow): Item[] {
+  const lines = new Batch()
+  for (let i = 0; i < drawn.length; i += 4) lines.segment(...toSheet(window, drawn[i], drawn[i + 1]), ...toSheet(window, drawn[i + 2], drawn[i + 3]))
+  return lines.empty ? [] : [lines.strokes('axis')]
+}
+
+/** Levels that the drawing states and that hold: a tick at the node and the level beside it. */
+function levelItems({ levels = [], plan }: ReadPlan, px: Float64Array): Item[] {
+  if (levels.length === 0) return []
+  const points = levels.flatMap(({ node }) => [px[2 * node], px[2 * node + 1]])
+  const inMetres = metres[plan.unit]
+  return [dots(points, 3, 'ink', null), ...levels.map(({ node, level }) => label(px[2 * node] + 6, px[2 * node + 1] - 5, `${level < 0 ? '\u2212' : '+'}${figure(Math.abs(level * inMetres), 3)}`, { size: 10, plate: true, face: 'pen' }))]
 }
 
 function placeOf({ repairs }: ReadPlan, { repair, place = 0 }: Pick<ReadDrawingOptions, 'repair' | 'place'>): readonly [number, number] | null {
