@@ -205,7 +205,7 @@ test('a project from elsewhere: a newer version is refused with a sentence, a da
 
 test('long work shows its stage and stops when told to', async () => {
   const page = await opened()
-  await read(page, grid(320, 320))
+  await read(page, grid(200, 200))
   // The word is pressed the moment it stands there: how long the work would take does not matter.
   const pressed = page.evaluate(() => new Promise<void>((resolve) => {
     const look = (): void => {
