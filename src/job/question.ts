@@ -11,8 +11,10 @@ import { withLevels } from './levels.ts'
 import { reading } from './reading.ts'
 import type { Request } from './request.ts'
 
-/** A plan that has been read and what is asked of it; `free`: of the same plan, from an earlier answer; `space`: of it, or of one whose nodes lie
- * elsewhere (null or absent: not known). */
+/**
+ * A plan that has been read and what is asked of it. `free`: of the same plan, from an earlier answer; `space`: of it, or of one
+ * whose nodes lie elsewhere; null or absent: not known.
+ */
 export interface PlanQuestion {
   readonly request: Request
   readonly version: string
