@@ -5,6 +5,7 @@
 import { disjointSets } from '../base/disjoint-sets.ts'
 import type { Unit } from '../base/length.ts'
 import { fail, ok, type Place, type Result } from '../base/result.ts'
+import { finish, type Steps } from '../base/steps.ts'
 import { panelName } from './names.ts'
 import type { Plan } from './plan.ts'
 
@@ -31,6 +32,11 @@ export interface Subdivision {
  * edge), "three-panels".
  */
 export function planFromFaces(faces: Faces): Result<Subdivision> {
+  return finish(planFromFacesSteps(faces))
+}
+
+/** The same in steps. */
+export function* planFromFacesSteps(faces: Faces): Steps<Result<Subdivision>> {
   const panelCount = faces.start.length - 1
   if (panelCount < 1) return fail('no-panels', 'there is no closed panel')
   const { nodeOf, pointOfNode } = faces.ordered === true ? nodesInOrder(faces) : nodesByFirstUse(faces)
@@ -43,14 +49,17 @@ export function planFromFaces(faces: Faces): Result<Subdivision> {
   }
   const { work, frame } = workingCoordinates(x, y)
 
+  yield { stage: 'Building the plan', done: 0.15 }
   const oriented = counterClockwise(faces, nodeOf, work, frame.span)
   if (!oriented.ok) return oriented
   const panelStart = faces.start.slice()
   const corner = oriented.value
+  yield { stage: 'Building the plan', done: 0.25 }
   const paired = pairedEdges(panelStart, corner, nodeCount)
   if (!paired.ok) return fail(paired.problem.code, paired.problem.message, at(paired.problem.edge, paired.problem.names, x, y), paired.problem.cure)
   const { edgeCount, jointCount, origin, cornerHalf } = paired.value
 
+  yield { stage: 'Building the plan', done: 0.4 }
   const next = new Int32Array(2 * edgeCount).fill(-1)
   const previous = new Int32Array(2 * edgeCount).fill(-1)
   const panelOf = new Int32Array(2 * edgeCount).fill(-1)
@@ -62,6 +71,7 @@ export function planFromFaces(faces: Faces): Result<Subdivision> {
       panelOf[cornerHalf[c]] = p
     }
   }
+  yield { stage: 'Building the plan', done: 0.45 }
   const rims = rimLoops({ edgeCount, jointCount, origin, next, previous, panelOf }, work)
   const rimPasses = new Int32Array(nodeCount)
   for (const half of rims.rimHalf) rimPasses[origin[half]] += 1

@@ -7,7 +7,7 @@ import { build } from 'vite'
 const here = import.meta.dirname
 const [name, ...words] = process.argv.slice(2)
 if (!/^[a-z-]+$/.test(name ?? '')) {
-  process.stderr.write('Name a bench: npm run bench -- solver | path | adjust | counting-rule | page\n')
+  process.stderr.write('Name a bench: npm run bench -- solver | path | answers | counts | adjust | counting-rule | page\n')
   process.exit(2)
 }
 // Within reach of the packages: what drives a browser is not bundled.

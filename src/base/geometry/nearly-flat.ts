@@ -140,6 +140,8 @@ function worstFour(e: Float64Array, at: number, count: number, least: number): n
   }
   let most = 0
   w.fill(0)
+  // Where nothing is off the plane, any four corners of this panel do.
+  for (let m = 0; m < 4; m += 1) four[m] = m
   for (let i = 0; i < count; i += 1) {
     const ri = r[i]
     for (let j = i + 1; j < count; j += 1) {

@@ -4,6 +4,7 @@
  * Review 34, 1992): a front eliminates its own unknowns (pivots) and hands what is left on its boundary to its parent.
  */
 import { assert } from '../assert.ts'
+import { finish, type Steps } from '../steps.ts'
 import { amalgamation } from './amalgamate.ts'
 import { boundaries } from './boundaries.ts'
 import { four, layout } from './layout.ts'
@@ -46,10 +47,19 @@ export interface Analysis {
 
 /** The analysis of a pattern in a given order; reused for any values. */
 export function analyse(pattern: Pattern, ordering: Ordering): Analysis {
+  return finish(analysing(pattern, ordering))
+}
+
+/** The same in steps. */
+export function* analysing(pattern: Pattern, ordering: Ordering): Steps<Analysis> {
   const { size, start, row } = pattern
   for (let j = 0; j < size; j++) assert(row[start[j] as number] === j, 'every column of a pattern begins with its diagonal')
   const rows = lowerNeighbours(pattern, ordering.rank)
-  const tree = amalgamation(ordering, boundarySizes(ordering, rows))
+  yield { stage: 'Analysing', done: 0.2 }
+  const sizes = boundarySizes(ordering, rows)
+  yield { stage: 'Analysing', done: 0.3 }
+  const tree = amalgamation(ordering, sizes)
+  yield { stage: 'Analysing', done: 0.4 }
   const { fronts, parent, first, boundaryStart, placeOfRank } = tree
   const { panel, schur, storeSize } = layout(tree)
   assert(storeSize < 2 ** 31, 'a factor of more than 16 gigabytes')
@@ -60,9 +70,10 @@ export function analyse(pattern: Pattern, ordering: Ordering): Analysis {
     place[i] = v
     unknown[v] = i
   }
+  const bounds = yield* boundaries(pattern, ordering.rank, rows, tree, panel)
   return {
     pattern, ordering, place, unknown, fronts, first, parent, ...childLists(fronts, parent), boundaryStart,
-    ...boundaries(pattern, ordering.rank, rows, tree, panel), panel, schur, storeSize, ...work(first, boundaryStart),
+    ...bounds, panel, schur, storeSize, ...work(first, boundaryStart),
   }
 }
 

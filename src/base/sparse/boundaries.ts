@@ -5,6 +5,7 @@
  */
 import type { Fronts } from './amalgamate.ts'
 import { four, triangle } from './layout.ts'
+import type { Steps } from '../steps.ts'
 import type { Pattern } from './matrix.ts'
 import type { Rows } from './rows.ts'
 
@@ -17,13 +18,21 @@ export interface Boundaries {
   readonly target: Int32Array
 }
 
-export function boundaries(pattern: Pattern, rank: Int32Array, rows: Rows, tree: Fronts, panel: Int32Array): Boundaries {
+/** Rows between two yields: some 10 ms. */
+const rowsPerStep = 16384
+
+export function* boundaries(pattern: Pattern, rank: Int32Array, rows: Rows, tree: Fronts, panel: Int32Array): Steps<Boundaries> {
   const { fronts, first, boundaryStart, frontOfRank, placeOfRank } = tree
   const entries = boundaryStart[fronts] as number
   const into = { boundary: new Int32Array(entries), inParent: new Int32Array(entries), target: new Int32Array(pattern.row.length) }
   const rankOfPlace = new Int32Array(rank.length)
   for (let r = 0; r < rank.length; r++) rankOfPlace[placeOfRank[r] as number] = r
-  climb(into, rankOfPlace, rows, tree, panel)
+  const next = boundaryStart.slice(0, fronts)
+  const seen = new Int32Array(fronts).fill(-1)
+  for (let v = 0; v < rank.length; v += rowsPerStep) {
+    yield { stage: 'Analysing', done: 0.4 + (0.6 * v) / rank.length }
+    climb(into, rankOfPlace, rows, tree, panel, next, seen, v, Math.min(rank.length, v + rowsPerStep))
+  }
   for (let i = 0; i < rank.length; i++) {
     const r = rank[i] as number
     const own = frontOfRank[r] as number
@@ -35,19 +44,20 @@ export function boundaries(pattern: Pattern, rank: Int32Array, rows: Rows, tree:
 
 const pivotRow = (panel: number, row: number): number => panel + triangle(row >> 2) + (row & 3)
 
-/** All but the diagonal. */
-function climb({ boundary, inParent, target }: Boundaries, rankOfPlace: Int32Array, rows: Rows, tree: Fronts, panel: Int32Array): void {
-  const { fronts, parent, first, boundaryStart, frontOfRank, placeOfRank } = tree
-  const next = boundaryStart.slice(0, fronts)
-  const seen = new Int32Array(fronts).fill(-1)
-  for (let v = 0; v < rankOfPlace.length; v++) {
+/** All but the diagonal, of the rows of places `from` .. `to`; next[t]: the next entry of front t's boundary, seen[t]: the last row there. */
+function climb(
+  { boundary, inParent, target }: Boundaries, rankOfPlace: Int32Array, rows: Rows, tree: Fronts, panel: Int32Array,
+  next: Int32Array, seen: Int32Array, from: number, to: number,
+): void {
+  const { parent, first, boundaryStart, frontOfRank, placeOfRank } = tree
+  for (let v = from; v < to; v++) {
     const r = rankOfPlace[v] as number
     const own = frontOfRank[r] as number
     const ownRow = v - (first[own] as number)
     const ownAt = pivotRow(panel[own] as number, ownRow)
     seen[own] = v
-    const to = rows.start[r + 1] as number
-    for (let q = rows.start[r] as number; q < to; q++) {
+    const end = rows.start[r + 1] as number
+    for (let q = rows.start[r] as number; q < end; q++) {
       const lower = rows.lower[q] as number
       const home = frontOfRank[lower] as number
       for (let t = home; seen[t] !== v; ) {

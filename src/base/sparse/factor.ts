@@ -57,6 +57,7 @@ export function* factor(analysis: Analysis, values: Float64Array, options: Facto
     pivot: new Float64Array(pivotAt[fronts] as number),
     scale: new Float64Array(pivotAt[fronts] as number),
   }
+  yield { stage: 'Factoring', done: 0 }
   yield* numeric(into, values)
   return into
 }
@@ -72,7 +73,13 @@ function* numeric(into: Factor, values: Float64Array): Steps<void> {
   const { analysis } = into
   assert(values.length === analysis.target.length, 'one value per entry of the pattern')
   into.ready = false
-  const largest = scatter(into, values)
+  let largest = 0
+  for (let q = 0; q < values.length; q += valuesPerStep) {
+    // The first values go into memory that is new.
+    if (q > 0) yield { stage: 'Factoring', done: 0 }
+    largest = scatter(into, values, largest, q, Math.min(values.length, q + valuesPerStep))
+  }
+  takeScales(into, values)
   const rules: PivotRules = { stand: largest > 0 ? largest * 2 ** -26 : 1, zeros: 0, finite: true }
   const elimination = new Elimination(into, rules)
   let turn = performance.now()
@@ -99,11 +106,13 @@ function* numeric(into: Factor, values: Float64Array): Steps<void> {
   into.ready = true
 }
 
-/** Puts the values into the panels and |a_ii| beside the pivots; returns the largest magnitude. */
-function scatter({ analysis, store: { data }, pivotAt, scale }: Factor, values: Float64Array): number {
-  const { target, pattern, fronts, first, unknown } = analysis
-  let largest = 0
-  for (let q = 0; q < values.length; q++) {
+/** Values put into the panels between two yields: some 10 ms, 20 where memory is new. */
+const valuesPerStep = 1 << 17
+
+/** Puts values [from, to) into the panels; returns the largest magnitude. */
+function scatter({ analysis: { target }, store: { data } }: Factor, values: Float64Array, before: number, from: number, to: number): number {
+  let largest = before
+  for (let q = from; q < to; q++) {
     const a = values[q] as number
     data[target[q] as number] = a
     // Not a comparison with the largest so far: that would let NaN pass.
@@ -113,11 +122,15 @@ function scatter({ analysis, store: { data }, pivotAt, scale }: Factor, values: 
       largest = size
     }
   }
+  return largest
+}
+
+/** Puts |a_ii| beside the pivots. */
+function takeScales({ analysis: { pattern, fronts, first, unknown }, pivotAt, scale }: Factor, values: Float64Array): void {
   for (let t = 0; t < fronts; t++) {
     const shift = (pivotAt[t] as number) - (first[t] as number)
     for (let v = first[t] as number; v < (first[t + 1] as number); v++) {
       scale[v + shift] = Math.abs(values[pattern.start[unknown[v] as number] as number] as number)
     }
   }
-  return largest
 }

@@ -19,7 +19,7 @@ import type { LineFrame } from './frame.ts'
 import { joinedPoints } from './joined.ts'
 import { nodesStayApart } from './nodes-apart.ts'
 import type { Plan } from '../plan.ts'
-import { planFromFaces, type Subdivision } from '../subdivision.ts'
+import { planFromFacesSteps, type Subdivision } from '../subdivision.ts'
 
 /** Panels between two yields: a millisecond. */
 const panelsPerStep = 20_000
@@ -33,7 +33,7 @@ export function* cleanMesh(drawing: Drawing, frame: LineFrame, unit: Unit): Step
   const corner = turned(frame, start, point)
   if (corner === null) return null
   yield { stage: 'Building the plan', done: 0.1 }
-  const made = planFromFaces({ unit, x: frame.planX, y: frame.planY, start, corner })
+  const made = yield* planFromFacesSteps({ unit, x: frame.planX, y: frame.planY, start, corner })
   if (!made.ok) return null
   const { plan, pointOfNode } = made.value
   // Where most edges are on the rim the outlines may be bars or panes drawn apart.

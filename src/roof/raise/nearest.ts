@@ -62,6 +62,7 @@ function* proximal(space: LiftSpace, h0: Float64Array, wish: Float64Array): Step
   for (let u = 0; u < right.length; u += 1) right[u] = -right[u] - tau * pull[u]
   const h = expand(elimination, solve(space.factor, right))
   addTo(h, h0, 1)
+  yield { stage: 'Raising', done: 0.1 }
   return yield* broughtFlat(space, h, 3)
 }
 
@@ -122,7 +123,9 @@ const settledShare = 1e-2
  */
 export function* nearestLift(space: LiftSpace, roof: Float64Array, metric: Metric, wish: Float64Array, zeroSoft: boolean): Steps<Float64Array> {
   if (space.dimension === 0) return roof
+  yield { stage: 'Raising', done: 0.4 }
   const basis = liftBasis(space)
+  yield { stage: 'Raising', done: 0.45 }
   if (basis !== null) return nearestOfFew(basis, roof, metric, wish, zeroSoft)
   const { plain } = metric
   if (plain === undefined) return yield* byGradients(space, roof, metric, wish, zeroSoft)
@@ -135,10 +138,12 @@ function* byGradients(space: LiftSpace, roof: Float64Array, metric: Metric, wish
   const pull = metric.pull(wish, zeroSoft)
   // The nearest in plain least squares is a good start: areas differ little.
   const h = projected(space, minus(wish, roof))
+  yield { stage: 'Raising', done: 0.5 }
   addTo(h, roof, 1)
   const kept = metric.apply(h)
   let residual = minus(pull, kept)
   let g = projected(space, residual)
+  yield { stage: 'Raising', done: 0.5 }
   const isLean = leavesLittle(space)
   const direction = g.slice()
   let size = dot(residual, g)

@@ -59,6 +59,7 @@ export function* roofOfChoice(ground: Ground, start: Float64Array, wish: Wish): 
   }
   if (ground.scaleFree) {
     const nearest = yield* nearestLift(space, start, metric, wish.heights, false)
+    yield { stage: 'Raising', done: 0.5 }
     const kept = keptOf(ground, nearest, wish.heights)
     const chosen = kept >= keptShare ? nearest : smoothest(ground, wish)
     // Settled first: a rise from a stated datum changes when the roof is moved.

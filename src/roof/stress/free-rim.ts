@@ -44,7 +44,9 @@ export function* freeRim(plan: Plan, like: LiftSpace | null = null): Steps<FreeR
     coarse = negative + zero - tilts
     if (nearest < tau && coarse === freedom) nearest = yield* smallestNearLift(space, off, passesWhereRounded)
   }
+  yield { stage: 'Measuring the gap', done: 1 }
   const frozen = frozenJoints(space, tilts, null)
+  yield { stage: 'Raising', done: 0 }
   const { groupOf, groupCount } = flatGroups(plan, frozen)
   return {
     space, bases, tilts, freedom, count: bareCount(plan),

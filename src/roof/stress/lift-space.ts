@@ -9,8 +9,8 @@
  * Tried and dropped: weighting panels by area or its inverse (spoils the decision between lift and near lift on uneven
  * plans); an augmented Lagrangian on M + mu Q (one factor as well, four solves, 1e3 times less exact on uneven plans).
  */
-import { analyse, type Analysis } from '../../base/sparse/analyse.ts'
-import { cliquePattern, type CliquePattern } from '../../base/sparse/cliques.ts'
+import { analysing, type Analysis } from '../../base/sparse/analyse.ts'
+import { cliquePatternSteps, type CliquePattern } from '../../base/sparse/cliques.ts'
 import { factor, type Factor } from '../../base/sparse/factor.ts'
 import { inertia } from '../../base/sparse/inertia.ts'
 import { dissection } from '../../base/sparse/order.ts'
@@ -74,15 +74,17 @@ export function nothingHeld(nodeCount: number): Elimination {
 export function* liftSpace(plan: Plan, bases: PanelBases, elimination: Elimination, like: LiftSpace | null = null): Steps<LiftSpace> {
   yield { stage: 'Assembling', done: 0 }
   const known = like !== null && samePattern(like, plan, elimination) ? like : null
-  const form = reducedForm(plan, bases, elimination, known?.form ?? null)
+  const form = yield* reducedForm(plan, bases, elimination, known?.form ?? null)
   const { pattern } = form.cliques
-  const analysis = known?.analysis ?? analyse(pattern, yield* dissection(pattern, placesOf(plan, elimination)))
+  const analysis = known?.analysis ?? (yield* analysing(pattern, yield* dissection(pattern, placesOf(plan, elimination))))
+  yield { stage: 'Analysing', done: 1 }
   const shifted = weightedForm(plan, elimination, form, null, -tau, 1)
+  yield { stage: 'Factoring', done: 0 }
   const factored = yield* factor(analysis, shifted)
   const { negative, zero } = inertia(factored)
   const space = { plan, bases, elimination, form, analysis, factor: factored, dimension: negative + zero, probe: null }
   yield { stage: 'Factoring', done: 1 }
-  return { ...space, probe: space.dimension === 0 ? null : probeOf(space) }
+  return { ...space, probe: space.dimension === 0 ? null : yield* probeOf(space) }
 }
 
 /** Where the unknowns lie: x y x y .. in working coordinates. */
@@ -104,16 +106,17 @@ export function same(a: Int32Array | Float64Array, b: Int32Array | Float64Array)
   return true
 }
 
-function probeOf(space: LiftSpace): Probe {
+function* probeOf(space: LiftSpace): Steps<Probe> {
   const { plan, bases, elimination } = space
   const lift = pulledIn(space, gaussians(plan.nodeCount, 7))
+  yield { stage: 'Factoring', done: 1 }
   const rest = expand(elimination, solve(space.factor, reduce(elimination, applyForm(plan, bases, lift))))
   for (let i = 0; i < lift.length; i += 1) lift[i] -= rest[i]
   return { lift, rest, quotient: squaredResidual(plan, bases, lift) / dot(lift, lift) }
 }
 
 /** Cliques of the flatness form: the unknowns of each panel's corners, then those of each node. */
-function formPattern({ panelStart, corner, panelCount, nodeCount }: Plan, { start, unknown, free }: Elimination): FormPattern {
+function* formPattern({ panelStart, corner, panelCount, nodeCount }: Plan, { start, unknown, free }: Elimination): Steps<FormPattern> {
   const cliqueStart = new Int32Array(panelCount + nodeCount + 1)
   const slotOf = new Int32Array(free.length).fill(-1)
 
@@ -138,23 +141,40 @@ function formPattern({ panelStart, corner, panelCount, nodeCount }: Plan, { star
     cliqueStart[panelCount + node + 1] = filled
   }
   const index = cliqueIndex.subarray(0, filled)
-  return { cliques: cliquePattern(free.length, cliqueStart, index), start: cliqueStart, index }
+  yield { stage: 'Assembling', done: 0.05 }
+  return { cliques: yield* cliquePatternSteps(free.length, cliqueStart, index), start: cliqueStart, index }
 }
 
 /**
  * T^T Q T by panels: with B = I - 11^T/k - e1 e1^T - e2 e2^T and T_p the panel's rows of T, the block is T_p^T B T_p. `known`:
  * its pattern, null: to be found.
  */
-export function reducedForm(plan: Plan, bases: PanelBases, elimination: Elimination, known: FormPattern | null = null): ReducedForm {
-  const { panelStart, panelCount } = plan
-  const { cliques, start: cliqueStart, index: cliqueIndex } = known ?? formPattern(plan, elimination)
+export function* reducedForm(plan: Plan, bases: PanelBases, elimination: Elimination, known: FormPattern | null = null): Steps<ReducedForm> {
+  const { panelCount } = plan
+  const { cliques, start: cliqueStart, index: cliqueIndex } = known ?? (yield* formPattern(plan, elimination))
   const slotOf = new Int32Array(elimination.free.length).fill(-1)
 
   const flatness = new Float64Array(cliques.pattern.row.length)
-  const { position } = cliques
   let at = 0
+  for (let p = 0; p < panelCount; p += panelsPerStep) {
+    yield { stage: 'Assembling', done: 0.5 + (0.5 * p) / panelCount }
+    at = addBlocks(flatness, cliques.position, at, plan, bases, elimination, cliqueStart, cliqueIndex, slotOf, p, Math.min(panelCount, p + panelsPerStep))
+  }
+  return { cliques, start: cliqueStart, index: cliqueIndex, flatness }
+}
+
+/** Panels between two yields: some 10 ms. */
+const panelsPerStep = 8192
+
+/** Adds the blocks of panels first .. last, whose places in the pattern begin at position[at]; returns where the next begin. */
+function addBlocks(
+  flatness: Float64Array, position: Int32Array, begin: number, plan: Plan, bases: PanelBases, elimination: Elimination,
+  cliqueStart: Int32Array, cliqueIndex: Int32Array, slotOf: Int32Array, firstPanel: number, lastPanel: number,
+): number {
+  const { panelStart } = plan
+  let at = begin
   let rows = new Float64Array(64)
-  for (let p = 0; p < panelCount; p += 1) {
+  for (let p = firstPanel; p < lastPanel; p += 1) {
     const from = panelStart[p], to = panelStart[p + 1]
     const count = to - from
     const first = cliqueStart[p]
@@ -174,7 +194,7 @@ export function reducedForm(plan: Plan, bases: PanelBases, elimination: Eliminat
       at += (unknowns * (unknowns + 1)) / 2
     }
   }
-  return { cliques, start: cliqueStart, index: cliqueIndex, flatness }
+  return at
 }
 
 /** Fills rows[a * k ..] with (I - 11^T/k - e1 e1^T - e2 e2^T) T_p's column a, for the panel's k corners. */

@@ -2,7 +2,7 @@
 import { describe, expect, test } from 'vitest'
 import { cornerDeviation } from '../../../src/base/geometry/corner-deviation.ts'
 import { minimumZone } from '../../../src/base/geometry/minimum-zone.ts'
-import { nearlyFlat } from '../../../src/base/geometry/nearly-flat.ts'
+import { frameInto, nearlyFlat, nearlyFlatIn } from '../../../src/base/geometry/nearly-flat.ts'
 import { random } from '../../../src/base/random.ts'
 
 /** Corners round a bumpy ring on a steep plane, out of flat by up to `bump`; some between two others as T-junctions have them. */
@@ -51,5 +51,15 @@ describe('nearly flat corners', () => {
     expect(nearlyFlat(Float64Array.of(0, 0, 0, 1, 0, 0, 2, 0, 0, 3, 0, 1e-9), 0, 4, out)).toBe(false)
     expect(nearlyFlat(panel(13, 0, 1), 0, 13, out)).toBe(false)
     expect(nearlyFlat(Float64Array.of(0, 0, 0, 1, 0, 0, 2, 0, 0, 1, 1, 1e-9), 0, 4, out)).toBe(false)
+  })
+  test('a quad without any deviation after a panel of more corners, in the last place of its frames: zero, and a number', () => {
+    const out = new Float64Array(2)
+    const six = panel(6, 1e-7, 1)
+    expect(nearlyFlat(six, 0, 6, out)).toBe(true)
+    const quad = Float64Array.of(0, 0, 0, 1, 0, 0, 1, 1, 0, 0, 1, 0)
+    const frames = { e: new Float64Array(8), r: new Float64Array(3) }
+    frameInto(frames, 0, 0, quad, 0, 4)
+    expect(nearlyFlatIn(frames, 0, 0, quad, 0, 4, out)).toBe(true)
+    expect([...out]).toEqual([0, 0])
   })
 })
