@@ -151,7 +151,7 @@ export class Session {
     if (!made.ok) return made
     const { summary, oneWayHeights = null } = made.value.answer
     const { oneWay: facts } = summary
-    return facts === undefined ? fail('no-joints', 'there are no joints to ask about') : ok({ facts, sentence: oneWaySentences(summary).join(' '), heights: oneWayHeights })
+    return facts === undefined ? fail('no-joints', 'there are no joints to ask about') : ok({ facts, sentence: oneWaySentences(summary, true).join(' '), heights: oneWayHeights })
   }
 
   /** The plan that forces of these densities balance, its rim as it stands; see `liveBalance`. */

@@ -103,6 +103,7 @@ export function curingTests(): void {
     await desk('Conditions')
     await page.click('.word:text-is("Could all joints fold one way?")')
     await page.waitForFunction(() => /cannot all be ridges/.test(document.querySelector('[data-one-way]')?.textContent ?? ''))
+    expect(await page.textContent('[data-one-way]')).toMatch(/J\d+, J\d+(,| and) J\d+ cannot all be ridges/)
     expect(await page.locator('.gathered line').count()).toBe(3)
     // The three by their middles on the plan, from the published coordinates.
     const whole = plan(twisted as [number, number][], twistedFaces)

@@ -1,9 +1,9 @@
-/** What is said of joints that were asked to fold all one way. */
+/** What is said of joints that were asked to fold all one way; `withWeights`: where the summary is not at hand. */
 import { significant } from '../../base/decimal.ts'
 import type { Summary } from '../../roof/answer/answer.ts'
 import { listWords } from './figures.ts'
 
-export function oneWaySentences({ oneWay }: Summary): string[] {
+export function oneWaySentences({ oneWay }: Summary, withWeights = false): string[] {
   if (oneWay === undefined) return []
   const { margin, joints, certificate, decided, held, steps } = oneWay
   const under = held ? ' under these conditions' : ' (rim free)'
@@ -13,5 +13,5 @@ export function oneWaySentences({ oneWay }: Summary): string[] {
   const names = certificate.map(({ joint }) => joint)
   if (names.length === 1) return [`${names[0]} cannot be a ridge: no roof folds it${under}.`]
   const shown = names.length <= 12 ? names.join(', ') : listWords(names)
-  return [`${shown} cannot all be ridges: in every roof${under} their folds cancel, each weighted as "oneWay" in the summary says.`]
+  return [`${shown} cannot all be ridges: in every roof${under} their folds cancel, ${withWeights ? `weighted ${listWords(certificate.map(({ weight }) => significant(weight, 3)))}` : 'each weighted as "oneWay" in the summary says'}.`]
 }
