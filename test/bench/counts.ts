@@ -25,7 +25,11 @@ for (const panels of sizes.length > 0 ? sizes : [1000, 10_000, 100_000]) {
   for (const [name, { coordinates, start, index }, expected] of plans) {
     const coordinate = (axis: number): Float64Array => Float64Array.from({ length: coordinates.length / 2 }, (_, i) => coordinates[2 * i + axis]!)
     const made = planFromFaces({ unit: 'm', x: coordinate(0), y: coordinate(1), start, corner: index })
-    if (!made.ok) throw new Error(made.problem.message)
+    if (!made.ok) {
+      // Graded cells of 100,000 have joints below the digits of their own coordinates.
+      rows.push(`${name},${start.length - 1},,${expected},,,,no subdivision: ${made.problem.code}`)
+      continue
+    }
     const { space, freedom, frozen, gap, decided } = finish(freeRim(made.value.plan))
     rows.push([name, start.length - 1, space.dimension, expected, freedom, frozen.reduce((sum, value) => sum + value, 0), gap?.toExponential(2) ?? '', decided].join(','))
     process.stdout.write(`${rows.at(-1)}\n`)
