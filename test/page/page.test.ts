@@ -5,6 +5,7 @@ import { broken, faulty, fourthCorner_mm, gradient, grid, readObj, type File } f
 import { curingTests } from './curing.ts'
 import { drawnTests } from './drawn.ts'
 import { keepingTests } from './keeping.ts'
+import { reachTests } from './reach.ts'
 import { shapingTests } from './shaping.ts'
 import { accepted, downloaded, freeWords, onPlan, opened, raiseStage, read, says, slow, stage, strikeStage } from './stage.ts'
 
@@ -177,6 +178,7 @@ curingTests()
 shapingTests()
 drawnTests()
 keepingTests()
+reachTests()
 
 test('names with markup stay text', async () => {
   const page = await opened()

@@ -10,6 +10,8 @@ const types: Record<string, string> = { '.html': 'text/html', '.js': 'text/javas
 
 export interface Site {
   readonly address: string
+  /** Where it was built. */
+  readonly folder: string
   close(): void
 }
 
@@ -33,6 +35,7 @@ export async function builtSite(): Promise<Site> {
   })
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve))
   return {
+    folder,
     address: `http://127.0.0.1:${(server.address() as AddressInfo).port}/some/folder/`,
     close() {
       server.close()
