@@ -107,6 +107,34 @@ function* onSides({ sides }: Ground, heights: Float64Array): Steps<Float64Array>
   return sides === null ? heights : (yield* sides.held(heights)).heights
 }
 
+/** Share of a bracket that golden sections keep. */
+const golden = (Math.sqrt(5) - 1) / 2
+
+/**
+ * The a of the highest rise between `low` and `high`. Under an upper bound the rise need not level out: a wish that lies far
+ * above the bound all over has the level roof at the bound for its nearest, so that the rise falls again.
+ */
+function* highest(riseAt: (a: number) => Steps<number>, low: number, high: number): Steps<number> {
+  let left = high - golden * (high - low), right = low + golden * (high - low)
+  let atLeft = yield* riseAt(left), atRight = yield* riseAt(right)
+  while (high - low > 1e-6 * high) {
+    if (atLeft >= atRight) {
+      high = right
+      right = left
+      atRight = atLeft
+      left = high - golden * (high - low)
+      atLeft = yield* riseAt(left)
+    } else {
+      low = left
+      left = right
+      atLeft = atRight
+      right = low + golden * (high - low)
+      atRight = yield* riseAt(right)
+    }
+  }
+  return atLeft >= atRight ? left : right
+}
+
 /**
  * Smallest a >= 0 with rise(a) = asked for a convex rise; where the rise is above the asked one all the way, the a of the
  * least rise; where it never gets there (the peak is held, by conditions that bound one side too), `unit`.
@@ -129,15 +157,17 @@ function* amplitudeFor(riseAt: (a: number) => Steps<number>, asked: number, unit
     high = 0
   } else {
     // Within bounds the rise may come to an end: once doubling the wish four times brings nothing, that end is gone for.
-    let doublings = 0, idle = 0, last = -Infinity
+    let doublings = 0, idle = 0, last = -Infinity, best = unit
     for (;;) {
       const rise = yield* riseAt(high)
       if (rise >= asked) break
       idle = isBounded && rise <= last + 1e-9 * asked ? idle + 1 : 0
+      if (rise > last) best = high
       last = Math.max(last, rise)
       if (doublings === 60) return unit
       if (idle === 4) {
-        goal = last * (1 - 1e-9)
+        high = yield* highest(riseAt, best / 2, best * 2)
+        goal = Math.min(asked, (yield* riseAt(high)) * (1 - 1e-9))
         break
       }
       high *= 2

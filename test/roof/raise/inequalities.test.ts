@@ -80,6 +80,15 @@ describe('a pitched roof, its ridge the one thing that is free', () => {
   })
 })
 
+test('an envelope over a whole roof below the asked rise: the roof rises to it, and does not lie level at it', () => {
+  // z = f(x) + g(y) with the springing at 0: from 0 at a corner to the bound in the middle (exact).
+  const bays = grid(6, 4)
+  const made = raise(bays, { conditions: [bounds('envelope', { panels: 'all' }, null, 0.4)], rise: 0.1 })
+  expect(Math.max(...made.z)).toBeCloseTo(0.4, 5)
+  expect(Math.max(...made.z) - Math.min(...made.z)).toBeCloseTo(0.4, 3)
+  expect(made.prices[0]!.rise).toBeCloseTo(0.1 - 0.4 / 6, 3)
+})
+
 describe('one panel with slopes', () => {
   const pane = plan([[0, 0], [2, 0], [2, 1], [0, 1]], [[0, 1, 2, 3]])
   const fall = (z: Float64Array): number => {
