@@ -8,3 +8,5 @@ const { module: cures } = await runnerImport(join(import.meta.dirname, 'sample-c
 for (const [name, text] of module.sampleFiles()) writeFileSync(join(import.meta.dirname, '../../samples', name), text)
 // Last, since it asks the program about the files that were just written.
 writeFileSync(join(import.meta.dirname, '../../samples/cures.md'), await cures.cureTable())
+const { module: answers } = await runnerImport(join(import.meta.dirname, 'sample-answers.ts'), { configFile: false, logLevel: 'error' })
+writeFileSync(join(import.meta.dirname, '../sample-answers.csv'), await answers.sampleAnswersText())
