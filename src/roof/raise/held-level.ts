@@ -2,11 +2,13 @@
  * Where a starting shape stands when no datum is stated: at the held levels, since a survey's 112 m would else make the roof
  * rise by 78 m from a shape that starts at 0.
  *
- *     outer-rim nodes are held     c = lowest of their levels (highest where the roof hangs), which is the springing
- *     only others are              c = mean of (level - height of the shape) over them
+ *     two outer-rim nodes or more are held   c = lowest of their levels (highest where the roof hangs), which is the springing
+ *     others are                             c = mean of (level - height of the shape) over them, where that is more than the
+ *                                            shape's own rise; else 0: the shape reaches them, and bends to them
  *
  * A stated datum is the springing: c = 0 in heights above it. Tried and dropped: the mean over all held nodes, which sinks
- * a dome over a rim that is held level by the height its sides have at the rim.
+ * a dome over a rim that is held level by the height its sides have at the rim; and moving the shape for every held node,
+ * so that a node pulled up by hand took the whole roof with it.
  */
 import type { Plan } from '../../plan/plan.ts'
 import type { ConditionRows } from '../conditions/condition-rows.ts'
@@ -20,10 +22,11 @@ export function heldLevel(plan: Plan, { hard, soft }: Pick<ConditionRows, 'hard'
   if (levels.size === 0) for (const [node, level] of levelsOf(soft)) levels.set(node, level)
   if (levels.size === 0) return 0
   const onRim = Array.from(outerRimNodes(plan), (node) => levels.get(node)).filter((level) => level !== undefined)
-  if (onRim.length > 0) return onRim.reduce((one, other) => (down ? Math.max(one, other) : Math.min(one, other)))
+  if (onRim.length > 1) return onRim.reduce((one, other) => (down ? Math.max(one, other) : Math.min(one, other)))
   let sum = 0
   for (const [node, level] of levels) sum += level - shape[node]
-  return sum / levels.size
+  const misfit = sum / levels.size
+  return Math.abs(misfit) > range(shape) ? misfit : 0
 }
 
 /** Rows of one node each: w h = v holds its height at v / w. */
@@ -33,4 +36,14 @@ function levelsOf(rows: Rows): Map<number, number> {
     if (rows.start[r + 1] - rows.start[r] === 1) levels.set(rows.node[rows.start[r]], rows.value[r] / rows.weight[rows.start[r]])
   }
   return levels
+}
+
+/** Highest less lowest. */
+function range(heights: Float64Array): number {
+  let low = Infinity, high = -Infinity
+  for (const height of heights) {
+    low = Math.min(low, height)
+    high = Math.max(high, height)
+  }
+  return high - low
 }

@@ -50,8 +50,8 @@ const primal = 4
 
 /**
  * A program is given up after so many entries times steps, and not under a thousand steps: about half a minute. Triangulations of
- * 1,000 nodes take a tenth of it, those of 3,000 use it up. Tried and dropped: the solver's interior point method, which this build
- * of it ends with a fault.
+ * 1,000 nodes take a tenth of it, those of 3,000 use it up. Tried and dropped: the solver's interior point method, quicker there but not to
+ * be stopped between its steps, and it ended with a fault in our trials.
  */
 const mostWork = 6e9
 const leastSteps = 1000
