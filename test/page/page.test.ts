@@ -8,6 +8,7 @@ import { keepingTests } from './keeping.ts'
 import { reachTests } from './reach.ts'
 import { shapingTests } from './shaping.ts'
 import { accepted, downloaded, freeWords, onPlan, opened, raiseStage, read, says, slow, stage, strikeStage } from './stage.ts'
+import { typingTests } from './typing.ts'
 
 beforeAll(raiseStage, 240_000)
 afterAll(strikeStage)
@@ -179,6 +180,7 @@ shapingTests()
 drawnTests()
 keepingTests()
 reachTests()
+typingTests()
 
 test('names with markup stay text', async () => {
   const page = await opened()

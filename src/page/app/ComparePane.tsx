@@ -1,7 +1,7 @@
-/** An earlier step beside the one in force: its roof from the same side, and how the figures differ. */
+/** An earlier step beside the one in force: its roof from the same side, and the figures of both. */
 import { useCallback } from 'react'
 import { conversion, metres } from '../../base/length.ts'
-import { figure, signed } from '../../paper/drawing/figures.ts'
+import { figure } from '../../paper/drawing/figures.ts'
 import { stockView } from '../../paper/drawing/projection.ts'
 import { roofDrawing } from '../../paper/drawing/roof-drawing.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
@@ -35,11 +35,12 @@ function differences(was: Answer, now: Answer): string {
   const b = now.summary.roof
   if (a === null || b === null) return 'One of the two has no roof.'
   const mm = conversion(now.plan.unit, 'mm')
-  const parts = [`Rise ${signed((b.rise - a.rise) * mm)} mm`, `rim variation ${signed((b.rimVariation - a.rimVariation) * mm)} mm`]
+  const pair = (title: string, before: number, after: number): string => `${title} ${figure(after * mm)} mm, was ${figure(before * mm)} mm`
+  const parts = [pair('rise', a.rise, b.rise), pair('the rim varies by', a.rimVariation, b.rimVariation)]
   if (was.roof !== null && now.roof !== null && was.roof.heights.length === now.roof.heights.length) {
     let most = 0
     for (let i = 0; i < was.roof.heights.length; i += 1) most = Math.max(most, Math.abs(now.roof.heights[i] - was.roof.heights[i]))
     parts.push(`no node moved more than ${figure(most * mm)} mm`)
   }
-  return `Since step: ${parts.join(', ')}.`
+  return `Now and then: ${parts.join('; ')}.`
 }

@@ -136,8 +136,10 @@ function LevelsField({ levels, unit, onValue }: { readonly levels: readonly numb
     <label className="field wide"><span>levels, mm</span><input defaultValue={levels.map((level) => typable(level * mm)).join(' ')} key={levels.join()} onKeyDown={(event) => {
       if (event.key !== 'Enter') return
       event.stopPropagation()
-      const words = event.currentTarget.value.trim().split(/\s*;\s*|\s+(?=[-+\u2212\d])/)
-      const typed = words.map((text) => parseLength(text, 'mm', unit))
+      // Semicolons keep the parts of 4' 6" together; without them every blank before a number parts two levels.
+      const text = event.currentTarget.value.trim()
+      const words = text.split(text.includes(';') ? /\s*;\s*/ : /\s+(?=[-+\u2212\d])/)
+      const typed = words.map((word) => parseLength(word, 'mm', unit))
       const wrong = words.findIndex((_, k) => !typed[k].ok)
       if (wrong >= 0) setSaid(`"${words[wrong]}" is not a length`)
       else if (typed.length !== levels.length) setSaid(`${typed.length} levels for ${levels.length} nodes`)
