@@ -3,7 +3,7 @@ import { useDeferredValue, useEffect, useMemo, useRef, useState, type KeyboardEv
 import { panelName } from '../../plan/names.ts'
 import { compassPoint, figure } from '../../paper/drawing/figures.ts'
 import { useDesk, useDeskState } from './context.ts'
-import { ordered, rowsOf } from '../store/rows.ts'
+import { hundredths, ordered, rowsOf } from '../store/rows.ts'
 import type { ListColumn, ListFilter } from '../store/state.ts'
 import { useLimits } from './useReading.ts'
 import { useSize } from './useSize.ts'
@@ -96,9 +96,6 @@ export function PanelList() {
     </div>
   )
 }
-
-/** Millimetres in a list: never "0.00", which nothing made is. */
-const hundredths = (mm: number): string => (mm < 0.01 ? '<0.01' : figure(mm, 2))
 
 function flagWords(flag: number, over: number) {
   if (flag === 0) return null

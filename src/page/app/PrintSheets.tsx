@@ -21,7 +21,7 @@ import { useDesk } from './context.ts'
 import type { Desk } from '../store/desk.ts'
 import { axesFor, looks } from './looks.ts'
 import './print.css'
-import { rowsOf } from '../store/rows.ts'
+import { hundredths, rowsOf } from '../store/rows.ts'
 import type { Doc } from '../store/state.ts'
 import { jointsOf, limitsOf, readingFor } from './useReading.ts'
 import { firstSentence, secondSentence, type Piece } from '../store/verdict.ts'
@@ -70,12 +70,12 @@ function Sheets({ desk, answer, doc }: { readonly desk: Desk; readonly answer: A
             {chart !== null && <figure><Drawing list={chart} /><figcaption>Slope chart: a point a panel, where it falls to</figcaption></figure>}
           </div>
         </div>
-        <Block doc={doc} sheet={sheet} number={1} count={count} first={words(firstSentence(answer))} second={words(second)} held={answer.conditions.map((condition) => `${condition.name}${condition.soft ? ' (soft)' : ''}`)} by={readingTitles[name]} />
+        <Block doc={doc} rise={answer.summary.roof?.rise ?? null} sheet={sheet} number={1} count={count} first={words(firstSentence(answer))} second={words(second)} held={answer.conditions.map((condition) => `${condition.name}${condition.soft ? ' (soft)' : ''}`)} by={readingTitles[name]} />
       </section>
       {lists.map((tables, i) => (
         <section key={i} className="leaf">
           <List answer={answer} tables={tables} paper={paper} limits={limits} />
-          <Block doc={doc} sheet={sheet} number={i + 2} count={count} first={words(firstSentence(answer))} second="" held={[]} by={null} />
+          <Block doc={doc} rise={answer.summary.roof?.rise ?? null} sheet={sheet} number={i + 2} count={count} first={words(firstSentence(answer))} second="" held={[]} by={null} />
         </section>
       ))}
     </div>
@@ -91,14 +91,14 @@ function Drawing({ list }: { readonly list: Parameters<typeof toSvg>[0] }) {
 
 const words = (pieces: readonly Piece[]): string => pieces.map((piece) => (typeof piece === 'string' ? piece : piece.text)).join('')
 
-function Block({ doc, sheet, number, count, first, second, held, by }: {
-  readonly doc: Doc; readonly sheet: PlanSheet; readonly number: number; readonly count: number
+function Block({ doc, rise, sheet, number, count, first, second, held, by }: {
+  readonly doc: Doc; readonly rise: number | null; readonly sheet: PlanSheet; readonly number: number; readonly count: number
   readonly first: string; readonly second: string; readonly held: readonly string[]; readonly by: string | null
 }) {
   return (
     <footer className="leaf-block">
       <div><b>{first}</b>{second !== '' && <p>{second}</p>}{held.length > 0 && <p>Held: {held.slice(0, 12).join('; ')}{held.length > 12 ? `; ${held.length - 12} more` : ''}.</p>}</div>
-      <dl><dt>Drawing</dt><dd>{doc.name}</dd><dt>Unit</dt><dd>{doc.read.plan.unit}</dd></dl>
+      <dl><dt>Drawing</dt><dd>{doc.name}</dd><dt>{rise === null ? 'Unit' : 'Unit, rise'}</dt><dd>{doc.read.plan.unit}{rise === null ? '' : `, ${figure(rise * metres[doc.read.plan.unit] * 1000)} mm`}</dd></dl>
       <dl><dt>{by === null ? 'List' : 'Plan'}</dt><dd className="true-scale">{by === null ? 'panels' : `1:${figure(sheet.scale)} on ${sheet.paper.name}`}</dd><dt>{by === null ? 'Panels' : 'Filled by'}</dt><dd>{by ?? figure(doc.read.plan.panelCount)}</dd></dl>
       <dl><dt>Sheet</dt><dd>{number} of {count}</dd><dt>Printed</dt><dd>{new Date().toISOString().slice(0, 10)}</dd></dl>
       <p className="leaf-caution">{caution}</p>
@@ -119,7 +119,7 @@ function List({ answer, tables, paper, limits }: { readonly answer: Answer; read
             <tr key={p}>
               <td>{panelName(p)}</td><td>{figure(rows.area[p], 2)}</td><td>{roof === null ? dash : figure(rows.slope[p], 1)}</td>
               <td>{roof === null || Number.isNaN(rows.fall[p]) ? dash : compassPoint(rows.fall[p])}</td>
-              <td>{roof === null ? dash : figure(rows.corner[p], 2)}</td><td>{roof === null ? dash : figure(rows.flat[p], 2)}</td>
+              <td>{roof === null ? dash : hundredths(rows.corner[p])}</td><td>{roof === null ? dash : hundredths(rows.flat[p])}</td>
               <td>{[(rows.flag[p] & 1) === 1 ? 'low slope' : '', (rows.flag[p] & 2) === 2 ? 'over' : ''].filter((word) => word !== '').join(', ')}</td>
             </tr>
           ))}</tbody>

@@ -1,6 +1,7 @@
 /** Rows of the panel list from an answer: what is shown, sorted and flagged. */
 import { metres } from '../../base/length.ts'
 import { fallBearing, slopeOf } from '../../paper/drawing/fall.ts'
+import { figure } from '../../paper/drawing/figures.ts'
 import { panelArea } from '../../paper/drawing/panel-readings.ts'
 import type { Answer } from '../../roof/answer/answer.ts'
 import type { ListColumn, ListFilter } from './state.ts'
@@ -58,3 +59,6 @@ export function ordered(rows: Rows, answer: Answer, sort: { by: ListColumn; down
   } else if (sort.down) kept.reverse()
   return Int32Array.from(kept)
 }
+
+/** Millimetres in a list: never "0.00", which nothing made is. */
+export const hundredths = (mm: number): string => (mm < 0.01 ? '<0.01' : figure(mm, 2))
