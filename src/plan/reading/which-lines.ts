@@ -18,6 +18,7 @@ import { unitByEnds } from './unit-by-ends.ts'
 import { unitOfDrawing } from '../unit-of-drawing.ts'
 import { drawnAxes, type DrawnAxes } from './axes-drawn.ts'
 import { figuresGuess, layersGuess, type Guess, type Measuring } from './which-guess.ts'
+import { mostlyLoose } from './which-loose.ts'
 import { isEmpty, leftOutOf, part } from './which-part.ts'
 import { storeysGuess } from './which-storey.ts'
 import { statedLines } from './which-stated.ts'
@@ -85,6 +86,13 @@ export function* planOfLines(given: Drawing, options: ReadOptions): Steps<Result
   }
   if (unit.value.statedBy !== 'user' && !given.onPaper) read = yield* unitByEnds(asRead(drawing, given), read, unit.value.unit, options)
   if (layers !== null) say(layers, before, options, said)
+  if (read.ok && isFree && options.snap_mm === null && read.value.questions.length + said.questions.length === 0 && !leaves(options, 'which-lines') && !takes(options, 'which-lines')) {
+    const loose = mostlyLoose(asRead(drawing, given), read.value)
+    if (loose !== null) {
+      said.repairs.push(loose.repair)
+      said.questions.push(loose.question)
+    }
+  }
   return read.ok ? ok(finished(read.value, said, found)) : read
 }
 

@@ -12,7 +12,7 @@ import { panels } from '../../make/office-sheets.ts'
 import { grid } from '../../make/plans.ts'
 import { columns, furniture, hatch, moved } from '../../make/sheet.ts'
 import { isClean } from '../../make/spoilt.ts'
-import { plainly } from '../drawings.ts'
+import { plainly, read, type Segment } from '../drawings.ts'
 
 const folder = join(import.meta.dirname, '../../corpus/office')
 
@@ -204,4 +204,18 @@ test('few panels beside as much furniture are a question', () => {
   const r = readEntities([...panels('single lines', grid(3, 2, { bay: 1.5 })), ...furniture(12, 6), ...columns(8, 4, 1.5), ...hatch(12, 9)])
   // 6 panels against 4 faces of a table with its chairs: too near to call.
   expect(r.questions.map(({ code }) => code)).toEqual(['which-lines'])
+})
+
+test('bars drawn double that stop 5 mm short of each other inside their rim are asked about, and are no plan of one panel', () => {
+  const panes = Array.from({ length: 20 }, (_, k) => [1.5 * (k % 5), 1.5 * Math.floor(k / 5)] as const)
+  const short = panes.flatMap(([x, y]): Segment[] => {
+    const [a, b, c, d] = [x + 0.03, y + 0.03, x + 1.47, y + 1.47], off = 0.005
+    return [[[a + off, b], [c - off, b]], [[c, b + off], [c, d - off]], [[c - off, d], [a + off, d]], [[a, d - off], [a, b + off]]]
+  })
+  const rim: Segment[] = [[[0, 0], [7.5, 0]], [[7.5, 0], [7.5, 6]], [[7.5, 6], [0, 6]], [[0, 6], [0, 0]]]
+  const { questions, plan } = read({ lines: [...rim, ...short] })
+  expect(plan.panelCount).toBe(1)
+  expect(questions).toMatchObject([{ code: 'which-lines', message: 'Of 84 lines 80 bound no panel: what is read is 1 panel. Do their ends miss each other?' }])
+  // Said by the user, it is meant.
+  expect(read({ lines: [...rim, ...short] }, { leave: ['which-lines'] }).questions).toEqual([])
 })
