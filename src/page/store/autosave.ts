@@ -109,15 +109,18 @@ export function keepSaved(desk: Desk): () => void {
     project = mine
     const now = new Date()
     const time = `${String(now.getHours()).padStart(2, '0')}:${String(now.getMinutes()).padStart(2, '0')}`
-    // What was said of the step before does not hold for this one.
-    desk.set({ saved: '' })
+    // What is said of a step does not hold for the next one.
+    const say = (saved: string): void => {
+      if (step === last) desk.set({ saved })
+    }
+    say('')
     running = running.then(async () => {
       await spareMoment()
       if (isNew) mine.id = await begun(step.doc.name, step.doc.sha256, keptAs)
       await save({ id: mine.id, name: step.doc.name, text: keptText(step.doc), steps: at + 1, at: time, when: now.getTime() })
     }).then(
-      () => step === last && desk.set({ saved: `kept ${time}` }),
-      (error: unknown) => step === last && desk.set({ saved: notKept(error) }),
+      () => say(`kept ${time}`),
+      (error: unknown) => say(notKept(error)),
     )
   })
 }
