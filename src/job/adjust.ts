@@ -1,6 +1,6 @@
 /** The job "adjust": the nearest plan that lifts as asked, its roof, and what moved; or why there is none. */
-import { assert } from '../base/assert.ts'
 import { conversion } from '../base/length.ts'
+import { assert } from '../base/assert.ts'
 import { ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import type { Plan } from '../plan/plan.ts'
@@ -27,6 +27,7 @@ import { defaultPlanTolerance_mm } from './plan-tolerance.ts'
 import { planQuestion, withoutTolerance } from './question.ts'
 import type { Request } from './request.ts'
 import { targetOf } from './target.ts'
+import { shiftsOf } from './shifts.ts'
 
 export interface AdjustAnswer {
   /** The plan as drawn. */
@@ -122,16 +123,7 @@ function unmoved(before: Checked, outcome: 'lifts' | 'refused' | 'failed', found
 
 /** `verdict`: on the plan as drawn; null: no joint of it folds, and whether a near roof would do was not asked. */
 function* answerOf(plan: Plan, verdict: Verdict | null, after: Checked, moved: Moved, options: Options): Steps<AdjustAnswer> {
-  const mm = conversion(plan.unit, 'mm')
-  const dx_mm = moved.plan.x.map((x, n) => (x - plan.x[n]) * mm)
-  const dy_mm = moved.plan.y.map((y, n) => (y - plan.y[n]) * mm)
-  let largest = 0, squares = 0, count = 0
-  for (let n = 0; n < plan.nodeCount; n += 1) {
-    const shift = Math.hypot(dx_mm[n], dy_mm[n])
-    largest = Math.max(largest, shift)
-    squares += shift * shift
-    if (shift > counted_mm) count += 1
-  }
+  const { dx_mm, dy_mm, largest, rms, count } = shiftsOf(plan, moved.plan.x, moved.plan.y, counted_mm)
   const noFold = verdict === null || verdict === 'does not lift' || verdict === 'lifts within tolerance'
   const within = noFold && after.answer.summary.verdict === 'lifts' && largest <= (options.planTolerance_mm ?? defaultPlanTolerance_mm)
   // What the same heights would have been on the plan as drawn.
@@ -141,8 +133,8 @@ function* answerOf(plan: Plan, verdict: Verdict | null, after: Checked, moved: M
     drawn: plan, after, dx_mm, dy_mm,
     facts: {
       outcome: 'moved', code: null, reason: null, cure: null, planVerdict: within ? 'lifts within plan tolerance' : verdict,
-      largest_mm: largest, rms_mm: Math.sqrt(squares / plan.nodeCount), count,
-      cornerBefore_mm: asDrawn.corner.reduce((most, corner) => Math.max(most, corner), 0) * mm,
+      largest_mm: largest, rms_mm: rms, count,
+      cornerBefore_mm: asDrawn.corner.reduce((most, corner) => Math.max(most, corner), 0) * conversion(plan.unit, 'mm'),
       cornerAfter_mm: after.answer.summary.roof?.cornerMax_mm ?? null,
       heightError: moved.heightError * plan.frame.span,
       held: { fixed: fixedCount, sliding: slidingCount, byConditions: moved.placed, straight: straightCount, limits: active.length, bays: bayCount, mirrorLines: mirrorCount, shapes: shapeCount }, iterations,

@@ -1,5 +1,4 @@
 /** The job "balance": the rim stays, the other nodes go where their edges balance, and the plan lifts by construction. */
-import { conversion } from '../base/length.ts'
 import { fail, ok, type Result } from '../base/result.ts'
 import type { Steps } from '../base/steps.ts'
 import { densitiesFromCsv, type ListedDensity } from '../formats/densities-csv.ts'
@@ -21,6 +20,7 @@ import { lessTilt } from '../roof/stress/tilt-part.ts'
 import { answerTo, type Checked } from './check.ts'
 import { planQuestion, withoutTolerance } from './question.ts'
 import type { Request } from './request.ts'
+import { shiftsOf } from './shifts.ts'
 
 export type Densities = 'uniform' | 'fit' | 'length' | NamedFile
 
@@ -64,19 +64,10 @@ export function* balance(request: Request, densities: Densities, version: string
     read: { ...question.read, plan: next.plan }, brief: { ...question.brief, shape: null }, target: next.heights,
   })
   if (!after.ok) return after
-  const mm = conversion(plan.unit, 'mm')
-  const dx_mm = x.map((value, n) => (value - plan.x[n]) * mm)
-  const dy_mm = y.map((value, n) => (value - plan.y[n]) * mm)
-  let largest = 0, squares = 0, count = 0
-  for (let n = 0; n < plan.nodeCount; n += 1) {
-    const shift = Math.hypot(dx_mm[n], dy_mm[n])
-    largest = Math.max(largest, shift)
-    squares += shift * shift
-    if (shift > counted_mm) count += 1
-  }
+  const { dx_mm, dy_mm, largest, rms, count } = shiftsOf(plan, x, y, counted_mm)
   return ok({
     drawn: plan, after: after.value, dx_mm, dy_mm,
-    facts: { outcome: 'balanced', densities: kind, crossed: [], largest_mm: largest, rms_mm: Math.sqrt(squares / plan.nodeCount), count },
+    facts: { outcome: 'balanced', densities: kind, crossed: [], largest_mm: largest, rms_mm: rms, count },
   })
 }
 
